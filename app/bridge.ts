@@ -140,6 +140,8 @@ export interface TraceWindow {
   channel: number;
   name: string;
   unit: string;
+  /** "samples" where the interval is unknown: times are then sample numbers, from 0. */
+  axis: "seconds" | "samples";
   from_s: number;
   to_s: number;
   time_s: number[];
