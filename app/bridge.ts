@@ -6,7 +6,14 @@
 import * as v from "valibot";
 import { setupSchema, type Setup } from "../analysis/setup/schema.ts";
 import type { Note } from "../analysis/capture.ts";
-import type { CaptureReading, Figure, RunCounts, Verdict } from "../analysis/reading-format.ts";
+import type {
+  CaptureReading,
+  Figure,
+  Measured,
+  RampReading,
+  RunCounts,
+  Verdict,
+} from "../analysis/reading-format.ts";
 
 const id = v.pipe(v.number(), v.integer(), v.minValue(1));
 const count = (most: number) => v.pipe(v.number(), v.integer(), v.minValue(1), v.maxValue(most));
@@ -55,6 +62,20 @@ export const commands = {
   undo: v.strictObject({ run: id }),
   rule: v.strictObject({ capture: id, pulse: index, verdict: v.nullable(verdict), remark: longText }),
   exportRun: v.strictObject({ run: id, kind: v.picklist(["csv", "jsonl", "html"]) }),
+  /** First lines of a capture's file, to see what was read beside a question. */
+  fileHead: v.strictObject({ capture: id, lines: count(200) }),
+  /** Read a folder's captures as they are saved, until unwatched. */
+  watch: v.strictObject({ path: longText }),
+  unwatch: v.strictObject({ path: longText }),
+  watching: v.strictObject({}),
+  coils: v.strictObject({}),
+  coil: v.strictObject({ coil: shortText }),
+  /** What the coil would do with other capacitors, at one switch-off current. */
+  capacitorChoice: v.strictObject({
+    coil: shortText,
+    capacitances_F: v.pipe(v.array(v.pipe(v.number(), v.minValue(1e-13), v.maxValue(0.1))), v.maxLength(500)),
+    current_A: v.nullable(v.pipe(v.number(), v.finite())),
+  }),
   preferences: v.strictObject({}),
   setPreference: v.strictObject({ key: shortText, value: longText }),
 } as const;
@@ -160,6 +181,104 @@ export interface RingPicture {
   offset: number | null;
 }
 
+export interface WatchState {
+  path: string;
+  run: number | null;
+  captures: number;
+  /** ISO time and text of what was last read or went wrong. */
+  last: { at: string; text: string } | null;
+}
+
+export interface CoilRow {
+  coil: string;
+  runs: number;
+  pulses: number;
+  first: string | null;
+  last: string | null;
+  inductance_H: Figure;
+}
+
+export interface CoilHistoryRow {
+  run: number;
+  name: string;
+  taken: string | null;
+  inductance_H: Figure;
+  capacitance_F: Figure;
+  resistance_ohm: Figure;
+  q: Figure;
+  peak_V: number | null;
+  /** In plain words, where this run departs from the others. */
+  flag: string | null;
+}
+
+export interface CoilCurve {
+  x: number[];
+  y: number[];
+  u: (number | null)[];
+}
+
+/** One part's load against what it is stated to bear; `share` = value/rating. */
+export interface Stress {
+  part: string;
+  quantity: string;
+  unit: string;
+  value: Figure;
+  rating: number | null;
+  share: number | null;
+  reason: string | null;
+}
+
+/** A coil over all its runs; a block that could not be had is null with its reason in the notes. */
+export interface CoilSheet {
+  coil: string;
+  history: CoilHistoryRow[];
+  notes: Note[];
+  addedCapacitor: {
+    points: {
+      run: number;
+      file: string;
+      capacitance_F: number;
+      /** 1/ω0². */
+      inverseSquare_s2: Measured;
+      residual: number;
+      flagged: boolean;
+    }[];
+    inductance_H: Figure;
+    selfCapacitance_F: Figure;
+    seriesResistance_ohm: Figure;
+    parallelResistance_ohm: Figure;
+    reason: string | null;
+  } | null;
+  ramp: RampReading | null;
+  /** Incremental inductance against current, where saturation was measured. */
+  saturation: CoilCurve | null;
+  dwell: {
+    current_A: number;
+    supplies_V: number[];
+    temperatures_C: number[];
+    /** Time to the current, a row for each supply, a column for each temperature; null: never reached. */
+    time_s: Figure[][];
+  } | null;
+  stress: Stress[];
+  /** What the choice of a capacitor starts from. */
+  drive: {
+    inductance_H: Figure;
+    capacitance_F: Figure;
+    current_A: Figure;
+    supply_V: number | null;
+    rating_V: number | null;
+    smallest_F: Figure;
+    reason: string | null;
+  };
+}
+
+export interface CapacitorOption {
+  capacitance_F: number;
+  peak_V: Figure;
+  frequency_Hz: Figure;
+  margin: number | null;
+}
+
 export interface Answers {
   hello: {
     version: string;
@@ -183,6 +302,13 @@ export interface Answers {
   undo: { job: string | null; text: string };
   rule: { ruled: { verdict: Verdict; at: string; remark: string } | null };
   exportRun: { name: string; mime: string; text: string };
+  fileHead: { lines: string[]; more: boolean };
+  watch: WatchState;
+  unwatch: { unwatched: boolean };
+  watching: WatchState[];
+  coils: CoilRow[];
+  coil: CoilSheet;
+  capacitorChoice: CapacitorOption[];
   preferences: Record<string, string>;
   setPreference: { kept: true };
 }
@@ -203,6 +329,7 @@ export interface JobState {
 export type BenchEvent =
   | { type: "job"; job: JobState }
   | { type: "run-changed"; run: number }
+  | { type: "watch"; watch: WatchState }
   | { type: "book-changed" };
 
 /** What a door offers its window. */
