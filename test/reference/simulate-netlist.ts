@@ -17,7 +17,7 @@ export function netlist(circuit: BenchCircuit, drives: Drive[], end_s: number, m
       drives.flatMap(({ on_s, off_s }) => [[on_s, 0, 5] as Step, [off_s, 5, 0] as Step]),
       0,
     ),
-    ...(circuit.secondary ? secondary(circuit, drives) : []),
+    ...(circuit.secondary ? secondary(circuit, drives, end_s) : []),
     ".options reltol=1e-4 abstol=1e-9",
     `.tran ${maxStep_s} ${end_s} 0 ${maxStep_s} uic`,
     `.save ${saved.join(" ")}`,
@@ -58,7 +58,7 @@ function switchLines({ switch: device, blockingDiode }: BenchCircuit): string[] 
  * The gap is a switch with hysteresis on its own control: closed once |v| reaches the breakdown
  * voltage, open again once the arc's current falls below the holding current.
  */
-function secondary(circuit: BenchCircuit, drives: Drive[]): string[] {
+function secondary(circuit: BenchCircuit, drives: Drive[], end_s: number): string[] {
   const { inductance_H, winding_ohm, capacitance_F, coupling } = circuit.secondary!;
   const lines = [
     `l2 0 turns ${inductance_H} ic=0`,
@@ -69,11 +69,17 @@ function secondary(circuit: BenchCircuit, drives: Drive[]): string[] {
   if (!circuit.gap) return lines;
   const { burn_V, arc_ohm, hold_A } = circuit.gap;
   const holds_V = 1e9;
-  const strengths = drives.map(({ breakdown_V }) => breakdown_V ?? holds_V);
-  const changes = drives.slice(1).map(({ on_s }, i) => [on_s, strengths[i], strengths[i + 1]] as Step);
+  const changes = drives.flatMap(({ off_s, breakdown_V, lag_s }, i) => {
+    if (breakdown_V === null) return [];
+    const next_s = drives[i + 1]?.on_s ?? end_s;
+    return [
+      [off_s + (lag_s ?? 0), holds_V, breakdown_V],
+      [next_s, breakdown_V, holds_V],
+    ] as Step[];
+  });
   return [
     ...lines,
-    piecewise("vbreak strength 0", changes, strengths[0] ?? holds_V),
+    piecewise("vbreak strength 0", changes, holds_V),
     `sgap hv arc state 0 gapmod`,
     `.model gapmod sw(vt=0.55 vh=0.45 ron=${arc_ohm} roff=1e13)`,
     `barc cathode 0 v=${burn_V}*tanh(i(vm)/${hold_A / 5})`,

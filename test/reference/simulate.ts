@@ -27,11 +27,14 @@ export interface BenchCircuit {
   gap: { burn_V: number; arc_ohm: number; hold_A: number } | null;
 }
 
-/** One conduction of the switch; `breakdown_V` is what the gap stands during this pulse, null: it holds. */
+/** One conduction of the switch. */
 export interface Drive {
   on_s: number;
   off_s: number;
+  /** What the gap stands after this switch-off, null: it holds. */
   breakdown_V: number | null;
+  /** The gap waits this long after switch-off for its first electron, whatever the voltage (0 when absent). */
+  lag_s?: number;
 }
 
 export interface Strike {
