@@ -330,7 +330,9 @@ export type BenchEvent =
   | { type: "job"; job: JobState }
   | { type: "run-changed"; run: number }
   | { type: "watch"; watch: WatchState }
-  | { type: "book-changed" };
+  | { type: "book-changed" }
+  /** The shell's menu asks the window to turn to a run. */
+  | { type: "show-run"; run: number };
 
 /** What a door offers its window. */
 export interface Bench {
