@@ -1,4 +1,6 @@
 #!/usr/bin/env node
+import type { Command } from "./commands/usage.ts";
+
 /** The terminal's door. It stays small: a command's code is loaded when that command is asked for. */
 const usage = `ringbook – reads oscilloscope captures of switched coils
 
@@ -12,8 +14,6 @@ const usage = `ringbook – reads oscilloscope captures of switched coils
 PATH is a capture file or a folder of them. Commands on a book take --book FILE, else ringbook.db in
 your data folder. Exit status: 0 all read, 1 some file could not be read, 2 wrong usage.
 `;
-
-type Command = (args: string[]) => Promise<number>;
 
 const commands: Record<string, () => Promise<{ run: Command }>> = {
   read: () => import("./commands/read.ts"),
@@ -45,5 +45,3 @@ process.stdout.on("error", (error: NodeJS.ErrnoException) => {
   throw error;
 });
 process.exitCode = await main(process.argv.slice(2));
-
-export {};

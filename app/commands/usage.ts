@@ -1,5 +1,8 @@
 import { parseArgs, type ParseArgsConfig } from "node:util";
 
+/** A command of the terminal; answers the exit status. */
+export type Command = (args: string[]) => Promise<number>;
+
 /** Wrong usage: said in one line, exit status 2. */
 export class UsageError extends Error {}
 

@@ -24,11 +24,12 @@ export function lockContents(contents: WebContents): void {
 
 /** No permission but to put a copied figure on the clipboard, and that for the own page alone. */
 export function lockSession(session: Session): void {
-  const allowed = (permission: string, address: string) =>
-    permission === "clipboard-sanitized-write" && isOwnPage(address);
   session.setPermissionRequestHandler((contents, permission, answer) =>
     answer(allowed(permission, contents.getURL())),
   );
   session.setPermissionCheckHandler((_contents, permission, origin) => allowed(permission, origin));
   session.setDevicePermissionHandler(() => false);
 }
+
+const allowed = (permission: string, address: string) =>
+  permission === "clipboard-sanitized-write" && isOwnPage(address);

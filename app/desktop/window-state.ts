@@ -33,10 +33,11 @@ export function keepWindowState(file: string, window: BrowserWindow): void {
 
 /** Enough of the window is in the area to take hold of it. */
 function overlap(area: Rectangle, bounds: Rectangle): boolean {
-  const inner = (a: number, aLength: number, b: number, bLength: number) =>
-    Math.min(a + aLength, b + bLength) - Math.max(a, b);
   return (
     inner(area.x, area.width, bounds.x, bounds.width) > 100 &&
     inner(area.y, area.height, bounds.y, bounds.height) > 50
   );
 }
+
+const inner = (a: number, aLength: number, b: number, bLength: number) =>
+  Math.min(a + aLength, b + bLength) - Math.max(a, b);

@@ -4,7 +4,7 @@ import { connect } from "node:net";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { afterEach, beforeEach, describe, expect, it } from "vitest";
-import WebSocket from "ws";
+import { WebSocket } from "ws";
 import type { BenchEvent } from "../../app/bridge.ts";
 import type { Host } from "../../app/host/host.ts";
 import { openLocalDoor, type LocalDoor } from "../../app/local/door.ts";
@@ -210,16 +210,16 @@ describe("the page", () => {
   });
 });
 
-describe("events", () => {
-  const open = (protocols: string[], origin?: string, path = "/events") =>
-    new Promise<WebSocket>((resolve, reject) => {
-      const socket = new WebSocket(`ws://127.0.0.1:${door.port}${path}`, protocols, { origin });
-      socket.once("open", () => resolve(socket));
-      socket.once("error", reject);
-    });
+const openEvents = (protocols: string[], origin?: string, path = "/events") =>
+  new Promise<WebSocket>((resolve, reject) => {
+    const socket = new WebSocket(`ws://127.0.0.1:${door.port}${path}`, protocols, { origin });
+    socket.once("open", () => resolve(socket));
+    socket.once("error", reject);
+  });
 
+describe("events", () => {
   it("reach a page with the token, and the token is not sent back", async () => {
-    const socket = await open(["ringbook", door.token], own().origin);
+    const socket = await openEvents(["ringbook", door.token], own().origin);
     const message = new Promise((resolve) =>
       socket.once("message", (data) => resolve(JSON.parse(String(data)))),
     );
@@ -230,18 +230,18 @@ describe("events", () => {
   });
 
   it("end when the page is gone", async () => {
-    const socket = await open(["ringbook", door.token], own().origin);
+    const socket = await openEvents(["ringbook", door.token], own().origin);
     socket.terminate();
     await expect.poll(() => echo.listeners.size).toBe(0);
   });
 
   it("are refused without Origin, with a foreign one, without token and elsewhere", async () => {
     const good = own().origin;
-    await expect(open(["ringbook", door.token])).rejects.toThrow("403");
-    await expect(open(["ringbook", door.token], "http://example.org")).rejects.toThrow("403");
-    await expect(open(["ringbook"], good)).rejects.toThrow("401");
-    await expect(open(["ringbook", "x"], good)).rejects.toThrow("401");
-    await expect(open(["ringbook", door.token], good, "/elsewhere")).rejects.toThrow("404");
+    await expect(openEvents(["ringbook", door.token])).rejects.toThrow("403");
+    await expect(openEvents(["ringbook", door.token], "http://example.org")).rejects.toThrow("403");
+    await expect(openEvents(["ringbook"], good)).rejects.toThrow("401");
+    await expect(openEvents(["ringbook", "x"], good)).rejects.toThrow("401");
+    await expect(openEvents(["ringbook", door.token], good, "/elsewhere")).rejects.toThrow("404");
   });
 });
 

@@ -35,11 +35,12 @@ export function sketchRun(evidence: CaptureEvidence[], readings: CaptureReading[
 
 /** Median decay of the quiet pulses' rings, of all pulses where none is quiet. */
 function commonDecay(pulses: PulseReading[]): number | null {
-  const decayOf = (pulse: PulseReading) => pulse.ring?.modes[0]?.decay_per_s.value ?? [];
   const quiet = pulses.filter((pulse) => pulse.spark?.verdict === "no-spark").flatMap(decayOf);
   const decays = (quiet.length > 0 ? quiet : pulses.flatMap(decayOf)).filter((decay) => decay > 0);
   return decays.length === 0 ? null : decays.toSorted((a, b) => a - b)[decays.length >> 1];
 }
+
+const decayOf = (pulse: PulseReading) => pulse.ring?.modes[0]?.decay_per_s.value ?? [];
 
 /** What the ring settles to: as fitted, else the mean of the last quarter of what there is. */
 function levelOf(pulse: PulseEvidence, ring: Float64Array): number {
