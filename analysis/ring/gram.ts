@@ -1,0 +1,125 @@
+/**
+ * Inner products of the model's columns over the blocks' segments. Columns: per mode e·cos, e·sin,
+ * i·e·cos, i·e·sin with e = exp(−decay·i) and i the block number, then i^0 … i^degree of the baseline.
+ */
+import { addExponentialSums } from "../numeric/exponential-sums.ts";
+import type { Blocks } from "./blocks.ts";
+
+/** Decay and angular frequency per block. */
+export interface Mode {
+  decay: number;
+  omega: number;
+}
+
+export class Gram {
+  columns = 0;
+  /** columns², symmetric, row-major. */
+  matrix = new Float64Array(0);
+  /** Inner products of the columns with the data. */
+  data = new Float64Array(0);
+  private readonly pRe = new Float64Array(7);
+  private readonly pIm = new Float64Array(7);
+  private readonly qRe = new Float64Array(7);
+  private readonly qIm = new Float64Array(7);
+
+  fill(blocks: Blocks, modes: Mode[], degree: number): void {
+    this.columns = 4 * modes.length + degree + 1;
+    if (this.matrix.length !== this.columns ** 2) {
+      this.matrix = new Float64Array(this.columns ** 2);
+      this.data = new Float64Array(this.columns);
+    }
+    for (let m = 0; m < modes.length; m++) {
+      for (let n = m; n < modes.length; n++) this.modePair(blocks, modes, m, n);
+      this.modeBaseline(blocks, modes, m, degree);
+      this.project(blocks, modes[m], 4 * m);
+    }
+    this.baseline(blocks, 4 * modes.length, degree);
+  }
+
+  private set(row: number, column: number, value: number): void {
+    this.matrix[row * this.columns + column] = value;
+    this.matrix[column * this.columns + row] = value;
+  }
+
+  private sums(blocks: Blocks, re: number, im: number, powers: number, outRe: Float64Array, outIm: Float64Array) {
+    outRe.fill(0);
+    outIm.fill(0);
+    const { segments } = blocks;
+    for (let s = 0; s < segments.length; s += 2)
+      addExponentialSums(re, im, segments[s], segments[s + 1], powers, outRe, outIm);
+  }
+
+  private modePair(blocks: Blocks, modes: Mode[], m: number, n: number): void {
+    const re = -modes[m].decay - modes[n].decay;
+    this.sums(blocks, re, modes[m].omega - modes[n].omega, 2, this.pRe, this.pIm);
+    this.sums(blocks, re, modes[m].omega + modes[n].omega, 2, this.qRe, this.qIm);
+    const row = 4 * m;
+    const column = 4 * n;
+    for (let j = 0; j < 2; j++)
+      for (let k = 0; k < 2; k++) {
+        const power = j + k;
+        const p = this.pRe[power];
+        const q = this.qRe[power];
+        const pi = this.pIm[power];
+        const qi = this.qIm[power];
+        this.set(row + 2 * j, column + 2 * k, (p + q) / 2);
+        this.set(row + 2 * j + 1, column + 2 * k + 1, (p - q) / 2);
+        this.set(row + 2 * j, column + 2 * k + 1, (qi - pi) / 2);
+        this.set(row + 2 * j + 1, column + 2 * k, (qi + pi) / 2);
+      }
+  }
+
+  private modeBaseline(blocks: Blocks, modes: Mode[], m: number, degree: number): void {
+    if (degree < 0) return;
+    this.sums(blocks, -modes[m].decay, modes[m].omega, degree + 1, this.pRe, this.pIm);
+    const base = 4 * modes.length;
+    for (let k = 0; k <= degree; k++)
+      for (let j = 0; j < 2; j++) {
+        this.set(4 * m + 2 * j, base + k, this.pRe[j + k]);
+        this.set(4 * m + 2 * j + 1, base + k, this.pIm[j + k]);
+      }
+  }
+
+  private baseline(blocks: Blocks, base: number, degree: number): void {
+    if (degree < 0) return;
+    this.sums(blocks, 0, 0, 2 * degree, this.pRe, this.pIm);
+    for (let j = 0; j <= degree; j++) {
+      for (let k = j; k <= degree; k++) this.set(base + j, base + k, this.pRe[j + k]);
+      this.data[base + j] = blocks.moments[j];
+    }
+  }
+
+  /** Horner's scheme from the end: Σ y·z^i and its derivative in one pass. */
+  private project(blocks: Blocks, mode: Mode, at: number): void {
+    const { values, segments } = blocks;
+    const e = Math.exp(-mode.decay);
+    const zRe = e * Math.cos(mode.omega);
+    const zIm = e * Math.sin(mode.omega);
+    this.data.fill(0, at, at + 4);
+    for (let s = 0; s < segments.length; s += 2) {
+      const from = segments[s];
+      let re = 0;
+      let im = 0;
+      let slopeRe = 0;
+      let slopeIm = 0;
+      for (let i = segments[s + 1] - 1; i >= from; i--) {
+        const sr = slopeRe * zRe - slopeIm * zIm + re;
+        slopeIm = slopeRe * zIm + slopeIm * zRe + im;
+        slopeRe = sr;
+        const r = re * zRe - im * zIm + values[i];
+        im = re * zIm + im * zRe;
+        re = r;
+      }
+      // Σ(i − from)·y·z^(i−from) = z·slope; then both counted from block 0.
+      const turnedRe = slopeRe * zRe - slopeIm * zIm + from * re;
+      const turnedIm = slopeRe * zIm + slopeIm * zRe + from * im;
+      const magnitude = Math.exp(-mode.decay * from);
+      const c = magnitude * Math.cos(mode.omega * from);
+      const d = magnitude * Math.sin(mode.omega * from);
+      this.data[at] += c * re - d * im;
+      this.data[at + 1] += c * im + d * re;
+      this.data[at + 2] += c * turnedRe - d * turnedIm;
+      this.data[at + 3] += c * turnedIm + d * turnedRe;
+    }
+  }
+}

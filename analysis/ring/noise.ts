@@ -1,0 +1,59 @@
+/** Noise of a trace without a model, and the colour of residuals. */
+import { powerOfTwo, powerSpectrum } from "../numeric/fft.ts";
+
+const spectrum = new Float64Array(2 ** 17);
+
+/**
+ * Power density of residuals around `omega` (radian a value) over their mean density: 1 for white
+ * noise. Within what the number of spectral bins leaves open it is 1, so that white noise keeps the
+ * sharper estimate.
+ */
+export function colour(residual: Float64Array, count: number, omega: number): number {
+  if (count < 64) return 1;
+  const n = powerOfTwo(count);
+  powerSpectrum(residual, count, n, spectrum);
+  const half = n / 2;
+  const centre = (omega / Math.PI) * half;
+  // The bins the fit itself has emptied say nothing.
+  const skip = (2 * n) / count;
+  const reach = Math.max(12 * (n / count), 0.02 * half);
+  const low = Math.max(1, Math.floor(centre - reach));
+  const high = Math.min(half - 1, Math.ceil(centre + reach));
+  let near = 0;
+  let bins = 0;
+  for (let k = low; k <= high; k++) {
+    if (Math.abs(k - centre) < skip) continue;
+    near += spectrum[k];
+    bins++;
+  }
+  let all = 0;
+  for (let k = 1; k < half; k++) all += spectrum[k];
+  all /= half - 1;
+  if (bins === 0 || !(all > 0)) return 1;
+  const ratio = near / bins / all;
+  const independent = (bins * count) / n;
+  return Math.abs(ratio - 1) < 3.5 / Math.sqrt(independent) ? 1 : ratio;
+}
+
+/** Median of |x| over 0.6745: standard deviation of normal noise. Sorts `values` in place. */
+export function deviationFromMedian(values: Float64Array): number {
+  if (values.length === 0) return 0;
+  for (let i = 0; i < values.length; i++) values[i] = Math.abs(values[i]);
+  values.sort();
+  return values[values.length >> 1] / 0.6745;
+}
+
+/**
+ * Noise per sample from second differences, which a ring of enough samples a cycle hardly touches;
+ * at least the quantisation's LSB/√12. 0 when nothing can be told.
+ */
+export function differenceNoise(samples: Float64Array, from: number, to: number, lsb: number | null): number {
+  const stride = Math.max(1, Math.floor((to - from) / 2048));
+  const differences: number[] = [];
+  for (let i = from + 1; i + 1 < to; i += stride) {
+    const d = samples[i - 1] - 2 * samples[i] + samples[i + 1];
+    if (Number.isFinite(d)) differences.push(d);
+  }
+  const fromDifferences = deviationFromMedian(Float64Array.from(differences)) / Math.sqrt(6);
+  return Math.max(fromDifferences, (lsb ?? 0) / Math.sqrt(12));
+}

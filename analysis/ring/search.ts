@@ -1,0 +1,74 @@
+/**
+ * How many modes the data hold and where they are. A further mode must earn its place: the fall of
+ * the residual sum of squares, in units of the noise around its frequency, against what the best of
+ * all noise peaks would reach (an information criterion with the search paid for).
+ */
+import type { Blocks } from "./blocks.ts";
+import { residualBlocks } from "./evaluate.ts";
+import type { Mode } from "./gram.ts";
+import { colour } from "./noise.ts";
+import { solve, type Solution } from "./solve.ts";
+import { bestStart, coarser, scaled, strongestLines } from "./start.ts";
+
+/** Values a cycle in the coarse passes; the last pass keeps more. */
+const COARSE_PER_CYCLE = 12;
+const LINES_TRIED = 3;
+
+const buffer = { residual: new Float64Array(0) };
+
+export function residualBuffer(count: number): Float64Array {
+  if (buffer.residual.length < count) buffer.residual = new Float64Array(count);
+  return buffer.residual;
+}
+
+/** What a wave explains before it counts as one: about 1 in 1000 records of noise reach it. */
+const priceOfMode = (used: number) => 18 + 2 * Math.log(used);
+
+/** Modes and baseline degree for these blocks; null when there is no oscillation at all. */
+export function searchModes(blocks: Blocks, most: number): Solution | null {
+  let best = fitNext(blocks, [], blocks.values, 0);
+  if (!best || blocks.power - best.cost < priceOfMode(blocks.used) * variance(blocks, best)) return null;
+  while (best.modes.length < most) {
+    const residual = residualBuffer(blocks.count);
+    residualBlocks(blocks, best, residual);
+    const next: Solution | null = fitNext(blocks, best.modes, residual, variance(blocks, best));
+    if (!next || !earned(blocks, best, next)) break;
+    best = next;
+  }
+  return best;
+}
+
+/** Residual variance of a block, degrees of freedom counted. */
+export function variance(blocks: Blocks, solution: Solution): number {
+  const parameters = 4 * solution.modes.length + solution.degree + 1;
+  return solution.cost / Math.max(1, blocks.used - parameters);
+}
+
+function fitNext(blocks: Blocks, known: Mode[], values: Float64Array, noise: number): Solution | null {
+  if (blocks.used < 4 * known.length + 8) return null;
+  const lines = strongestLines(values, blocks.count, LINES_TRIED).filter(
+    (line) => line.energy > 8 * noise,
+  );
+  if (lines.length === 0) return null;
+  const fastest = Math.max(...lines.map((line) => line.omega), ...known.map((mode) => mode.omega));
+  const coarse = coarser(blocks, fastest, COARSE_PER_CYCLE);
+  const start = bestStart(
+    coarse.blocks,
+    scaled(known, coarse.by),
+    lines.map((line) => ({ ...line, omega: line.omega * coarse.by, length: line.length / coarse.by })),
+    0,
+  );
+  if (!start) return null;
+  const rough = solve(coarse.blocks, start.modes, 0);
+  return coarse.by === 1 ? rough : solve(blocks, scaled(rough.modes, 1 / coarse.by), 0);
+}
+
+function earned(blocks: Blocks, before: Solution, after: Solution): boolean {
+  const noise = variance(blocks, after);
+  const residual = residualBuffer(blocks.count);
+  residualBlocks(blocks, after, residual);
+  const added = after.modes.at(-1)!;
+  const excess = Math.max(1, colour(residual, blocks.count, added.omega));
+  const plausible = added.decay > -0.5 / blocks.count && added.omega > 2 * Math.PI * 0.6 * Math.max(added.decay / 4, 1 / blocks.count);
+  return plausible && before.cost - after.cost > priceOfMode(blocks.used) * noise * excess;
+}
