@@ -12,11 +12,8 @@ type Reading = "addFile" | "open" | "openDemo" | "jobs" | "cancel" | "changeSetu
 export function readingHandlers(bench: BenchParts): Pick<Handlers, Reading> {
   const { book, jobs, uploads } = bench;
 
-  const open = (what: string, paths: string[], run: string | null, setup: Setup | null) => ({
-    job: jobs.start(what, (job) => openPaths(bench, job, paths, run, setup)),
-  });
   const judgeAgain = (run: number) =>
-    jobs.start("Computing the run again", (job) => recompute(bench, job, run));
+    jobs.start("Computing the run again", (job) => recompute(bench, job, run)).job;
 
   return {
     addFile: ({ name, bytes }) => uploads.add(name, bytes),
@@ -24,10 +21,9 @@ export function readingHandlers(bench: BenchParts): Pick<Handlers, Reading> {
       const paths = sources.map((source) =>
         "path" in source ? resolve(source.path) : uploads.pathOf(source.file),
       );
-      const what = paths.length === 1 ? `Reading ${basename(paths[0])}` : `Reading ${paths.length} files`;
-      return open(what, paths, run ?? null, setup ?? null);
+      return { job: startReading(bench, paths, run ?? null, setup ?? null).job };
     },
-    openDemo: () => open("Reading the demo run", [bench.demo], null, null),
+    openDemo: () => ({ job: startReading(bench, [bench.demo], null, null).job }),
     jobs: () => jobs.list(),
     cancel: ({ job }) => ({ cancelled: jobs.cancel(job) }),
     changeSetup({ run, change }) {
@@ -48,16 +44,13 @@ function withChange(stated: Setup | null, change: Record<string, unknown>): Reco
   return Object.fromEntries(merged.filter(([, value]) => value !== null && value !== undefined));
 }
 
-/** Reads files and folders into the book, run by run. */
-async function openPaths(
-  bench: BenchParts,
-  job: JobHandle,
-  paths: string[],
-  named: string | null,
-  setup: Setup | null,
-) {
-  job.onCancel(() => void bench.reader.stop("the job was cancelled"));
-  await readSources(bench.reader, bench.book, readoutOf(bench, job), paths, named, setup);
+/** A job that reads files and folders into the book, run by run. */
+export function startReading(bench: BenchParts, paths: string[], named: string | null, setup: Setup | null) {
+  const what = `Reading ${paths.length === 1 ? basename(paths[0]) : `${paths.length} files`}`;
+  return bench.jobs.start(what, async (job) => {
+    job.onCancel(() => void bench.reader.stop("the job was cancelled"));
+    await readSources(bench.reader, bench.book, readoutOf(bench, job), paths, named, setup);
+  });
 }
 
 /** The whole run again from its files, with what is stated now. */

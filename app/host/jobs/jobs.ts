@@ -15,7 +15,7 @@ export interface JobHandle {
 
 export interface Jobs {
   /** Starts `work` when the jobs before it are done; answers the job's name at once. */
-  start(what: string, work: (job: JobHandle) => Promise<void>): string;
+  start(what: string, work: (job: JobHandle) => Promise<void>): { job: string; finished: Promise<JobState> };
   cancel(job: string): boolean;
   list(): JobState[];
   /** Settles when no job is in hand. */
@@ -79,7 +79,7 @@ export function createJobs(emit: (event: BenchEvent) => void, now: () => number 
       entries.set(job, entry);
       forgetOldest(entries);
       queue = queue.then(() => perform(entry, work));
-      return job;
+      return { job, finished: queue.then(() => structuredClone(state)) };
     },
     cancel(job) {
       const entry = entries.get(job);
