@@ -17,6 +17,8 @@ export interface RingCircuit {
   lossGrowth_per_V?: number;
   /** Node held at this level by a clamp. */
   clamp_V?: number;
+  /** The contact closes again in these stretches [from, to) of seconds after switch-off. */
+  bounces_s?: [from: number, to: number][];
   /** No blocking diode: the node cannot go below about −0.7 V. */
   bodyDiode?: boolean;
 }
@@ -69,6 +71,7 @@ export function integrateRing(
     for (let k = 0; k < substeps; k++) {
       const time_s = i * step_s + (k + 1) * h;
       state = step(circuit, gap, state, arc, h);
+      if (circuit.bounces_s?.some(([from, to]) => time_s >= from && time_s < to)) state[0] = start.node_V;
       if (gap) arc = switchGap(gap, state, arc, time_s, waves);
     }
   }
