@@ -11,16 +11,20 @@ export class SetupError extends Error {
 
 /** Parsed JSON → Setup. Throws SetupError. */
 export function parseSetup(json: unknown): Setup {
+  // The schema library takes a list for an object without keys.
+  if (Array.isArray(json)) throw new SetupError([{ field: "(whole file)", text: notAnObject }]);
   const result = v.safeParse(setupSchema, json);
   if (result.success) return result.output;
   throw new SetupError(result.issues.map(describe));
 }
+
+const notAnObject = "must be a JSON object of setup fields";
 
 function describe(issue: v.BaseIssue<unknown>) {
   const field = v.getDotPath(issue) ?? "(whole file)";
   const unknownKey = issue.type === "strict_object" && issue.expected === "never";
   const wholeFile = issue.type === "strict_object" && !issue.path;
   if (unknownKey) return { field, text: "does not exist: check the spelling" };
-  if (wholeFile) return { field, text: "must be a JSON object of setup fields" };
+  if (wholeFile) return { field, text: notAnObject };
   return { field, text: issue.message };
 }

@@ -26,18 +26,19 @@ describe("the sender of a call", () => {
   });
 });
 
-describe("the window's contents", () => {
-  const locked = () => {
-    const contents = new StandInContents();
-    lockContents(contents as never);
-    return contents;
-  };
-  const prevented = (name: string, url: string) => {
-    const preventDefault = vi.fn();
-    locked().emit(name, { url, preventDefault });
-    return preventDefault.mock.calls.length === 1;
-  };
+const locked = () => {
+  const contents = new StandInContents();
+  lockContents(contents as never);
+  return contents;
+};
 
+const prevented = (name: string, url: string) => {
+  const preventDefault = vi.fn();
+  locked().emit(name, { url, preventDefault });
+  return preventDefault.mock.calls.length === 1;
+};
+
+describe("the window's contents", () => {
   it("open no popup", () => {
     expect(locked().openHandler({ url: "https://example.org" })).toEqual({ action: "deny" });
     expect(locked().openHandler({ url: pageAddress })).toEqual({ action: "deny" });
@@ -53,16 +54,16 @@ describe("the window's contents", () => {
   it("hold no embedded view", () => expect(prevented("will-attach-webview", pageAddress)).toBe(true));
 });
 
-describe("permissions", () => {
-  const asked = (permission: string, address: string) => {
-    lockSession(session as never);
-    const contents = new StandInContents();
-    contents.address = address;
-    let granted: boolean | null = null;
-    session.requests?.(contents, permission, (answer) => (granted = answer));
-    return [granted, session.checks?.(null, permission, new URL(address).href)];
-  };
+const asked = (permission: string, address: string) => {
+  lockSession(session as never);
+  const contents = new StandInContents();
+  contents.address = address;
+  let granted: boolean | null = null;
+  session.requests?.(contents, permission, (answer) => (granted = answer));
+  return [granted, session.checks?.(null, permission, new URL(address).href)];
+};
 
+describe("permissions", () => {
   it.each(["media", "geolocation", "notifications", "midi", "hid", "serial", "fullscreen", "clipboard-read"])(
     "%s is denied",
     (permission) => expect(asked(permission, pageAddress)).toEqual([false, false]),

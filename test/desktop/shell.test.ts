@@ -23,9 +23,9 @@ let folder: string;
 beforeEach(() => (folder = mkdtempSync(join(tmpdir(), "shell-"))));
 afterEach(() => rmSync(folder, { recursive: true }));
 
+const get = (url: string, method = "GET") => schemes.get("ringbook")?.({ url, method }) as Promise<Response>;
+
 describe("the page's scheme", () => {
-  const get = (url: string, method = "GET") =>
-    schemes.get("ringbook")?.({ url, method }) as Promise<Response>;
   beforeEach(() => {
     writeFileSync(join(folder, "index.html"), "<!doctype html>");
     servePage(session as never, folder);
@@ -83,9 +83,10 @@ describe("the window's place", () => {
   });
 });
 
+const window = () => new StandInWindow({ webPreferences: {} });
+
 describe("the menu", () => {
   const host = { answer: vi.fn(async (_name: string, _argument: unknown) => ({ answer: {} })) };
-  const window = () => new StandInWindow({ webPreferences: {} });
   beforeEach(() => {
     host.answer.mockClear();
     errorBoxes.length = 0;
