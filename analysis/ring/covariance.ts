@@ -13,7 +13,11 @@ import type { Solution } from "./solve.ts";
 export function toModes(blocks: Blocks, solution: Solution, step_s: number): FittedMode[] {
   const blockStep = step_s * blocks.decimation;
   return solution.modes.map(({ omega, decay }, m) => {
-    const [gainRe, gainIm] = blockGain(-decay / blocks.decimation, omega / blocks.decimation, blocks.decimation);
+    const [gainRe, gainIm] = blockGain(
+      -decay / blocks.decimation,
+      omega / blocks.decimation,
+      blocks.decimation,
+    );
     const a = solution.linear[2 * m];
     const b = -solution.linear[2 * m + 1];
     const norm = gainRe * gainRe + gainIm * gainIm;

@@ -94,7 +94,9 @@ function slowRest(blocks: Blocks, solution: Solution): number {
 }
 
 function inOrder(solution: Solution): Solution {
-  const order = solution.modes.map((_, m) => m).sort((a, b) => solution.modes[a].omega - solution.modes[b].omega);
+  const order = solution.modes
+    .map((_, m) => m)
+    .sort((a, b) => solution.modes[a].omega - solution.modes[b].omega);
   const linear = solution.linear.slice();
   order.forEach((m, at) => {
     linear[2 * at] = solution.linear[2 * m];
@@ -118,7 +120,7 @@ function describe(
   const residual = residualBuffer(blocks.count);
   residualBlocks(blocks, solution, residual);
   const noise = options.noise ?? differenceNoise(samples, from, to, options.lsb ?? null);
-  const quantisation = ((options.lsb ?? 0) ** 2 / 12) / blocks.decimation;
+  const quantisation = (options.lsb ?? 0) ** 2 / 12 / blocks.decimation;
   const perBlock = Math.max(variance(blocks, solution), quantisation);
   const colours = solution.modes.map(({ omega }) => Math.sqrt(colour(residual, blocks.count, omega)));
   const size = 4 * modes.length;

@@ -41,7 +41,14 @@ export class Gram {
     this.matrix[column * this.columns + row] = value;
   }
 
-  private sums(blocks: Blocks, re: number, im: number, powers: number, outRe: Float64Array, outIm: Float64Array) {
+  private sums(
+    blocks: Blocks,
+    re: number,
+    im: number,
+    powers: number,
+    outRe: Float64Array,
+    outIm: Float64Array,
+  ) {
     outRe.fill(0);
     outIm.fill(0);
     const { segments } = blocks;

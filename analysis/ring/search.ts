@@ -46,9 +46,7 @@ export function variance(blocks: Blocks, solution: Solution): number {
 
 function fitNext(blocks: Blocks, known: Mode[], values: Float64Array, noise: number): Solution | null {
   if (blocks.used < 4 * known.length + 8) return null;
-  const lines = strongestLines(values, blocks.count, LINES_TRIED).filter(
-    (line) => line.energy > 8 * noise,
-  );
+  const lines = strongestLines(values, blocks.count, LINES_TRIED).filter((line) => line.energy > 8 * noise);
   if (lines.length === 0) return null;
   const fastest = Math.max(...lines.map((line) => line.omega), ...known.map((mode) => mode.omega));
   const coarse = coarser(blocks, fastest, COARSE_PER_CYCLE);
@@ -69,6 +67,8 @@ function earned(blocks: Blocks, before: Solution, after: Solution): boolean {
   residualBlocks(blocks, after, residual);
   const added = after.modes.at(-1)!;
   const excess = Math.max(1, colour(residual, blocks.count, added.omega));
-  const plausible = added.decay > -0.5 / blocks.count && added.omega > 2 * Math.PI * 0.6 * Math.max(added.decay / 4, 1 / blocks.count);
+  const plausible =
+    added.decay > -0.5 / blocks.count &&
+    added.omega > 2 * Math.PI * 0.6 * Math.max(added.decay / 4, 1 / blocks.count);
   return plausible && before.cost - after.cost > priceOfMode(blocks.used) * noise * excess;
 }

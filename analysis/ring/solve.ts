@@ -56,7 +56,8 @@ class Point {
     const width = gram.columns;
     for (let r = 0; r < linears; r++) {
       linear[r] = gram.data[this.column(r)];
-      for (let c = 0; c < linears; c++) normal[r * linears + c] = gram.matrix[this.column(r) * width + this.column(c)];
+      for (let c = 0; c < linears; c++)
+        normal[r * linears + c] = gram.matrix[this.column(r) * width + this.column(c)];
     }
     if (!factor(normal, linears)) return false;
     solveFactored(normal, linears, linear);

@@ -1,0 +1,165 @@
+/**
+ * Switch-offs on a voltage trace: the places where a quiet trace (the switch conducts) starts to swing
+ * at once. Later half-waves of a ring, beats and turn-on edges of a ringing node have no quiet before
+ * them or no swing after.
+ */
+import { differenceNoise } from "../ring/noise.ts";
+import { lineThrough, meanAndDeviation } from "../numeric/robust.ts";
+import type { Scale } from "./scale.ts";
+
+export interface Onset {
+  /** Instant by the edge itself, fractional sample number. */
+  at: number;
+  u: number;
+  /** Level just before, its slope per sample, its scatter. */
+  level: number;
+  slope: number;
+  scatter: number;
+  /** Largest excursion from the level within a period, with its sign. */
+  swing: number;
+  polarity: 1 | -1;
+}
+
+/** Values a period in the search. */
+const PER_PERIOD = 16;
+/** Quiet needed before, and swing looked for after, in values. */
+const QUIET = 8;
+const AHEAD = 10;
+/** The swing must exceed the unrest before it by this factor. */
+const CONTRAST = 4;
+/** Swings below this share of the record's largest are turn-on edges, bursts, pick-up. */
+const LEAST_SHARE = 0.1;
+
+export function findOnsets(samples: Float64Array, scale: Scale, lsb: number | null): Onset[] {
+  const width = Math.max(1, Math.round(scale.period / PER_PERIOD));
+  const values = thinned(samples, width);
+  const noise = differenceNoise(samples, 0, samples.length, lsb);
+  const floor = Math.max((4 * noise) / Math.sqrt(width), (lsb ?? 0) * 1.01, 1e-9 * scale.reach);
+  const onsets: Onset[] = [];
+  let best = -1;
+  let bestContrast = 0;
+  const close = () => {
+    if (best >= 0) {
+      const onset = refine(samples, best * width, width, scale, noise, lsb);
+      if (onset && (onsets.length === 0 || onset.at > onsets.at(-1)!.at + QUIET * width * 0.5))
+        onsets.push(onset);
+    }
+    best = -1;
+    bestContrast = 0;
+  };
+  for (let b = 3; b + 2 < values.length; b++) {
+    const contrast = contrastAt(values, b, floor, LEAST_SHARE * scale.reach);
+    if (contrast > CONTRAST) {
+      if (contrast > bestContrast) {
+        best = b;
+        bestContrast = contrast;
+      }
+    } else if (best >= 0 && b > best + QUIET / 2) close();
+  }
+  close();
+  return onsets;
+}
+
+function thinned(samples: Float64Array, width: number): Float64Array {
+  if (width === 1) return samples;
+  const count = Math.floor(samples.length / width);
+  const out = new Float64Array(count);
+  for (let b = 0; b < count; b++) {
+    let sum = 0;
+    for (let i = b * width; i < (b + 1) * width; i++) sum += samples[i];
+    out[b] = sum / width;
+  }
+  return out;
+}
+
+/** Swing over the next values in units of the range of those before; 0 where either is not there. */
+function contrastAt(values: Float64Array, b: number, floor: number, least: number): number {
+  const from = Math.max(0, b - QUIET);
+  let low = Infinity;
+  let high = -Infinity;
+  for (let k = from; k < b; k++) {
+    const y = values[k];
+    if (y < low) low = y;
+    if (y > high) high = y;
+  }
+  if (b - from < 3 || !(high >= low)) return 0;
+  const level = (high + low) / 2;
+  const to = Math.min(values.length, b + AHEAD);
+  let swing = 0;
+  for (let k = b; k < to; k++) swing = Math.max(swing, Math.abs(values[k] - level) || 0);
+  if (swing < least || swing < 2 * floor) return 0;
+  // The first value already on its way: the edge is here, not later.
+  if (Math.abs(values[b] - level) < 0.05 * swing && Math.abs(values[b + 1] - level) < 0.1 * swing) return 0;
+  return swing / Math.max(high - low, floor);
+}
+
+/** The edge on the raw samples: leaves the quiet level for good, extrapolated back to it. */
+function refine(
+  samples: Float64Array,
+  about: number,
+  width: number,
+  scale: Scale,
+  noise: number,
+  lsb: number | null,
+): Onset | null {
+  const from = Math.max(0, about - QUIET * width);
+  const quietTo = Math.max(from + 2, about - width);
+  const line = lineThrough(samples, from, quietTo);
+  const plain = meanAndDeviation(samples, from, quietTo);
+  if (plain.count === 0) return null;
+  const scatter = Math.max(line?.deviation ?? plain.deviation ?? 0, noise, 0) || 0;
+  const level = (i: number) =>
+    line && quietTo - from > 6 ? line.level + line.slope * (i - from) : plain.mean;
+  const end = Math.min(samples.length, about + Math.ceil(scale.period));
+  let swing = 0;
+  for (let i = about - width; i < end; i++) {
+    const d = samples[i] - plain.mean;
+    if (Math.abs(d) > Math.abs(swing)) swing = d;
+  }
+  if (swing === 0) return null;
+  const first = firstSwing(samples, about - 2 * width, end, plain.mean, swing);
+  const polarity = first >= 0 ? 1 : -1;
+  const size = Math.abs(first);
+  const least = Math.min(0.4 * size, Math.max(5 * scatter, 1.5 * (lsb ?? 0), 0.02 * size));
+  let leave = Math.max(0, about - 2 * width);
+  while (leave < end && !(polarity * (samples[leave] - level(leave)) > least)) leave++;
+  if (leave >= end) return null;
+  let high = leave;
+  while (high + 1 < end && polarity * (samples[high + 1] - level(high + 1)) < 0.4 * size) high++;
+  const at = high > leave + 1 ? crossing(samples, leave, high + 1, level) : between(samples, leave, level);
+  const u = high > leave + 1 ? Math.max(0.1, (scatter / size) * (high - leave)) : 0.29;
+  const bounded = Math.min(leave, Math.max(leave - Math.max(2, 0.1 * scale.period), at));
+  return { at: bounded, u, level: level(bounded), slope: line?.slope ?? 0, scatter, swing: first, polarity };
+}
+
+/** First excursion that reaches half the largest: the kick's own sign. */
+function firstSwing(samples: Float64Array, from: number, to: number, level: number, swing: number): number {
+  let peak = 0;
+  for (let i = Math.max(0, from); i < to; i++) {
+    const d = samples[i] - level;
+    if (
+      peak === 0
+        ? Math.abs(d) > 0.4 * Math.abs(swing)
+        : Math.sign(d) === Math.sign(peak) && Math.abs(d) > Math.abs(peak)
+    )
+      peak = d;
+    else if (peak !== 0 && Math.sign(d) !== Math.sign(peak)) break;
+  }
+  return peak || swing;
+}
+
+/** Straight line through the rise, back to the level. */
+function crossing(samples: Float64Array, from: number, to: number, level: (i: number) => number): number {
+  const rise = new Float64Array(to - from);
+  for (let i = from; i < to; i++) rise[i - from] = samples[i] - level(i);
+  const line = lineThrough(rise, 0, rise.length);
+  return line && line.slope !== 0 ? from - line.level / line.slope : from;
+}
+
+/** Too steep for a line: between the last quiet sample and the first on its way. */
+function between(samples: Float64Array, leave: number, level: (i: number) => number): number {
+  const first = samples[leave] - level(leave);
+  const second = samples[leave + 1] - level(leave + 1);
+  const slope = second - first;
+  return first * slope > 0 && Math.abs(first / slope) < 1 ? leave - first / slope : leave - 0.5;
+}

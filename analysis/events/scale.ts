@@ -1,0 +1,84 @@
+/**
+ * The time scale of what happens on a voltage trace: one ring period, roughly, from the spacing of
+ * its large half-waves. It sets the windows of the switch-off search, nothing more.
+ */
+import { medianOf } from "../numeric/robust.ts";
+
+export interface Scale {
+  /** Samples of one ring period, or of twice the kick's width where nothing rings. */
+  period: number;
+  /** Median level of the record. */
+  level: number;
+  /** Largest excursion from it. */
+  reach: number;
+}
+
+/** Share of the largest excursion at which a half-wave begins and ends. */
+const BEGIN = 0.3;
+const END = 0.1;
+/** Crossings closer than this many values are noise: smooth first. */
+const LEAST_VALUES = 6;
+
+/** Null for a trace without excursions (constant, empty). */
+export function scaleOf(samples: Float64Array): Scale | null {
+  const level = medianOf(samples, 0, samples.length, 16_384);
+  if (!Number.isFinite(level)) return null;
+  for (let width = 1; width <= samples.length / 16; width *= 2) {
+    const [low, high] = extremes(samples, width);
+    const reach = Math.max(high - level, level - low);
+    if (!(reach > 0)) return null;
+    const sign = high - level >= level - low ? 1 : -1;
+    const spacing = typicalSpacing(samples, width, level, sign, reach);
+    if (spacing !== null && spacing >= LEAST_VALUES) return { period: spacing * width, level, reach };
+  }
+  return null;
+}
+
+/** Mean of `width` samples from i; NaN samples make it NaN. */
+function meanFrom(samples: Float64Array, i: number, width: number): number {
+  if (width === 1) return samples[i];
+  let sum = 0;
+  for (let k = i; k < i + width; k++) sum += samples[k];
+  return sum / width;
+}
+
+function extremes(samples: Float64Array, width: number): [number, number] {
+  let low = Infinity;
+  let high = -Infinity;
+  for (let i = 0; i + width <= samples.length; i += width) {
+    const y = meanFrom(samples, i, width);
+    if (y < low && y > -Infinity) low = y;
+    if (y > high && y < Infinity) high = y;
+  }
+  return [low, high];
+}
+
+/** Median distance between the beginnings of neighbouring half-waves of one sign, in blocks of `width`. */
+function typicalSpacing(
+  samples: Float64Array,
+  width: number,
+  level: number,
+  sign: number,
+  reach: number,
+): number | null {
+  const spacings: number[] = [];
+  const widths: number[] = [];
+  let begun = -1;
+  let previous = -1;
+  let above = false;
+  for (let b = 0; (b + 1) * width <= samples.length; b++) {
+    const y = sign * (meanFrom(samples, b * width, width) - level);
+    if (!above && y > BEGIN * reach) {
+      above = true;
+      if (previous >= 0) spacings.push(b - previous);
+      begun = previous = b;
+    } else if (above && y < END * reach) {
+      above = false;
+      widths.push(b - begun);
+    }
+  }
+  if (widths.length === 0) return null;
+  const wide = medianOf(widths);
+  const ringing = spacings.filter((spacing) => spacing < 6 * wide);
+  return ringing.length > 0 ? medianOf(ringing) : 2.3 * wide;
+}

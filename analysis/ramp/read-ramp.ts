@@ -1,0 +1,142 @@
+/** The conduction before a switch-off: L, R, currents and energy from the current channel. */
+import type { Capture, Channel } from "../capture.ts";
+import type { ChannelMap } from "../evidence.ts";
+import type { SwitchOff } from "../events/event-format.ts";
+import type { Figure, RampReading } from "../reading-format.ts";
+import type { Setup } from "../setup/schema.ts";
+import { meanAndDeviation } from "../numeric/robust.ts";
+import { fitRamp, type RampFit } from "./exponential.ts";
+
+/** Points the fit uses; longer ramps are averaged down. */
+const MOST_POINTS = 1024;
+
+export interface Ramp {
+  reading: RampReading;
+  current_A: Figure;
+}
+
+const empty = (reason: string): Ramp => ({
+  reading: {
+    inductance_H: null,
+    resistance_ohm: null,
+    initialCurrent_A: null,
+    finalCurrent_A: null,
+    saturationCurrent_A: null,
+    timeConstant_s: null,
+    energy_J: null,
+    resistance20_ohm: null,
+    reason,
+  },
+  current_A: null,
+});
+
+/** Null without a current channel. */
+export function readRamp(capture: Capture, map: ChannelMap, off: SwitchOff, setup: Setup): Ramp | null {
+  if (map.current === null || capture.timebase.step_s === null) return null;
+  if (off.at === null) return null;
+  const channel = capture.channels[map.current];
+  const step = capture.timebase.step_s;
+  const guard = 2;
+  const from = Math.ceil((off.on ?? 0) + guard);
+  const to = Math.floor(off.at - guard);
+  if (to - from < 12) return empty("the conduction before the switch-off is too short to fit");
+  const width = Math.max(1, Math.ceil((to - from) / MOST_POINTS));
+  const values = blockMeans(channel, from, to, width);
+  if (!values) return empty("the current is clipped or missing during the conduction");
+  const begin = off.on ?? from;
+  const first_s = (from + (width - 1) / 2 - begin) * step;
+  const fit = fitRamp(values, first_s, step * width);
+  if (!fit) return empty("no current ramp to be fitted");
+  return describe(fit, (off.at - begin) * step, off.on !== null, driving_V(capture, map, off, setup), setup);
+}
+
+function blockMeans(channel: Channel, from: number, to: number, width: number): Float64Array | null {
+  const count = Math.floor((to - from) / width);
+  const values = new Float64Array(count);
+  for (let u = 0; u < channel.unusable.length; u += 2)
+    if (channel.unusable[u] < to && channel.unusable[u + 1] > from) return null;
+  for (let b = 0; b < count; b++) {
+    let sum = 0;
+    for (let i = from + b * width; i < from + (b + 1) * width; i++) sum += channel.samples[i];
+    values[b] = sum / width;
+  }
+  return values.every((value) => Number.isFinite(value)) ? values : null;
+}
+
+/** Voltage that drives the current through coil and resistances; null where the supply is not known. */
+function driving_V(capture: Capture, map: ChannelMap, off: SwitchOff, setup: Setup): number | null {
+  const measured =
+    map.supply === null || off.at === null
+      ? null
+      : meanAndDeviation(capture.channels[map.supply].samples, Math.ceil(off.on ?? 0), Math.floor(off.at))
+          .mean;
+  const supply = setup.supply_V ?? measured;
+  if (supply === null || !Number.isFinite(supply)) return null;
+  const node = map.switchNode === null ? null : off.levelOn;
+  return supply - (setup.switchOnVoltage_V ?? node ?? 0);
+}
+
+function describe(
+  fit: RampFit,
+  dwell_s: number,
+  startSeen: boolean,
+  drive_V: number | null,
+  setup: Setup,
+): Ramp {
+  const { reading } = empty("");
+  const { initial, slope, rate, covariance: c } = fit;
+  const x = rate * dwell_s;
+  const shape = Math.abs(x) < 1e-6 ? dwell_s : -Math.expm1(-x) / rate;
+  const byRate =
+    Math.abs(x) < 1e-3
+      ? (-slope * dwell_s * dwell_s) / 2
+      : slope * ((dwell_s * Math.exp(-x)) / rate - shape / rate);
+  const gradient = [1, shape, byRate];
+  let variance = 0;
+  for (let a = 0; a < 3; a++)
+    for (let b = 0; b < 3; b++) variance += gradient[a] * c[a * 3 + b] * gradient[b];
+  const final = { value: initial + slope * shape, u: Math.sqrt(Math.max(0, variance)) };
+  reading.finalCurrent_A = final;
+  reading.initialCurrent_A = startSeen ? { value: initial, u: Math.sqrt(c[0]) } : null;
+  const rateU = Math.sqrt(c[8]);
+  if (rate > 2 * rateU) reading.timeConstant_s = { value: 1 / rate, u: rateU / rate ** 2 };
+  reading.reason = null;
+  if (drive_V === null) {
+    reading.reason = "without the supply voltage only the time constant and the currents can be known";
+    return { reading, current_A: final };
+  }
+  const scale = slope + rate * initial;
+  const inductance = drive_V / scale;
+  const uScale = Math.sqrt(
+    c[4] + 2 * initial * c[5] + initial * initial * c[8] + 2 * rate * c[1] + rate * rate * c[0],
+  );
+  if (!(inductance * Math.sign(drive_V) > 0 || inductance > 0)) {
+    reading.reason = "the current does not rise as the stated supply would drive it";
+    return { reading, current_A: final };
+  }
+  reading.inductance_H = { value: inductance, u: (inductance * uScale) / Math.abs(scale) };
+  const resistance = rate * inductance;
+  if (rate > 2 * rateU) {
+    const relative = Math.hypot(rateU / rate - (initial * rateU) / scale, Math.sqrt(c[4]) / scale);
+    reading.resistance_ohm = { value: resistance, u: resistance * relative };
+    reading.resistance20_ohm = windingAt20(reading.resistance_ohm, setup);
+  } else
+    reading.reason = "the current is still straight: its resistance does not show in so short a conduction";
+  reading.energy_J = {
+    value: 0.5 * inductance * final.value ** 2,
+    u: Math.hypot(0.5 * reading.inductance_H.u * final.value ** 2, inductance * final.value * final.u),
+  };
+  return { reading, current_A: final };
+}
+
+/** Copper's temperature coefficient at 20 °C (IEC 60028). */
+export const COPPER_PER_K = 0.00393;
+
+/** Winding resistance at 20 °C: the loop less the stated external resistance. Null without the temperature. */
+export function windingAt20(loop: Figure, setup: Setup): Figure {
+  const temperature = setup.windingTemperature_C ?? null;
+  if (!loop || temperature === null) return null;
+  const winding = loop.value - (setup.externalResistance_ohm ?? 0);
+  const factor = 1 + COPPER_PER_K * (temperature - 20);
+  return winding > 0 && factor > 0 ? { value: winding / factor, u: loop.u / factor } : null;
+}

@@ -1,0 +1,51 @@
+/**
+ * The reading of one capture: switch-offs, ring, L–C–R, kick, ramp, and the evidence later stages need.
+ * Pure; never throws for what a capture holds: what cannot be read is null with its reason.
+ */
+import type { Capture, Note } from "./capture.ts";
+import { combinePulses } from "./coil/combine.ts";
+import type { CaptureEvidence } from "./evidence.ts";
+import { mapChannels } from "./events/channels.ts";
+import { findSwitchOffs } from "./events/switch-offs.ts";
+import { isPulse, readPulse, type Pulse, type PulseContext } from "./pulse.ts";
+import { combineRamps } from "./ramp/combine-ramps.ts";
+import { emptyReading } from "./reading-channels.ts";
+import { differenceNoise } from "./ring/noise.ts";
+import type { Setup } from "./setup/schema.ts";
+
+export function readCapture(capture: Capture, setup: Setup): CaptureEvidence {
+  const notes: Note[] = [...capture.notes];
+  const map = mapChannels(capture);
+  const reading = emptyReading(capture, notes);
+  const evidence: CaptureEvidence = {
+    reading,
+    pulses: [],
+    timebase: capture.timebase,
+    channels: capture.channels,
+    map,
+  };
+  const { step_s, stepUncertainty_s } = capture.timebase;
+  if (step_s === null || (map.ring === null && map.gate === null)) return evidence;
+  const channel = map.ring === null ? null : capture.channels[map.ring];
+  const events = findSwitchOffs(capture, map);
+  const context: PulseContext = {
+    capture,
+    step_s,
+    setup,
+    map,
+    period: events.period,
+    noise: channel ? differenceNoise(channel.samples, 0, channel.samples.length, channel.lsb) : 0,
+    timeRelative: stepUncertainty_s / step_s,
+  };
+  const pulses: Pulse[] = [];
+  for (const off of events.offs) {
+    const pulse = readPulse(context, off, pulses.length);
+    if (events.source !== "voltage" || isPulse(context, pulse)) pulses.push(pulse);
+  }
+  reading.pulses = pulses.map((pulse) => pulse.reading);
+  evidence.pulses = pulses.map((pulse) => pulse.evidence);
+  reading.combined = combinePulses(reading.pulses);
+  reading.ramp = combineRamps(reading.pulses);
+  reading.run.pulses = pulses.length;
+  return evidence;
+}

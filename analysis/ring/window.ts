@@ -1,0 +1,178 @@
+/**
+ * The window a ring is fitted on, chosen by what is in it: from the switch-off (or the first sample at
+ * which the ring is free) to the next edge, the noise floor, or where one ring stops explaining the
+ * data. A short burst inside it is left out instead.
+ */
+import type { RingFit } from "./fit-format.ts";
+import { fitRing, type FitOptions } from "./fit.ts";
+import { noiseLimit, residualProfile } from "./residuals.ts";
+
+export interface WindowedRing {
+  fit: RingFit;
+  /** Residual within 1.5 × noise, overall and in every stretch that counts. */
+  clean: boolean;
+  courseChanges: boolean;
+  /** Stretches left out as bursts, pairs of sample numbers, beside the unusable ones. */
+  masked: number[];
+}
+
+export interface Place {
+  samples: Float64Array;
+  step_s: number;
+  /** Free interval. */
+  from: number;
+  to: number;
+  /** Rough period in samples. */
+  period: number;
+  noise: number;
+  lsb: number | null;
+  unusable: ArrayLike<number>;
+}
+
+/** e-foldings after which a ring says nothing more about itself (0.3 % of the information is left). */
+const FOLDINGS = 5;
+const CLEAN = 1.5;
+const MOST_MASKS = 4;
+
+export function windowedRing(place: Place): WindowedRing | null {
+  const whole = fitTrimmed(place, place.from, place.to);
+  if (whole && isClean(place, whole)) return { fit: whole, clean: true, courseChanges: false, masked: [] };
+  const patched = withoutBursts(place, whole);
+  if (patched) return patched;
+  const late = lateStart(place, whole);
+  const early = earlyEnd(place);
+  const reach = (fit: RingFit | null) => (fit ? informative(fit) : 0);
+  if (late && reach(late) >= reach(early))
+    return { fit: late, clean: true, courseChanges: false, masked: [] };
+  if (early)
+    return { fit: early, clean: true, courseChanges: early.to < place.to - place.period, masked: [] };
+  return whole ? { fit: whole, clean: false, courseChanges: false, masked: [] } : null;
+}
+
+/** Cycles in the window, weighed by the amplitude they begin with. */
+const informative = (fit: RingFit) =>
+  Math.hypot(fit.modes[0].cosine, fit.modes[0].sine) ** 2 * (fit.to - fit.from);
+
+const options = (place: Place, extra: FitOptions = {}): FitOptions => ({
+  unusable: place.unusable,
+  lsb: place.lsb,
+  noise: place.noise,
+  ...extra,
+});
+
+/** Fits [from, to); where the slowest mode is gone long before the end, once more on the part it lives in. */
+function fitTrimmed(place: Place, from: number, to: number, extra: FitOptions = {}): RingFit | null {
+  const fit = fitRing(place.samples, from, to, place.step_s, options(place, extra));
+  if (!fit) return null;
+  const slowest = Math.min(...fit.modes.map((mode) => mode.decay_per_s));
+  const end = Math.ceil(from + Math.max(FOLDINGS / (slowest * place.step_s), 3 * place.period));
+  if (!(slowest > 0) || end > from + 0.9 * (to - from)) return fit;
+  return fitRing(place.samples, from, end, place.step_s, options(place, extra)) ?? fit;
+}
+
+function isClean(place: Place, fit: RingFit, unusable = place.unusable): boolean {
+  if (!(fit.residual <= CLEAN * noiseOf(place))) return false;
+  const length = stretch(place, fit);
+  const { rms } = residualProfile(place.samples, fit, fit.from, fit.to, length, unusable);
+  const limit = CLEAN * noiseLimit(noiseOf(place), length);
+  return rms.every((value) => !(value > limit));
+}
+
+const noiseOf = (place: Place) => Math.max(place.noise, (place.lsb ?? 0) / Math.sqrt(12));
+const stretch = (place: Place, fit: RingFit) =>
+  Math.max(4, Math.round(Math.min(place.period, (fit.to - fit.from) / 8) / 4));
+
+/** Leaves out isolated stretches of large residual, a few at a time. */
+function withoutBursts(place: Place, whole: RingFit | null): WindowedRing | null {
+  let fit = whole;
+  const masked: number[] = [];
+  for (let round = 0; fit && round < MOST_MASKS; round++) {
+    const length = stretch(place, fit);
+    const unusable = merged(place.unusable, masked);
+    const { rms } = residualProfile(place.samples, fit, fit.from, fit.to, length, unusable);
+    const typical = Math.max(noiseOf(place), Float64Array.from(rms).sort()[rms.length >> 1] || 0);
+    const limit = CLEAN * noiseLimit(typical, length);
+    let share = 0;
+    rms.forEach((value, s) => {
+      if (!(value > limit)) return;
+      share++;
+      masked.push(fit!.from + (s - 1) * length, fit!.from + (s + 2) * length);
+    });
+    if (share === 0 || share > 0.15 * rms.length) return null;
+    const patched = merged(place.unusable, masked);
+    fit = fitRing(place.samples, fit.from, fit.to, place.step_s, options(place, { unusable: patched }));
+    if (fit && isClean(place, fit, patched)) return { fit, clean: true, courseChanges: false, masked };
+  }
+  return null;
+}
+
+function merged(a: ArrayLike<number>, b: number[]): number[] {
+  const pairs: [number, number][] = [];
+  for (let k = 0; k + 1 < a.length; k += 2) pairs.push([a[k], a[k + 1]]);
+  for (let k = 0; k + 1 < b.length; k += 2) pairs.push([b[k], b[k + 1]]);
+  pairs.sort((x, y) => x[0] - y[0]);
+  const out: number[] = [];
+  for (const [from, to] of pairs)
+    if (out.length > 0 && from <= out.at(-1)!) out[out.length - 1] = Math.max(out.at(-1)!, to);
+    else out.push(from, to);
+  return out;
+}
+
+/** The earliest start from which one ring explains the rest (a clamp or switch transient before it). */
+function lateStart(place: Place, whole: RingFit | null): RingFit | null {
+  const to = whole?.to ?? place.to;
+  const start = whole
+    ? whole.modes.map(({ frequency_Hz, decay_per_s }) => ({ frequency_Hz, decay_per_s }))
+    : undefined;
+  let bad = place.from;
+  let good: RingFit | null = null;
+  for (const cycles of [0.05, 0.1, 0.25, 0.5, 1, 2, 3, 5, 8, 12, 20]) {
+    const from = Math.round(place.from + cycles * place.period);
+    if (to - from < 3 * place.period) break;
+    const fit = fitTrimmed(place, from, to, cycles < 0.3 && start ? { start } : {});
+    if (fit && isClean(place, fit)) {
+      good = fit;
+      break;
+    }
+    bad = from;
+  }
+  if (!good) return null;
+  for (let round = 0; round < 3 && good.from - bad > 1; round++) {
+    const middle = (bad + good.from) >> 1;
+    const fit = fitTrimmed(place, middle, to);
+    if (fit && isClean(place, fit)) good = fit;
+    else bad = middle;
+  }
+  return good;
+}
+
+/** The longest beginning that one ring explains: it ends where the course changes. */
+function earlyEnd(place: Place): RingFit | null {
+  let good: RingFit | null = null;
+  let bad = place.to;
+  for (let cycles = 2.5; ; cycles *= 1.5) {
+    const to = Math.min(place.to, Math.round(place.from + cycles * place.period));
+    const fit = fitRing(
+      place.samples,
+      place.from,
+      to,
+      place.step_s,
+      options(place, { mostModes: cycles < 5 ? 1 : 2 }),
+    );
+    if (fit && isClean(place, fit)) good = fit;
+    else if (good) {
+      bad = to;
+      break;
+    }
+    if (to === place.to || cycles > 400) break;
+    if (!good && cycles > 5) return null;
+  }
+  if (!good) return null;
+  while (bad - good.to > Math.max(2, place.period / 16)) {
+    const middle = (bad + good.to) >> 1;
+    const fit = fitRing(place.samples, place.from, middle, place.step_s, options(place));
+    if (fit && isClean(place, fit)) good = fit;
+    else bad = middle;
+  }
+  return good;
+}
