@@ -187,7 +187,7 @@ function nodePeak({ kick, fit }: PulseEvidence, map: ChannelMap, setup: Setup): 
 export function isPulse(context: PulseContext, { reading, evidence }: Pulse): boolean {
   if (reading.ring && reading.ring.quality !== "refused") {
     const main = evidence.fit!.modes.reduce((a, b) => (amplitude(b) > amplitude(a) ? b : a));
-    return amplitude(main) > 3 * context.noise;
+    if (amplitude(main) > 3 * context.noise) return true;
   }
   const { kick, levelOn } = evidence;
   if (!kick || levelOn === null || context.map.ring === null) return false;

@@ -3,7 +3,6 @@
  * at once. Later half-waves of a ring, beats and turn-on edges of a ringing node have no quiet before
  * them or no swing after.
  */
-import { differenceNoise } from "../ring/noise.ts";
 import { lineThrough, meanAndDeviation } from "../numeric/robust.ts";
 import type { Scale } from "./scale.ts";
 
@@ -30,10 +29,14 @@ const CONTRAST = 4;
 /** Swings below this share of the record's largest are turn-on edges, bursts, pick-up. */
 const LEAST_SHARE = 0.1;
 
-export function findOnsets(samples: Float64Array, scale: Scale, lsb: number | null): Onset[] {
+export function findOnsets(
+  samples: Float64Array,
+  scale: Scale,
+  noise: number,
+  lsb: number | null,
+): Onset[] {
   const width = Math.max(1, Math.round(scale.period / PER_PERIOD));
   const values = thinned(samples, width);
-  const noise = differenceNoise(samples, 0, samples.length, lsb);
   const floor = Math.max((4 * noise) / Math.sqrt(width), (lsb ?? 0) * 1.01, 1e-9 * scale.reach);
   const onsets: Onset[] = [];
   let best = -1;

@@ -1,5 +1,8 @@
 /** Switch-offs from a voltage trace: onsets of the kick's own direction out of the conduction level. */
 import { medianOf } from "../numeric/robust.ts";
+import { makeBlocks } from "../ring/blocks.ts";
+import { differenceNoise } from "../ring/noise.ts";
+import { strongestLines } from "../ring/start.ts";
 import { conductionStart } from "./conduction.ts";
 import type { SwitchOff } from "./event-format.ts";
 import { findOnsets, type Onset } from "./onsets.ts";
@@ -7,14 +10,24 @@ import { scaleOf } from "./scale.ts";
 
 /** Onsets against the kick's direction must be this large against it to be pulses of their own. */
 const OPPOSITE_SHARE = 0.6;
+/** Rough periods the ring's own is looked for in. */
+const LOOKED_PERIODS = 200;
+/** Conduction levels of one record agree within this share of the largest swing. */
+const LEVEL_SHARE = 0.05;
 
 export function voltageSwitchOffs(
   samples: Float64Array,
   lsb: number | null,
 ): { offs: SwitchOff[]; period: number } {
-  const scale = scaleOf(samples);
-  if (!scale) return { offs: [], period: 0 };
-  const onsets = outOfConduction(findOnsets(samples, scale, lsb), lsb);
+  const rough = scaleOf(samples);
+  if (!rough) return { offs: [], period: 0 };
+  const noise = differenceNoise(samples, 0, samples.length, lsb);
+  const first = findOnsets(samples, rough, noise, lsb);
+  // Arcs and a fast second mode make the spacing of half-waves too short: the ring itself tells better.
+  const period = ringPeriod(samples, first, rough.period);
+  const scale = { ...rough, period };
+  const longer = period > 1.3 * rough.period;
+  const onsets = outOfConduction(longer ? findOnsets(samples, scale, noise, lsb) : first, noise, lsb);
   const width = Math.max(2, Math.round(scale.period / 8));
   const offs: SwitchOff[] = onsets.map((onset, k) => {
     const previous = k > 0 ? onsets[k - 1].at : 0;
@@ -67,17 +80,31 @@ function freeEnd(
   return stepped ? Math.floor(start) : samples.length;
 }
 
-function outOfConduction(onsets: Onset[], lsb: number | null): Onset[] {
+/** Standing out most from the quiet before it. */
+const sharpness = (onset: Onset) => Math.abs(onset.swing) / onset.scatter;
+
+/** Period of the strongest oscillation after the sharpest onset; `rough` without one. */
+function ringPeriod(samples: Float64Array, onsets: Onset[], rough: number): number {
+  if (onsets.length === 0) return rough;
+  const anchor = onsets.reduce((a, b) => (sharpness(b) > sharpness(a) ? b : a));
+  const next = onsets.find((onset) => onset.at > anchor.at && sharpness(onset) > 0.4 * sharpness(anchor));
+  const from = Math.ceil(anchor.at);
+  const to = Math.floor(Math.min(next?.at ?? samples.length, samples.length, from + LOOKED_PERIODS * rough));
+  const width = Math.max(1, Math.floor(rough / 16));
+  const blocks = makeBlocks(samples, from, to, [], width);
+  const [line] = strongestLines(blocks.values, blocks.count, 1, 1.5);
+  return line ? ((2 * Math.PI) / line.omega) * width : rough;
+}
+
+function outOfConduction(onsets: Onset[], noise: number, lsb: number | null): Onset[] {
   if (onsets.length === 0) return onsets;
-  const largest = onsets.reduce((a, b) => (Math.abs(b.swing) > Math.abs(a.swing) ? b : a));
-  const reach = Math.abs(largest.swing);
-  const own = onsets.filter(
-    (onset) => onset.polarity === largest.polarity || Math.abs(onset.swing) > OPPOSITE_SHARE * reach,
+  const flat = onsets.filter((onset) => onset.scatter < 2 * noise + 0.02 * Math.abs(onset.swing));
+  const anchor = flat.reduce((a, b) => (sharpness(b) > sharpness(a) ? b : a), flat[0] ?? onsets[0]);
+  const reach = Math.max(...flat.map((onset) => Math.abs(onset.swing)));
+  const own = flat.filter(
+    (onset) => onset.polarity === anchor.polarity || Math.abs(onset.swing) > OPPOSITE_SHARE * reach,
   );
-  const level = medianOf(
-    own.filter((onset) => Math.abs(onset.swing) > 0.5 * reach).map((onset) => onset.level),
-  );
-  return own.filter(
-    (onset) => Math.abs(onset.level - level) < Math.max(6 * onset.scatter, 2 * (lsb ?? 0), 0.1 * reach),
-  );
+  const level = medianOf(own.filter((onset) => Math.abs(onset.swing) > 0.5 * reach).map((onset) => onset.level));
+  const tolerance = Math.max(6 * noise, 2 * (lsb ?? 0), LEVEL_SHARE * reach);
+  return own.filter((onset) => Math.abs(onset.level - level) < tolerance);
 }
