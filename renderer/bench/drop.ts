@@ -1,0 +1,61 @@
+/** Dropped or chosen files and folders → sources the host can open, folders kept together. */
+import type { Argument, Bench } from "../../app/bridge.ts";
+
+type Source = Argument<"open">["sources"][number];
+
+export interface Named {
+  /** With its folders: "bench-run/pulse-01.csv". */
+  name: string;
+  file: File;
+}
+
+/** Entries must be taken before the first await: the browser empties the list after the event. */
+export async function filesOfDrop(items: DataTransferItemList): Promise<Named[]> {
+  const entries = Array.from(items, (item) => item.webkitGetAsEntry()).filter((entry) => entry !== null);
+  const found = await Promise.all(entries.map((entry) => walk(entry, "")));
+  return found.flat();
+}
+
+async function walk(entry: FileSystemEntry, folder: string): Promise<Named[]> {
+  const name = folder + entry.name;
+  if (entry.isFile) {
+    const file = await new Promise<File>((done, failed) => (entry as FileSystemFileEntry).file(done, failed));
+    return [{ name, file }];
+  }
+  const children = await readAll((entry as FileSystemDirectoryEntry).createReader());
+  const found = await Promise.all(children.map((child) => walk(child, `${name}/`)));
+  return found.flat();
+}
+
+/** A reader hands out at most 100 entries at a time. */
+async function readAll(reader: FileSystemDirectoryReader): Promise<FileSystemEntry[]> {
+  const all: FileSystemEntry[] = [];
+  for (;;) {
+    const some = await new Promise<FileSystemEntry[]>((done, failed) => reader.readEntries(done, failed));
+    if (some.length === 0) return all;
+    all.push(...some);
+  }
+}
+
+/** Sidecars travel too, the host finds them beside their captures; only captures are opened. */
+export async function sourcesOf(
+  bench: Bench,
+  files: Named[],
+  onSent: (sent: number) => void,
+): Promise<Source[]> {
+  const pathOf = window.ringbook?.pathOf;
+  const sources: Source[] = [];
+  const ordered = files.toSorted((a, b) => Number(isSidecar(b.name)) - Number(isSidecar(a.name)));
+  for (const [at, { name, file }] of ordered.entries()) {
+    if (pathOf) sources.push({ path: pathOf(file) });
+    else {
+      const bytes = new Uint8Array(await file.arrayBuffer());
+      const kept = await bench.call("addFile", { name, bytes });
+      if (!isSidecar(name)) sources.push(kept);
+    }
+    onSent(at + 1);
+  }
+  return sources;
+}
+
+const isSidecar = (name: string) => name.endsWith(".json");

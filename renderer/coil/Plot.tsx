@@ -1,0 +1,111 @@
+/** A curve to look into closely: the plotting library is fetched only here, after the page is drawn. */
+import type { Config, Data, Layout, PlotlyHTMLElement } from "plotly.js-dist-min";
+import { useEffect, useRef, useState } from "react";
+
+interface Props {
+  data: (ink: Ink) => Data[];
+  x: string;
+  y: string;
+  label: string;
+  xLog?: boolean;
+  height?: number;
+}
+
+/** The sheet's colours by role, as they are on this paper. */
+export interface Ink {
+  ink: string;
+  faint: string;
+  rule: string;
+  fit: string;
+  spark: string;
+  warning: string;
+}
+
+function inkOfPage(): Ink {
+  const style = getComputedStyle(document.documentElement);
+  const of = (name: string) => style.getPropertyValue(`--${name}`).trim();
+  return {
+    ink: of("ink"),
+    faint: of("faint"),
+    rule: of("rule"),
+    fit: of("fit"),
+    spark: of("spark"),
+    warning: of("warning"),
+  };
+}
+
+const config: Partial<Config> = {
+  displayModeBar: false,
+  responsive: true,
+  doubleClick: "reset",
+  scrollZoom: false,
+};
+
+function layoutOf({ x, y, xLog, height = 260 }: Props, { ink, faint, rule }: Ink): Partial<Layout> {
+  const axis = {
+    color: faint,
+    gridcolor: rule,
+    griddash: "dot" as const,
+    zeroline: false,
+    exponentformat: "SI" as const,
+    automargin: true,
+    linecolor: rule,
+  };
+  return {
+    height,
+    margin: { l: 70, r: 10, t: 8, b: 46 },
+    paper_bgcolor: "rgba(0,0,0,0)",
+    plot_bgcolor: "rgba(0,0,0,0)",
+    font: { family: getComputedStyle(document.body).fontFamily, size: 13, color: ink },
+    showlegend: false,
+    hovermode: "closest",
+    dragmode: "zoom",
+    xaxis: { ...axis, title: { text: x }, type: xLog ? "log" : "linear" },
+    yaxis: { ...axis, title: { text: y } },
+  };
+}
+
+export function Plot(props: Props) {
+  const box = useRef<HTMLDivElement>(null);
+  const [problem, setProblem] = useState<string | null>(null);
+  useEffect(() => {
+    const element = box.current;
+    if (!element) return undefined;
+    let plotly: typeof import("plotly.js-dist-min") | null = null;
+    let wanted = true;
+    const draw = () => {
+      const ink = inkOfPage();
+      return plotly?.react(
+        element as unknown as PlotlyHTMLElement,
+        props.data(ink),
+        layoutOf(props, ink),
+        config,
+      );
+    };
+    import("plotly.js-dist-min").then(
+      (module) => {
+        if (!wanted) return;
+        plotly = "default" in module ? (module.default as unknown as typeof module) : module;
+        void draw();
+      },
+      () => setProblem("The curve could not be drawn; the table holds its figures."),
+    );
+    const paper = new MutationObserver(() => void draw());
+    paper.observe(document.documentElement, { attributeFilter: ["data-paper"] });
+    return () => {
+      wanted = false;
+      paper.disconnect();
+      plotly?.purge(element);
+    };
+  }, [props]);
+  if (problem) return <p className="quiet">{problem}</p>;
+  return (
+    <div
+      ref={box}
+      className="plot"
+      role="img"
+      aria-label={props.label}
+      style={{ minHeight: props.height ?? 260 }}
+    />
+  );
+}

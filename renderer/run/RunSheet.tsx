@@ -1,0 +1,142 @@
+/** The run at a glance: a line of handwriting, a sentence, what needs attention, its course. */
+import { useCallback, useMemo, useState } from "react";
+import type { PulseRow, RunDetail } from "../../app/bridge.ts";
+import { finalVerdict } from "../draw/glyph.ts";
+import { figureText, percent, plain } from "../format/figure.ts";
+import { countsSentence, dayText, verdictWord } from "../format/words.ts";
+import { CopyButton } from "../shell/CopyButton.tsx";
+import { SheetHead } from "../shell/SheetHead.tsx";
+import { Failure, Waiting } from "../shell/States.tsx";
+import { PictureButtons } from "../shell/PictureButtons.tsx";
+import { SetupCard } from "../setup/SetupCard.tsx";
+import { useAnswer, useDesk } from "../state/bench.tsx";
+import { useKeys } from "../state/keys.ts";
+import { go, hrefOf } from "../state/route.ts";
+import { Attention } from "./Attention.tsx";
+import { Captures } from "./Captures.tsx";
+import { Exports } from "./Exports.tsx";
+import { Line } from "./Line.tsx";
+import { RunChart } from "./RunChart.tsx";
+import { usePulses } from "./usePulses.ts";
+
+export function RunSheet({ run }: { run: number }) {
+  const desk = useDesk();
+  const asked = useAnswer("run", { run }, desk.runs[run] ?? 0);
+  const pulses = usePulses(run);
+  const [marked, setMarked] = useState(-1);
+  const { rows } = pulses;
+
+  const open = useCallback(
+    (row: PulseRow) => go({ view: "pulse", run, capture: row.capture, pulse: row.pulse }),
+    [run],
+  );
+  const step = (by: number) => setMarked((old) => Math.min(Math.max(old + by, 0), rows.length - 1));
+  const toNext = (wanted: (row: PulseRow) => boolean) => {
+    const next = rows.findIndex((row, at) => at > marked && wanted(row));
+    if (next >= 0) setMarked(next);
+  };
+  useKeys("run", [
+    { key: "arrowright", does: "mark the next pulse", act: () => step(1) },
+    { key: "arrowleft", does: "mark the pulse before", act: () => step(-1) },
+    {
+      key: "enter",
+      does: "open the marked pulse",
+      act: () => rows[Math.max(marked, 0)] && open(rows[Math.max(marked, 0)]),
+    },
+    {
+      key: "u",
+      does: "mark the next unclear pulse",
+      act: () => toNext((row) => finalVerdict(row) === "unclear"),
+    },
+    {
+      key: "m",
+      does: "mark the next pulse without a spark",
+      act: () => toNext((row) => finalVerdict(row) === "no-spark"),
+    },
+    { key: "arrowup", does: "to the book’s contents", act: () => go({ view: "book" }) },
+  ]);
+
+  const detail = asked.answer;
+  const expected = detail?.setup.expected ?? null;
+  const sentence = useMemo(() => (detail ? countsSentence(detail.counts) : ""), [detail]);
+  if (asked.error) return <Failure text={asked.error} />;
+  if (!detail) return <Waiting />;
+  const { combined } = detail;
+  return (
+    <article>
+      <SheetHead
+        title={detail.name}
+        plainTitle={detail.name}
+        beside={
+          <>
+            {detail.coil && <a href={hrefOf({ view: "coil", coil: detail.coil })}>{detail.coil}</a>}
+            {detail.taken && ` · ${dayText(detail.taken)}`}
+          </>
+        }
+        page={`page ${run}`}
+      />
+      <Line {...{ rows, expected, current: marked }} onOpen={open} onMark={setMarked} />
+      <p className="legend quiet" aria-hidden="true">
+        {rows[marked]
+          ? marginOf(rows[marked], expected)
+          : "lozenge: spark · circle: none · question mark: unclear · underlined: your own verdict"}
+      </p>
+      <p className="sentence">
+        {sentence}{" "}
+        <CopyButton
+          keyName="f"
+          does="copy the counts and figures"
+          text={() => summary(detail.name, sentence, combined)}
+        />
+      </p>
+      <p className="combined">
+        {combinedParts(combined).map(([name, text]) => (
+          <span key={name}>
+            {name} <span className="tabular">{text}</span>
+          </span>
+        ))}
+      </p>
+      <Attention detail={detail} />
+      <RunChart
+        rows={rows}
+        expected={expected}
+        marked={marked}
+        rating_V={detail.setup.switchRating_V ?? null}
+        onOpen={open}
+      />
+      <PictureButtons of=".run-chart svg" name={detail.name} />
+      <SetupCard
+        run={detail}
+        capture={detail.captureRows.find((row) => row.error === null)?.capture ?? null}
+        reading={null}
+      />
+      <Captures detail={detail} rows={rows} />
+      <Exports run={run} />
+    </article>
+  );
+}
+
+type Combined = RunDetail["combined"];
+
+function combinedParts(combined: Combined) {
+  return [
+    ["L", figureText(combined.inductance_H, "H")],
+    ["C", figureText(combined.capacitance_F, "F")],
+    ["R", figureText(combined.resistance_ohm, "Ω")],
+    ["Q", figureText(combined.q, "")],
+  ];
+}
+
+const summary = (name: string, sentence: string, combined: Combined) =>
+  [name, sentence, ...combinedParts(combined).map((pair) => pair.join("\t"))].join("\n");
+
+function marginOf(row: PulseRow, expected: string | null): string {
+  const parts = [
+    `Pulse ${row.number}: ${verdictWord(finalVerdict(row), expected)}${row.ruled ? " (your verdict)" : ""}`,
+    row.probability === null ? "" : `a spark with ${percent(row.probability)}`,
+    row.peak_V === null ? "" : `kick ${plain(row.peak_V, "V")}`,
+    row.frequency_Hz ? `ring ${figureText(row.frequency_Hz, "Hz")}` : "",
+    row.quality && row.quality !== "good" ? `fit ${row.quality}` : "",
+  ];
+  return parts.filter(Boolean).join(" · ");
+}

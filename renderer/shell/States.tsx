@@ -1,0 +1,20 @@
+/** What a sheet shows before its answer is there, and when none comes. */
+import { hrefOf } from "../state/route.ts";
+
+export const Waiting = () => (
+  <p className="quiet" role="status">
+    Turning the page …
+  </p>
+);
+
+export function Failure({ text, run }: { text: string; run?: number }) {
+  return (
+    <div className="failure" role="alert">
+      <p>{text}</p>
+      <p>
+        {run !== undefined && <a href={hrefOf({ view: "run", run })}>Back to the run</a>}{" "}
+        <a href={hrefOf({ view: "book" })}>To the book’s contents</a>
+      </p>
+    </div>
+  );
+}
