@@ -10,23 +10,22 @@ export function conductionStart(
   off: number,
   back: number,
   level: number,
-  slope: number,
   tolerance: number,
   width: number,
 ): number | null {
   let at = Math.floor(off);
+  // The drop across the switch follows the current: each step back is compared with the one after it.
+  let expected = level;
   while (at > back) {
     const from = Math.max(back, at - width);
     const { mean, count } = meanAndDeviation(samples, from, at);
-    const expected = level - slope * (off - (from + at) / 2);
-    // A straight line is trusted a little way only: beyond that either the line or the level will do.
-    const near = Math.abs(mean - expected) < tolerance || Math.abs(mean - level) < tolerance;
-    if (count > 0 && !near) break;
+    if (count > 0 && Math.abs(mean - expected) > tolerance) break;
+    if (count > 0) expected = mean;
     at = from;
   }
   if (at <= back) return back;
   if (off - at < width) return null;
   for (let i = at; i > at - width && i > back; i--)
-    if (Math.abs(samples[i] - level) > 2 * tolerance) return i + 0.5;
+    if (Math.abs(samples[i] - expected) > 2 * tolerance) return i + 0.5;
   return at;
 }

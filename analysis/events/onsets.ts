@@ -29,12 +29,7 @@ const CONTRAST = 4;
 /** Swings below this share of the record's largest are turn-on edges, bursts, pick-up. */
 const LEAST_SHARE = 0.1;
 
-export function findOnsets(
-  samples: Float64Array,
-  scale: Scale,
-  noise: number,
-  lsb: number | null,
-): Onset[] {
+export function findOnsets(samples: Float64Array, scale: Scale, noise: number, lsb: number | null): Onset[] {
   const width = Math.max(1, Math.round(scale.period / PER_PERIOD));
   const values = thinned(samples, width);
   const floor = Math.max((4 * noise) / Math.sqrt(width), (lsb ?? 0) * 1.01, 1e-9 * scale.reach);

@@ -33,7 +33,7 @@ export function voltageSwitchOffs(
     const previous = k > 0 ? onsets[k - 1].at : 0;
     const back = k > 0 ? Math.ceil(previous + scale.period / 4) : 0;
     const tolerance = toleranceOf(onset, lsb, width);
-    const start = conductionStart(samples, onset.at, back, onset.level, onset.slope, tolerance, width);
+    const start = conductionStart(samples, onset.at, back, onset.level, tolerance, width);
     return {
       at: onset.at,
       u: onset.u,
@@ -49,7 +49,7 @@ export function voltageSwitchOffs(
 }
 
 const toleranceOf = (onset: Onset, lsb: number | null, width: number) =>
-  Math.max((5 * onset.scatter) / Math.sqrt(width), 0.6 * (lsb ?? 0), 1e-3 * Math.abs(onset.swing));
+  Math.max((5 * onset.scatter) / Math.sqrt(width), 1.1 * (lsb ?? 0), 2e-3 * Math.abs(onset.swing));
 
 /** Next switching edge: the next pulse's conduction, or a conduction that runs to the record's end. */
 function freeEnd(
@@ -69,7 +69,6 @@ function freeEnd(
     samples.length,
     off,
     onset.level,
-    0,
     toleranceOf(onset, lsb, width),
     width,
   );
@@ -104,7 +103,9 @@ function outOfConduction(onsets: Onset[], noise: number, lsb: number | null): On
   const own = flat.filter(
     (onset) => onset.polarity === anchor.polarity || Math.abs(onset.swing) > OPPOSITE_SHARE * reach,
   );
-  const level = medianOf(own.filter((onset) => Math.abs(onset.swing) > 0.5 * reach).map((onset) => onset.level));
+  const level = medianOf(
+    own.filter((onset) => Math.abs(onset.swing) > 0.5 * reach).map((onset) => onset.level),
+  );
   const tolerance = Math.max(6 * noise, 2 * (lsb ?? 0), LEVEL_SHARE * reach);
   return own.filter((onset) => Math.abs(onset.level - level) < tolerance);
 }
