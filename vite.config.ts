@@ -15,6 +15,7 @@ const external = [
 const nodeEntries = {
   cli: "app/cli.ts",
   worker: "app/host/worker.ts",
+  "parse-worker": "app/host/reading/parse-worker.ts",
   start: "app/start.ts",
   main: "app/desktop/main.ts",
 };

@@ -1,0 +1,97 @@
+/** Layout and columns → captures: one a record, each on its own time base. */
+import type { Capture, Note } from "../capture.ts";
+import type { Setup } from "../setup/schema.ts";
+import { acquisitionOf } from "./acquisition.ts";
+import type { AxisGroup } from "./axes.ts";
+import { buildChannel, type RawChannel } from "./channel.ts";
+import type { Columns } from "./columns.ts";
+import { envelopeChannels } from "./envelope.ts";
+import type { Layout } from "./layout.ts";
+import { damageNotes } from "./damage.ts";
+import { guessRoles } from "./roles.ts";
+import { shotChannels, wideNote } from "./wide.ts";
+import { timeBaseOf, type RecordTime } from "./time-base.ts";
+import { axisSpans, stretchOf } from "./axis-spans.ts";
+
+export function assemble(layout: Layout, columns: Columns, setup: Setup): Capture[] {
+  const shared: Note[] = damageNotes(layout, columns);
+  const captures: Capture[] = [];
+  let position = 0;
+  for (const group of mergeEqualAxes(layout.axes.groups, columns)) {
+    const raw = group.values.map((column): RawChannel => {
+      const name = layout.names.get(column) ?? { name: "", spelled: null, unit: null };
+      return {
+        position: position++,
+        name,
+        values: columns.column(column),
+        tally: columns.tallies.get(column)!,
+        symbolic: layout.block.symbolic.includes(column),
+        column,
+      };
+    });
+    const wide = wideNote(layout, raw, setup);
+    for (const time of axisSpans(layout, columns, group))
+      for (const channels of shotChannels(raw, setup, wide !== null))
+        captures.push(
+          captureOf({ layout, time, channels, setup, notes: [...shared, ...(wide ? [wide] : [])] }),
+        );
+  }
+  captures.forEach((capture, index) => {
+    capture.record = { index, count: captures.length, time: segmentTime(layout, index, captures.length) };
+  });
+  return captures;
+}
+
+interface CaptureParts {
+  layout: Layout;
+  time: RecordTime;
+  channels: RawChannel[];
+  setup: Setup;
+  notes: Note[];
+}
+
+function captureOf({ layout, time, channels, setup, notes }: CaptureParts): Capture {
+  const envelope = time.pairs ? envelopeChannels(channels, time) : null;
+  const built = (envelope ?? channels.map((raw) => ({ ...raw, values: stretchOf(raw.values, time) }))).map(
+    (raw) => buildChannel(raw, layout, setup),
+  );
+  const samples = built[0].channel.samples.length;
+  const base = timeBaseOf(layout, time, samples, setup);
+  const capture: Capture = {
+    record: { index: 0, count: 1, time: null },
+    channels: built.map(({ channel }) => channel),
+    timebase: base.timebase,
+    acquisition: [],
+    notes: [...base.notes, ...notes, ...built.flatMap((one) => one.notes)],
+  };
+  capture.notes.push(...guessRoles(capture, setup));
+  const acquired = acquisitionOf(capture, layout, time.pairs);
+  capture.acquisition = acquired.codes;
+  capture.notes.push(...acquired.notes);
+  return capture;
+}
+
+/** Blocks side by side on equal axes are channels of one record. */
+function mergeEqualAxes(groups: AxisGroup[], columns: Columns): AxisGroup[] {
+  const merged: AxisGroup[] = [];
+  for (const group of groups) {
+    const twin = merged.find((other) => equalAxes(other, group, columns));
+    if (twin) twin.values.push(...group.values);
+    else merged.push({ axis: group.axis, values: [...group.values] });
+  }
+  return merged;
+}
+
+function equalAxes(a: AxisGroup, b: AxisGroup, columns: Columns): boolean {
+  if (a.axis === null || b.axis === null) return a.axis === b.axis;
+  const [one, other] = [columns.times.get(a.axis)!, columns.times.get(b.axis)!];
+  if (one.rows !== other.rows || !Object.is(one.first, other.first) || !Object.is(one.last, other.last))
+    return false;
+  if (one.values && other.values) return one.values.every((value, i) => Object.is(value, other.values![i]));
+  return one.anchors.every((value, i) => Object.is(value, other.anchors[i]));
+}
+
+/** The table above segmented data gives each its time. */
+function segmentTime({ header }: Layout, index: number, count: number): string | null {
+  return header.segments.length === count ? (header.segments[index][1]?.trim() ?? null) : null;
+}

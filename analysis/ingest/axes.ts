@@ -1,0 +1,120 @@
+/** Which columns are time axes, which merely count, and which values belong to which axis. */
+import type { NamedUnit } from "./units.ts";
+import { timeName } from "./units.ts";
+
+export interface AxisGroup {
+  /** Column of the axis; null where the values have none. */
+  axis: number | null;
+  values: number[];
+}
+
+export interface Axes {
+  groups: AxisGroup[];
+  /** A column that only counts rows. */
+  counter: number | null;
+  counterFrom: number;
+}
+
+export interface HeadColumn {
+  column: number;
+  /** First data rows; NaN where there is no number. */
+  head: Float64Array;
+  name: NamedUnit;
+}
+
+/** `symbolic` columns are values of whichever axis stands before them. */
+export function findAxes(numeric: HeadColumn[], symbolic: number[], timingStated: boolean): Axes {
+  const counter = numeric.length > 1 || timingStated ? numeric.slice(0, 2).find(isCounter) : undefined;
+  const rest = numeric.filter((column) => column !== counter);
+  const first = rest.find(isNamedTime) ?? (timingStated && !counter ? undefined : firstRamp(rest, symbolic));
+  const counterFrom = counter ? counter.head[0] : 0;
+  const columns = [...rest.map(({ column }) => column), ...symbolic].toSorted((a, b) => a - b);
+  const found = { counter: counter?.column ?? null, counterFrom };
+  if (!first) return { ...found, groups: [{ axis: null, values: columns }] };
+  const axes = rest.filter((column) => column === first || isFurtherAxis(column, first, rest));
+  const groups = axes.map((axis, i) => {
+    const from = i === 0 ? -1 : axis.column;
+    const to = axes[i + 1]?.column ?? Infinity;
+    const values = columns.filter((column) => column > from && column < to && column !== axis.column);
+    return { axis: axis.column, values };
+  });
+  return { ...found, groups: groups.filter(({ values }) => values.length > 0) };
+}
+
+/** 0, 1, 2 … (or from 1), starting anew where a record does; a stated unit of time makes it a time. */
+function isCounter({ head, name }: HeadColumn): boolean {
+  if (name.unit?.symbol === "s" || head.length < 2 || (head[0] !== 0 && head[0] !== 1)) return false;
+  let restarts = 0;
+  for (let i = 1; i < head.length; i++) {
+    if (head[i] === head[i - 1] + 1) continue;
+    if (head[i] !== head[0]) return false;
+    restarts++;
+  }
+  return restarts <= head.length / 3;
+}
+
+function isNamedTime({ name, head, column }: HeadColumn): boolean {
+  const named = timeName.test(name.name) || (name.name === "" && name.unit?.symbol === "s");
+  if (name.unit && name.unit.symbol !== "s" && name.unit.symbol !== "Hz") return false;
+  if (named || name.unit?.symbol === "Hz") return isMonotonic(head, 0.7);
+  return name.unit?.symbol === "s" && (column === 0 ? isMonotonic(head, 0.7) : isEven(head));
+}
+
+/** Unnamed: the first column that rises or falls evenly, if something is left to be the values. */
+function firstRamp(columns: HeadColumn[], symbolic: number[]): HeadColumn | undefined {
+  if (columns.length + symbolic.length < 2) return undefined;
+  return columns
+    .slice(0, 2)
+    .find(({ head, name }) => (!name.unit || name.unit.symbol === "s") && isEven(head));
+}
+
+function isFurtherAxis(column: HeadColumn, first: HeadColumn, all: HeadColumn[]): boolean {
+  const at = all.indexOf(column);
+  if (at <= all.indexOf(first) + 1 || at === all.length - 1) return false;
+  if (column.name.unit && column.name.unit.symbol !== "s") return false;
+  if (column.head.every((value, i) => Object.is(value, first.head[i]))) return true;
+  return isEven(column.head) && (isNamedTime(column) || all.length % 2 === 0);
+}
+
+/** Steps in one direction, repeats and the joints of records apart. */
+export function isMonotonic(head: Float64Array, share = 0.97): boolean {
+  let up = 0;
+  let down = 0;
+  for (let i = 1; i < head.length; i++) {
+    if (head[i] > head[i - 1]) up++;
+    else if (head[i] < head[i - 1]) down++;
+  }
+  return up + down > 0 && Math.max(up, down) >= share * (up + down);
+}
+
+/** Monotonic, and as good as straight over each half: rounding and repeats allowed. */
+function isEven(head: Float64Array): boolean {
+  if (head.length < 2 || !isMonotonic(head)) return false;
+  const direction = Math.sign(longestRise(head));
+  let from = 0;
+  for (let i = 1; i <= head.length; i++) {
+    const joint = i === head.length || (head[i] - head[i - 1]) * direction < 0;
+    if (!joint) continue;
+    if (i - from > 2 && !isStraight(head.subarray(from, i))) return false;
+    from = i;
+  }
+  return true;
+}
+
+const longestRise = (head: Float64Array) => {
+  let sum = 0;
+  for (let i = 1; i < head.length; i++) sum += Math.sign(head[i] - head[i - 1]);
+  return sum;
+};
+
+function isStraight(values: Float64Array): boolean {
+  const last = values.length - 1;
+  const step = (values[last] - values[0]) / last;
+  let largestStep = 0;
+  let largestError = 0;
+  for (let i = 1; i <= last; i++) {
+    largestStep = Math.max(largestStep, Math.abs(values[i] - values[i - 1]));
+    largestError = Math.max(largestError, Math.abs(values[i] - values[0] - i * step));
+  }
+  return largestError <= Math.max(1.05 * largestStep, 0.02 * Math.abs(values[last] - values[0]));
+}

@@ -1,0 +1,111 @@
+/** The records along one time axis, and the stretch of a channel that belongs to each. */
+import type { AxisGroup } from "./axes.ts";
+import type { Columns } from "./columns.ts";
+import { lastDigit, measureInterval } from "./interval.ts";
+import type { Layout } from "./layout.ts";
+import { readNumber } from "./number.ts";
+import { splitSpans, type Span } from "./spans.ts";
+import type { RecordTime } from "./time-base.ts";
+
+export function axisSpans(layout: Layout, columns: Columns, group: AxisGroup): RecordTime[] {
+  const rows = columns.rows;
+  if (group.axis === null) return [withoutAxis(layout, rows)];
+  const column = columns.times.get(group.axis)!;
+  const name = layout.names.get(group.axis) ?? null;
+  const common = { name, axis: true, counterFrom: null };
+  if (column.pairs && rows >= 6 && rows % 2 === 0) {
+    const span = { from: 0, to: rows, first: column.first, last: column.last };
+    const step = Math.abs(span.last - span.first) / (rows / 2 - 1);
+    const quantum = quantumOf(layout, group.axis, columns, span);
+    const uncertainty = quantum / Math.sqrt(6) / (rows / 2 - 1);
+    return [
+      {
+        ...common,
+        ...span,
+        pairs: true,
+        reversed: false,
+        measured: { step, uncertainty, unevenness: 0, gaps: [] },
+        quantum,
+        mended: 0,
+        unitSwitches: 0,
+      },
+    ];
+  }
+  const { spans, values, mended, unitSwitches } = splitSpans(column);
+  return spans
+    .filter(({ from, to }) => to - from >= 2)
+    .map((span) => {
+      const quantum = quantumOf(layout, group.axis!, columns, span);
+      const measured = measureInterval(span, values, quantum);
+      const inSpan = mended.filter((row) => row >= span.from && row < span.to).length;
+      return {
+        ...common,
+        ...span,
+        pairs: false,
+        reversed: span.last < span.first,
+        measured,
+        quantum,
+        mended: inSpan,
+        unitSwitches,
+      };
+    });
+}
+
+/** No time in the data: the whole is one record. */
+function withoutAxis({ axes }: Layout, rows: number): RecordTime {
+  return {
+    name: null,
+    axis: false,
+    counterFrom: axes.counter === null ? null : axes.counterFrom,
+    from: 0,
+    to: rows,
+    first: NaN,
+    last: NaN,
+    pairs: false,
+    reversed: false,
+    measured: null,
+    quantum: 0,
+    mended: 0,
+    unitSwitches: 0,
+  };
+}
+
+/** The coarser of the last digits at both ends: writers that keep significant digits lose them as time grows. */
+function quantumOf(layout: Layout, axis: number, columns: Columns, span: Span): number {
+  const head = layout.axisText.get(axis) ?? [];
+  const tail = columns.tail.map((cells) => cells[axis] ?? "");
+  return Math.max(finest(head.slice(0, 40), layout, span.first), finest(tail.slice(-40), layout, span.last));
+}
+
+/** Writers may strip zeros: the finest last digit among neighbours of like size is the column's. */
+function finest(cells: string[], { dialect }: Layout, end: number): number {
+  let quantum = Infinity;
+  for (const cell of cells) {
+    const value = readNumber(cell.trim(), dialect.format);
+    if (!value || Math.abs(value) < Math.abs(end) / 20) continue;
+    quantum = Math.min(quantum, lastDigit(cell));
+  }
+  return Number.isFinite(quantum) ? quantum : 0;
+}
+
+/** A channel's samples in this record, in rising time, with NaN where rows are gone. */
+export function stretchOf(values: Float64Array, time: RecordTime): Float64Array {
+  const whole = time.from === 0 && time.to === values.length;
+  const part = whole ? values : values.slice(time.from, time.to);
+  const gaps = time.measured?.gaps ?? [];
+  const filled = gaps.length > 0 ? fill(part, gaps) : part;
+  return time.reversed ? filled.toReversed() : filled;
+}
+
+function fill(values: Float64Array, gaps: { row: number; missing: number }[]): Float64Array {
+  const total = gaps.reduce((sum, { missing }) => sum + missing, values.length);
+  const filled = new Float64Array(total).fill(NaN);
+  let from = 0;
+  let shift = 0;
+  for (const { row, missing } of [...gaps, { row: values.length, missing: 0 }]) {
+    filled.set(values.subarray(from, row), from + shift);
+    from = row;
+    shift += missing;
+  }
+  return filled;
+}

@@ -1,0 +1,96 @@
+/** Where the data lie: which lines, which columns; what stands beside and above is metadata. */
+import { filledWidth } from "./cells.ts";
+import type { DialectChoice, Row, Run } from "./dialect.ts";
+import { looksSymbolic } from "./symbols.ts";
+
+export interface Block {
+  /** First data line, as an index into the sniffed lines. */
+  from: number;
+  /** One past the last of the first unbroken stretch of data lines. */
+  to: number;
+  /** Cells a data line has, empty ones included. */
+  width: number;
+  /** Columns with numbers, in order. */
+  numeric: number[];
+  /** Columns of words and symbols beside them. */
+  symbolic: number[];
+}
+
+const isNumber = (kind: string) => kind === "number" || kind === "over" || kind === "missing";
+
+export function findBlock({ rows, best }: DialectChoice): Block {
+  const inRun = rows.slice(best.from, best.to).filter((row) => row.kinds.length === best.width);
+  const numeric = numericColumns(inRun, best);
+  const isData = (row: Row) =>
+    Math.abs(filledWidth(row.cells) - filledWidth(inRun[inRun.length - 1].cells)) <= best.width &&
+    row.kinds.length >= Math.min(best.width, numeric[numeric.length - 1] + 1) &&
+    row.kinds.length <= best.width + 1 &&
+    numeric.some((column) => isNumber(row.kinds[column])) &&
+    numeric.every((column) => row.kinds[column] !== "text");
+  const stretch = firstLongStretch(rows, isData);
+  const symbolic = symbolColumns(rows.slice(stretch.from, stretch.to), best.width, numeric);
+  return { ...stretch, width: best.width, numeric, symbolic };
+}
+
+/** The pattern most lines share, and columns that fill up later (blank while the screen still rolled). */
+function numericColumns(rows: Row[], { width }: Run): number[] {
+  const patterns = new Map<string, number>();
+  for (const { kinds } of rows) {
+    const pattern = kinds.map((kind) => (isNumber(kind) ? "n" : " ")).join("");
+    patterns.set(pattern, (patterns.get(pattern) ?? 0) + 1);
+  }
+  const common = [...patterns].reduce((a, b) => (b[1] > a[1] ? b : a))[0];
+  const columns: number[] = [];
+  for (let column = 0; column < width; column++)
+    if (common[column] === "n" ? mostlyNumbers(rows, column) : fillsUp(rows, column)) columns.push(column);
+  return columns.length > 0 ? columns : [[...common].indexOf("n")].filter((column) => column >= 0);
+}
+
+/** A column is numeric only if almost all its filled cells are: a hex word can look like a number. */
+function mostlyNumbers(rows: Row[], column: number): boolean {
+  let texts = 0;
+  let numbers = 0;
+  for (const { kinds } of rows) {
+    if (kinds[column] === "text") texts++;
+    else if (isNumber(kinds[column])) numbers++;
+  }
+  return numbers > 0 && texts <= Math.max(0.05 * rows.length, rows.length < 60 ? 0.45 * rows.length : 0);
+}
+
+function fillsUp(rows: Row[], column: number): boolean {
+  const first = rows.findIndex(({ kinds }) => isNumber(kinds[column]));
+  if (first < 0) return false;
+  const texts = rows.filter(({ kinds }) => kinds[column] === "text").length;
+  const after = rows.slice(first);
+  const filled = after.filter(({ kinds }) => isNumber(kinds[column])).length;
+  return texts === 0 && filled >= 0.9 * after.length && filled >= 3;
+}
+
+/**
+ * The first stretch of data lines that is at least half as long as the longest: a short one before it
+ * is a table of the preamble, later ones are further segments.
+ */
+function firstLongStretch(rows: Row[], isData: (row: Row) => boolean): { from: number; to: number } {
+  const stretches: { from: number; to: number; lines: number }[] = [];
+  let open: { from: number; to: number; lines: number } | null = null;
+  for (const [i, row] of rows.entries()) {
+    if (isData(row)) {
+      if (!open) stretches.push((open = { from: i, to: i, lines: 0 }));
+      open.to = i + 1;
+      open.lines++;
+    } else if (!row.kinds.every((kind) => kind === "blank") || row.kinds.length > 1) open = null;
+  }
+  const longest = Math.max(...stretches.map(({ lines }) => lines));
+  return stretches.find(({ lines }) => lines >= longest / 2) ?? stretches[0];
+}
+
+function symbolColumns(rows: Row[], width: number, numeric: number[]): number[] {
+  const columns: number[] = [];
+  for (let column = 0; column < width; column++) {
+    if (numeric.includes(column)) continue;
+    const cells = rows.map((row) => row.cells[column] ?? "").filter((cell) => cell.trim() !== "");
+    if (cells.length < 0.95 * rows.length || !looksSymbolic(cells)) continue;
+    if (new Set(cells.map((cell) => cell.trim())).size > 1) columns.push(column);
+  }
+  return columns;
+}

@@ -1,0 +1,43 @@
+/** What is wrong with the lines of a file: noted where a record can stand it, refused where not. */
+import type { Note } from "../capture.ts";
+import { ReadingError } from "../errors.ts";
+import type { Columns } from "./columns.ts";
+import type { Layout } from "./layout.ts";
+
+const mostDamaged = 0.05;
+
+export function damageNotes(layout: Layout, columns: Columns): Note[] {
+  const { odd, oddMore, rows } = columns;
+  const byKind = (kind: string) => odd.filter((line) => line.kind === kind);
+  const notes: Note[] = [];
+  const unreadable = byKind("unreadable");
+  const damaged = unreadable.length + byKind("long").length + oddMore;
+  if (damaged > Math.max(3, mostDamaged * rows)) {
+    const [first] = odd.filter(({ kind }) => kind !== "text" && kind !== "empty-cells");
+    throw new ReadingError(
+      "damaged-lines",
+      `${damaged} of ${rows} lines can't be read as numbers, first "${(first ?? odd[0]).text.slice(0, 60)}"`,
+      "The file is damaged or no waveform; export it again",
+      { byte: layout.dataStart + (first ?? odd[0]).byte },
+    );
+  }
+  const say = (code: string, lines: typeof odd, text: string) => {
+    if (lines.length > 0)
+      notes.push({
+        code,
+        text: `${lines.length} ${text} (the first after ${lines[0].row} samples: "${lines[0].text.slice(0, 60)}").`,
+      });
+  };
+  say(
+    "unreadable-cells",
+    unreadable,
+    "lines hold cells that are no numbers; those samples count as unusable",
+  );
+  say("long-lines", byKind("long"), "lines have more cells than the others; the first ones are used");
+  say(
+    "short-lines",
+    byKind("short"),
+    "lines have fewer cells than the others; what is missing counts as unusable",
+  );
+  return notes;
+}

@@ -1,0 +1,85 @@
+/** Separator and decimal mark, found together from the number-like lines, not from the first line. */
+import { splitCells } from "./cells.ts";
+import { readCell, type CellKind, type NumberFormat } from "./number.ts";
+
+export interface Dialect {
+  separator: string;
+  format: NumberFormat;
+}
+
+/** One line's cells and what each is. */
+export interface Row {
+  cells: string[];
+  kinds: CellKind[];
+}
+
+/** A run of neighbouring lines with the same number of cells and at least one number each. */
+export interface Run {
+  from: number;
+  to: number;
+  width: number;
+  /** Number cells less text cells: what makes one reading of the file better than another. */
+  score: number;
+}
+
+export interface DialectChoice {
+  dialect: Dialect;
+  rows: Row[];
+  best: Run;
+}
+
+const separators = ["\t", ";", ",", " "];
+
+/** null when no line holds a number in any dialect. */
+export function chooseDialect(lines: string[], decimalMark: "." | "," | null): DialectChoice | null {
+  let chosen: DialectChoice | null = null;
+  for (const dialect of candidates(lines, decimalMark)) {
+    const rows = lines.map((line) => readRow(line, dialect));
+    const best = bestRun(rows);
+    if (best && (!chosen || best.score > chosen.best.score)) chosen = { dialect, rows, best };
+  }
+  return chosen;
+}
+
+// In order of preference: a later one must do better, not as well.
+function candidates(lines: string[], decimalMark: "." | "," | null): Dialect[] {
+  const text = lines.slice(0, 2000).join("\n");
+  const found: Dialect[] = [];
+  for (const thousands of [false, true])
+    for (const separator of separators) {
+      if (separator !== " " && !text.includes(separator)) continue;
+      for (const decimal of [".", ","] as const) {
+        if (decimal === "," && (separator === "," || !text.includes(","))) continue;
+        if (decimalMark && decimal !== decimalMark && !(separator === "," && decimalMark === ",")) continue;
+        const mark = decimal === "." ? "," : ".";
+        const possible = text.includes(mark) && (mark !== separator || text.includes('"'));
+        if (thousands && !possible) continue;
+        found.push({ separator, format: { decimal, thousands: thousands ? mark : null } });
+      }
+    }
+  return found;
+}
+
+export function readRow(line: string, { separator, format }: Dialect): Row {
+  const cells = splitCells(line, separator);
+  return { cells, kinds: cells.map((cell) => readCell(cell, format).kind) };
+}
+
+function bestRun(rows: Row[]): Run | null {
+  let best: Run | null = null;
+  let run: Run | null = null;
+  for (const [i, { kinds }] of rows.entries()) {
+    const numbers = kinds.filter((kind) => kind === "number" || kind === "over").length;
+    const texts = kinds.filter((kind) => kind === "text").length;
+    if (numbers === 0) {
+      if (kinds.every((kind) => kind === "blank")) continue;
+      run = null;
+      continue;
+    }
+    if (!run || run.width !== kinds.length) run = { from: i, to: i, width: kinds.length, score: 0 };
+    run.to = i + 1;
+    run.score += numbers - texts;
+    if (!best || run.score > best.score) best = run;
+  }
+  return best;
+}

@@ -1,0 +1,123 @@
+/** How a file is built, found from its first part alone; what the bulk parser and the assembly work by. */
+import { ReadingError } from "../errors.ts";
+import type { Setup } from "../setup/schema.ts";
+import { findAxes, type Axes, type HeadColumn } from "./axes.ts";
+import { findBlock, type Block } from "./block.ts";
+import { parseBulk, type BulkPlan } from "./bulk.ts";
+import { chooseDialect, type Dialect, type DialectChoice } from "./dialect.ts";
+import { readHeader, type Header } from "./header.ts";
+import { splitLines, type Line } from "./lines.ts";
+import { nameColumns } from "./names.ts";
+import { statedTiming, timingColumns, type StatedTiming } from "./timing.ts";
+import type { NamedUnit } from "./units.ts";
+import { signatureOf } from "./signature.ts";
+
+export interface Layout {
+  dialect: Dialect;
+  block: Block;
+  header: Header;
+  timing: StatedTiming;
+  axes: Axes;
+  /** By column of the file. */
+  names: Map<number, NamedUnit>;
+  plan: BulkPlan;
+  /** First byte of the data, in the text after its byte order mark. */
+  dataStart: number;
+  /** Line number of the first data line. */
+  dataLine: number;
+  /** Axis cells of the first data lines as they are written, by column. */
+  axisText: Map<number, string[]>;
+  /** First data lines, for what hangs on spelling. */
+  sample: string[][];
+  signature: string;
+}
+
+const sniffedLines = 6000;
+
+/** `complete`: the head is the whole file, so its last line is not cut. */
+export function planLayout(head: Uint8Array, complete: boolean, setup: Setup): Layout {
+  let lines = splitLines(head, sniffedLines + 1);
+  if (!complete || lines.length > sniffedLines) lines = lines.slice(0, -1);
+  const texts = lines.map(({ text }) => text);
+  const choice = chooseDialect(texts, setup.decimalMark ?? null);
+  if (!choice) throw noNumbers(lines);
+  const block = findBlock(choice);
+  const header = readHeader(lines, choice.rows, block);
+  return describeLayout({ head, lines, choice, block, header });
+}
+
+interface Parts {
+  head: Uint8Array;
+  lines: Line[];
+  choice: DialectChoice;
+  block: Block;
+  header: Header;
+}
+
+function describeLayout({ head, lines, choice, block, header }: Parts): Layout {
+  const { dialect, rows } = choice;
+  const timing = statedTiming(header);
+  const plan = planBulk(dialect, block, true);
+  const dataStart = lines[block.from].start;
+  const dataEnd = lines[block.to]?.start ?? head.length;
+  const first = parseBulk(head.subarray(dataStart, dataEnd), plan);
+  if (first.rows < 2) throw tooFewRows(lines[block.from].number);
+  const names = nameColumns(header, block);
+  const columns = block.numeric.map((column): HeadColumn => {
+    const values = first.values[plan.columns.indexOf(column)];
+    return { column, head: values, name: names.get(column) ?? { name: "", spelled: null, unit: null } };
+  });
+  const axes = findAxes(columns, block.symbolic, timingColumns(header).length > 0);
+  const sample = rows.slice(block.from, block.to).map(({ cells }) => cells);
+  const axisText = new Map(
+    axes.groups.flatMap(({ axis }) =>
+      axis === null ? [] : [[axis, sample.map((cells) => cells[axis] ?? "")]],
+    ),
+  );
+  return {
+    dialect,
+    block,
+    header,
+    timing,
+    axes,
+    names,
+    plan: planBulk(dialect, block, axes.groups[0].axis === null),
+    dataStart,
+    dataLine: lines[block.from].number,
+    axisText,
+    sample,
+    signature: signatureOf(dialect, header, axes, names),
+  };
+}
+
+function planBulk({ separator, format }: Dialect, block: Block, keepEmptyRows: boolean): BulkPlan {
+  const columns = [...block.numeric, ...block.symbolic].toSorted((a, b) => a - b);
+  return {
+    separator: separator.charCodeAt(0),
+    format,
+    width: columns[columns.length - 1] + 1,
+    cells: Math.max(block.width, columns[columns.length - 1] + 1),
+    columns,
+    symbols: block.symbolic,
+    keepEmptyRows,
+  };
+}
+
+function noNumbers(lines: Line[]): ReadingError {
+  const filled = lines.find(({ text }) => text.trim() !== "");
+  return new ReadingError(
+    "no-numbers",
+    `No line of the file holds a number (its first line is "${(filled?.text ?? "").trim().slice(0, 60)}")`,
+    "Save the waveform's samples as text (CSV) on the oscilloscope",
+    { line: filled?.number ?? 1 },
+  );
+}
+
+function tooFewRows(line: number): ReadingError {
+  return new ReadingError(
+    "too-few-rows",
+    `There is only one row of numbers, at line ${line}`,
+    "A capture needs at least two samples; save the waveform itself, not a single measurement",
+    { line },
+  );
+}

@@ -1,0 +1,141 @@
+/**
+ * Samples that carry no measurement: no number, infinite, or pinned at the screen's edge. A pinned
+ * stretch is exactly flat at the record's extreme and begins and ends abruptly; a quantised natural peak
+ * widens as the square root of the height below it, and a genuine level (ground, on-level, either level
+ * of a gate) is where the signal rests.
+ */
+export interface Usable {
+  /** Infinities made NaN, in place. */
+  samples: Float64Array;
+  /** Pairs [from, to), sorted and apart. */
+  unusable: Int32Array;
+  overrange: number;
+  lsb: number | null;
+}
+
+const shortestPinned = 3;
+/** A level at which the signal spends more than this share of its time is a level, not a screen's edge. */
+const mostPinned = 0.3;
+/** Within this share of the range from zero an extreme is the ground level. */
+const groundShare = 0.03;
+
+export function findUnusable(samples: Float64Array, lsb: number | null): Usable {
+  const range = extremes(samples);
+  const bad = new Uint8Array(samples.length);
+  let overrange = 0;
+  for (let i = 0; i < samples.length; i++) {
+    if (Number.isFinite(samples[i])) continue;
+    bad[i] = samples[i] === samples[i] ? 2 : 1;
+    samples[i] = NaN;
+  }
+  overrange += markGaps(samples, bad, range);
+  const step = lsb ?? (range.high - range.low) / 250;
+  if (range.high > range.low && !isTwoLevel(samples, range)) {
+    overrange += markPinned(samples, bad, range.high, 1, step, range);
+    overrange += markPinned(samples, bad, range.low, -1, step, range);
+  }
+  return { samples, unusable: stretches(bad), overrange, lsb };
+}
+
+interface Range {
+  low: number;
+  high: number;
+}
+
+function extremes(samples: Float64Array): Range {
+  let [low, high] = [Infinity, -Infinity];
+  for (let i = 0; i < samples.length; i++) {
+    const value = samples[i];
+    if (value < low && value > -Infinity) low = value;
+    if (value > high && value < Infinity) high = value;
+  }
+  return { low, high };
+}
+
+/** Infinite samples are over range; so is a gap inside the record whose edge reaches for an extreme. */
+function markGaps(samples: Float64Array, bad: Uint8Array, { low, high }: Range): number {
+  const near = 0.1 * (high - low);
+  const atExtreme = (i: number) =>
+    i >= 0 && i < samples.length && (samples[i] > high - near || samples[i] < low + near);
+  let count = 0;
+  for (let i = 0; i < samples.length; i++) {
+    if (!bad[i]) continue;
+    let end = i;
+    let infinite = 0;
+    for (; end < samples.length && bad[end]; end++) if (bad[end] === 2) infinite++;
+    const inside = i > 0 && end < samples.length;
+    count += infinite || (inside && (atExtreme(i - 1) || atExtreme(end)) ? end - i : 0);
+    i = end;
+  }
+  return count;
+}
+
+/** Almost all samples rest at one of two levels: a gate or logic signal. */
+function isTwoLevel(samples: Float64Array, { low, high }: Range): boolean {
+  const near = 0.08 * (high - low);
+  let between = 0;
+  let count = 0;
+  for (let i = 0; i < samples.length; i++) {
+    const value = samples[i];
+    if (value !== value) continue;
+    count++;
+    if (value > low + near && value < high - near) between++;
+  }
+  return between < 0.05 * count;
+}
+
+/** Marks pinned runs at one extreme (`side` +1 high, −1 low); answers how many samples. */
+function markPinned(
+  samples: Float64Array,
+  bad: Uint8Array,
+  edge: number,
+  side: 1 | -1,
+  lsb: number,
+  range: Range,
+): number {
+  const span = range.high - range.low;
+  if (Math.abs(edge) < groundShare * span) return 0;
+  const tolerance = Math.min(0.25 * lsb, 1e-6 * span);
+  const runs: [number, number][] = [];
+  let total = 0;
+  for (let i = 0; i < samples.length; i++) {
+    if (!(side * (edge - samples[i]) <= tolerance)) continue;
+    let end = i + 1;
+    while (end < samples.length && side * (edge - samples[end]) <= tolerance) end++;
+    total += end - i;
+    if (end - i >= shortestPinned && isAbrupt(samples, i, end, edge, side, lsb)) runs.push([i, end]);
+    i = end;
+  }
+  if (runs.length === 0 || total > mostPinned * samples.length) return 0;
+  for (const [from, to] of runs) bad.fill(2, from, to);
+  return runs.reduce((sum, [from, to]) => sum + to - from, 0);
+}
+
+/** Three levels below the edge the stretch is hardly wider than at it. */
+function isAbrupt(
+  samples: Float64Array,
+  from: number,
+  to: number,
+  edge: number,
+  side: number,
+  lsb: number,
+): boolean {
+  const level = edge - side * 3.5 * lsb;
+  const allowed = Math.max(1, 0.25 * (to - from));
+  let wider = 0;
+  for (let i = from - 1; i >= 0 && side * (samples[i] - level) >= 0; i--) if (++wider > allowed) return false;
+  for (let i = to; i < samples.length && side * (samples[i] - level) >= 0; i++)
+    if (++wider > allowed) return false;
+  return true;
+}
+
+function stretches(bad: Uint8Array): Int32Array {
+  const pairs: number[] = [];
+  for (let i = 0; i < bad.length; i++) {
+    if (!bad[i]) continue;
+    const from = i;
+    while (i < bad.length && bad[i]) i++;
+    pairs.push(from, i);
+  }
+  return Int32Array.from(pairs);
+}
