@@ -21,7 +21,8 @@ export function inkPath({ time_s, low, high }: Samples, x: Scale, y: Scale): str
     const ya = digits(y(a));
     const yb = digits(y(b));
     const turned: boolean = pen !== null && Math.abs(yb - pen) < Math.abs(ya - pen);
-    const [first, last] = turned ? [yb, ya] : [ya, yb];
+    const first: number = turned ? yb : ya;
+    const last: number = turned ? ya : yb;
     path += `${pen === null ? "M" : "L"}${px} ${first}`;
     if (last !== first) path += `V${last}`;
     pen = last;
