@@ -1,0 +1,82 @@
+/** The run: every pulse judged against the run's quiet pulses, then counted and combined. */
+import { combinePulses } from "./coil/combine.ts";
+import type { Note } from "./capture.ts";
+import type { CaptureEvidence, PulseEvidence } from "./evidence.ts";
+import { combineRamps } from "./ramp/combine-ramps.ts";
+import type { CaptureReading, PulseReading, RunCounts } from "./reading-format.ts";
+import type { Setup } from "./setup/schema.ts";
+import { countPulses, verdictOf } from "./spark/counts.ts";
+import { expectedOf } from "./spark/expected.ts";
+import { judgePulses } from "./spark/judge.ts";
+import { timesOf } from "./spark/onset.ts";
+import { noEvidence, sparkReading } from "./spark/spark-reading.ts";
+import { gatherWindow, type SparkWindow } from "./spark/window.ts";
+
+/** `ringbook.run/1`: the run's counts and combined figures. */
+export interface RunReading extends RunCounts {
+  combined: CaptureReading["combined"];
+  notes: Note[];
+}
+
+export interface RunJudgement {
+  /** In the order of the evidence. */
+  readings: CaptureReading[];
+  run: RunReading;
+}
+
+/** Windows are gathered once: a growing run is judged again and again. */
+const windows = new WeakMap<PulseEvidence, SparkWindow | null>();
+
+/**
+ * Verdicts of a run; can be called again when the run grows or the setup changes. The evidence is not
+ * changed. Captures in the order they were taken: a sagging supply is followed along it.
+ */
+export function judgeRun(evidence: CaptureEvidence[], setup: Setup): RunJudgement {
+  const places = evidence.flatMap((capture, c) =>
+    capture.pulses.map((pulse, p) => ({ capture, pulse, c, p })),
+  );
+  const judgeable = places.flatMap((place) => {
+    const window = windowOf(place.capture, place.pulse);
+    return window ? [{ ...place, window, modes: place.pulse.fit?.modes ?? [] }] : [];
+  });
+  const judged = judgePulses(judgeable);
+  const run = judgeable.map(({ window }, i) => ({ judged: judged[i], window }));
+  const sparks = new Map(
+    judgeable.map(({ pulse, window }, i) => {
+      const expected = judged[i].likelihood.probability > 0.1 ? expectedOf(judged[i], run, i, window) : null;
+      return [pulse, sparkReading(judged[i], window, timesOf(window, judged[i].traits, expected))];
+    }),
+  );
+  const readings = evidence.map((capture) => {
+    const pulses = capture.reading.pulses.map((pulse, p): PulseReading => {
+      const spark = sparks.get(capture.pulses[p]);
+      return { ...pulse, spark: spark ?? noEvidence("no ring was found to judge by", pulse.switchOffTime_s) };
+    });
+    return judgedCapture(capture.reading, pulses, setup);
+  });
+  const pulses = readings.flatMap((reading) => reading.pulses);
+  return {
+    readings,
+    run: { ...countPulses(pulses, setup), combined: combinePulses(quietOf(pulses)), notes: [] },
+  };
+}
+
+function windowOf(capture: CaptureEvidence, pulse: PulseEvidence): SparkWindow | null {
+  if (!windows.has(pulse)) windows.set(pulse, gatherWindow(capture, pulse));
+  return windows.get(pulse)!;
+}
+
+/** Sparks bend the ring: figures of the coil rest on quiet pulses, where there are any. */
+function quietOf(pulses: PulseReading[]): PulseReading[] {
+  return pulses.filter((pulse) => verdictOf(pulse) === "no-spark");
+}
+
+function judgedCapture(reading: CaptureReading, pulses: PulseReading[], setup: Setup): CaptureReading {
+  return {
+    ...reading,
+    pulses,
+    combined: combinePulses(quietOf(pulses)),
+    ramp: combineRamps(pulses),
+    run: countPulses(pulses, setup),
+  };
+}

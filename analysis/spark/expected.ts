@@ -1,0 +1,66 @@
+/** The waveform a pulse would have shown without a spark, as far as it can be known. */
+import type { Judged } from "./judge.ts";
+import type { SparkWindow } from "./window.ts";
+
+export interface Expected {
+  /** In the pulse's own blocks, level removed alike. */
+  values: Float64Array;
+  /** First block the expectation speaks for. */
+  from: number;
+  /** Share of its size that it may be wrong by. */
+  slack: number;
+}
+
+/** Quiet pulses averaged for the expectation. */
+const MODELS = 4;
+
+/** From the ring before the disturbance, else from quiet pulses of the run; null with neither. */
+export function expectedOf(
+  judged: Judged,
+  run: { judged: Judged; window: SparkWindow }[],
+  place: number,
+  window: SparkWindow,
+): Expected | null {
+  const { traits } = judged;
+  const { count } = window.blocks;
+  if (traits.ringBefore) {
+    const { coefficients } = traits.split.before;
+    const values = Float64Array.from({ length: count }, (_, i) => traits.sums.value(coefficients, i));
+    return { values, from: Math.max(0, traits.a - Math.round(window.period)), slack: 0 };
+  }
+  const rest = judged.reference?.rest[place];
+  if (!rest) return null;
+  const models = run
+    .map((other, i) => ({ ...other, far: Math.abs(i - place) }))
+    .filter(
+      ({ judged: other, far }) =>
+        far > 0 && other.likelihood.probability < 0.1 && other.traits.modes === traits.modes,
+    )
+    .toSorted((p, q) => p.far - q.far)
+    .slice(0, MODELS);
+  if (models.length === 0) return null;
+  const values = new Float64Array(count);
+  for (const model of models) addModel(values, model, window, rest, models.length);
+  return { values, from: 0, slack: 0.02 };
+}
+
+/** The other pulse's own blocks, read between its block centres, scaled to this pulse's place in the train. */
+function addModel(
+  values: Float64Array,
+  { judged, window: other }: { judged: Judged; window: SparkWindow },
+  window: SparkWindow,
+  rest: [number, number],
+  share: number,
+): void {
+  const own = judged.traits.rest;
+  const scale = own ? Math.hypot(...rest) / Math.hypot(...own) : 1;
+  const { blocks } = other;
+  const settled = judged.traits.split.whole.coefficients[0];
+  for (let i = 0; i < values.length; i++) {
+    const at = (window.first_s + i * window.step_s - other.first_s) / other.step_s;
+    const left = Math.min(blocks.count - 2, Math.max(0, Math.floor(at)));
+    const part = Math.min(1, Math.max(0, at - left));
+    const value = blocks.values[left] * (1 - part) + blocks.values[left + 1] * part;
+    values[i] += (settled + scale * (value - settled) + other.blocks.level - window.blocks.level) / share;
+  }
+}

@@ -1,0 +1,75 @@
+/** From what a pulse shows to the probability of a spark. */
+import { distance, type Reference } from "./reference.ts";
+import type { Traits } from "./traits.ts";
+
+export interface Likelihood {
+  probability: number;
+  /** What the probability rests on most. */
+  because: "one-ring" | "ring-goes-on" | "loss" | "course" | "missing" | "doubt";
+  /** Distance of the ring after from the run's quiet ring, as a share; null without reference. */
+  away: number | null;
+  /** Share of the quiet amplitude that is missing after; null where it is not known. */
+  loss: number | null;
+}
+
+/** Strength below which a disturbance is noise: √χ² of a few hundred blocks strays by about 7. */
+const NOISE = 12;
+
+export function likelihoodOf(traits: Traits, reference: Reference | null, place: number): Likelihood {
+  return reference ? againstRun(traits, reference, place) : byItself(traits);
+}
+
+function againstRun(traits: Traits, reference: Reference, place: number): Likelihood {
+  const usual = reference.misfit + 3 * reference.misfitSpread;
+  const excess = Math.sqrt(Math.max(0, traits.misfit ** 2 - usual ** 2));
+  const disturbed = Math.max(
+    excess,
+    reference.misfit > NOISE ? 0 : Math.sqrt(Math.max(0, traits.split.gain)),
+  );
+  if (!traits.ringAfter) return cutShort(traits, disturbed);
+  const rest = reference.rest[place];
+  const away = distance(traits.rest!, rest);
+  const loss = 1 - Math.hypot(...traits.rest!) / Math.hypot(...rest);
+  const stray = Math.max(0.01, reference.stray);
+  const sure = away / stray;
+  const answer = (probability: number, because: Likelihood["because"]) => ({
+    probability,
+    because,
+    away,
+    loss,
+  });
+  if (disturbed > NOISE && away > 0.08 && sure > 4) return answer(away > 0.15 ? 0.999 : 0.98, "loss");
+  if (disturbed > NOISE && sure > 4 && away > 0.03) return answer(0.8, "loss");
+  if (disturbed <= NOISE && loss > 0.05 && sure > 6) return answer(0.85, "missing");
+  if (disturbed <= NOISE) return answer(sure > 5 ? 0.1 : 0.001, "one-ring");
+  return answer(sure > 3 ? 0.2 : 0.01, "ring-goes-on");
+}
+
+/** Nothing free is left after the disturbance: the arc burns until the next edge, or there is none. */
+function cutShort(traits: Traits, disturbed: number): Likelihood {
+  const nothing = { away: null, loss: traits.loss };
+  if (disturbed <= NOISE) return { probability: 0.005, because: "one-ring", ...nothing };
+  if (traits.ringBefore && disturbed > 20) return { probability: 0.97, because: "course", ...nothing };
+  return { probability: disturbed > 20 ? 0.8 : 0.4, because: "doubt", ...nothing };
+}
+
+function byItself(traits: Traits): Likelihood {
+  const { misfit, loss, jump, ringBefore } = traits;
+  const gain = Math.sqrt(Math.max(0, traits.split.gain));
+  const answer = (probability: number, because: Likelihood["because"]) => ({
+    probability,
+    because,
+    away: null,
+    loss,
+  });
+  if (misfit < NOISE && gain < NOISE) return answer(0.005, "one-ring");
+  if (!traits.ringAfter) return cutShort(traits, Math.max(misfit, gain));
+  if (ringBefore && jump !== null) {
+    if (jump > 0.2) return answer(0.98, "course");
+    if (jump > 0.1) return answer(0.6, "doubt");
+    return answer(0.02, "ring-goes-on");
+  }
+  if (loss !== null && loss > 0.35) return answer(0.98, "loss");
+  if (loss !== null && loss > 0.2) return answer(0.5, "doubt");
+  return answer(0.05, "ring-goes-on");
+}

@@ -1,0 +1,66 @@
+/** Why a verdict: plain words with their figures, each with its place on the trace. */
+import { formatNumber } from "../format/figure.ts";
+import type { Judged } from "./judge.ts";
+import type { SparkTimes } from "./onset.ts";
+import type { SparkWindow } from "./window.ts";
+
+export interface Reason {
+  text: string;
+  place_s: number | null;
+}
+
+const percent = (share: number) => `${Math.round(100 * share)} %`;
+
+export function reasonsOf(
+  { traits, likelihood, reference }: Judged,
+  window: SparkWindow,
+  times: SparkTimes,
+): Reason[] {
+  const at = (block: number) => window.zero_s + window.first_s + block * window.step_s;
+  const after = times.onset_s === null ? null : formatNumber(times.onset_s - window.zero_s, "s", 3);
+  const strength = Math.round(traits.misfit);
+  const reasons: Reason[] = [];
+  const say = (text: string, place_s: number | null) => reasons.push({ text, place_s });
+  const spark = likelihood.probability > 0.5;
+  switch (likelihood.because) {
+    case "one-ring":
+      say(
+        `one ring explains the trace from switch-off to its end (what is left: strength ${strength}, noise stays below 12)`,
+        at(0),
+      );
+      break;
+    case "ring-goes-on":
+      say(
+        `a disturbance of strength ${Math.round(Math.sqrt(Math.max(0, traits.split.gain)))}, but the same ring goes on after it`,
+        at(traits.a),
+      );
+      break;
+    case "loss":
+    case "course":
+      if (after) say(`the ring leaves its course ${after} after switch-off`, times.onset_s);
+      say(`one ring does not explain the trace: strength ${strength}, noise stays below 12`, at(traits.a));
+      break;
+    case "missing":
+      say("the ring is weaker than the quiet ones from its start", at(traits.kickBlock));
+      break;
+    case "doubt":
+      say(`a disturbance of strength ${strength} that could be a spark or something else`, at(traits.a));
+      break;
+  }
+  if (likelihood.loss !== null && spark && traits.ringAfter && likelihood.loss > 0.02) {
+    const against = reference ? "what the run's quiet pulses have" : "what it would have kept";
+    say(
+      `after it ${percent(Math.max(0, 1 - likelihood.loss))} of the ring's amplitude is left, against ${against}`,
+      at(traits.b),
+    );
+  }
+  if (spark && likelihood.loss !== null && likelihood.loss <= 0.02 && likelihood.away !== null)
+    say(
+      `after it the ring is shifted by ${percent(likelihood.away)} against the run's quiet pulses`,
+      at(traits.b),
+    );
+  if (spark && !traits.ringAfter) say("no free ring is seen after it", at(traits.b));
+  if (!spark && reference && likelihood.away !== null)
+    say(`its ring agrees with the run's quiet pulses within ${percent(likelihood.away)}`, at(traits.b));
+  return reasons;
+}

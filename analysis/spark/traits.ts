@@ -1,0 +1,105 @@
+/** What one pulse shows against "a free ring of these modes from switch-off on". */
+import { LOW, RingSums, type KnownMode } from "./ring-sums.ts";
+import { bestSplit, sizeAt, type Split } from "./split.ts";
+import type { SparkWindow } from "./window.ts";
+
+export interface Traits {
+  sums: RingSums;
+  split: Split;
+  modes: KnownMode[];
+  /** √ of what one ring leaves over, in σ: the strength a disturbance has in this record. */
+  misfit: number;
+  /** Block where the ring before ends, and where the ring after begins. */
+  a: number;
+  b: number;
+  /** A ring was seen before the disturbance for long enough to be known. */
+  ringBefore: boolean;
+  /** A ring was seen after it. */
+  ringAfter: boolean;
+  /** Low mode of the ring after (cosine, sine), carried back to switch-off; null without a ring after. */
+  rest: [cosine: number, sine: number] | null;
+  /** Low mode of the ring before at the disturbance, and of the ring after: how far apart, over the former. */
+  jump: number | null;
+  /** Largest excursion in the first period and its block. */
+  kick: number;
+  kickBlock: number;
+  /** Share of the amplitude that is missing after the disturbance, by the pulse's own evidence; null: unknown. */
+  loss: number | null;
+}
+
+/** Shorter stretches say nothing certain of a ring, in periods. */
+const LEAST_RING = 0.7;
+
+export function traitsOf(window: SparkWindow, modes: KnownMode[]): Traits {
+  const { blocks, period } = window;
+  const amplitude = largest(window, 0, blocks.count).size;
+  const stride = Math.max(1, Math.round(period / 8));
+  const sums = new RingSums(blocks, modes, window, stride, amplitude, window.noise);
+  const split = bestSplit(sums, window.noise);
+  const a = sums.boundaries[split.a];
+  const b = sums.boundaries[split.b];
+  const first = largest(window, 0, Math.min(blocks.count, Math.ceil(period)));
+  const ringBefore = a >= LEAST_RING * period && fits(split, "before", sums.columns);
+  const ringAfter = blocks.count - b >= LEAST_RING * period && split.after.blocks > 2 * sums.columns;
+  const rest = ringAfter ? carriedBack(sums, split, b, window, modes[0]) : null;
+  const kick = { kick: first.size, kickBlock: first.block };
+  const jump = ringBefore && ringAfter ? jumpOf(sums, split, a, b, modes[0], window) : null;
+  const traits = { sums, split, modes, a, b, ringBefore, ringAfter, rest, jump, ...kick };
+  return { ...traits, misfit: Math.sqrt(Math.max(0, split.misfit)), loss: lossOf(traits, window) };
+}
+
+function fits(split: Split, side: "before" | "after", columns: number): boolean {
+  const { cost, blocks } = split[side];
+  return cost / split.variance < 2 * Math.max(1, blocks - columns) + 12 * Math.sqrt(blocks);
+}
+
+/** Where in a stretch of ring its own lean is best known: half a period inside. */
+const inside = (window: SparkWindow, block: number, direction: 1 | -1) =>
+  Math.min(window.blocks.count - 1, Math.max(0, block + Math.round((direction * window.period) / 2)));
+
+function carriedBack(
+  sums: RingSums,
+  split: Split,
+  b: number,
+  window: SparkWindow,
+  mode: KnownMode,
+): [number, number] {
+  const block = inside(window, b, 1);
+  const [c, s] = sums.amplitudeAt(split.after.coefficients, LOW, block);
+  const grown = Math.exp(mode.decay_per_s * (window.first_s + block * window.step_s));
+  return [c * grown, s * grown];
+}
+
+function jumpOf(
+  sums: RingSums,
+  split: Split,
+  a: number,
+  b: number,
+  mode: KnownMode,
+  window: SparkWindow,
+): number {
+  const [from, to] = [inside(window, a, -1), inside(window, b, 1)];
+  const [c1, s1] = sums.amplitudeAt(split.before.coefficients, LOW, from);
+  const [c2, s2] = sums.amplitudeAt(split.after.coefficients, LOW, to);
+  const decayed = Math.exp(-mode.decay_per_s * (to - from) * window.step_s);
+  return Math.hypot(c2 / decayed - c1, s2 / decayed - s1) / Math.hypot(c1, s1);
+}
+
+function lossOf(traits: Omit<Traits, "misfit" | "loss">, window: SparkWindow): number | null {
+  const { sums, split, a, b, modes } = traits;
+  const decay = modes[0].decay_per_s * window.step_s;
+  const after = traits.ringAfter ? sizeAt(sums, split.after, b) : 0;
+  if (traits.ringBefore) return 1 - after / (sizeAt(sums, split.before, a) * Math.exp(-decay * (b - a)));
+  if (b <= traits.kickBlock) return 0;
+  return 1 - after / (traits.kick * Math.exp(-decay * (b - traits.kickBlock)));
+}
+
+/** Largest distance from the window's settled level among the measured blocks. */
+export function largest(window: SparkWindow, from: number, to: number): { size: number; block: number } {
+  const { values, segments } = window.blocks;
+  let [size, block] = [0, from];
+  for (let s = 0; s < segments.length; s += 2)
+    for (let i = Math.max(from, segments[s]); i < Math.min(to, segments[s + 1]); i++)
+      if (Math.abs(values[i]) > size) [size, block] = [Math.abs(values[i]), i];
+  return { size, block };
+}
