@@ -6,14 +6,12 @@ import { inferTank, type Tank } from "./coil/infer.ts";
 import type { ChannelMap, PulseEvidence } from "./evidence.ts";
 import type { SwitchOff } from "./events/event-format.ts";
 import { isVoltage } from "./events/channels.ts";
-import { modelCrossing } from "./events/instant.ts";
 import { medianOf } from "./numeric/robust.ts";
 import { readRamp, type Ramp } from "./ramp/read-ramp.ts";
 import type { PulseReading, RingReading } from "./reading-format.ts";
 import { describeRing, modeCovariance, refusedRing } from "./ring/describe.ts";
-import { afterFlatTops } from "./ring/flat-tops.ts";
 import { amplitude, judgeFit } from "./ring/quality.ts";
-import { windowedRing, type WindowedRing } from "./ring/window.ts";
+import { ringOfPulse, type PulseRing } from "./ring/ring-of-pulse.ts";
 import type { Setup } from "./setup/schema.ts";
 
 export interface PulseContext {
@@ -37,7 +35,8 @@ export function readPulse(context: PulseContext, off: SwitchOff, index: number):
   const ring = fitPulse(context, off);
   const reading = ring ? describePulseRing(context, ring) : refusal(context);
   const fit = ring && reading?.quality !== "refused" ? ring.fit : null;
-  const instant = sharpen(context, off, fit);
+  const byModel = fit && isVoltage(context.map, context.map.ring) ? ring!.switchOff : null;
+  const instant = byModel ?? { at: off.at, u: off.u };
   const ramp = readRamp(context.capture, context.map, { ...off, at: instant.at }, context.setup);
   const tank = fit ? tankOf(context, fit) : null;
   const kick = kickOf(context, off);
@@ -61,19 +60,16 @@ export function readPulse(context: PulseContext, off: SwitchOff, index: number):
   return { reading: assemble(context, evidence, reading, tank, ramp), evidence };
 }
 
-function fitPulse(context: PulseContext, off: SwitchOff): WindowedRing | null {
-  const { map, capture, noise, step_s } = context;
-  if (map.ring === null || off.freeTo - off.freeFrom < 8) return null;
-  const channel = capture.channels[map.ring];
-  const { samples, lsb, unusable } = channel;
+function fitPulse(context: PulseContext, off: SwitchOff): PulseRing | null {
+  const { map, capture, step_s } = context;
+  if (map.ring === null) return null;
+  const { samples, lsb, unusable } = capture.channels[map.ring];
+  const noise = Math.max(context.noise, off.scatter ?? 0);
   const period = context.period || (off.freeTo - off.freeFrom) / 8;
-  const level = medianOf(samples, off.freeFrom, Math.min(off.freeTo, off.freeFrom + Math.ceil(20 * period)));
-  const looked = Math.min(off.freeTo, off.freeFrom + Math.ceil(40 * period));
-  const from = afterFlatTops(samples, off.freeFrom, looked, level, noise, 8 * noise);
-  return windowedRing({ samples, step_s, from, to: off.freeTo, period, noise, lsb, unusable });
+  return ringOfPulse({ samples, step_s, to: off.freeTo, period, noise, lsb, unusable }, off);
 }
 
-function describePulseRing(context: PulseContext, ring: WindowedRing): RingReading {
+function describePulseRing(context: PulseContext, ring: PulseRing): RingReading {
   const channel = context.capture.channels[context.map.ring!];
   const judgement = judgeFit(ring.fit, context.noise);
   return describeRing(channel, ring.fit, judgement, context.capture.timebase.start_s, context.timeRelative);
@@ -87,22 +83,6 @@ function refusal(context: PulseContext): RingReading | null {
     "no damped oscillation stands out of the noise after the switch-off",
     context.noise,
   );
-}
-
-/** Instant from the model where the ring is seen from its beginning, else from the edge. */
-function sharpen(
-  context: PulseContext,
-  off: SwitchOff,
-  fit: PulseEvidence["fit"],
-): { at: number | null; u: number | null } {
-  const { at, u, levelOn, polarity } = off;
-  if (at === null || !fit || levelOn === null || !isVoltage(context.map, context.map.ring)) return { at, u };
-  const period = 1 / (fit.modes[0].frequency_Hz * fit.step_s);
-  if (fit.from > at + 0.2 * period) return { at, u };
-  const reach = Math.max(1.5, 0.06 * period);
-  const crossing = modelCrossing(fit, at, reach, levelOn, polarity);
-  if (!crossing) return { at, u };
-  return { at: crossing.at, u: Math.hypot(0.05, context.noise / crossing.slope) };
 }
 
 function tankOf(context: PulseContext, fit: NonNullable<PulseEvidence["fit"]>): Tank {

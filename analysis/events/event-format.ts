@@ -13,4 +13,6 @@ export interface SwitchOff {
   polarity: 1 | -1;
   /** Level while the switch conducted, just before switch-off. */
   levelOn: number | null;
+  /** Scatter of the trace during conduction about a straight line; null when not seen. */
+  scatter: number | null;
 }

@@ -83,6 +83,7 @@ function fromConductions(
       freeTo: Math.floor(next),
       polarity: kick?.polarity ?? 1,
       levelOn: kick?.levelOn ?? null,
+      scatter: kick?.scatter ?? null,
     });
   });
   return offs;

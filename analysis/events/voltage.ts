@@ -42,6 +42,7 @@ export function voltageSwitchOffs(
       freeTo: samples.length,
       polarity: onset.polarity,
       levelOn: onset.level,
+      scatter: onset.scatter,
     };
   });
   for (let k = 0; k < offs.length; k++) offs[k].freeTo = freeEnd(samples, offs, onsets, k, lsb, width);

@@ -1,0 +1,54 @@
+/**
+ * The ring of one pulse from the very switch-off on: first on a window that is surely free, then, where
+ * that ring run backwards meets the conduction level, from there. Each sample counts: the first quarter
+ * cycle of a ring of Q 5 holds a quarter of its information.
+ */
+import type { SwitchOff } from "../events/event-format.ts";
+import { modelCrossing } from "../events/instant.ts";
+import { medianOf } from "../numeric/robust.ts";
+import { fitRing } from "./fit.ts";
+import { afterFlatTops } from "./flat-tops.ts";
+import { noiseLimit, residualProfile } from "./residuals.ts";
+import { windowedRing, type Place, type WindowedRing } from "./window.ts";
+
+export interface PulseRing extends WindowedRing {
+  /** Instant of the switch-off by the model; null where the ring is not seen from its beginning. */
+  switchOff: { at: number; u: number } | null;
+}
+
+/** Share of a period after the edge before the first window begins. */
+const GUARD = 0.04;
+/** How far the model's instant may be from the edge's, in periods. */
+const REACH = 0.12;
+
+export function ringOfPulse(place: Omit<Place, "from">, off: SwitchOff): PulseRing | null {
+  const { samples, period, noise } = place;
+  const begin = off.at === null ? off.freeFrom : Math.ceil(off.at + GUARD * period);
+  if (off.freeTo - begin < 8) return null;
+  const level = medianOf(samples, begin, Math.min(off.freeTo, begin + Math.ceil(20 * period)));
+  const looked = Math.min(off.freeTo, begin + Math.ceil(40 * period));
+  const from = afterFlatTops(samples, begin, looked, level, noise, 8 * noise);
+  const ring = windowedRing({ ...place, from });
+  if (!ring) return null;
+  const fromBeginning = ring.clean && ring.fit.from <= begin + 0.1 * period;
+  return fromBeginning ? extended(place, off, ring) : { ...ring, switchOff: null };
+}
+
+/** The same ring fitted from the switch-off on, where its first samples agree. */
+function extended(place: Omit<Place, "from">, off: SwitchOff, ring: WindowedRing): PulseRing {
+  const { samples, step_s, noise, lsb, unusable } = place;
+  const { fit } = ring;
+  if (off.at === null || off.levelOn === null) return { ...ring, switchOff: null };
+  const period = 1 / (fit.modes[0].frequency_Hz * step_s);
+  const crossing = modelCrossing(fit, off.at, Math.max(2, REACH * period), off.levelOn, off.polarity);
+  if (!crossing) return { ...ring, switchOff: null };
+  const u = Math.hypot(0.02, noise / crossing.slope / Math.sqrt(Math.max(1, period / 12)));
+  const start = Math.ceil(crossing.at + Math.min(u, 0.02 * period));
+  const switchOff = { at: crossing.at, u };
+  if (start >= fit.from) return { ...ring, switchOff };
+  const longer = fitRing(samples, start, fit.to, step_s, { unusable, lsb, noise, start: fit.modes });
+  if (!longer) return { ...ring, switchOff };
+  const { rms } = residualProfile(samples, longer, start, fit.from + 2, fit.from + 2 - start, unusable);
+  const agrees = !(rms[0] > 1.15 * noiseLimit(Math.max(noise, longer.residual), fit.from + 2 - start));
+  return agrees ? { ...ring, fit: longer, switchOff } : { ...ring, switchOff };
+}
