@@ -22,7 +22,7 @@ export function Contents() {
   const hello = useAnswer("hello", {}, book);
   const first = useAnswer("runs", { ...query, limit: pageSize }, book);
   const { rows, more, error } = useFurther(first.answer, query);
-  const [marked, setMarked] = useState(0);
+  const [marked, setMarked] = useState(-1);
   useKeys("contents", [
     {
       key: "arrowdown",

@@ -24,7 +24,7 @@ export function CapacitorChoice({ sheet }: { sheet: CoilSheet }) {
     () =>
       options && {
         data: (ink: Ink) => curves(options, at, drive.rating_V, ink),
-        x: "capacitor, F",
+        x: "capacitor, nF",
         y: "peak at the switch, V",
         label: "Peak against capacitor",
         xLog: true,
@@ -86,7 +86,7 @@ const grid = (centre: number) =>
   );
 
 function curves(options: CapacitorOption[], at: number, rating: number | null, ink: Ink) {
-  const x = options.map((option) => option.capacitance_F);
+  const x = options.map((option) => option.capacitance_F * 1e9);
   const peaks = options.map((option) => option.peak_V?.value ?? null);
   return [
     {
@@ -94,7 +94,7 @@ function curves(options: CapacitorOption[], at: number, rating: number | null, i
       y: peaks,
       mode: "lines" as const,
       line: { color: ink.fit, width: 2 },
-      hovertemplate: "%{x:.3s}F: %{y:.3s}V<extra></extra>",
+      hovertemplate: "%{x:.3r} nF: %{y:.3r} V<extra></extra>",
     },
     {
       x: [x[at]],

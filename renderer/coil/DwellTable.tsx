@@ -10,7 +10,7 @@ export function DwellTable({ dwell }: { dwell: CoilSheet["dwell"] }) {
       dwell && {
         data: (ink: Ink) => curves(dwell, ink),
         x: "supply, V",
-        y: "dwell, s",
+        y: "dwell, ms",
         label: "Dwell against supply voltage, a curve for each temperature",
       },
     [dwell],
@@ -64,10 +64,13 @@ const dashes = ["solid", "dash", "dot", "dashdot", "longdash"] as const;
 function curves(dwell: NonNullable<CoilSheet["dwell"]>, ink: Ink) {
   return dwell.temperatures_C.map((temperature, column) => ({
     x: dwell.supplies_V,
-    y: dwell.time_s.map((row) => row[column]?.value ?? null),
-    mode: "lines+markers" as const,
+    y: dwell.time_s.map((row) => (row[column] ? row[column].value * 1e3 : null)),
+    mode: "text+lines+markers" as const,
+    // Named at its first point: no legend to look things up in.
+    text: [`${temperature} °C`],
+    textposition: "top right" as const,
     line: { color: ink.ink, width: 1.5, dash: dashes[column % dashes.length] },
     marker: { size: 5, color: ink.ink },
-    hovertemplate: `${temperature} °C, %{x} V: %{y:.3s}s<extra></extra>`,
+    hovertemplate: `${temperature} °C, %{x} V: %{y:.3r} ms<extra></extra>`,
   }));
 }

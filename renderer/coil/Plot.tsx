@@ -60,7 +60,7 @@ function layoutOf({ x, y, xLog, height = 260 }: Props, { ink, faint, rule }: Ink
     showlegend: false,
     hovermode: "closest",
     dragmode: "zoom",
-    xaxis: { ...axis, title: { text: x }, type: xLog ? "log" : "linear" },
+    xaxis: { ...axis, title: { text: x }, type: xLog ? "log" : "linear", ...(xLog && { dtick: 1 }) },
     yaxis: { ...axis, title: { text: y } },
   };
 }

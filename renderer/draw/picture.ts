@@ -8,6 +8,7 @@ const inked = [
   "stroke-linejoin",
   "stroke-linecap",
   "opacity",
+  "paint-order",
   "font-family",
   "font-size",
   "font-weight",

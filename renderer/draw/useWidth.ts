@@ -1,17 +1,18 @@
 /** The width an element has on the page, in CSS pixels, followed as it changes. */
-import { useLayoutEffect, useRef, useState } from "react";
+import { useCallback, useState } from "react";
 
+const least = 240;
+
+/** Answers a ref for the element and its width; `first` until it is on the page. */
 export function useWidth<T extends HTMLElement>(first = 960) {
-  const element = useRef<T>(null);
   const [width, setWidth] = useState(first);
-  useLayoutEffect(() => {
-    const watched = element.current;
+  const ref = useCallback((watched: T | null) => {
     if (!watched) return undefined;
-    const measure = () => setWidth(Math.max(Math.floor(watched.clientWidth), 240));
+    const measure = () => setWidth(Math.max(Math.floor(watched.clientWidth), least));
     measure();
     const observer = new ResizeObserver(measure);
     observer.observe(watched);
     return () => observer.disconnect();
   }, []);
-  return [element, width] as const;
+  return [ref, width] as const;
 }

@@ -31,7 +31,7 @@ export function EnvelopePanel({
   return (
     <g>
       <text className="label" x={2} y={panel.top - 4}>
-        {panel.title}
+        {frame.plotWidth < 560 ? "peaks of the ring, logarithmic" : panel.title}
       </text>
       <line
         className="level"

@@ -91,7 +91,7 @@ function rowsOf({ reading, pulse, setup }: Source): Row[] {
     key = "",
   ): Row => ({
     name,
-    text: figureText(figure, unit),
+    text: figure?.u === 0 ? plain(figure.value, unit) : figureText(figure, unit),
     rests: why(figure, rests, missing),
     budget: budget?.[key],
     unit,

@@ -17,7 +17,7 @@ export function Leaders({ placed, frame, lit }: Lit & { frame: Frame }) {
         : circlePath(lane.x, lane.y, 3);
     if (frame.notesX === null)
       return (
-        <g key={note.id} className={`place ${note.tone}${isLit}`}>
+        <g key={note.id} className={`place tone-${note.tone}${isLit}`}>
           <path d={mark} />
           <text
             className="number"
@@ -33,7 +33,7 @@ export function Leaders({ placed, frame, lit }: Lit & { frame: Frame }) {
     const turn = frame.plotWidth + 4;
     const stop = frame.notesX - 18;
     return (
-      <g key={note.id} className={`place ${note.tone}${isLit}`}>
+      <g key={note.id} className={`place tone-${note.tone}${isLit}`}>
         <path
           className="leader"
           data-note={note.id}
@@ -56,7 +56,7 @@ export function WrittenNotes({ placed, x, lit, onLight }: Written & { x: number 
     return (
       <g
         key={note.id}
-        className={`note ${note.tone}${lit === note.id ? " lit" : ""}${faded}`}
+        className={`note tone-${note.tone}${lit === note.id ? " lit" : ""}${faded}`}
         data-note={note.id}
         tabIndex={0}
         role="note"
@@ -92,7 +92,7 @@ export function NoteList({ placed, lit, onLight }: Written) {
       {placed.map(({ note }) => (
         <li
           key={note.id}
-          className={`${note.tone}${lit === note.id ? " lit" : ""}`}
+          className={`tone-${note.tone}${lit === note.id ? " lit" : ""}`}
           onPointerEnter={() => onLight(note.id)}
           onPointerLeave={() => onLight(null)}
         >

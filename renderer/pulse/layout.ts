@@ -1,6 +1,6 @@
 /** Where everything of the pulse's figure stands: panels under each other, notes in the margin. */
 import type { TraceWindow } from "../../app/bridge.ts";
-import { skyline } from "../draw/ink.ts";
+import { skyline, type Skyline } from "../draw/ink.ts";
 import { laneOrder, makeRoom, type Lane, type Place } from "../draw/leaders.ts";
 import { wrap, type Face } from "../draw/lines.ts";
 import type { Scale } from "../draw/scale.ts";
@@ -83,22 +83,46 @@ interface Scene {
   period_s: number | null;
 }
 
-function placeOf(note: MarginNote, { trace, span, x, y, band, period_s }: Scene): Place | null {
-  if (note.place_s === null || note.place_s < span.from || note.place_s > span.to) return null;
-  const slot = (span.to - span.from) / 400;
-  const wanders = note.id === "ring" && period_s !== null;
-  const here = extreme(trace, note.place_s, slot * 1.5, y, "above");
+/** Kinds of notes whose place suggests the side; the others go where the way out is shorter. */
+function wishedSide(note: MarginNote, ink: Ink, { band }: Scene): Place["side"] | null {
+  if (note.id === "ring" || note.id === "switch-off") return "below";
   const middle = (band.top + band.bottom) / 2;
-  const isLow = here !== null && (here.top + here.bottom) / 2 > middle + (band.bottom - band.top) * 0.06;
-  const side = wanders || isLow || note.id === "switch-off" ? "below" : "above";
+  if (note.id === "kick" || note.id === "spark")
+    return (ink.top + ink.bottom) / 2 > middle ? "below" : "above";
+  return null;
+}
+
+/** A leader already on a side makes the way out there this much longer. */
+const crowding = 26;
+
+function placeAll(notes: MarginNote[], scene: Scene, sky: Skyline): Place[] {
+  const places: Place[] = [];
+  for (const note of notes.toSorted((a, b) => (a.place_s ?? 0) - (b.place_s ?? 0))) {
+    const place = placeOf(note, scene, sky, places);
+    if (place) places.push(place);
+  }
+  return places;
+}
+
+function placeOf(note: MarginNote, scene: Scene, sky: Skyline, others: Place[]): Place | null {
+  const { trace, span, x, y, period_s } = scene;
+  if (note.place_s === null || note.place_s < span.from || note.place_s > span.to) return null;
+  const here = extreme(trace, note.place_s, ((span.to - span.from) / 400) * 1.5, y, "above");
+  if (!here) return null;
+  const side = wishedSide(note, here, scene) ?? shorterWay(x(note.place_s), here, sky, others);
+  const wanders = note.id === "ring" && period_s !== null;
   const ink = wanders ? extreme(trace, note.place_s, period_s * searchPeriods, y, side) : here;
   if (!ink) return null;
-  return {
-    id: note.id,
-    x: x(wanders ? ink.time_s : note.place_s),
-    y: side === "above" ? ink.top : ink.bottom,
-    side,
-  };
+  const at = wanders ? ink.time_s : note.place_s;
+  return { id: note.id, x: x(at), y: side === "above" ? ink.top : ink.bottom, side };
+}
+
+function shorterWay(at: number, ink: Ink, sky: Skyline, others: Place[]): Place["side"] {
+  const from = Math.max(Math.floor(at), 0);
+  const up = ink.top - Math.min(ink.top, ...sky.top.subarray(from));
+  const down = Math.max(ink.bottom, ...sky.bottom.subarray(from)) - ink.bottom;
+  const on = (side: Place["side"]) => others.filter((place) => place.side === side).length * crowding;
+  return up + on("above") <= down + on("below") ? "above" : "below";
 }
 
 /** All notes with their leaders, inside [from, to] of the figure's height. */
@@ -109,9 +133,12 @@ export function placeNotes(
   from: number,
   to: number,
 ): PlacedNote[] {
-  const places = notes.map((note) => placeOf(note, scene)).filter((place) => place !== null);
   const sky = skyline(frame.plotWidth, [scene.trace, ...scene.others], scene.x, scene.y);
-  const lanes = laneOrder(places, sky, { top: scene.band.top, bottom: scene.band.bottom, gap: 11 });
+  const lanes = laneOrder(placeAll(notes, scene, sky), sky, {
+    top: scene.band.top,
+    bottom: scene.band.bottom,
+    gap: 11,
+  });
   const rank = new Map(lanes.map((lane, at) => [lane.id, at]));
   const ordered = notes.toSorted((a, b) => (rank.get(a.id) ?? Infinity) - (rank.get(b.id) ?? Infinity) || 0);
   const written = ordered.map((note, at) => ({

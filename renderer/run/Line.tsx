@@ -111,7 +111,7 @@ function drawLine(rows: PulseRow[]) {
     drawn.glyphs += glyphPath(row, box);
     if (verdict === "spark") {
       const where = row.sketchOnset === null ? middle : box.x + row.sketchOnset * box.width + 2.5;
-      drawn.lozenges += lozengePath(Math.min(where, box.x + box.width), baseline, 3.2);
+      drawn.lozenges += lozengePath(Math.min(where, box.x + box.width), baseline, 3.9);
     }
     if (verdict === "no-spark") drawn.circles += circlePath(middle, 48, 2.8);
     if (verdict === "unclear") drawn.questions += questionPath(middle, 45.5, 2.4);

@@ -58,7 +58,7 @@ export function App() {
             <kbd>K</kbd> keys
           </button>
           <button type="button" onClick={turnPaper}>
-            <kbd>D</kbd> paper
+            <kbd>D</kbd> light or dark
           </button>
         </nav>
       </footer>

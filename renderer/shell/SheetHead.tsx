@@ -18,7 +18,7 @@ export function SheetHead({ title, plainTitle, beside, page }: Props) {
       <h1>{title}</h1>
       {beside && <p className="beside">{beside}</p>}
       <p className="page-number">
-        <a href={hrefOf({ view: "book" })}>contents</a>
+        {plainTitle !== "Contents" && <a href={hrefOf({ view: "book" })}>contents</a>}
         {page && <> · {page}</>}
       </p>
     </header>
