@@ -21,9 +21,9 @@ export interface Onset {
 
 /** Values a period in the search. */
 const PER_PERIOD = 16;
-/** Quiet needed before, and swing looked for after, in values. */
-const QUIET = 8;
-const AHEAD = 10;
+/** Quiet needed before, and swing looked for after, in periods: a ring is never quiet for that long. */
+const QUIET = 0.55;
+const AHEAD = 0.65;
 /** The swing must exceed the unrest before it by this factor. */
 const CONTRAST = 4;
 /** Swings below this share of the record's largest are turn-on edges, bursts, pick-up. */
@@ -32,27 +32,28 @@ const LEAST_SHARE = 0.1;
 export function findOnsets(samples: Float64Array, scale: Scale, noise: number, lsb: number | null): Onset[] {
   const width = Math.max(1, Math.round(scale.period / PER_PERIOD));
   const values = thinned(samples, width);
+  const quiet = Math.max(4, Math.ceil((QUIET * scale.period) / width));
+  const ahead = Math.max(4, Math.ceil((AHEAD * scale.period) / width));
   const floor = Math.max((4 * noise) / Math.sqrt(width), (lsb ?? 0) * 1.01, 1e-9 * scale.reach);
   const onsets: Onset[] = [];
   let best = -1;
   let bestContrast = 0;
   const close = () => {
     if (best >= 0) {
-      const onset = refine(samples, best * width, width, scale, noise, lsb);
-      if (onset && (onsets.length === 0 || onset.at > onsets.at(-1)!.at + QUIET * width * 0.5))
-        onsets.push(onset);
+      const onset = refine(samples, best * width, width, quiet, scale, noise, lsb);
+      if (onset && !(onset.at <= (onsets.at(-1)?.at ?? -1) + quiet * width * 0.5)) onsets.push(onset);
     }
     best = -1;
     bestContrast = 0;
   };
   for (let b = 3; b + 2 < values.length; b++) {
-    const contrast = contrastAt(values, b, floor, LEAST_SHARE * scale.reach);
+    const contrast = contrastAt(values, b, quiet, ahead, floor, LEAST_SHARE * scale.reach);
     if (contrast > CONTRAST) {
       if (contrast > bestContrast) {
         best = b;
         bestContrast = contrast;
       }
-    } else if (best >= 0 && b > best + QUIET / 2) close();
+    } else if (best >= 0 && b > best + quiet / 2) close();
   }
   close();
   return onsets;
@@ -71,8 +72,15 @@ function thinned(samples: Float64Array, width: number): Float64Array {
 }
 
 /** Swing over the next values in units of the range of those before; 0 where either is not there. */
-function contrastAt(values: Float64Array, b: number, floor: number, least: number): number {
-  const from = Math.max(0, b - QUIET);
+function contrastAt(
+  values: Float64Array,
+  b: number,
+  quiet: number,
+  ahead: number,
+  floor: number,
+  least: number,
+): number {
+  const from = Math.max(0, b - quiet);
   let low = Infinity;
   let high = -Infinity;
   for (let k = from; k < b; k++) {
@@ -82,7 +90,7 @@ function contrastAt(values: Float64Array, b: number, floor: number, least: numbe
   }
   if (b - from < 3 || !(high >= low)) return 0;
   const level = (high + low) / 2;
-  const to = Math.min(values.length, b + AHEAD);
+  const to = Math.min(values.length, b + ahead);
   let swing = 0;
   for (let k = b; k < to; k++) swing = Math.max(swing, Math.abs(values[k] - level) || 0);
   if (swing < least || swing < 2 * floor) return 0;
@@ -96,11 +104,12 @@ function refine(
   samples: Float64Array,
   about: number,
   width: number,
+  quiet: number,
   scale: Scale,
   noise: number,
   lsb: number | null,
 ): Onset | null {
-  const from = Math.max(0, about - QUIET * width);
+  const from = Math.max(0, about - quiet * width);
   const quietTo = Math.max(from + 2, about - width);
   const line = lineThrough(samples, from, quietTo);
   const plain = meanAndDeviation(samples, from, quietTo);

@@ -18,20 +18,26 @@ const BEGIN = 0.3;
 const END = 0.1;
 /** Crossings closer than this many values are noise: smooth first. */
 const LEAST_VALUES = 6;
+/** Noise does not cross a hysteresis of this many standard deviations. */
+const SURE = 7;
 
-/** Null for a trace without excursions (constant, empty). */
-export function scaleOf(samples: Float64Array): Scale | null {
+/** Null for a trace without excursions (constant, empty). `noise`: per sample. */
+export function scaleOf(samples: Float64Array, noise: number): Scale | null {
   const level = medianOf(samples, 0, samples.length, 16_384);
   if (!Number.isFinite(level)) return null;
+  let found: Scale | null = null;
   for (let width = 1; width <= samples.length / 16; width *= 2) {
     const [low, high] = extremes(samples, width);
     const reach = Math.max(high - level, level - low);
     if (!(reach > 0)) return null;
     const sign = high - level >= level - low ? 1 : -1;
     const spacing = typicalSpacing(samples, width, level, sign, reach);
-    if (spacing !== null && spacing >= LEAST_VALUES) return { period: spacing * width, level, reach };
+    // Smoothed too much: the scale before was the last to be trusted.
+    if (spacing === null || (spacing < LEAST_VALUES && found)) break;
+    if (spacing >= LEAST_VALUES) found = { period: spacing * width, level, reach };
+    if (found && (BEGIN - END) * reach > (SURE * noise) / Math.sqrt(width)) break;
   }
-  return null;
+  return found;
 }
 
 /** Mean of `width` samples from i; NaN samples make it NaN. */

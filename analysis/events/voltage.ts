@@ -14,20 +14,22 @@ const OPPOSITE_SHARE = 0.6;
 const LOOKED_PERIODS = 200;
 /** Conduction levels of one record agree within this share of the largest swing. */
 const LEVEL_SHARE = 0.05;
+/** Scatter of a conduction, in units of the noise. */
+const FLAT = 2;
 
 export function voltageSwitchOffs(
   samples: Float64Array,
   lsb: number | null,
 ): { offs: SwitchOff[]; period: number } {
-  const rough = scaleOf(samples);
-  if (!rough) return { offs: [], period: 0 };
   const noise = differenceNoise(samples, 0, samples.length, lsb);
+  const rough = scaleOf(samples, noise);
+  if (!rough) return { offs: [], period: 0 };
   const first = findOnsets(samples, rough, noise, lsb);
   // Arcs and a fast second mode make the spacing of half-waves too short: the ring itself tells better.
   const period = ringPeriod(samples, first, rough.period);
   const scale = { ...rough, period };
-  const longer = period > 1.3 * rough.period;
-  const onsets = outOfConduction(longer ? findOnsets(samples, scale, noise, lsb) : first, noise, lsb);
+  const moved = Math.abs(period / rough.period - 1) > 0.15;
+  const onsets = outOfConduction(moved ? findOnsets(samples, scale, noise, lsb) : first, noise, lsb);
   const width = Math.max(2, Math.round(scale.period / 8));
   const offs: SwitchOff[] = onsets.map((onset, k) => {
     const previous = k > 0 ? onsets[k - 1].at : 0;
@@ -96,17 +98,16 @@ function ringPeriod(samples: Float64Array, onsets: Onset[], rough: number): numb
   return line ? ((2 * Math.PI) / line.omega) * width : rough;
 }
 
+/** Onsets out of a flat level, in the kick's direction, all from the same level. */
 function outOfConduction(onsets: Onset[], noise: number, lsb: number | null): Onset[] {
-  if (onsets.length === 0) return onsets;
-  const flat = onsets.filter((onset) => onset.scatter < 2 * noise + 0.02 * Math.abs(onset.swing));
-  const anchor = flat.reduce((a, b) => (sharpness(b) > sharpness(a) ? b : a), flat[0] ?? onsets[0]);
+  const flat = onsets.filter((onset) => onset.scatter < FLAT * noise + 0.02 * Math.abs(onset.swing));
+  if (flat.length === 0) return [];
+  const anchor = flat.reduce((a, b) => (sharpness(b) > sharpness(a) ? b : a));
   const reach = Math.max(...flat.map((onset) => Math.abs(onset.swing)));
-  const own = flat.filter(
-    (onset) => onset.polarity === anchor.polarity || Math.abs(onset.swing) > OPPOSITE_SHARE * reach,
-  );
-  const level = medianOf(
-    own.filter((onset) => Math.abs(onset.swing) > 0.5 * reach).map((onset) => onset.level),
-  );
   const tolerance = Math.max(6 * noise, 2 * (lsb ?? 0), LEVEL_SHARE * reach);
-  return own.filter((onset) => Math.abs(onset.level - level) < tolerance);
+  return flat.filter(
+    (onset) =>
+      Math.abs(onset.level - anchor.level) < tolerance &&
+      (onset.polarity === anchor.polarity || Math.abs(onset.swing) > OPPOSITE_SHARE * reach),
+  );
 }
