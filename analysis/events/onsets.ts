@@ -10,9 +10,8 @@ export interface Onset {
   /** Instant by the edge itself, fractional sample number. */
   at: number;
   u: number;
-  /** Level just before, its slope per sample, its scatter. */
+  /** Level just before, and its scatter. */
   level: number;
-  slope: number;
   scatter: number;
   /** Largest excursion from the level within a period, with its sign. */
   swing: number;
@@ -99,6 +98,38 @@ function contrastAt(
   return swing / Math.max(high - low, floor);
 }
 
+/** Periods of conduction at most that its level is taken from. */
+const CALM_WINDOWS = 8;
+
+/** Level of the quiet before, from as much of it as stays alike; sloped only where the slope is sure. */
+function calmBefore(
+  samples: Float64Array,
+  about: number,
+  width: number,
+  quiet: number,
+  noise: number,
+  lsb: number | null,
+): { level: (i: number) => number; scatter: number } | null {
+  const to = Math.max(2, about - width);
+  let from = Math.max(0, to - quiet * width);
+  const near = meanAndDeviation(samples, from, to);
+  if (near.count === 0) return null;
+  const scatter = Math.max(near.deviation || 0, noise);
+  const like = Math.max((4 * scatter) / Math.sqrt(near.count), 0.5 * (lsb ?? 0));
+  for (let k = 1; k < CALM_WINDOWS && from > 0; k++) {
+    const earlier = Math.max(0, from - quiet * width);
+    const { mean, deviation, count } = meanAndDeviation(samples, earlier, from);
+    if (!(Math.abs(mean - near.mean) < like) || deviation > 1.5 * scatter || count < near.count / 2) break;
+    from = earlier;
+  }
+  const line = lineThrough(samples, from, to);
+  const whole = meanAndDeviation(samples, from, to);
+  if (!line) return { level: () => whole.mean, scatter: Math.max(whole.deviation || 0, noise) };
+  const sure = Math.abs(line.slope) > 4 * line.deviation * Math.sqrt(12 / whole.count ** 3);
+  const level = sure ? (i: number) => line.level + line.slope * (i - from) : () => whole.mean;
+  return { level, scatter: Math.max(sure ? line.deviation : whole.deviation || 0, noise) };
+}
+
 /** The edge on the raw samples: leaves the quiet level for good, extrapolated back to it. */
 function refine(
   samples: Float64Array,
@@ -109,22 +140,17 @@ function refine(
   noise: number,
   lsb: number | null,
 ): Onset | null {
-  const from = Math.max(0, about - quiet * width);
-  const quietTo = Math.max(from + 2, about - width);
-  const line = lineThrough(samples, from, quietTo);
-  const plain = meanAndDeviation(samples, from, quietTo);
-  if (plain.count === 0) return null;
-  const scatter = Math.max(line?.deviation ?? plain.deviation ?? 0, noise, 0) || 0;
-  const level = (i: number) =>
-    line && quietTo - from > 6 ? line.level + line.slope * (i - from) : plain.mean;
+  const calm = calmBefore(samples, about, width, quiet, noise, lsb);
+  if (!calm) return null;
+  const { level, scatter } = calm;
   const end = Math.min(samples.length, about + Math.ceil(scale.period));
   let swing = 0;
   for (let i = about - width; i < end; i++) {
-    const d = samples[i] - plain.mean;
+    const d = samples[i] - level(i);
     if (Math.abs(d) > Math.abs(swing)) swing = d;
   }
   if (swing === 0) return null;
-  const first = firstSwing(samples, about - 2 * width, end, plain.mean, swing);
+  const first = firstSwing(samples, about - 2 * width, end, level(about), swing);
   const polarity = first >= 0 ? 1 : -1;
   const size = Math.abs(first);
   const least = Math.min(0.4 * size, Math.max(5 * scatter, 1.5 * (lsb ?? 0), 0.02 * size));
@@ -136,7 +162,7 @@ function refine(
   const at = high > leave + 1 ? crossing(samples, leave, high + 1, level) : between(samples, leave, level);
   const u = high > leave + 1 ? Math.max(0.1, (scatter / size) * (high - leave)) : 0.29;
   const bounded = Math.min(leave, Math.max(leave - Math.max(2, 0.1 * scale.period), at));
-  return { at: bounded, u, level: level(bounded), slope: line?.slope ?? 0, scatter, swing: first, polarity };
+  return { at: bounded, u, level: level(bounded), scatter, swing: first, polarity };
 }
 
 /** First excursion that reaches half the largest: the kick's own sign. */

@@ -6,6 +6,7 @@
 /** A sinusoid stays within 4 % of its peak for 18 % of the half-wave; a cut one far longer. */
 const NEAR_PEAK = 0.04;
 const FLAT_SHARE = 0.42;
+const LEAST_SAMPLES = 6;
 
 /**
  * First sample after the last cut half-wave of samples[from … to), `from` when none is cut. `level` is
@@ -25,7 +26,7 @@ export function afterFlatTops(
   for (let i = from + 1; i < to; i++) {
     const side = Math.sign(samples[i] - level);
     if (side === sign || side === 0 || !Number.isFinite(samples[i])) continue;
-    if (i - begin >= 6 && isFlat(samples, begin, i, level, noise, least)) start = i;
+    if (i - begin >= LEAST_SAMPLES && isFlat(samples, begin, i, level, noise, least)) start = i;
     begin = i;
     sign = side;
   }
@@ -49,5 +50,6 @@ function isFlat(
   for (let i = from; i < to; i++) if (Math.abs(samples[i] - level) > peak - band) near++;
   // What a clean half-sine would have in that band.
   const clean = (2 / Math.PI) * Math.acos(1 - band / peak);
-  return near / (to - from) > Math.max(FLAT_SHARE, clean + 0.2);
+  // Two samples more than the share: few samples fall in the band by chance.
+  return near - 2 > (to - from) * Math.max(FLAT_SHARE, clean + 0.15);
 }

@@ -9,6 +9,8 @@ export interface Judgement {
 
 const LEAST_CYCLES = 3;
 const LEAST_PER_CYCLE = 6;
+/** A wave that would need a higher quality than this is none that a coil can have. */
+const MOST_Q = 2000;
 const GOOD_RESIDUAL = 1.5;
 /** Residuals this large against the ring itself mean that it is no ring. */
 const REFUSED_SHARE = 0.35;
@@ -29,7 +31,7 @@ export function judgeFit(fit: RingFit, noise: number): Judgement {
   const refuse = (reason: string): Judgement => ({ quality: "refused", reason });
   if (!(mode.decay_per_s > 0) && -mode.decay_per_s > 2 * decayU && -mode.decay_per_s * window_s > 0.05)
     return refuse("the oscillation grows instead of dying away: not the free ring of a coil");
-  if (!(mode.decay_per_s > 2 * decayU))
+  if (mode.decay_per_s + 2 * decayU < (Math.PI * mode.frequency_Hz) / MOST_Q)
     return refuse("the oscillation does not die away within the window: not the free ring of a coil");
   if (fit.residual > REFUSED_SHARE * power)
     return refuse("what is left after the fit is too large against the ring itself: no damped oscillation");
@@ -41,6 +43,7 @@ export function judgeFit(fit: RingFit, noise: number): Judgement {
   const reasons: string[] = [];
   if (cycles < LEAST_CYCLES)
     reasons.push(`only ${cycles.toFixed(1)} cycles of the ring can be seen (3 are needed)`);
+  if (!(mode.decay_per_s > 2 * decayU)) reasons.push("the window is too short to tell the decay from none");
   if (perCycle < LEAST_PER_CYCLE) reasons.push(`only ${perCycle.toFixed(1)} samples a cycle (6 are needed)`);
   if (fit.residual > GOOD_RESIDUAL * noise)
     reasons.push(
