@@ -21,7 +21,7 @@ export function glyphPath(row: PulseRow, { x, y, width, height }: GlyphBox): str
   const { sketch, sketchOnset } = row;
   if (sketch.length < 2) return `M${r(x)} ${r(y - 2)}V${r(y + 2)}`;
   const step = width / (sketch.length - 1);
-  const points = sketch.map((level, at) => [x + at * step, Math.min(Math.max(level, 0), 1) * height]);
+  const points = sketch.map((level, at) => [x + at * step, (level > 0 ? Math.min(level, 1) : 0) * height]);
   const cut = sketchOnset === null ? points.length - 1 : Math.round(sketchOnset * (points.length - 1));
   const whole = points.slice(0, Math.max(cut, 0) + 1);
   return outline(whole, y) + tail(points.slice(cut + 1), y);

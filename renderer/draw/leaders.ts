@@ -55,6 +55,16 @@ function stack(fromRight: Place[], side: Place["side"], sky: Skyline, { gap, ...
   return lanes;
 }
 
+/** Corners of a leader: up or down to its lane, along it to `turn`, slanting to its note at `stop`. */
+export function leaderCorners(place: Lane, note_y: number, turn: number, stop: number): [number, number][] {
+  return [
+    [place.x, place.y],
+    [place.x, place.lane],
+    [turn, place.lane],
+    [stop, note_y],
+  ];
+}
+
 export interface Block {
   /** Where its first line would like to be. */
   wish: number;

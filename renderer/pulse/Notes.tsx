@@ -1,4 +1,5 @@
 /** Leader lines, and the notes they end at: in the margin, or numbered below on a narrow page. */
+import { leaderCorners } from "../draw/leaders.ts";
 import { circlePath, lozengePath } from "../draw/glyph.ts";
 import { faces, type Frame, type PlacedNote } from "./layout.ts";
 
@@ -37,7 +38,7 @@ export function Leaders({ placed, frame, lit }: Lit & { frame: Frame }) {
         <path
           className="leader"
           data-note={note.id}
-          d={`M${lane.x} ${lane.y}V${lane.lane}H${turn}L${stop} ${end}H${frame.notesX - 5}`}
+          d={`M${leaderCorners(lane, end, turn, stop).join("L")}H${frame.notesX - 5}`}
         />
         <path d={mark} />
       </g>

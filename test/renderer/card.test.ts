@@ -1,0 +1,86 @@
+/** What the setup card asks about, and what it makes of an entry. */
+import { describe, expect, it } from "vitest";
+import type { CaptureReading, ChannelReading } from "../../analysis/reading-format.ts";
+import { parseSetup } from "../../analysis/setup/parse.ts";
+import { setupSchema } from "../../analysis/setup/schema.ts";
+import { doubts } from "../../renderer/setup/doubts.ts";
+import { allFields } from "../../renderer/setup/fields.ts";
+import { draftOf, readDraft, shownValue } from "../../renderer/setup/value.ts";
+
+const field = (key: string) => allFields.find((field) => field.key === key)!;
+const channel = (part: Partial<ChannelReading>) =>
+  ({
+    name: "CH1",
+    role: "switch-node",
+    unit: "V",
+    scale: 1,
+    maximum: 310,
+    minimum: -290,
+    ...part,
+  }) as ChannelReading;
+const reading = (...channels: ChannelReading[]) => ({ channels }) as CaptureReading;
+
+describe("implausible entries", () => {
+  it("a capacitor of 330 mF is questioned, with the prefixes that may have been meant", () => {
+    const [doubt] = doubts({ capacitor_F: { value: 0.33e-3, tolerance: 0.05 } }, null);
+    expect(doubt.text).toContain("330\u00a0µF");
+    expect(doubt.offers.map((offer) => offer.words)).toContain("I meant 330\u00a0nF");
+    const [offer] = doubt.offers;
+    expect(offer.change).toEqual({ capacitor_F: { value: 3.3e-7, tolerance: 0.05 } });
+  });
+
+  it("a usual entry is not", () => {
+    expect(doubts({ capacitor_F: 3.3e-7, supply_V: 12, switchRating_V: 600 }, null)).toEqual([]);
+  });
+
+  it("a 10× probe stated on top of the scope's own factor is questioned where it passes the rating", () => {
+    const setup = { switchRating_V: 600, channels: [{ name: "CH1", scale: 10 }] };
+    const [doubt] = doubts(setup, reading(channel({ scale: 10, maximum: 3100, minimum: -2900 })));
+    expect(doubt.text).toContain("3.10\u00a0kV");
+    expect(doubt.text).toContain("310\u00a0V");
+    expect(doubt.offers[0].change).toEqual({ channels: [{ name: "CH1", scale: 1 }] });
+    expect(doubts(setup, reading(channel({ scale: 10 })))).toEqual([]);
+  });
+});
+
+describe("fields", () => {
+  it("are the schema's own, all but those with a row of their own", () => {
+    const ownRow = ["format", "run", "gap", "channels"];
+    const known = Object.keys(setupSchema.entries).filter((key) => !ownRow.includes(key));
+    expect(allFields.map((field) => field.key).toSorted()).toEqual(known.toSorted());
+  });
+
+  it("give back what they show", () => {
+    const setup = parseSetup({
+      capacitor_F: { value: 3.3e-7, tolerance: 0.05 },
+      supply_V: 12,
+      airPressure_Pa: 98_500,
+      windingTemperature_C: -4,
+      expected: "spark",
+      coil: "A",
+    });
+    for (const key of [
+      "capacitor_F",
+      "supply_V",
+      "airPressure_Pa",
+      "windingTemperature_C",
+      "expected",
+      "coil",
+    ] as const)
+      expect(readDraft(field(key), draftOf(field(key), setup), setup)).toEqual({ value: setup[key] });
+    expect(shownValue(field("capacitor_F"), setup)).toBe("330\u00a0nF ± 5\u00a0%");
+  });
+
+  it("take an empty entry as a statement taken back, and say what is wrong with another", () => {
+    expect(readDraft(field("supply_V"), { text: " ", tolerance: "" }, {})).toEqual({ value: null });
+    expect(readDraft(field("supply_V"), { text: "twelve", tolerance: "" }, {})).toHaveProperty("problem");
+    expect(readDraft(field("capacitor_F"), { text: "330n", tolerance: "500" }, {})).toHaveProperty("problem");
+  });
+
+  it("keep a stated coverage factor when the value changes", () => {
+    const before = { capacitor_F: { value: 3.3e-7, tolerance: 0.02, k: 2 } };
+    expect(readDraft(field("capacitor_F"), { text: "340n", tolerance: "2" }, before)).toEqual({
+      value: { value: 3.4e-7, tolerance: 0.02, k: 2 },
+    });
+  });
+});
