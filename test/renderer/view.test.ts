@@ -24,6 +24,16 @@ describe("routes", () => {
   });
 });
 
+const pulseAt = (index: number, switchOffTime_s: number) =>
+  ({
+    index,
+    switchOffTime_s,
+    dwell_s: 0.002,
+    ring: null,
+    spark: null,
+    peakTime_s: switchOffTime_s + 1e-4,
+  }) as PulseReading;
+
 describe("the shown stretch of a record", () => {
   const limit = { from: -1, to: 9 };
 
@@ -37,16 +47,7 @@ describe("the shown stretch of a record", () => {
   });
 
   it("shows a pulse up to the next one's conduction", () => {
-    const pulse = (index: number, switchOffTime_s: number) =>
-      ({
-        index,
-        switchOffTime_s,
-        dwell_s: 0.002,
-        ring: null,
-        spark: null,
-        peakTime_s: switchOffTime_s + 1e-4,
-      }) as PulseReading;
-    const pulses = [pulse(0, 0.01), pulse(1, 0.02)];
+    const pulses = [pulseAt(0, 0.01), pulseAt(1, 0.02)];
     const reading = { timebase: { start_s: 0, step_s: 1e-6, samples: 30_001 }, pulses } as CaptureReading;
     const span = pulseSpan(reading, pulses[0]);
     expect(span.from).toBeLessThan(0.01);
