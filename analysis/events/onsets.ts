@@ -23,8 +23,8 @@ const PER_PERIOD = 16;
 /** Quiet needed before, and swing looked for after, in periods: a ring is never quiet for that long. */
 const QUIET = 0.55;
 const AHEAD = 0.65;
-/** The swing must exceed the unrest before it by this factor. */
-const CONTRAST = 4;
+/** The swing must exceed the scatter before it by this factor; a ring or a beat reaches 4 at most. */
+const CONTRAST = 8;
 /** Swings below this share of the record's largest are turn-on edges, bursts, pick-up. */
 const LEAST_SHARE = 0.1;
 
@@ -33,7 +33,7 @@ export function findOnsets(samples: Float64Array, scale: Scale, noise: number, l
   const values = thinned(samples, width);
   const quiet = Math.max(4, Math.ceil((QUIET * scale.period) / width));
   const ahead = Math.max(4, Math.ceil((AHEAD * scale.period) / width));
-  const floor = Math.max((4 * noise) / Math.sqrt(width), (lsb ?? 0) * 1.01, 1e-9 * scale.reach);
+  const floor = Math.max(noise / Math.sqrt(width), (lsb ?? 0) / 3, 1e-9 * scale.reach);
   const onsets: Onset[] = [];
   let best = -1;
   let bestContrast = 0;
@@ -70,7 +70,7 @@ function thinned(samples: Float64Array, width: number): Float64Array {
   return out;
 }
 
-/** Swing over the next values in units of the range of those before; 0 where either is not there. */
+/** Swing over the next values in units of the scatter of those before; 0 where either is not there. */
 function contrastAt(
   values: Float64Array,
   b: number,
@@ -80,22 +80,15 @@ function contrastAt(
   least: number,
 ): number {
   const from = Math.max(0, b - quiet);
-  let low = Infinity;
-  let high = -Infinity;
-  for (let k = from; k < b; k++) {
-    const y = values[k];
-    if (y < low) low = y;
-    if (y > high) high = y;
-  }
-  if (b - from < 3 || !(high >= low)) return 0;
-  const level = (high + low) / 2;
+  const { mean: level, deviation, count } = meanAndDeviation(values, from, b);
+  if (count < 3) return 0;
   const to = Math.min(values.length, b + ahead);
   let swing = 0;
   for (let k = b; k < to; k++) swing = Math.max(swing, Math.abs(values[k] - level) || 0);
-  if (swing < least || swing < 2 * floor) return 0;
+  if (swing < least || swing < 6 * floor) return 0;
   // The first value already on its way: the edge is here, not later.
   if (Math.abs(values[b] - level) < 0.05 * swing && Math.abs(values[b + 1] - level) < 0.1 * swing) return 0;
-  return swing / Math.max(high - low, floor);
+  return swing / Math.max(deviation, floor);
 }
 
 /** Periods of conduction at most that its level is taken from. */

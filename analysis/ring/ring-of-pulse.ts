@@ -17,9 +17,9 @@ export interface PulseRing extends WindowedRing {
 }
 
 /** Share of a period after the edge before the first window begins. */
-const GUARD = 0.04;
+const GUARD = 0.1;
 /** How far the model's instant may be from the edge's, in periods. */
-const REACH = 0.12;
+const REACH = 0.16;
 
 export function ringOfPulse(place: Omit<Place, "from">, off: SwitchOff): PulseRing | null {
   const { samples, period, noise } = place;
