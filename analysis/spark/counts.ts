@@ -15,8 +15,13 @@ export const verdictOf = (pulse: PulseReading): Verdict =>
  */
 export function countPulses(pulses: PulseReading[], setup: Setup): RunCounts {
   const count = (verdict: Verdict) => pulses.filter((pulse) => verdictOf(pulse) === verdict).length;
-  const [sparks, quiet, unclear] = [count("spark"), count("no-spark"), count("unclear")];
-  const all = pulses.length;
+  return countsOf({ sparks: count("spark"), quiet: count("no-spark"), unclear: count("unclear") }, setup);
+}
+
+/** The same from numbers already counted. */
+export function countsOf(counted: Pick<RunCounts, "sparks" | "quiet" | "unclear">, setup: Setup): RunCounts {
+  const { sparks, quiet, unclear } = counted;
+  const all = sparks + quiet + unclear;
   const counts = { pulses: all, sparks, quiet, unclear };
   if (setup.expected !== "spark") return { ...counts, misfires: null, misfireRate: null };
   const misfireRate =
