@@ -11,35 +11,52 @@ import { damageNotes } from "./damage.ts";
 import { guessRoles } from "./roles.ts";
 import { shotChannels, wideNote } from "./wide.ts";
 import { timeBaseOf, type RecordTime } from "./time-base.ts";
-import { axisSpans, stretchOf } from "./axis-spans.ts";
+import { axisSpans, stretchOf, withoutAxis } from "./axis-spans.ts";
 
 export function assemble(layout: Layout, columns: Columns, setup: Setup): Capture[] {
-  const shared: Note[] = damageNotes(layout, columns);
-  const captures: Capture[] = [];
-  let position = 0;
-  for (const group of mergeEqualAxes(layout.axes.groups, columns)) {
-    const raw = group.values.map((column): RawChannel => {
-      const name = layout.names.get(column) ?? { name: "", spelled: null, unit: null };
-      return {
-        position: position++,
-        name,
-        values: columns.column(column),
-        tally: columns.tallies.get(column)!,
-        symbolic: layout.block.symbolic.includes(column),
-        column,
-      };
-    });
-    const wide = wideNote(layout, raw, setup);
-    for (const time of axisSpans(layout, columns, group))
-      for (const channels of shotChannels(raw, setup, wide !== null))
-        captures.push(
-          captureOf({ layout, time, channels, setup, notes: [...shared, ...(wide ? [wide] : [])] }),
-        );
-  }
+  const captures = layout.traces
+    ? traceCaptures(layout, layout.traces, setup)
+    : columnCaptures(layout, columns, setup);
   captures.forEach((capture, index) => {
     capture.record = { index, count: captures.length, time: segmentTime(layout, index, captures.length) };
   });
   return captures;
+}
+
+function columnCaptures(layout: Layout, columns: Columns, setup: Setup): Capture[] {
+  const shared: Note[] = [...layout.notes, ...damageNotes(layout, columns)];
+  const captures: Capture[] = [];
+  let position = 0;
+  for (const group of mergeEqualAxes(layout.axes.groups, columns)) {
+    const raw = group.values.map((column) => rawChannel(layout, columns, column, position++));
+    const wide = wideNote(raw, setup);
+    const notes = [...shared, ...(wide ? [wide] : [])];
+    for (const time of axisSpans(layout, columns, group))
+      for (const channels of shotChannels(raw, setup, wide !== null))
+        captures.push(captureOf({ layout, time, channels, setup, notes }));
+  }
+  return captures;
+}
+
+function rawChannel(layout: Layout, columns: Columns, column: number, position: number): RawChannel {
+  return {
+    position,
+    name: layout.names.get(column) ?? { name: "", spelled: null, unit: null },
+    values: columns.column(column),
+    tally: columns.tallies.get(column)!,
+    symbolic: layout.block.symbolic.includes(column),
+    column,
+  };
+}
+
+/** One trace a row: a record each, or channels of one where that is stated. */
+function traceCaptures(layout: Layout, traces: RawChannel[], setup: Setup): Capture[] {
+  const time = withoutAxis(layout, traces[0].values.length);
+  const together =
+    setup.wide === "channels" ? [traces.map((trace, position) => ({ ...trace, position }))] : null;
+  return (together ?? traces.map((trace) => [trace])).map((channels) =>
+    captureOf({ layout, time, channels, setup, notes: layout.notes }),
+  );
 }
 
 interface CaptureParts {
@@ -64,7 +81,7 @@ function captureOf({ layout, time, channels, setup, notes }: CaptureParts): Capt
     acquisition: [],
     notes: [...base.notes, ...notes, ...built.flatMap((one) => one.notes)],
   };
-  capture.notes.push(...guessRoles(capture, setup));
+  capture.notes.push(...guessRoles(capture));
   const acquired = acquisitionOf(capture, layout, time.pairs);
   capture.acquisition = acquired.codes;
   capture.notes.push(...acquired.notes);

@@ -52,7 +52,7 @@ export function axisSpans(layout: Layout, columns: Columns, group: AxisGroup): R
 }
 
 /** No time in the data: the whole is one record. */
-function withoutAxis({ axes }: Layout, rows: number): RecordTime {
+export function withoutAxis({ axes }: Layout, rows: number): RecordTime {
   return {
     name: null,
     axis: false,

@@ -1,4 +1,5 @@
 /** The numeric bulk: whole lines of bytes → one Float64Array a column, and what was odd about them. */
+import { joinDecimalCommas } from "./join-commas.ts";
 import { decodeText } from "./encoding.ts";
 import { readCell, type NumberFormat } from "./number.ts";
 import { scanEnd, scanNumber } from "./scan-number.ts";
@@ -18,6 +19,8 @@ export interface BulkPlan {
   symbols: number[];
   /** Without a time column a line of separators alone is a sample without a number. */
   keepEmptyRows: boolean;
+  /** Every first comma of two is a decimal mark. */
+  joinCommas: boolean;
 }
 
 /** A line inside the block that is no row of numbers, or not a whole one. */
@@ -54,8 +57,9 @@ const [tab, lineFeed, carriageReturn, space, quote] = [9, 10, 13, 32, 34];
 const kinds = ["number", "blank", "missing", "over", "text"] as const;
 const [isNumber, isBlank, isText] = [0, 1, 4];
 
-/** Parses whole lines. `bytes` ends after a line end, or at the end of the file. */
-export function parseBulk(bytes: Uint8Array, plan: BulkPlan): ParsedChunk {
+/** Parses whole lines, which end after a line end, or at the end of the file. */
+export function parseBulk(lines: Uint8Array, plan: BulkPlan): ParsedChunk {
+  const bytes = plan.joinCommas ? joinDecimalCommas(lines) : lines;
   const { width, separator, columns } = plan;
   const blanks = separator === space;
   const padding = separator === tab ? space : tab;

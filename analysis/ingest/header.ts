@@ -23,12 +23,18 @@ export interface Header {
 
 const comment = /^\s*(#|%|;|\/\/|!)+\s?/;
 
-export function readHeader(lines: Line[], rows: Row[], block: Block): Header {
+export function readHeader(lines: Line[], rows: Row[], block: Block, separator: string): Header {
   const above: HeaderLine[] = [];
   for (let i = 0; i < block.from; i++) {
     const text = lines[i].text;
     if (text.replace(/[\s,;]/g, "") === "") continue;
-    above.push({ ...rows[i], text, line: lines[i].number, comment: comment.test(text) && isComment(text) });
+    above.push({
+      ...rows[i],
+      ...(separator === " " ? { cells: wordsOf(text) } : {}),
+      text,
+      line: lines[i].number,
+      comment: comment.test(text) && isComment(text),
+    });
   }
   const table = takeNames(above, block);
   const rest = table.rest.map((line) => settingOf(line));
@@ -38,6 +44,16 @@ export function readHeader(lines: Line[], rows: Row[], block: Block): Header {
     units: table.units,
     segments: table.rest.filter(({ cells }) => /^#\d+$/.test(cells[0].trim())).map(({ cells }) => cells),
   };
+}
+
+/** Between blanks a name and its bracketed unit are one cell; two blanks part cells where one does not. */
+function wordsOf(text: string): string[] {
+  const words = text
+    .replace(comment, "")
+    .trim()
+    .split(/\s{2,}|\t/);
+  if (words.length > 1) return words;
+  return words[0].split(/\s+(?![([/])/);
 }
 
 interface HeaderLine extends Row {

@@ -35,13 +35,15 @@ export interface Ingested {
 }
 
 const headBytes = 512 * 1024;
+const longestHead = 32 * 1024 * 1024;
 const pieceBytes = 2 * 1024 * 1024;
 
 /** For small files and tests: everything at once. Throws ReadingError. */
 export function ingestBytes(bytes: Uint8Array, setup: Setup, _name?: string): Capture[] {
   const { encoding, mark } = detectEncoding(bytes);
   const text = encoding === "bytes" ? bytes.subarray(mark) : utf16ToUtf8(bytes.subarray(mark), encoding);
-  const head = text.subarray(0, headBytes);
+  let head = text.subarray(0, headBytes);
+  while (head.length < text.length && isShort(head)) head = text.subarray(0, 4 * head.length);
   refuseForeign(head);
   const layout = planLayout(head, head.length === text.length, setup);
   const columns = new Columns(layout, likelyRows(layout, text.length));
@@ -61,7 +63,8 @@ export async function ingest(
   options: IngestOptions = {},
 ): Promise<Ingested> {
   const stream = new TextStream(source);
-  const head = await stream.next(headBytes);
+  let head = await stream.next(headBytes);
+  while (!stream.ended && isShort(head)) head = joined(head, await stream.next(3 * head.length));
   refuseForeign(head);
   const layout = planLayout(head, stream.ended, setup);
   const columns = new Columns(layout, likelyRows(layout, source.size));
@@ -112,6 +115,14 @@ function finish(layout: Layout, columns: Columns, setup: Setup, tail: Uint8Array
     .filter(({ length }) => length >= layout.plan.width)
     .slice(-40);
   return assemble(layout, columns, setup);
+}
+
+/** Too few lines to see how a file is built: its lines are long. */
+function isShort(head: Uint8Array): boolean {
+  let ends = 0;
+  for (let at = 0; at < head.length && ends < 64; at++) if (head[at] === 10 || head[at] === 13) ends++;
+  if (ends === 0 && head.length >= longestHead) throw endlessLine();
+  return ends < 64 && head.length < longestHead;
 }
 
 /** Just behind the last line end before `limit`; `limit` itself where there is none or at the text's end. */

@@ -1,13 +1,19 @@
 /** How a file is built, found from its first part alone; what the bulk parser and the assembly work by. */
 import { ReadingError } from "../errors.ts";
+import type { Note } from "../capture.ts";
 import type { Setup } from "../setup/schema.ts";
 import { findAxes, type Axes, type HeadColumn } from "./axes.ts";
 import { findBlock, type Block } from "./block.ts";
 import { parseBulk, type BulkPlan } from "./bulk.ts";
+import type { RawChannel } from "./channel.ts";
 import { chooseDialect, type Dialect, type DialectChoice } from "./dialect.ts";
+import { commaNote, isCommaAmbiguous } from "./decimal-comma.ts";
+import { joinDecimalCommas } from "./join-commas.ts";
 import { readHeader, type Header } from "./header.ts";
 import { splitLines, type Line } from "./lines.ts";
 import { nameColumns } from "./names.ts";
+import { refuseSpectrum } from "./spectrum.ts";
+import { isTransposed, refuseTooWide, rowChannels } from "./transposed.ts";
 import { statedTiming, timingColumns, type StatedTiming } from "./timing.ts";
 import type { NamedUnit } from "./units.ts";
 import { signatureOf } from "./signature.ts";
@@ -30,31 +36,49 @@ export interface Layout {
   /** First data lines, for what hangs on spelling. */
   sample: string[][];
   signature: string;
+  /** One trace a row: read already, there is no bulk. */
+  traces: RawChannel[] | null;
+  /** What had to be left open to go on. */
+  notes: Note[];
 }
 
 const sniffedLines = 6000;
 
 /** `complete`: the head is the whole file, so its last line is not cut. */
 export function planLayout(head: Uint8Array, complete: boolean, setup: Setup): Layout {
+  const parts = sniff(head, complete, setup);
+  const ambiguous = isCommaAmbiguous(parts);
+  if (!ambiguous || setup.decimalMark === ".") return describeLayout(parts, false);
+  if (setup.decimalMark !== ",") return describeLayout(parts, true);
+  const layout = describeLayout(sniff(joinDecimalCommas(head), complete, setup), false);
+  return { ...layout, plan: { ...layout.plan, joinCommas: true } };
+}
+
+function sniff(head: Uint8Array, complete: boolean, setup: Setup): Sniffed {
   let lines = splitLines(head, sniffedLines + 1);
   if (!complete || lines.length > sniffedLines) lines = lines.slice(0, -1);
   const texts = lines.map(({ text }) => text);
   const choice = chooseDialect(texts, setup.decimalMark ?? null);
   if (!choice) throw noNumbers(lines);
   const block = findBlock(choice);
-  const header = readHeader(lines, choice.rows, block);
-  return describeLayout({ head, lines, choice, block, header });
+  const header = readHeader(lines, choice.rows, block, choice.dialect.separator);
+  const sample = choice.rows.slice(block.from, block.to).map(({ cells }) => cells);
+  return { head, lines, choice, block, header, sample };
 }
 
-interface Parts {
+/** What the text itself shows, before anything is concluded from it. */
+export interface Sniffed {
   head: Uint8Array;
   lines: Line[];
   choice: DialectChoice;
   block: Block;
   header: Header;
+  /** First data lines, by cells. */
+  sample: string[][];
 }
 
-function describeLayout({ head, lines, choice, block, header }: Parts): Layout {
+function describeLayout(sniffed: Sniffed, ambiguous: boolean): Layout {
+  const { head, lines, choice, block, header, sample } = sniffed;
   const { dialect, rows } = choice;
   const timing = statedTiming(header);
   const plan = planBulk(dialect, block, true);
@@ -67,8 +91,13 @@ function describeLayout({ head, lines, choice, block, header }: Parts): Layout {
     const values = first.values[plan.columns.indexOf(column)];
     return { column, head: values, name: names.get(column) ?? { name: "", spelled: null, unit: null } };
   });
-  const axes = findAxes(columns, block.symbolic, timingColumns(header).length > 0);
-  const sample = rows.slice(block.from, block.to).map(({ cells }) => cells);
+  const transposed = isTransposed(block, block.to - block.from);
+  if (!transposed) refuseTooWide(block, lines[block.from].number);
+  const axes =
+    ambiguous || transposed
+      ? { groups: [{ axis: null, values: plan.columns }], counter: null, counterFrom: 0 }
+      : findAxes(columns, block.symbolic, timingColumns(header).length > 0);
+  refuseSpectrum(axes, names, timing);
   const axisText = new Map(
     axes.groups.flatMap(({ axis }) =>
       axis === null ? [] : [[axis, sample.map((cells) => cells[axis] ?? "")]],
@@ -87,6 +116,8 @@ function describeLayout({ head, lines, choice, block, header }: Parts): Layout {
     axisText,
     sample,
     signature: signatureOf(dialect, header, axes, names),
+    traces: transposed ? rowChannels(rows.slice(block.from, block.to), block, dialect.format) : null,
+    notes: ambiguous ? [commaNote()] : [],
   };
 }
 
@@ -100,6 +131,7 @@ function planBulk({ separator, format }: Dialect, block: Block, keepEmptyRows: b
     columns,
     symbols: block.symbolic,
     keepEmptyRows,
+    joinCommas: false,
   };
 }
 

@@ -1,6 +1,5 @@
 /** What each channel measures, guessed from name, unit and shape where the setup does not say; always noted. */
 import type { Capture, Channel, ChannelRole, Note } from "../capture.ts";
-import type { Setup } from "../setup/schema.ts";
 import { shapeOf, type Shape } from "./shape.ts";
 
 const named: [RegExp, ChannelRole][] = [
@@ -19,9 +18,12 @@ const named: [RegExp, ChannelRole][] = [
   [/coil|spule|winding|inductor/i, "coil-voltage"],
 ];
 
-export function guessRoles(capture: Capture, setup: Setup): Note[] {
+export function guessRoles(capture: Capture): Note[] {
   const notes: Note[] = [];
-  const open = capture.channels.filter(({ roleGuessed }) => roleGuessed);
+  const symbols = new Set(
+    capture.notes.filter(({ code }) => code === "symbol-column").map(({ channel }) => channel),
+  );
+  const open = capture.channels.filter(({ roleGuessed, name }) => roleGuessed && !symbols.has(name));
   const shapes = new Map(open.map((channel) => [channel, shapeOf(channel.samples)]));
   const taken = new Set(capture.channels.filter((channel) => !channel.roleGuessed).map(({ role }) => role));
   for (const channel of open) {
@@ -29,11 +31,12 @@ export function guessRoles(capture: Capture, setup: Setup): Note[] {
     if (role) settle(channel, role, "its name");
   }
   const unnamed = open.filter(({ role }) => role === "other");
+  // The strongest kick first: it is the switch node if any is.
   for (const channel of unnamed.toSorted((a, b) => kick(shapes.get(b)) - kick(shapes.get(a)))) {
     const guess = byShape(channel, shapes.get(channel) ?? null, taken);
     if (guess) settle(channel, guess.role, guess.why);
   }
-  guessUnits(open, shapes, setup, notes);
+  guessUnits(open, shapes, notes);
   return notes;
 
   function settle(channel: Channel, role: ChannelRole, why: string) {
@@ -70,9 +73,9 @@ function byShape(
   if (!shape || (channel.unit !== "V" && channel.unit !== "" && channel.unit !== "counts")) return null;
   if (shape.atExtremes > 0.9 && shape.high - shape.low < 60)
     return taken.has("gate") ? null : { role: "gate", why: "its two levels" };
-  if (channel.unit !== "V" && shape.rampShare > 0.6 && !taken.has("coil-current"))
+  if (channel.unit !== "V" && shape.rampShare > 0.8 && !taken.has("coil-current"))
     return { role: "coil-current", why: "its ramp" };
-  const leaves = Math.max(shape.above, shape.below) > 0.5 * (shape.high - shape.low) && shape.busy < 0.5;
+  const leaves = shape.swings >= 2 || shape.busy < 0.3;
   if (!taken.has("switch-node") && !taken.has("coil-voltage") && leaves)
     return { role: "switch-node", why: "its kick and ring" };
   if (!taken.has("secondary") && leaves && channel.unit === "V" && shape.high - shape.low > 2000)
@@ -80,10 +83,14 @@ function byShape(
   return null;
 }
 
+/** Zeros and ones are states, not volts. */
+const isLogic = ({ low, high, atExtremes }: Shape) => low === 0 && high === 1 && atExtremes === 1;
+
 /** A channel that kicks and rings without a unit is taken as volts, and said so. */
-function guessUnits(open: Channel[], shapes: Map<Channel, Shape | null>, _setup: Setup, notes: Note[]): void {
+function guessUnits(open: Channel[], shapes: Map<Channel, Shape | null>, notes: Note[]): void {
   for (const channel of open) {
-    if (channel.unit !== "" || !shapes.get(channel)) continue;
+    const shape = shapes.get(channel);
+    if (channel.unit !== "" || !shape || isLogic(shape)) continue;
     const unit = channel.role === "coil-current" || channel.role === "secondary-current" ? "A" : "V";
     if (channel.role === "other") continue;
     channel.unit = unit;

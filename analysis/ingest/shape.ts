@@ -14,7 +14,9 @@ export interface Shape {
   peakAt: number;
   /** Share of samples more than a quarter of the way from rest to the peak. */
   busy: number;
-  /** Longest rise in even steps as a share of the range: near 1 for a ramp. */
+  /** How often it swings past rest by more than a tenth of the range, in turn to either side. */
+  swings: number;
+  /** Largest straight rise from the rest level as a share of the height above it: near 1 for a ramp. */
   rampShare: number;
 }
 
@@ -54,7 +56,8 @@ export function shapeOf(samples: Float64Array): Shape | null {
     below: rest - low,
     peakAt,
     busy: busy / count,
-    rampShare: longestRamp(samples, low, high),
+    swings: countSwings(samples, rest, 0.1 * (high - low)),
+    rampShare: straightRise(samples, low, high, rest),
   };
 }
 
@@ -66,28 +69,48 @@ function restLevel(samples: Float64Array, low: number, high: number): number {
   return low + ((fullest + 0.5) * (high - low)) / bins;
 }
 
-/** In 200 block means: the longest run of steps of one sign, as a share of the range. */
-function longestRamp(samples: Float64Array, low: number, high: number): number {
-  const blocks = Math.min(200, samples.length >> 1);
-  const means: number[] = [];
-  for (let b = 0; b < blocks; b++) {
+/**
+ * In 200 block means: the largest rise that starts at rest and stays within 8 % of its chord (a quarter
+ * of a sine strays by 21 %, a half by 10 %), as a share of the height above rest.
+ */
+function straightRise(samples: Float64Array, low: number, high: number, rest: number): number {
+  const means = blockMeans(samples, Math.min(200, samples.length >> 1));
+  let largest = 0;
+  let from = 0;
+  for (let b = 1; b <= means.length; b++) {
+    if (means[b] > means[b - 1]) continue;
+    const rise = means[b - 1] - means[from];
+    const fromRest = Math.abs(means[from] - rest) < 0.15 * (high - low);
+    if (b - from >= 5 && fromRest && isChord(means.slice(from, b), rise)) largest = Math.max(largest, rise);
+    from = b;
+  }
+  return largest / (high - rest);
+}
+
+function countSwings(samples: Float64Array, rest: number, reach: number): number {
+  let side = 0;
+  let swings = 0;
+  for (const value of samples) {
+    const now = value > rest + reach ? 1 : value < rest - reach ? -1 : side;
+    if (now !== side) swings++;
+    side = now;
+  }
+  return swings;
+}
+
+const isChord = (means: number[], rise: number) =>
+  means.every((mean, i) => Math.abs(mean - means[0] - (rise * i) / (means.length - 1)) <= 0.08 * rise);
+
+function blockMeans(samples: Float64Array, blocks: number): number[] {
+  return Array.from({ length: blocks }, (_, b) => {
     let sum = 0;
     let count = 0;
     const to = Math.floor(((b + 1) * samples.length) / blocks);
-    for (let i = Math.floor((b * samples.length) / blocks); i < to; i++)
-      if (samples[i] === samples[i]) {
-        sum += samples[i];
-        count++;
-      }
-    means.push(count ? sum / count : NaN);
-  }
-  let longest = 0;
-  let from = 0;
-  for (let b = 1; b < means.length; b++) {
-    const step = means[b] - means[b - 1];
-    const rising = step > 0 && step < 0.25 * (high - low);
-    if (!rising) from = b;
-    else if (b - from >= 4) longest = Math.max(longest, means[b] - means[from]);
-  }
-  return longest / (high - low);
+    for (let i = Math.floor((b * samples.length) / blocks); i < to; i++) {
+      if (samples[i] !== samples[i]) continue;
+      sum += samples[i];
+      count++;
+    }
+    return count ? sum / count : NaN;
+  });
 }

@@ -109,7 +109,7 @@ function findJoints(values: Float64Array): number[] {
   let last = values[0];
   for (let i = 1; i < values.length; i++) {
     if (values[i] !== values[i]) continue;
-    if ((values[i] - last) * direction < -1.5 * step) joints.push(i);
+    if ((values[i] - last) * direction < -0.6 * step) joints.push(i);
     last = values[i];
   }
   return joints;

@@ -32,8 +32,13 @@ interface Timed {
 const unitChoices = ["s", "ms", "us", "ns"];
 const factors = { s: 1, ms: 1e-3, us: 1e-6, ns: 1e-9, ps: 1e-12 } as const;
 
+/** A question that must be answered before times mean anything. */
+const isOpen = ({ code }: Note) => code === "decimal-comma-ambiguous";
+
 export function timeBaseOf(layout: Layout, time: RecordTime, samples: number, setup: Setup): Timed {
   const notes: Note[] = [...mendingNotes(time)];
+  if (layout.notes.some(isOpen))
+    return { timebase: { start_s: 0, step_s: null, stepUncertainty_s: 0, samples }, notes };
   const unknown = { start_s: 0, step_s: null, stepUncertainty_s: 0, samples };
   if (setup.sampleInterval_s) {
     const start_s = time.axis ? startBySteps(time, setup.sampleInterval_s) : (layout.timing.start_s ?? 0);

@@ -97,7 +97,7 @@ export function splitName(cell: string): NamedUnit {
   const text = cell.trim();
   const patterns = [
     /^(.*?)\s*[[({]\s*([^\])}]*?)\s*[\])}]\s*$/,
-    /^(.*?)\s+in\s+(\S+)$/i,
+    /^(?:(.*?)\s+)?in\s+(\S+)$/i,
     /^(.*?)\s*\/\s*(\S+)$/,
     /^(.*?)_(\S+)$/,
     /^(.*?)\s*,\s*(\S+)$/,
@@ -106,15 +106,14 @@ export function splitName(cell: string): NamedUnit {
   for (const pattern of patterns) {
     const match = pattern.exec(text);
     if (!match) continue;
-    const time = timeName.test(match[1]);
-    const unit = readUnit(match[2], time) ?? (match[1] === "" ? readUnit(match[2], true) : null);
-    if (unit) return { name: match[1].trim(), spelled: match[2].trim(), unit };
-    if (pattern === patterns[0] && match[2].length <= 8 && /^[^\d]+$/.test(match[2]) && match[1] !== "")
-      return {
-        name: match[1].trim(),
-        spelled: match[2].trim(),
-        unit: { symbol: match[2].trim(), factor: 1 },
-      };
+    const [, name = "", inside] = match;
+    const time = timeName.test(name);
+    const unit = readUnit(inside, time) ?? (name === "" ? readUnit(inside, true) : null);
+    if (unit) return { name: name.trim(), spelled: inside.trim(), unit };
+    if (pattern === patterns[0] && inside.length <= 8 && /^[^\d]+$/.test(inside) && name !== "") {
+      const symbol = inside.trim();
+      return { name: name.trim(), spelled: symbol, unit: { symbol, factor: 1 } };
+    }
   }
   return { name: text, spelled: null, unit: null };
 }

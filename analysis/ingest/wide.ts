@@ -2,11 +2,10 @@
 import type { Note } from "../capture.ts";
 import type { Setup } from "../setup/schema.ts";
 import type { RawChannel } from "./channel.ts";
-import type { Layout } from "./layout.ts";
 
 const fewestShots = 9;
 
-export function wideNote(_layout: Layout, channels: RawChannel[], setup: Setup): Note | null {
+export function wideNote(channels: RawChannel[], setup: Setup): Note | null {
   if (channels.length < fewestShots) return null;
   if (setup.wide)
     return { code: "wide-columns", text: `${channels.length} columns, read as ${setup.wide} as stated.` };
