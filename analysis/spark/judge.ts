@@ -1,7 +1,8 @@
 /** All pulses of a run judged together: first what they agree on, then each against it. */
+import { median } from "../numeric/median.ts";
 import { likelihoodOf, type Likelihood } from "./likelihood.ts";
 import { agreedModes, bestTraits, ownModes } from "./modes.ts";
-import { referenceOf, distance, type Reference } from "./reference.ts";
+import { referenceOf, type Reference } from "./reference.ts";
 import type { KnownMode } from "./ring-sums.ts";
 import { traitsOf, type Traits } from "./traits.ts";
 import type { SparkWindow } from "./window.ts";
@@ -18,17 +19,15 @@ export interface Judged {
   reference: Reference | null;
 }
 
-/** A pulse that one free ring explains to the noise. */
-const CLEAN = 12;
 /** Pulses searched for modes of their own when no pulse is clean. */
 const SEARCHED = 8;
 
 export function judgePulses(candidates: Candidate[]): Judged[] {
-  const sets = modeSets(candidates);
+  const { sets, ceiling } = modeSets(candidates);
   const traits = candidates.map(({ window, modes }) => {
     const fitting = sets.filter((set) => modes.length === 0 || sets.length === 1 || near(set[0], modes[0]));
-    if (fitting.length > 0) return bestTraits(window, fitting);
-    return bestTraits(window, sets.length > 0 ? sets : [modes]);
+    if (fitting.length > 0) return bestTraits(window, fitting, ceiling);
+    return bestTraits(window, sets.length > 0 ? sets : [modes], ceiling);
   });
   const judged: Judged[] = [];
   for (const set of new Set(traits.map(({ modes }) => modes))) {
@@ -40,54 +39,70 @@ export function judgePulses(candidates: Candidate[]): Judged[] {
 
 const near = (a: KnownMode, b: KnownMode) => Math.abs(a.frequency_Hz / b.frequency_Hz - 1) < 0.12;
 
-function modeSets(candidates: Candidate[]): KnownMode[][] {
-  const own = candidates.flatMap(({ window, modes }) =>
-    modes.length > 0 ? [{ modes, traits: traitsOf(window, modes), window }] : [],
-  );
-  const quietest = Math.min(...own.map(({ traits, window }) => traits.split.variance / window.noise ** 2));
-  const clean = own.filter(
-    ({ traits, window }) =>
-      isClean(traits) && traits.split.variance / window.noise ** 2 < 4 * Math.max(1, quietest),
-  );
-  if (clean.length > 0) return agreedModes(clean.map(({ modes }) => modes));
+interface Own {
+  modes: KnownMode[];
+  traits: Traits;
+  /** Variance over what the samples' own noise gives. */
+  excess: number;
+}
+
+/** Modes of the run and the variance of its free rings, from its clean pulses; else from a search in some. */
+function modeSets(candidates: Candidate[]): { sets: KnownMode[][]; ceiling?: number } {
+  const own = candidates.flatMap(({ window, modes }): Own[] => {
+    if (modes.length === 0) return [];
+    const traits = traitsOf(window, modes);
+    return [{ modes, traits, excess: traits.split.variance / window.noise ** 2 }];
+  });
+  const quietest = Math.min(...own.map(({ excess }) => excess));
+  const calm = own.filter(({ excess }) => excess < 4 * Math.max(1, quietest));
+  const ceiling =
+    candidates.length > 2 ? 3 * median(calm.map(({ traits }) => traits.split.variance)) : undefined;
+  const clean = strongest(calm.filter(({ traits }) => isClean(traits)));
+  if (clean.length > 0) return { sets: agreedModes(clean.map(({ modes }) => modes)), ceiling };
   const step = Math.max(1, Math.floor(candidates.length / SEARCHED));
   const searched = candidates.filter((_, i) => i % step === 0);
   const best = searched.flatMap(({ window, modes }) => {
     const sets = ownModes(window, modes);
-    return sets.length > 0 ? [bestTraits(window, sets).modes] : [];
+    return sets.length > 0 ? [bestTraits(window, sets, ceiling).modes] : [];
   });
-  return agreedModes(best);
+  return { sets: agreedModes(best), ceiling };
 }
 
-const isClean = ({ misfit, split }: Traits) => misfit < CLEAN && split.gain < CLEAN * CLEAN;
+/** A spark leaves less of the ring: of clean pulses near one frequency those with the most left are the quiet ones. */
+function strongest(clean: Own[]): Own[] {
+  const size = ({ traits }: Own) => Math.hypot(...traits.rest!);
+  return clean.filter((each) =>
+    clean.every((other) => !near(each.modes[0], other.modes[0]) || size(each) > 0.8 * size(other)),
+  );
+}
+
+/** One ring, and it is the one the kick began: what is left of the kick's size belongs to the low mode. */
+const isClean = ({ oneRing, rest, kick }: Traits) =>
+  oneRing && rest !== null && Math.hypot(...rest) > 0.3 * kick;
 
 function judgeGroup(group: Traits[]): Judged[] {
-  let quiet = seeds(group);
-  let reference = referenceOf(group, quiet);
+  let reference = group.length > 1 ? referenceOf(group, seeds(group)) : null;
   // Twice: the second time with the pulses that the first found quiet.
-  for (let round = 0; round < 2 && reference && group.length > 1; round++) {
-    const found = group.flatMap((traits, i) =>
-      likelihoodOf(traits, reference, i).probability < 0.05 ? [i] : [],
-    );
-    if (found.length === 0) break;
-    quiet = found;
-    reference = referenceOf(group, quiet);
+  for (let round = 0; round < 2 && reference; round++) {
+    const held = reference;
+    const quiet = group.flatMap((traits, i) => (likelihoodOf(traits, held, i).probability < 0.05 ? [i] : []));
+    reference = referenceOf(group, quiet) ?? held;
   }
-  const used = group.length > 1 ? reference : null;
-  return group.map((traits, i) => ({ traits, likelihood: likelihoodOf(traits, used, i), reference: used }));
+  return group.map((traits, i) => ({ traits, likelihood: likelihoodOf(traits, reference, i), reference }));
 }
 
-/** Pulses to begin with: those without loss of their own, held together by the strongest rings. */
+/** Pulses to begin with: clean ones, else ones without clear loss of their own that agree; the strongest rings. */
 function seeds(group: Traits[]): number[] {
-  const places = group.map((_, i) => i);
-  const clean = places.filter((i) => isClean(group[i]) && group[i].rest);
+  const places = group.flatMap(({ rest }, i) => (rest ? [i] : []));
+  const clean = places.filter((i) => isClean(group[i]));
   const candidates =
-    clean.length > 0
-      ? clean
-      : places.filter((i) => group[i].rest && likelihoodOf(group[i], null, i).probability < 0.3);
+    clean.length > 0 ? clean : places.filter((i) => likelihoodOf(group[i], null, i).probability < 0.7);
   if (candidates.length === 0) return [];
-  const sizes = candidates.map((i) => Math.hypot(...group[i].rest!));
-  const top = candidates[sizes.indexOf(Math.max(...sizes))];
-  const alike = candidates.filter((i) => distance(group[i].rest!, group[top].rest!) < 0.15);
-  return alike.length > 0 ? alike : candidates;
+  const size = (i: number) => Math.hypot(...group[i].rest!);
+  const top = candidates.toSorted((p, q) => size(q) - size(p)).slice(0, Math.ceil(candidates.length / 2));
+  const centre = median(top.map(size));
+  const alike = candidates.filter((i) => Math.abs(size(i) / centre - 1) < 0.12);
+  // Without a clean pulse only many that agree closely count as quiet.
+  const close = candidates.filter((i) => Math.abs(size(i) / centre - 1) < 0.04);
+  return clean.length > 0 || close.length >= Math.max(3, 0.3 * group.length) ? alike : [];
 }

@@ -1,6 +1,6 @@
 /** From what a pulse shows to the probability of a spark. */
 import { distance, type Reference } from "./reference.ts";
-import type { Traits } from "./traits.ts";
+import { NOISE, type Traits } from "./traits.ts";
 
 export interface Likelihood {
   probability: number;
@@ -12,26 +12,25 @@ export interface Likelihood {
   loss: number | null;
 }
 
-/** Strength below which a disturbance is noise: √χ² of a few hundred blocks strays by about 7. */
-const NOISE = 12;
-
 export function likelihoodOf(traits: Traits, reference: Reference | null, place: number): Likelihood {
-  return reference ? againstRun(traits, reference, place) : byItself(traits);
+  const rest = reference?.rest[place];
+  return reference && rest ? againstRun(traits, reference, rest) : byItself(traits);
 }
 
-function againstRun(traits: Traits, reference: Reference, place: number): Likelihood {
+function againstRun(traits: Traits, reference: Reference, rest: [number, number]): Likelihood {
   const usual = reference.misfit + 3 * reference.misfitSpread;
   const excess = Math.sqrt(Math.max(0, traits.misfit ** 2 - usual ** 2));
   const disturbed = Math.max(
     excess,
     reference.misfit > NOISE ? 0 : Math.sqrt(Math.max(0, traits.split.gain)),
   );
-  if (!traits.ringAfter) return cutShort(traits, disturbed);
-  const rest = reference.rest[place];
-  const away = distance(traits.rest!, rest);
-  const loss = 1 - Math.hypot(...traits.rest!) / Math.hypot(...rest);
-  const stray = Math.max(0.01, reference.stray);
-  const sure = away / stray;
+  if (!traits.rest) return cutShort(traits, disturbed);
+  // Less current gives a smaller ring and a smaller kick alike; a spark takes from the ring alone.
+  const scale = traits.kick / reference.kick;
+  const scaled: [number, number] = [rest[0] * scale, rest[1] * scale];
+  const away = Math.min(distance(traits.rest, rest), distance(traits.rest, scaled));
+  const loss = 1 - Math.hypot(...traits.rest) / (Math.hypot(...rest) * Math.min(1, scale));
+  const sure = away / Math.max(0.01, reference.stray);
   const answer = (probability: number, because: Likelihood["because"]) => ({
     probability,
     because,
@@ -40,8 +39,9 @@ function againstRun(traits: Traits, reference: Reference, place: number): Likeli
   });
   if (disturbed > NOISE && away > 0.08 && sure > 4) return answer(away > 0.15 ? 0.999 : 0.98, "loss");
   if (disturbed > NOISE && sure > 4 && away > 0.03) return answer(0.8, "loss");
-  if (disturbed <= NOISE && loss > 0.05 && sure > 6) return answer(0.85, "missing");
-  if (disturbed <= NOISE) return answer(sure > 5 ? 0.1 : 0.001, "one-ring");
+  if (disturbed <= NOISE && loss > 0.15 && sure > 8) return answer(0.97, "missing");
+  if (disturbed <= NOISE && loss > 0.05 && sure > 6) return answer(0.6, "missing");
+  if (disturbed <= NOISE) return answer(sure > 5 ? 0.03 : 0.001, "one-ring");
   return answer(sure > 3 ? 0.2 : 0.01, "ring-goes-on");
 }
 
@@ -49,6 +49,8 @@ function againstRun(traits: Traits, reference: Reference, place: number): Likeli
 function cutShort(traits: Traits, disturbed: number): Likelihood {
   const nothing = { away: null, loss: traits.loss };
   if (disturbed <= NOISE) return { probability: 0.005, because: "one-ring", ...nothing };
+  // The window's very end may hold the next edge: no spark is read from it.
+  if (traits.tail) return { probability: 0.03, because: "one-ring", ...nothing };
   if (traits.ringBefore && disturbed > 20) return { probability: 0.97, because: "course", ...nothing };
   return { probability: disturbed > 20 ? 0.8 : 0.4, because: "doubt", ...nothing };
 }

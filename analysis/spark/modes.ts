@@ -22,7 +22,10 @@ export function agreedModes(quiet: KnownMode[][]): KnownMode[][] {
     if (set && modes[0].frequency_Hz < set[0][0].frequency_Hz * (1 + SAME)) set.push(modes);
     else sets.push([modes]);
   }
-  return sets.map((set) => [typical(set.map(([low]) => low)), ...secondMode(set)]);
+  // One stray pulse among many that agree is no coil of its own.
+  const largest = Math.max(...sets.map((set) => set.length));
+  const sound = sets.filter((set) => set.length * 4 > largest);
+  return sound.map((set) => [typical(set.map(([low]) => low)), ...secondMode(set)]);
 }
 
 function secondMode(set: KnownMode[][]): KnownMode[] {
@@ -38,9 +41,9 @@ const typical = (modes: KnownMode[]): KnownMode => ({
 });
 
 /** The set under which this pulse's two-sided ring explains most. */
-export function bestTraits(window: SparkWindow, sets: KnownMode[][]): Traits {
+export function bestTraits(window: SparkWindow, sets: KnownMode[][], ceiling?: number): Traits {
   return sets
-    .map((modes) => traitsOf(window, modes))
+    .map((modes) => traitsOf(window, modes, ceiling))
     .reduce((best, other) => (explained(other) < explained(best) ? other : best));
 }
 

@@ -21,12 +21,12 @@ export interface Split {
 /** Blocks of disturbance are charged this many σ² each: more than a fitting ring, less than a bad one. */
 const PRICE = 3;
 
-export function bestSplit(sums: RingSums, noise: number): Split {
+export function bestSplit(sums: RingSums, noise: number, ceiling: number): Split {
   const last = sums.boundaries.length - 1;
   const lefts = sums.boundaries.map((_, k) => sums.upTo(k));
   const rights = sums.boundaries.map((_, k) => sums.from(k));
   const whole = rights[0];
-  const variance = Math.max(noise * noise, floorOf(rights, sums.columns));
+  const variance = Math.max(noise * noise, Math.min(ceiling, floorOf(rights, sums.columns)));
   let [bestA, best, a, b] = [0, Number.POSITIVE_INFINITY, 0, 0];
   let cheapest = Number.POSITIVE_INFINITY;
   for (let k = 0; k <= last; k++) {

@@ -16,6 +16,10 @@ export interface Traits {
   ringBefore: boolean;
   /** A ring was seen after it. */
   ringAfter: boolean;
+  /** One free ring explains the whole pulse to the noise. */
+  oneRing: boolean;
+  /** The disturbance begins in the last stretch of the window. */
+  tail: boolean;
   /** Low mode of the ring after (cosine, sine), carried back to switch-off; null without a ring after. */
   rest: [cosine: number, sine: number] | null;
   /** Low mode of the ring before at the disturbance, and of the ring after: how far apart, over the former. */
@@ -27,24 +31,51 @@ export interface Traits {
   loss: number | null;
 }
 
+/** Strength below which a disturbance is noise: √χ² of a few hundred blocks strays by about 7. */
+export const NOISE = 12;
 /** Shorter stretches say nothing certain of a ring, in periods. */
 const LEAST_RING = 0.7;
 
-export function traitsOf(window: SparkWindow, modes: KnownMode[]): Traits {
+/** `ceiling`: variance a block at most has where the ring is free, as the run's quiet pulses show it. */
+export function traitsOf(
+  window: SparkWindow,
+  modes: KnownMode[],
+  ceiling = Number.POSITIVE_INFINITY,
+): Traits {
   const { blocks, period } = window;
   const amplitude = largest(window, 0, blocks.count).size;
   const stride = Math.max(1, Math.round(period / 8));
   const sums = new RingSums(blocks, modes, window, stride, amplitude, window.noise);
-  const split = bestSplit(sums, window.noise);
+  const split = bestSplit(sums, window.noise, ceiling);
   const a = sums.boundaries[split.a];
   const b = sums.boundaries[split.b];
   const first = largest(window, 0, Math.min(blocks.count, Math.ceil(period)));
   const ringBefore = a >= LEAST_RING * period && fits(split, "before", sums.columns);
   const ringAfter = blocks.count - b >= LEAST_RING * period && split.after.blocks > 2 * sums.columns;
-  const rest = ringAfter ? carriedBack(sums, split, b, window, modes[0]) : null;
+  const tail = ringBefore && blocks.count - a < LEAST_RING * period;
+  const oneRing = split.misfit < NOISE * NOISE && split.gain < NOISE * NOISE;
+  const rest = oneRing
+    ? carriedBack(sums, split.whole.coefficients, 0, window, modes[0])
+    : ringAfter
+      ? carriedBack(sums, split.after.coefficients, b, window, modes[0])
+      : null;
+  const known = rest !== null && isKnown(rest, first.size, oneRing ? 0 : b, split, window, modes[0]);
   const kick = { kick: first.size, kickBlock: first.block };
   const jump = ringBefore && ringAfter ? jumpOf(sums, split, a, b, modes[0], window) : null;
-  const traits = { sums, split, modes, a, b, ringBefore, ringAfter, rest, jump, ...kick };
+  const traits = {
+    sums,
+    split,
+    modes,
+    a,
+    b,
+    ringBefore,
+    ringAfter,
+    tail,
+    oneRing,
+    rest: known ? rest : null,
+    jump,
+    ...kick,
+  };
   return { ...traits, misfit: Math.sqrt(Math.max(0, split.misfit)), loss: lossOf(traits, window) };
 }
 
@@ -59,15 +90,29 @@ const inside = (window: SparkWindow, block: number, direction: 1 | -1) =>
 
 function carriedBack(
   sums: RingSums,
-  split: Split,
+  coefficients: Float64Array,
   b: number,
   window: SparkWindow,
   mode: KnownMode,
 ): [number, number] {
   const block = inside(window, b, 1);
-  const [c, s] = sums.amplitudeAt(split.after.coefficients, LOW, block);
+  const [c, s] = sums.amplitudeAt(coefficients, LOW, block);
   const grown = Math.exp(mode.decay_per_s * (window.first_s + block * window.step_s));
   return [c * grown, s * grown];
+}
+
+/** Carried back from far, noise grows with it; and no mode is larger than about the kick. */
+function isKnown(
+  rest: [number, number],
+  kick: number,
+  b: number,
+  split: Split,
+  window: SparkWindow,
+  mode: KnownMode,
+): boolean {
+  const grown = Math.exp(mode.decay_per_s * (window.first_s + inside(window, b, 1) * window.step_s));
+  const u = Math.sqrt((2 * split.variance) / window.period) * grown;
+  return u < 0.03 * kick && Math.hypot(...rest) < 1.7 * kick;
 }
 
 function jumpOf(

@@ -1,5 +1,6 @@
 /** What judging needs of a pulse's raw samples: block means from switch-off to the next edge. */
 import type { CaptureEvidence, PulseEvidence } from "../evidence.ts";
+import { median } from "../numeric/median.ts";
 import { makeBlocks, type Blocks } from "../ring/blocks.ts";
 import { gatherSecondary, type SecondaryEvidence } from "./secondary.ts";
 
@@ -33,25 +34,32 @@ export function gatherWindow(evidence: CaptureEvidence, pulse: PulseEvidence): S
   if (evidence.map.ring === null || step_s === null) return null;
   const period = periodOf(pulse, step_s);
   if (period === null) return null;
-  const { samples, unusable } = evidence.channels[evidence.map.ring];
+  const { samples, unusable, lsb } = evidence.channels[evidence.map.ring];
   const decimation = Math.max(1, Math.floor(period / BLOCKS_PER_PERIOD));
   // The first whole sample after the edge still holds part of it.
-  const from =
+  const opened =
     pulse.switchOff === null ? pulse.freeFrom : Math.max(pulse.freeFrom, Math.ceil(pulse.switchOff) + 1);
+  const closed = lastClosed(pulse, samples, opened, opened + 0.3 * period, lsb ?? 0);
+  const from = closed === null ? opened : closed + 2;
   const to = Math.min(pulse.freeTo, from + Math.ceil(MOST_PERIODS * period), samples.length);
   if (to - from < 8 * decimation) return null;
   const blocks = makeBlocks(samples, from, to, unusable, decimation);
   if (blocks.used < 8) return null;
   if (pulse.polarity < 0) turn(blocks);
-  const zero = pulse.switchOff ?? from;
+  const zero = closed === null ? (pulse.switchOff ?? from) : closed + 0.5;
   const levelOn = pulse.levelOn === null ? null : pulse.polarity * pulse.levelOn - blocks.level;
+  const noise = Math.max(
+    (pulse.fit?.noise ?? 0) / Math.sqrt(decimation),
+    conductionNoise(pulse, samples, decimation),
+  );
+  if (levelOn !== null) leaveOutConduction(blocks, levelOn, 4 * noise + (lsb ?? 0));
   return {
     blocks,
     first_s: (from + (decimation - 1) / 2 - zero) * step_s,
     step_s: decimation * step_s,
     zero_s: evidence.timebase.start_s + zero * step_s,
     startsInRing: pulse.switchOff === null,
-    noise: (pulse.fit?.noise ?? 0) / Math.sqrt(decimation),
+    noise,
     levelOn,
     period: period / decimation,
     secondary: gatherSecondary(evidence, pulse, from, to),
@@ -67,4 +75,59 @@ function turn(blocks: Blocks): void {
   for (let i = 0; i < blocks.count; i++) blocks.values[i] = -blocks.values[i];
   blocks.level = -blocks.level;
   for (let k = 0; k < blocks.moments.length; k++) blocks.moments[k] = -blocks.moments[k];
+}
+
+/** The next conduction may begin inside the window: its flat stretch at the end and the edge before it go. */
+function leaveOutConduction(blocks: Blocks, levelOn: number, tolerance: number): void {
+  let end = blocks.count;
+  while (end > 0 && Math.abs(blocks.values[end - 1] - levelOn) < tolerance) end--;
+  if (blocks.count - end < 3) return;
+  end = Math.max(0, end - 2);
+  blocks.count = end;
+  const segments: number[] = [];
+  for (let s = 0; s < blocks.segments.length; s += 2)
+    if (blocks.segments[s] < end) segments.push(blocks.segments[s], Math.min(end, blocks.segments[s + 1]));
+  blocks.segments = segments;
+}
+
+/** A bouncing contact closes again: the last sample at the conduction's level well before half a period; null: none. */
+function lastClosed(
+  pulse: PulseEvidence,
+  samples: Float64Array,
+  from: number,
+  to: number,
+  lsb: number,
+): number | null {
+  if (pulse.levelOn === null || pulse.switchOff === null) return null;
+  const tolerance = 3 * (pulse.fit?.noise ?? 0) + lsb;
+  for (let i = Math.min(samples.length, Math.floor(to)) - 1; i >= from; i--)
+    if (pulse.polarity * (samples[i] - pulse.levelOn) < tolerance) return i;
+  return null;
+}
+
+/**
+ * Scatter of block means where the switch conducts and nothing happens: holds the coloured part of the noise
+ * that differences of samples miss. 0 where that stretch is too short.
+ */
+function conductionNoise(pulse: PulseEvidence, samples: Float64Array, decimation: number): number {
+  if (pulse.switchOff === null) return 0;
+  const to = Math.floor(pulse.switchOff) - 2;
+  const from = Math.max(
+    0,
+    pulse.switchOn === null ? to - 24 * decimation : pulse.switchOn + 4,
+    to - 64 * decimation,
+  );
+  const { values, count } = makeBlocks(
+    samples,
+    Math.ceil(from),
+    Math.max(Math.ceil(from), to),
+    [],
+    decimation,
+  );
+  if (count < 8) return 0;
+  // Second differences: a slope or slow bend of the conduction's level is no noise. Middle of |white| is 0.6745·√6·σ.
+  const bends = Float64Array.from({ length: count - 6 }, (_, i) =>
+    Math.abs(values[i] - 2 * values[i + 3] + values[i + 6]),
+  );
+  return median(bends) / (0.6745 * Math.sqrt(6));
 }
