@@ -147,11 +147,13 @@ function refine(
   const polarity = first >= 0 ? 1 : -1;
   const size = Math.abs(first);
   const least = Math.min(0.4 * size, Math.max(5 * scatter, 1.5 * (lsb ?? 0), 0.02 * size));
-  let leave = Math.max(0, about - 2 * width);
-  while (leave < end && !(polarity * (samples[leave] - level(leave)) > least)) leave++;
-  if (leave >= end) return null;
-  let high = leave;
-  while (high + 1 < end && polarity * (samples[high + 1] - level(high + 1)) < 0.4 * size) high++;
+  let high = Math.max(0, about - 2 * width);
+  while (high < end && !(polarity * (samples[high] - level(high)) >= 0.4 * size)) high++;
+  if (high >= end) return null;
+  // Back from there to where the trace left the level for good.
+  let leave = high;
+  while (leave > 0 && polarity * (samples[leave - 1] - level(leave - 1)) > least) leave--;
+  high = Math.max(leave, high - 1);
   const at = high > leave + 1 ? crossing(samples, leave, high + 1, level) : between(samples, leave, level);
   const u = high > leave + 1 ? Math.max(0.1, (scatter / size) * (high - leave)) : 0.29;
   const bounded = Math.min(leave, Math.max(leave - Math.max(2, 0.1 * scale.period), at));

@@ -38,8 +38,70 @@ function shiftedBy(by: number, powers: number): void {
   }
 }
 
+/** The same for k ≤ 2 without loops: what every pair of modes needs at every step of a fit. */
+function addThree(
+  wRe: number,
+  wIm: number,
+  sRe: number,
+  sIm: number,
+  from: number,
+  length: number,
+  outRe: Float64Array,
+  outIm: Float64Array,
+): void {
+  let a = 1;
+  let aj = 0;
+  let b = 0;
+  let bj = 0;
+  let c = 0;
+  let cj = 0;
+  let n = 1;
+  let p = wRe;
+  let pj = wIm;
+  for (let bit = 30 - Math.clz32(length); bit >= 0; bit--) {
+    const b1 = b + n * a;
+    const b1j = bj + n * aj;
+    const c1 = c + n * (b + b1);
+    const c1j = cj + n * (bj + b1j);
+    c += p * c1 - pj * c1j;
+    cj += p * c1j + pj * c1;
+    b += p * b1 - pj * b1j;
+    bj += p * b1j + pj * b1;
+    const a0 = a;
+    a += p * a - pj * aj;
+    aj += p * aj + pj * a0;
+    n *= 2;
+    const square = p * p - pj * pj;
+    pj = 2 * p * pj;
+    p = square;
+    if ((length >> bit) & 1) {
+      a += p;
+      aj += pj;
+      b += n * p;
+      bj += n * pj;
+      c += n * n * p;
+      cj += n * n * pj;
+      n += 1;
+      const turned = p * wRe - pj * wIm;
+      pj = p * wIm + pj * wRe;
+      p = turned;
+    }
+  }
+  const b1 = b + from * a;
+  const b1j = bj + from * aj;
+  const c1 = c + from * (b + b1);
+  const c1j = cj + from * (bj + b1j);
+  outRe[0] += sRe * a - sIm * aj;
+  outIm[0] += sRe * aj + sIm * a;
+  outRe[1] += sRe * b1 - sIm * b1j;
+  outIm[1] += sRe * b1j + sIm * b1;
+  outRe[2] += sRe * c1 - sIm * c1j;
+  outIm[2] += sRe * c1j + sIm * c1;
+}
+
 /**
- * Adds Σ_{i=from}^{to−1} i^k·exp((logRe + j·logIm)·i) to outRe[k], outIm[k] for k = 0 … powers.
+ * Adds Σ_{i=from}^{to−1} i^k·exp((logRe + j·logIm)·i) to outRe[k], outIm[k] for k = 0 … powers
+ * (at least 2).
  */
 export function addExponentialSums(
   logRe: number,
@@ -55,6 +117,10 @@ export function addExponentialSums(
   const magnitude = Math.exp(logRe);
   const wRe = magnitude * Math.cos(logIm);
   const wIm = magnitude * Math.sin(logIm);
+  const startMagnitude = Math.exp(logRe * from);
+  const sRe = startMagnitude * Math.cos(logIm * from);
+  const sIm = startMagnitude * Math.sin(logIm * from);
+  if (powers <= 2) return addThree(wRe, wIm, sRe, sIm, from, length, outRe, outIm);
   re.fill(0);
   im.fill(0);
   re[0] = 1;
@@ -84,9 +150,6 @@ export function addExponentialSums(
       pRe = turned;
     }
   }
-  const startMagnitude = Math.exp(logRe * from);
-  const sRe = startMagnitude * Math.cos(logIm * from);
-  const sIm = startMagnitude * Math.sin(logIm * from);
   if (from !== 0) shiftedBy(from, powers);
   else {
     nextRe.set(re);

@@ -4,7 +4,7 @@ import { toModes, unitCovariance } from "./covariance.ts";
 import { residualBlocks } from "./evaluate.ts";
 import type { RingFit } from "./fit-format.ts";
 import type { Mode } from "./gram.ts";
-import { colour, differenceNoise } from "./noise.ts";
+import { colourOf, differenceNoise, excessAt } from "./noise.ts";
 import { residualBuffer, searchModes, variance } from "./search.ts";
 import { solve, type Solution } from "./solve.ts";
 import { scaled } from "./start.ts";
@@ -17,12 +17,16 @@ export interface FitOptions {
   mostModes?: number;
   /** Modes known beforehand (another window of the same ring): no search, refined as they are. */
   start?: { frequency_Hz: number; decay_per_s: number }[];
+  /** One period of the ring in samples, rough: lets the search average down what is sampled far finer. */
+  period?: number;
   /** Noise per sample where it is known; else from the window's differences. */
   noise?: number;
 }
 
 /** Values the search looks at; longer windows are averaged down first. */
 const SEARCH_VALUES = 4096;
+/** Enough to see modes up to some 20 times faster than the ring. */
+const SEARCH_PER_CYCLE = 64;
 /** Values a cycle of the fastest mode the last pass keeps: block means lose 1 − sinc² = 0.3 %. */
 const FINE_PER_CYCLE = 32;
 const none = new Int32Array(0);
@@ -44,7 +48,8 @@ export function fitRing(
   let start: Mode[];
   if (options.start) start = options.start.map((mode) => perSample(mode, step_s));
   else {
-    const by = Math.max(1, Math.ceil(length / SEARCH_VALUES));
+    const fine = Math.floor((options.period ?? 0) / SEARCH_PER_CYCLE);
+    const by = Math.max(1, Math.ceil(length / SEARCH_VALUES), fine);
     const found = searchModes(makeBlocks(samples, from, to, unusable, by), options.mostModes ?? 2);
     if (!found) return null;
     start = scaled(found.modes, 1 / by);
@@ -122,7 +127,8 @@ function describe(
   const noise = options.noise ?? differenceNoise(samples, from, to, options.lsb ?? null);
   const quantisation = (options.lsb ?? 0) ** 2 / 12 / blocks.decimation;
   const perBlock = Math.max(variance(blocks, solution), quantisation);
-  const colours = solution.modes.map(({ omega }) => Math.sqrt(colour(residual, blocks.count, omega)));
+  const colour = colourOf(residual, blocks.count);
+  const colours = solution.modes.map(({ omega }) => Math.sqrt(excessAt(colour, omega)));
   const size = 4 * modes.length;
   const covariance = unit.map(
     (value, k) => value * perBlock * colours[Math.floor(k / size) >> 2] * colours[(k % size) >> 2],

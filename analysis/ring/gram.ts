@@ -96,7 +96,7 @@ export class Gram {
     }
   }
 
-  /** Horner's scheme from the end: Σ y·z^i and its derivative in one pass. */
+  /** Inner products with one mode's four columns. */
   private project(blocks: Blocks, mode: Mode, at: number): void {
     const { values, segments } = blocks;
     const e = Math.exp(-mode.decay);
@@ -105,21 +105,11 @@ export class Gram {
     this.data.fill(0, at, at + 4);
     for (let s = 0; s < segments.length; s += 2) {
       const from = segments[s];
-      let re = 0;
-      let im = 0;
-      let slopeRe = 0;
-      let slopeIm = 0;
-      for (let i = segments[s + 1] - 1; i >= from; i--) {
-        const sr = slopeRe * zRe - slopeIm * zIm + re;
-        slopeIm = slopeRe * zIm + slopeIm * zRe + im;
-        slopeRe = sr;
-        const r = re * zRe - im * zIm + values[i];
-        im = re * zIm + im * zRe;
-        re = r;
-      }
-      // Σ(i − from)·y·z^(i−from) = z·slope; then both counted from block 0.
-      const turnedRe = slopeRe * zRe - slopeIm * zIm + from * re;
-      const turnedIm = slopeRe * zIm + slopeIm * zRe + from * im;
+      horner(values, from, segments[s + 1], zRe, zIm, sums);
+      const [re, im, slopeRe, slopeIm] = sums;
+      // Counted from block 0 instead of `from`.
+      const turnedRe = slopeRe + from * re;
+      const turnedIm = slopeIm + from * im;
       const magnitude = Math.exp(-mode.decay * from);
       const c = magnitude * Math.cos(mode.omega * from);
       const d = magnitude * Math.sin(mode.omega * from);
@@ -129,4 +119,55 @@ export class Gram {
       this.data[at + 3] += c * turnedIm + d * turnedRe;
     }
   }
+}
+
+const sums = new Float64Array(4);
+
+/**
+ * Σ y·z^k and Σ k·y·z^k over y[from … to), k counted from `from`, by Horner's scheme from the end. Even
+ * and odd samples go separately (powers of z²): two short chains of dependent sums instead of a long one.
+ */
+function horner(
+  y: Float64Array,
+  from: number,
+  to: number,
+  zRe: number,
+  zIm: number,
+  out: Float64Array,
+): void {
+  const pairs = (to - from) >> 1;
+  const wRe = zRe * zRe - zIm * zIm;
+  const wIm = 2 * zRe * zIm;
+  let a = 0;
+  let aj = 0;
+  let da = 0;
+  let daj = 0;
+  let b = 0;
+  let bj = 0;
+  let db = 0;
+  let dbj = 0;
+  if ((to - from) & 1) a = y[to - 1];
+  for (let i = from + 2 * pairs - 2; i >= from; i -= 2) {
+    const da1 = da * wRe - daj * wIm + a;
+    daj = da * wIm + daj * wRe + aj;
+    da = da1;
+    const db1 = db * wRe - dbj * wIm + b;
+    dbj = db * wIm + dbj * wRe + bj;
+    db = db1;
+    const a1 = a * wRe - aj * wIm + y[i];
+    aj = a * wIm + aj * wRe;
+    a = a1;
+    const b1 = b * wRe - bj * wIm + y[i + 1];
+    bj = b * wIm + bj * wRe;
+    b = b1;
+  }
+  // Σ 2k·y·w^k = 2·w·d; the odd ones count one more and carry one z more.
+  const ea = 2 * (da * wRe - daj * wIm);
+  const eaj = 2 * (da * wIm + daj * wRe);
+  const eb = 2 * (db * wRe - dbj * wIm) + b;
+  const ebj = 2 * (db * wIm + dbj * wRe) + bj;
+  out[0] = a + b * zRe - bj * zIm;
+  out[1] = aj + b * zIm + bj * zRe;
+  out[2] = ea + eb * zRe - ebj * zIm;
+  out[3] = eaj + eb * zIm + ebj * zRe;
 }

@@ -3,36 +3,50 @@ import { powerOfTwo, powerSpectrum } from "../numeric/fft.ts";
 
 const spectrum = new Float64Array(2 ** 17);
 
-/**
- * Power density of residuals around `omega` (radian a value) over their mean density: 1 for white
- * noise. Within what the number of spectral bins leaves open it is 1, so that white noise keeps the
- * sharper estimate.
- */
-export function colour(residual: Float64Array, count: number, omega: number): number {
-  if (count < 64) return 1;
+/** Power of residuals by frequency. Reused: valid until the next call. */
+export interface Colour {
+  /** Bins 0 … half. */
+  power: Float64Array;
+  half: number;
+  count: number;
+  mean: number;
+}
+
+/** Null where there are too few values to tell a colour. */
+export function colourOf(residual: Float64Array, count: number): Colour | null {
+  if (count < 64) return null;
   const n = powerOfTwo(count);
   powerSpectrum(residual, count, n, spectrum);
   const half = n / 2;
+  let all = 0;
+  for (let k = 1; k < half; k++) all += spectrum[k];
+  return { power: spectrum, half, count, mean: all / (half - 1) };
+}
+
+/**
+ * Power density around `omega` (radian a value) over the mean density: 1 for white noise. Within what
+ * the number of spectral bins leaves open it is 1, so that white noise keeps the sharper estimate.
+ */
+export function excessAt(colour: Colour | null, omega: number): number {
+  if (!colour || !(colour.mean > 0)) return 1;
+  const { half, count, power } = colour;
+  const wide = (2 * half) / count;
   const centre = (omega / Math.PI) * half;
   // The bins the fit itself has emptied say nothing.
-  const skip = (2 * n) / count;
-  const reach = Math.max(12 * (n / count), 0.02 * half);
+  const skip = 2 * wide;
+  const reach = Math.max(12 * wide, 0.02 * half);
   const low = Math.max(1, Math.floor(centre - reach));
   const high = Math.min(half - 1, Math.ceil(centre + reach));
   let near = 0;
   let bins = 0;
   for (let k = low; k <= high; k++) {
     if (Math.abs(k - centre) < skip) continue;
-    near += spectrum[k];
+    near += power[k];
     bins++;
   }
-  let all = 0;
-  for (let k = 1; k < half; k++) all += spectrum[k];
-  all /= half - 1;
-  if (bins === 0 || !(all > 0)) return 1;
-  const ratio = near / bins / all;
-  const independent = (bins * count) / n;
-  return Math.abs(ratio - 1) < 3.5 / Math.sqrt(independent) ? 1 : ratio;
+  if (bins === 0) return 1;
+  const ratio = near / bins / colour.mean;
+  return Math.abs(ratio - 1) < 3.5 / Math.sqrt(bins / wide) ? 1 : ratio;
 }
 
 /** Median of |x| over 0.6745: standard deviation of normal noise. Sorts `values` in place. */

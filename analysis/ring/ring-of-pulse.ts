@@ -9,7 +9,7 @@ import { medianOf } from "../numeric/robust.ts";
 import { fitRing } from "./fit.ts";
 import { afterFlatTops } from "./flat-tops.ts";
 import { noiseLimit, residualProfile } from "./residuals.ts";
-import { windowedRing, type Place, type WindowedRing } from "./window.ts";
+import { disturbedRing, undisturbedRing, type Place, type WindowedRing } from "./window.ts";
 
 export interface PulseRing extends WindowedRing {
   /** Instant of the switch-off by the model; null where the ring is not seen from its beginning. */
@@ -22,16 +22,21 @@ const GUARD = 0.1;
 const REACH = 0.16;
 
 export function ringOfPulse(place: Omit<Place, "from">, off: SwitchOff): PulseRing | null {
-  const { samples, period, noise } = place;
+  const { period } = place;
   const begin = off.at === null ? off.freeFrom : Math.ceil(off.at + GUARD * period);
   if (off.freeTo - begin < 8) return null;
-  const level = medianOf(samples, begin, Math.min(off.freeTo, begin + Math.ceil(20 * period)));
-  const looked = Math.min(off.freeTo, begin + Math.ceil(40 * period));
-  const from = afterFlatTops(samples, begin, looked, level, noise, 8 * noise);
-  const ring = windowedRing({ ...place, from });
+  const ring = undisturbedRing({ ...place, from: begin }) ?? withoutCutWaves({ ...place, from: begin });
   if (!ring) return null;
   const fromBeginning = ring.clean && ring.fit.from <= begin + 0.1 * period;
   return fromBeginning ? extended(place, off, ring) : { ...ring, switchOff: null };
+}
+
+/** After the last half-wave that a diode or a clamp cuts, then whatever one ring explains. */
+function withoutCutWaves(place: Place): WindowedRing | null {
+  const { samples, from, to, period, noise } = place;
+  const level = medianOf(samples, from, Math.min(to, from + Math.ceil(20 * period)));
+  const looked = Math.min(to, from + Math.ceil(40 * period));
+  return disturbedRing({ ...place, from: afterFlatTops(samples, from, looked, level, noise, 8 * noise) });
 }
 
 /** The same ring fitted from the switch-off on, where its first samples agree. */

@@ -6,7 +6,7 @@
 import type { Blocks } from "./blocks.ts";
 import { residualBlocks } from "./evaluate.ts";
 import type { Mode } from "./gram.ts";
-import { colour } from "./noise.ts";
+import { colourOf, excessAt } from "./noise.ts";
 import { solve, type Solution } from "./solve.ts";
 import { bestStart, coarser, scaled, strongestLines } from "./start.ts";
 
@@ -58,7 +58,8 @@ function fitNext(blocks: Blocks, known: Mode[], values: Float64Array, noise: num
   );
   if (!start) return null;
   const rough = solve(coarse.blocks, start.modes, 0);
-  return coarse.by === 1 ? rough : solve(blocks, scaled(rough.modes, 1 / coarse.by), 0);
+  // One step at the full rate: the last pass of the fit goes on from there.
+  return coarse.by === 1 ? rough : solve(blocks, scaled(rough.modes, 1 / coarse.by), 0, 1);
 }
 
 function earned(blocks: Blocks, before: Solution, after: Solution): boolean {
@@ -66,7 +67,7 @@ function earned(blocks: Blocks, before: Solution, after: Solution): boolean {
   const residual = residualBuffer(blocks.count);
   residualBlocks(blocks, after, residual);
   const added = after.modes.at(-1)!;
-  const excess = Math.max(1, colour(residual, blocks.count, added.omega));
+  const excess = Math.max(1, excessAt(colourOf(residual, blocks.count), added.omega));
   const plausible =
     added.decay > -0.5 / blocks.count &&
     added.omega > 2 * Math.PI * 0.6 * Math.max(added.decay / 4, 1 / blocks.count);

@@ -33,8 +33,21 @@ export interface Place {
 const FOLDINGS = 5;
 const CLEAN = 1.5;
 const MOST_MASKS = 4;
+/** Where the tail of a ring is looked for, as shares of the window; the cycles it must have. */
+const TAILS = [0.04, 0.12, 0.3, 0.5, 0.7];
+const LEAST_PERIODS = 3;
+const MOST_HALVINGS = 9;
 
-export function windowedRing(place: Place): WindowedRing | null {
+/** The ring over the whole free interval, where it explains all of it. */
+export function undisturbedRing(place: Place): WindowedRing | null {
+  const whole = fitTrimmed(place, place.from, place.to);
+  return whole && isClean(place, whole)
+    ? { fit: whole, clean: true, courseChanges: false, masked: [] }
+    : null;
+}
+
+/** The ring over whatever part of the interval one ring explains; null without any oscillation. */
+export function disturbedRing(place: Place): WindowedRing | null {
   const whole = fitTrimmed(place, place.from, place.to);
   if (whole && isClean(place, whole)) return { fit: whole, clean: true, courseChanges: false, masked: [] };
   const patched = withoutBursts(place, whole);
@@ -57,6 +70,7 @@ const options = (place: Place, extra: FitOptions = {}): FitOptions => ({
   unusable: place.unusable,
   lsb: place.lsb,
   noise: place.noise,
+  period: place.period,
   ...extra,
 });
 
@@ -67,7 +81,9 @@ function fitTrimmed(place: Place, from: number, to: number, extra: FitOptions = 
   const slowest = Math.min(...fit.modes.map((mode) => mode.decay_per_s));
   const end = Math.ceil(from + Math.max(FOLDINGS / (slowest * place.step_s), 3 * place.period));
   if (!(slowest > 0) || end > from + 0.9 * (to - from)) return fit;
-  return fitRing(place.samples, from, end, place.step_s, options(place, extra)) ?? fit;
+  return (
+    fitRing(place.samples, from, end, place.step_s, options(place, { ...extra, start: fit.modes })) ?? fit
+  );
 }
 
 function isClean(place: Place, fit: RingFit, unusable = place.unusable): boolean {
@@ -118,32 +134,39 @@ function merged(a: ArrayLike<number>, b: number[]): number[] {
   return out;
 }
 
-/** The earliest start from which one ring explains the rest (a clamp or switch transient before it). */
+/**
+ * The earliest start from which one ring explains the rest (a clamp, an arc or a switch transient comes
+ * before it). The tail tells the modes; the start is then moved back as far as they hold.
+ */
 function lateStart(place: Place, whole: RingFit | null): RingFit | null {
   const to = whole?.to ?? place.to;
-  const start = whole
-    ? whole.modes.map(({ frequency_Hz, decay_per_s }) => ({ frequency_Hz, decay_per_s }))
-    : undefined;
-  let bad = place.from;
   let good: RingFit | null = null;
-  for (const cycles of [0.05, 0.1, 0.25, 0.5, 1, 2, 3, 5, 8, 12, 20]) {
-    const from = Math.round(place.from + cycles * place.period);
-    if (to - from < 3 * place.period) break;
-    const fit = fitTrimmed(place, from, to, cycles < 0.3 && start ? { start } : {});
-    if (fit && isClean(place, fit)) {
-      good = fit;
-      break;
-    }
+  let bad = place.from;
+  for (const share of TAILS) {
+    const from = Math.round(place.from + share * (to - place.from));
+    if (to - from < LEAST_PERIODS * place.period) break;
+    good = fitTrimmed(place, from, to);
+    if (good && isClean(place, good)) break;
+    good = null;
     bad = from;
   }
   if (!good) return null;
-  for (let round = 0; round < 3 && good.from - bad > 1; round++) {
-    const middle = (bad + good.from) >> 1;
-    const fit = fitTrimmed(place, middle, to);
-    if (fit && isClean(place, fit)) good = fit;
+  for (let round = 0; round < MOST_HALVINGS && good.from - bad > place.period / 16; round++) {
+    const middle: number = (bad + good.from) >> 1;
+    const fit = holds(place, middle, to, good);
+    if (fit) good = fit;
     else bad = middle;
   }
   return good;
+}
+
+/** The ring of `known` modes from an earlier start; a mode that had died by then is looked for once. */
+function holds(place: Place, from: number, to: number, known: RingFit): RingFit | null {
+  const same = fitTrimmed(place, from, to, { start: known.modes });
+  if (same && isClean(place, same)) return same;
+  if (known.modes.length > 1 || !same || same.residual > 6 * noiseOf(place)) return null;
+  const fresh = fitTrimmed(place, from, to);
+  return fresh && isClean(place, fresh) ? fresh : null;
 }
 
 /** The longest beginning that one ring explains: it ends where the course changes. */
