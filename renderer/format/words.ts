@@ -50,3 +50,6 @@ export function dayText(date: string | null): string {
     timeZone: "UTC",
   });
 }
+
+/** "C:\\bench\\pulse-01.csv" → "pulse-01.csv": the page has no room for folders, the title holds them. */
+export const fileName = (path: string) => path.split(/[\\/]/).at(-1) || path;

@@ -8,6 +8,7 @@ import { SetupCard } from "../setup/SetupCard.tsx";
 import { useAnswer, useDesk } from "../state/bench.tsx";
 import { useKeys } from "../state/keys.ts";
 import { go, hrefOf } from "../state/route.ts";
+import { fileName } from "../format/words.ts";
 import { SheetHead } from "../shell/SheetHead.tsx";
 import { PictureButtons } from "../shell/PictureButtons.tsx";
 import { Failure, Waiting } from "../shell/States.tsx";
@@ -110,7 +111,7 @@ export function PulseSheet({ run, capture, pulse: index }: Props) {
       <SheetHead
         title={<a href={hrefOf({ view: "run", run })}>{detail.answer.name}</a>}
         plainTitle={`${label}, ${detail.answer.name}`}
-        beside={[detail.answer.coil, asked.answer!.file].filter(Boolean).join(" · ")}
+        beside={[detail.answer.coil, fileName(asked.answer!.file)].filter(Boolean).join(" · ")}
         page={`page ${run} · ${label.toLowerCase()}`}
       />
       <Line

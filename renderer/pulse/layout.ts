@@ -149,7 +149,7 @@ export function placeNotes(
     lane: lanes.find((lane) => lane.id === note.id) ?? null,
   }));
   const blocks = written.map(({ title, text, lane }) => ({
-    wish: lane ? lane.lane - 8 : to,
+    wish: lane ? lane.lane - 8 : scene.band.bottom + 60,
     height: title.length * faces.title.lineHeight + text.length * faces.text.lineHeight,
   }));
   const tops = makeRoom(blocks, from, to, 13);

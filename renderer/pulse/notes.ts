@@ -87,25 +87,30 @@ function sparkNotes(pulse: PulseReading, setup: Setup): MarginNote[] {
     text: sentence(text),
     place_s: spark.places_s[at] ?? null,
   }));
-  const near = (place: number | null) => place === null || place === spark.onset_s;
-  const own = reasons.filter((reason) => near(reason.place_s));
+  // A verdict without an onset stands where its first reason points.
+  const place_s = spark.onset_s ?? reasons.find((reason) => reason.place_s !== null)?.place_s ?? null;
+  const near = (place: number | null) => place === null || place === place_s;
+  const own = reasons.filter((reason) => near(reason.place_s)).map((reason) => reason.text);
   const elsewhere = reasons.filter((reason) => !near(reason.place_s)).slice(0, 3);
   return [
-    verdictNote(
-      pulse,
-      spark,
-      setup,
-      own.map((reason) => reason.text),
-    ),
-    ...elsewhere.map(({ text, place_s }, at) => {
-      const { title, rest } = split(text);
-      return { id: `why-${at}`, title, text: rest, tone: "ink" as Tone, place_s };
-    }),
+    verdictNote(pulse, spark, setup, own, place_s),
+    ...elsewhere.map(({ text, place_s }, at) => ({
+      id: `why-${at}`,
+      ...split(text),
+      tone: "ink" as Tone,
+      place_s,
+    })),
     ...extinctionNote(pulse, spark),
   ];
 }
 
-function verdictNote(pulse: PulseReading, spark: SparkReading, setup: Setup, why: string[]): MarginNote {
+function verdictNote(
+  pulse: PulseReading,
+  spark: SparkReading,
+  setup: Setup,
+  why: string[],
+  place_s: number | null,
+): MarginNote {
   const { verdict, onset_s, breakdown_V, breakdownFrom } = spark;
   const after = onset_s === null ? null : onset_s - (pulse.switchOffTime_s ?? 0);
   const word = verdictWord(verdict, setup.expected);
@@ -116,7 +121,7 @@ function verdictNote(pulse: PulseReading, spark: SparkReading, setup: Setup, why
     title: verdict === "spark" && after !== null ? `${title}, ${plain(after, "s")} after switch-off` : title,
     text: [...why.slice(0, 2), breakdown].filter(Boolean).join(" "),
     tone: verdict === "no-spark" ? "ink" : verdict === "spark" ? "spark" : "warning",
-    place_s: onset_s ?? (verdict === "no-spark" ? null : pulse.peakTime_s),
+    place_s,
   };
 }
 
@@ -142,10 +147,12 @@ function otherNotes(reading: CaptureReading, pulse: PulseReading): MarginNote[] 
   return reading.notes
     .filter((note) => note.pulse === pulse.index)
     .slice(0, 2)
-    .map((note, at) => {
-      const { title, rest } = split(sentence(note.text));
-      return { id: `note-${at}`, title, text: rest, tone: "ink" as Tone, place_s: null };
-    });
+    .map((note, at) => ({
+      id: `note-${at}`,
+      ...split(sentence(note.text)),
+      tone: "ink" as Tone,
+      place_s: null,
+    }));
 }
 
 const sentence = (text: string) => {
@@ -153,9 +160,16 @@ const sentence = (text: string) => {
   return /[.!?]$/.test(whole) ? whole : `${whole}.`;
 };
 
-/** A short first clause becomes the title. */
-function split(text: string): { title: string; rest: string } {
-  const at = /[:;,(]/.exec(text)?.index ?? -1;
-  if (at > 3 && at < 34) return { title: text.slice(0, at), rest: sentence(text.slice(at + 1).trim()) };
-  return { title: "Also", rest: text };
+const longestTitle = 56;
+
+/** A short first clause becomes the title; a short sentence is all title. */
+function split(text: string): { title: string; text: string } {
+  if (text.length <= longestTitle) return { title: text.replace(/\.$/, ""), text: "" };
+  const at = /[:;,(] ?/.exec(text);
+  if (!at || at.index < 4 || at.index > longestTitle) return { title: "Also", text };
+  const rest = text.slice(at.index + at[0].length);
+  return {
+    title: text.slice(0, at.index).trim(),
+    text: sentence(at[0].startsWith("(") ? rest.replace(")", "") : rest),
+  };
 }

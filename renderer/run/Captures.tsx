@@ -2,7 +2,7 @@
 import { memo, useMemo } from "react";
 import type { PulseRow, RunDetail } from "../../app/bridge.ts";
 import { finalVerdict } from "../draw/glyph.ts";
-import { plural } from "../format/words.ts";
+import { fileName, plural } from "../format/words.ts";
 import { hrefOf } from "../state/route.ts";
 
 export const Captures = memo(function Captures({ detail, rows }: { detail: RunDetail; rows: PulseRow[] }) {
@@ -20,12 +20,12 @@ export const Captures = memo(function Captures({ detail, rows }: { detail: RunDe
             <li key={row.capture}>
               {pulses[0] ? (
                 <a href={hrefOf({ view: "pulse", run, capture: row.capture, pulse: pulses[0].pulse })}>
-                  {row.file}
+                  {fileName(row.file)}
                   {record}
                 </a>
               ) : (
                 <span>
-                  {row.file}
+                  {fileName(row.file)}
                   {record}
                 </span>
               )}

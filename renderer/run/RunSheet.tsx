@@ -96,7 +96,7 @@ export function RunSheet({ run }: { run: number }) {
           </span>
         ))}
       </p>
-      <Attention detail={detail} />
+      <Attention detail={detail} rows={rows} />
       <RunChart
         rows={rows}
         expected={expected}

@@ -1,0 +1,47 @@
+/** The real host with a new book behind the real local door, as `npm start` serves it. */
+import { existsSync, mkdtempSync, rmSync } from "node:fs";
+import { tmpdir } from "node:os";
+import { join } from "node:path";
+import { pathToFileURL } from "node:url";
+import { createHost, type Host } from "../../app/host/host.ts";
+import { openLocalDoor, type LocalDoor } from "../../app/local/door.ts";
+import type { Answer, Argument, CommandName } from "../../app/bridge.ts";
+
+const root = join(import.meta.dirname, "../..");
+const worker = join(root, "dist/app/worker.js");
+export const demo = join(root, "samples/bench-run");
+
+export interface TestDoor extends LocalDoor {
+  host: Host;
+  folder: string;
+  ask<Name extends CommandName>(name: Name, argument: Argument<Name>): Promise<Answer<Name>>;
+  /** Shut and remove everything. */
+  end(): Promise<void>;
+}
+
+export async function openDoor(options: { demo?: boolean } = {}): Promise<TestDoor> {
+  if (!existsSync(worker)) throw new Error("dist/ is missing: run npm run build before the window tests");
+  const folder = mkdtempSync(join(tmpdir(), "ringbook-window-"));
+  const host = await createHost({ bookPath: join(folder, "book.db"), workerUrl: pathToFileURL(worker), demo });
+  const door = await openLocalDoor(host, { page: join(root, "dist/renderer") });
+  const ask: TestDoor["ask"] = async (name, argument) => {
+    const reply = await host.answer(name, argument);
+    if ("error" in reply) throw new Error(`${name}: ${reply.error.text}`);
+    return reply.answer as never;
+  };
+  if (options.demo) {
+    await ask("openDemo", {});
+    await host.idle();
+  }
+  return {
+    ...door,
+    host,
+    folder,
+    ask,
+    async end() {
+      await door.close();
+      await host.close();
+      rmSync(folder, { recursive: true, force: true });
+    },
+  };
+}

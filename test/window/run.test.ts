@@ -1,0 +1,118 @@
+/** Files dropped anywhere, their progress and problems, the run at a glance, the way to each pulse. */
+import { writeFileSync } from "node:fs";
+import { mkdirSync } from "node:fs";
+import { join } from "node:path";
+import type { Browser } from "playwright-core";
+import { afterAll, afterEach, beforeAll, expect, it } from "vitest";
+import { describeWindow, launch } from "./chromium.ts";
+import { demo, openDoor, type TestDoor } from "./door.ts";
+import { closeSilent, dropFiles, expectAccessible, filesOf, goTo, openSheet, type Sheet } from "./sheet.ts";
+
+describeWindow("a run", () => {
+  let browser: Browser;
+  let door: TestDoor;
+  let sheet: Sheet | undefined;
+  beforeAll(async () => {
+    [browser, door] = await Promise.all([launch(), openDoor()]);
+  });
+  afterAll(async () => {
+    await browser?.close();
+    await door?.end();
+  });
+  afterEach(async () => {
+    await closeSilent(sheet);
+    sheet = undefined;
+  });
+
+  it("is made of files dropped on the page; a file that can't be read is named, the others are done", async () => {
+    sheet = await openSheet(browser, door);
+    const { page } = sheet;
+    await page.locator(".greeting").waitFor();
+    const captures = filesOf(demo, (name) => /^(pulse-0[1-4]\.csv|setup\.json)$/.test(name));
+    await dropFiles(page, [...captures, { name: "<img src=x onerror=alert(1)>.csv", text: "not a capture\n" }]);
+    const problem = page.locator(".job li", { hasText: "<img src=x onerror=alert(1)>.csv" });
+    await problem.waitFor({ timeout: 30_000 });
+    await page.getByText(/^4 pulses: \d+ sparked/).waitFor();
+    expect(await page.locator("img").count()).toBe(0);
+    expect(await page.locator(".captures li").count()).toBeGreaterThanOrEqual(4);
+    await expectAccessible(page);
+    await page.getByRole("button", { name: "put aside" }).click();
+    await problem.waitFor({ state: "hidden" });
+  });
+
+  it("shows the whole demo run as handwriting, its counts, what to look at first, and its course", async () => {
+    const { job } = await door.ask("openDemo", {});
+    await door.host.idle();
+    const run = (await door.ask("jobs", {})).find((state) => state.job === job)!.run!;
+    const { rows } = await door.ask("pulses", { run, limit: 1000 });
+    sheet = await openSheet(browser, door, `/run/${run}`);
+    const { page } = sheet;
+    await page.getByText(/^54 pulses:/).waitFor();
+    await page.locator(".written-line").first().waitFor();
+    const drawn = await page.locator(".written-line").evaluateAll((lines) => ({
+      lozenges: lines.map((line) => line.querySelector(".lozenge")!.getAttribute("d")!.split("Z").length - 1),
+      circles: lines.map((line) => line.querySelector(".circle")!.getAttribute("d")!.split("Z").length - 1),
+    }));
+    const sum = (numbers: number[]) => numbers.reduce((all, one) => all + one, 0);
+    expect(sum(drawn.lozenges)).toBe(rows.filter((row) => row.verdict === "spark").length);
+    expect(sum(drawn.circles)).toBe(rows.filter((row) => row.verdict === "no-spark").length);
+    await page.getByRole("heading", { name: "Look at this first" }).waitFor();
+    expect(await page.locator(".attention a").count()).toBeGreaterThan(0);
+    await page.getByLabel("Figure of the chart").selectOption("q");
+    await page.getByRole("img", { name: /^Q over 54 pulses/ }).waitFor();
+    await expectAccessible(page);
+  });
+
+  it("leads to a pulse by click, by keys and from the attention list", async () => {
+    sheet = await openSheet(browser, door, "/run/2");
+    const { page } = sheet;
+    await page.getByText(/^54 pulses:/).waitFor();
+    const line = page.locator(".written-line").first();
+    await line.click({ position: { x: 21 * 3 + 8, y: 20 } });
+    await page.getByText("pulse 4 of 54").waitFor();
+    await page.keyboard.press("ArrowRight");
+    await page.getByText("pulse 5 of 54").waitFor();
+    await page.keyboard.press("ArrowUp");
+    await page.getByText(/^54 pulses:/).waitFor();
+    await page.keyboard.press("ArrowRight");
+    await page.getByText(/^Pulse \d+: /).waitFor();
+    await page.keyboard.press("Enter");
+    await page.getByText(/pulse \d+ of 54/).waitFor();
+    await goTo(page, "/run/2");
+    const attention = page.locator(".attention a[href^='#/pulse']").first();
+    await attention.click();
+    await page.locator(".pulse-figure").waitFor();
+  });
+
+  it("leaves as CSV, JSON Lines and a report page; figures are copied", async () => {
+    sheet = await openSheet(browser, door, "/run/2", { permissions: ["clipboard-read", "clipboard-write"] });
+    const { page } = sheet;
+    await page.getByText(/^54 pulses:/).waitFor();
+    for (const words of ["a table (CSV)", "readings (JSON Lines)", "a report page"]) {
+      const [download] = await Promise.all([page.waitForEvent("download"), page.getByRole("button", { name: words }).click()]);
+      expect(download.suggestedFilename().length).toBeGreaterThan(4);
+    }
+    await page.keyboard.press("f");
+    await page.getByText("Copied.").waitFor();
+    expect(await page.evaluate(() => navigator.clipboard.readText())).toMatch(/54 pulses: .*\nL\t.* mH/s);
+  });
+
+  it("grows from a watched folder while one looks on", async () => {
+    const folder = join(door.folder, "scope");
+    mkdirSync(folder);
+    sheet = await openSheet(browser, door, "/");
+    const { page } = sheet;
+    await page.keyboard.press("b");
+    await page.getByRole("heading", { name: "A folder to watch" }).waitFor();
+    await page.keyboard.press("w");
+    await page.keyboard.type(folder);
+    await page.keyboard.press("Enter");
+    await page.getByText("Watching").waitFor();
+    const [capture] = filesOf(demo, (name) => name === "pulse-05.csv");
+    writeFileSync(join(folder, capture.name), capture.text);
+    await page.locator(".watch").getByText(/1 capture so far/).waitFor({ timeout: 20_000 });
+    expect(await page.locator(".watch-log li").count()).toBeGreaterThan(0);
+    await page.getByRole("button", { name: "stop" }).click();
+    await page.getByText("Watching").waitFor({ state: "hidden" });
+  });
+});

@@ -1,0 +1,75 @@
+/** A page on the door, whose console must stay silent, with the questions that tests ask of it. */
+import { readdirSync, readFileSync } from "node:fs";
+import { basename, join } from "node:path";
+import type { Browser, BrowserContextOptions, Page } from "playwright-core";
+import { expect } from "vitest";
+import type { TestDoor } from "./door.ts";
+
+const axe = readFileSync(join(import.meta.dirname, "../../node_modules/axe-core/axe.min.js"), "utf8");
+
+export interface Sheet {
+  page: Page;
+  /** Console errors and warnings, and errors nobody caught. */
+  noise: string[];
+  close(): Promise<void>;
+}
+
+export async function openSheet(
+  browser: Browser,
+  door: TestDoor,
+  path = "/",
+  options: BrowserContextOptions = {},
+): Promise<Sheet> {
+  const context = await browser.newContext({ viewport: { width: 1360, height: 860 }, colorScheme: "light", ...options });
+  const page = await context.newPage();
+  const noise: string[] = [];
+  page.on("console", (message) => {
+    if (message.type() === "error" || message.type() === "warning") noise.push(message.text());
+  });
+  page.on("pageerror", (error) => noise.push(String(error.stack)));
+  await page.goto(door.address);
+  if (path !== "/") await goTo(page, path);
+  return { page, noise, close: () => context.close() };
+}
+
+export const goTo = (page: Page, path: string) => page.evaluate((path) => (location.hash = `#${path}`), path);
+
+/** Closes the page and asserts that it was silent. */
+export async function closeSilent(sheet: Sheet | undefined): Promise<void> {
+  if (!sheet) return;
+  await sheet.close();
+  expect(sheet.noise).toEqual([]);
+}
+
+/** Rules of WCAG 2 A and AA, by axe-core: nothing serious or critical. */
+export async function expectAccessible(page: Page): Promise<void> {
+  // The page's policy forbids inline scripts; the test's own is not the page's.
+  await page.evaluate(axe);
+  const found = await page.evaluate(async () => {
+    const { violations } = await (window as never as { axe: typeof import("axe-core") }).axe.run();
+    return violations
+      .filter(({ impact }) => impact === "serious" || impact === "critical")
+      .map(({ id, nodes }) => `${id}: ${nodes.map((node) => `${node.html} ${node.failureSummary}`).join("\n")}`);
+  });
+  expect(found).toEqual([]);
+}
+
+/** Drops files on the page as a hand would, sidecars too. */
+export async function dropFiles(page: Page, files: { name: string; text: string }[]): Promise<void> {
+  await page.evaluate((files) => {
+    const carried = new DataTransfer();
+    for (const { name, text } of files) carried.items.add(new File([text], name));
+    for (const type of ["dragenter", "dragover", "drop"])
+      window.dispatchEvent(new DragEvent(type, { dataTransfer: carried, bubbles: true, cancelable: true }));
+  }, files);
+}
+
+export function filesOf(folder: string, wanted: (name: string) => boolean): { name: string; text: string }[] {
+  return readdirSync(folder)
+    .filter(wanted)
+    .map((name) => ({ name: basename(name), text: readFileSync(join(folder, name), "utf8") }));
+}
+
+/** Hidden widths that would make a page scroll sideways. */
+export const sidewaysOverflow = (page: Page) =>
+  page.evaluate(() => document.documentElement.scrollWidth - document.documentElement.clientWidth);
