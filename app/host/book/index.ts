@@ -4,6 +4,7 @@ import { countsOf } from "../../../analysis/spark/counts.ts";
 import type { Setup } from "../../../analysis/setup/schema.ts";
 import type { Failure } from "../failure.ts";
 import type { RunOfSources } from "../sources.ts";
+import { coilQueries } from "./coils.ts";
 import { keeper, type JudgedRun } from "./keep.ts";
 import { openDatabase } from "./open.ts";
 import { queries } from "./queries.ts";
@@ -84,6 +85,7 @@ function bookOn(db: DatabaseSyncInstance, path: string, readOnly: boolean, note:
     readOnly,
     note,
     ...ask,
+    ...coilQueries(db),
     runCount: () => (db.prepare("SELECT count(*) AS n FROM runs").get() as { n: number }).n,
 
     /** The run of this key, made when there is none. */
