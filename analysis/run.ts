@@ -9,6 +9,7 @@ import { countPulses, verdictOf } from "./spark/counts.ts";
 import { expectedOf } from "./spark/expected.ts";
 import { judgePulses } from "./spark/judge.ts";
 import { timesOf } from "./spark/onset.ts";
+import { ringModes, ringPeriods } from "./spark/ring-modes.ts";
 import { noEvidence, sparkReading } from "./spark/spark-reading.ts";
 import { gatherWindow, type SparkWindow } from "./spark/window.ts";
 
@@ -24,8 +25,8 @@ export interface RunJudgement {
   run: RunReading;
 }
 
-/** Windows are gathered once: a growing run is judged again and again. */
-const windows = new WeakMap<PulseEvidence, SparkWindow | null>();
+/** Windows are gathered once, unless the run shows another period: a growing run is judged again and again. */
+const windows = new WeakMap<PulseEvidence, { window: SparkWindow | null; asked: number }>();
 
 /**
  * Verdicts of a run; can be called again when the run grows or the setup changes. The evidence is not
@@ -35,16 +36,17 @@ export function judgeRun(evidence: CaptureEvidence[], setup: Setup): RunJudgemen
   const places = evidence.flatMap((capture, c) =>
     capture.pulses.map((pulse, p) => ({ capture, pulse, c, p })),
   );
-  const judgeable = places.flatMap((place) => {
-    const window = windowOf(place.capture, place.pulse);
-    return window ? [{ ...place, window, modes: place.pulse.fit?.modes ?? [] }] : [];
+  const periods = ringPeriods(places);
+  const judgeable = places.flatMap((place, i) => {
+    const window = windowOf(place.capture, place.pulse, periods[i]);
+    return window ? [{ ...place, window, modes: ringModes(place.pulse.fit?.modes ?? []) }] : [];
   });
-  const judged = judgePulses(judgeable);
-  const run = judgeable.map(({ window }, i) => ({ judged: judged[i], window }));
+  const verdicts = judgePulses(judgeable);
+  const run = judgeable.flatMap((place, i) => (verdicts[i] ? [{ ...place, judged: verdicts[i] }] : []));
   const sparks = new Map(
-    judgeable.map(({ pulse, window }, i) => {
-      const expected = judged[i].likelihood.probability > 0.1 ? expectedOf(judged[i], run, i, window) : null;
-      return [pulse, sparkReading(judged[i], window, timesOf(window, judged[i].traits, expected))];
+    run.map(({ pulse, window, judged }, i) => {
+      const expected = judged.likelihood.probability > 0.1 ? expectedOf(judged, run, i, window) : null;
+      return [pulse, sparkReading(judged, window, timesOf(window, judged.traits, expected))];
     }),
   );
   const readings = evidence.map((capture) => {
@@ -61,9 +63,12 @@ export function judgeRun(evidence: CaptureEvidence[], setup: Setup): RunJudgemen
   };
 }
 
-function windowOf(capture: CaptureEvidence, pulse: PulseEvidence): SparkWindow | null {
-  if (!windows.has(pulse)) windows.set(pulse, gatherWindow(capture, pulse));
-  return windows.get(pulse)!;
+function windowOf(capture: CaptureEvidence, pulse: PulseEvidence, period: number | null): SparkWindow | null {
+  const held = windows.get(pulse);
+  if (held && (period === null || Math.abs(period / held.asked - 1) < 0.05)) return held.window;
+  const window = gatherWindow(capture, pulse, period);
+  windows.set(pulse, { window, asked: period ?? 0 });
+  return window;
 }
 
 /** Sparks bend the ring: figures of the coil rest on quiet pulses, where there are any. */

@@ -22,17 +22,19 @@ export interface Judged {
 /** Pulses searched for modes of their own when no pulse is clean. */
 const SEARCHED = 8;
 
-export function judgePulses(candidates: Candidate[]): Judged[] {
+/** One for each candidate, null where no mode of the coil could be found to judge by. */
+export function judgePulses(candidates: Candidate[]): (Judged | null)[] {
   const { sets, ceiling } = modeSets(candidates);
   const traits = candidates.map(({ window, modes }) => {
     const fitting = sets.filter((set) => modes.length === 0 || sets.length === 1 || near(set[0], modes[0]));
     if (fitting.length > 0) return bestTraits(window, fitting, ceiling);
-    return bestTraits(window, sets.length > 0 ? sets : [modes], ceiling);
+    if (sets.length > 0) return bestTraits(window, sets, ceiling);
+    return modes.length > 0 ? bestTraits(window, [modes], ceiling) : null;
   });
-  const judged: Judged[] = [];
-  for (const set of new Set(traits.map(({ modes }) => modes))) {
-    const members = traits.flatMap((each, i) => (each.modes === set ? [i] : []));
-    judgeGroup(members.map((i) => traits[i])).forEach((each, k) => (judged[members[k]] = each));
+  const judged = traits.map((): Judged | null => null);
+  for (const set of new Set(traits.map((each) => each?.modes))) {
+    const members = traits.flatMap((each, i) => (each && each.modes === set ? [i] : []));
+    judgeGroup(members.map((i) => traits[i]!)).forEach((each, k) => (judged[members[k]] = each));
   }
   return judged;
 }
@@ -88,7 +90,18 @@ function judgeGroup(group: Traits[]): Judged[] {
     const quiet = group.flatMap((traits, i) => (likelihoodOf(traits, held, i).probability < 0.05 ? [i] : []));
     reference = referenceOf(group, quiet) ?? held;
   }
-  return group.map((traits, i) => ({ traits, likelihood: likelihoodOf(traits, reference, i), reference }));
+  const most = reference ? null : mostLeft(group);
+  return group.map((traits, i) => ({
+    traits,
+    likelihood: likelihoodOf(traits, reference, i, most),
+    reference,
+  }));
+}
+
+/** The strongest ring left in a group that has no reference: whatever has clearly less of it has lost some. */
+function mostLeft(group: Traits[]): number | null {
+  const sizes = group.flatMap(({ rest }) => (rest ? [Math.hypot(...rest)] : []));
+  return sizes.length > 1 ? Math.max(...sizes) : null;
 }
 
 /** Pulses to begin with: clean ones, else ones without clear loss of their own that agree; the strongest rings. */

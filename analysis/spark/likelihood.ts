@@ -5,16 +5,22 @@ import { NOISE, type Traits } from "./traits.ts";
 export interface Likelihood {
   probability: number;
   /** What the probability rests on most. */
-  because: "one-ring" | "ring-goes-on" | "loss" | "course" | "missing" | "doubt";
+  because: "one-ring" | "ring-goes-on" | "loss" | "course" | "turned" | "missing" | "doubt";
   /** Distance of the ring after from the run's quiet ring, as a share; null without reference. */
   away: number | null;
   /** Share of the quiet amplitude that is missing after; null where it is not known. */
   loss: number | null;
 }
 
-export function likelihoodOf(traits: Traits, reference: Reference | null, place: number): Likelihood {
+/** `most`: the strongest ring left in a run that has no reference. */
+export function likelihoodOf(
+  traits: Traits,
+  reference: Reference | null,
+  place: number,
+  most: number | null = null,
+): Likelihood {
   const rest = reference?.rest[place];
-  return reference && rest ? againstRun(traits, reference, rest) : byItself(traits);
+  return reference && rest ? againstRun(traits, reference, rest) : byItself(traits, most);
 }
 
 function againstRun(traits: Traits, reference: Reference, rest: [number, number]): Likelihood {
@@ -55,7 +61,7 @@ function cutShort(traits: Traits, disturbed: number): Likelihood {
   return { probability: disturbed > 20 ? 0.8 : 0.4, because: "doubt", ...nothing };
 }
 
-function byItself(traits: Traits): Likelihood {
+function byItself(traits: Traits, most: number | null): Likelihood {
   const { misfit, loss, jump, ringBefore } = traits;
   const gain = Math.sqrt(Math.max(0, traits.split.gain));
   const answer = (probability: number, because: Likelihood["because"]) => ({
@@ -71,7 +77,25 @@ function byItself(traits: Traits): Likelihood {
     if (jump > 0.1) return answer(0.6, "doubt");
     return answer(0.02, "ring-goes-on");
   }
+  const missing = most && traits.rest ? 1 - Math.hypot(...traits.rest) / most : 0;
+  if (missing > 0.2) return { ...answer(0.96, "missing"), loss: missing };
   if (loss !== null && loss > 0.35) return answer(0.98, "loss");
-  if (loss !== null && loss > 0.2) return answer(0.5, "doubt");
-  return answer(0.05, "ring-goes-on");
+  const turned = traits.rest ? phaseTurned(traits.rest) : 0;
+  if (misfit > 2 * NOISE && turned > 0.7 * FREE_START)
+    return answer(turned > FREE_START ? 0.97 : 0.7, "turned");
+  if (loss !== null && loss > 0.25) return answer(0.6, "doubt");
+  return answer(loss !== null && loss > 0.2 ? 0.3 : 0.05, "ring-goes-on");
+}
+
+/** Radians; a saturating core leads by up to about as much, a clamp lags by less. */
+const FREE_START = 1.2;
+
+/**
+ * A ring that was free from switch-off on starts near the level of conduction and rises: its low mode, carried
+ * back, is nearly a sine. How far it is turned from that, in radians; a lead counts half, for a saturating
+ * core rings faster at first.
+ */
+function phaseTurned([cosine, sine]: [number, number]): number {
+  const turn = Math.atan2(-cosine, sine);
+  return turn > 0 ? turn * 1.5 : -turn;
 }

@@ -1,4 +1,5 @@
 /** Which modes the coil rings with: agreed on by the run's quiet pulses, else searched in the pulse itself. */
+import { ringModes } from "./ring-modes.ts";
 import { median } from "../numeric/median.ts";
 import { fitRing } from "../ring/fit.ts";
 import type { KnownMode } from "./ring-sums.ts";
@@ -66,7 +67,7 @@ export function ownModes(window: SparkWindow, fitted: KnownMode[]): KnownMode[][
   const sets = stretches.flatMap(([from, to]) => {
     if (to - from < 1.5 * period) return [];
     const fit = fitRing(blocks.values, from, to, step_s, { unusable: gaps(window), noise: window.noise });
-    return fit && fit.modes.length > 0 ? [fit.modes] : [];
+    return fit && fit.modes.length > 0 ? [ringModes(fit.modes)] : [];
   });
   // A ring decays; what grows or dies within a third of a period is no mode of the coil.
   const sound = [...sets, fitted].map((modes) =>

@@ -17,7 +17,7 @@ export function reasonsOf(
   times: SparkTimes,
 ): Reason[] {
   const at = (block: number) => window.zero_s + window.first_s + block * window.step_s;
-  const after = times.onset_s === null ? null : formatNumber(times.onset_s - window.zero_s, "s", 3);
+  const after = times.onset_s === null ? null : formatNumber(times.onset_s - window.switchOff_s, "s", 3);
   const strength = Math.round(traits.misfit);
   const reasons: Reason[] = [];
   const say = (text: string, place_s: number | null) => reasons.push({ text, place_s });
@@ -38,6 +38,13 @@ export function reasonsOf(
     case "loss":
     case "course":
       if (after) say(`the ring leaves its course ${after} after switch-off`, times.onset_s);
+      say(`one ring does not explain the trace: strength ${strength}, noise stays below 12`, at(traits.a));
+      break;
+    case "turned":
+      say(
+        "the ring after does not begin where a ring free from switch-off would: its phase is turned",
+        at(traits.b),
+      );
       say(`one ring does not explain the trace: strength ${strength}, noise stays below 12`, at(traits.a));
       break;
     case "missing":

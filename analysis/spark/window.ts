@@ -13,6 +13,8 @@ export interface SparkWindow {
   step_s: number;
   /** File time of switch-off (where unknown: of the window's start). */
   zero_s: number;
+  /** File time of switch-off as the reading states it; a bouncing contact opens later for good. */
+  switchOff_s: number;
   startsInRing: boolean;
   /** Standard deviation of a block's noise as the samples' own noise gives it. */
   noise: number;
@@ -28,11 +30,16 @@ const BLOCKS_PER_PERIOD = 64;
 /** A ring is judged over this many periods at most: later there is nothing left of any. */
 const MOST_PERIODS = 60;
 
-/** Null where no ring channel or no oscillation is known: nothing to judge by. */
-export function gatherWindow(evidence: CaptureEvidence, pulse: PulseEvidence): SparkWindow | null {
+/**
+ * `period`: of the ring, in samples (ringPeriods). Null where no ring channel or no oscillation is known: nothing to judge by.
+ */
+export function gatherWindow(
+  evidence: CaptureEvidence,
+  pulse: PulseEvidence,
+  period: number | null,
+): SparkWindow | null {
   const step_s = evidence.timebase.step_s;
   if (evidence.map.ring === null || step_s === null) return null;
-  const period = periodOf(pulse, step_s);
   if (period === null) return null;
   const { samples, unusable, lsb } = evidence.channels[evidence.map.ring];
   const decimation = Math.max(1, Math.floor(period / BLOCKS_PER_PERIOD));
@@ -52,12 +59,13 @@ export function gatherWindow(evidence: CaptureEvidence, pulse: PulseEvidence): S
     (pulse.fit?.noise ?? 0) / Math.sqrt(decimation),
     conductionNoise(pulse, samples, decimation),
   );
-  if (levelOn !== null) leaveOutConduction(blocks, levelOn, 4 * noise + (lsb ?? 0));
+  if (levelOn !== null) leaveOutConduction(blocks, levelOn, noise + (lsb ?? 0) / 3, period / decimation);
   return {
     blocks,
     first_s: (from + (decimation - 1) / 2 - zero) * step_s,
     step_s: decimation * step_s,
     zero_s: evidence.timebase.start_s + zero * step_s,
+    switchOff_s: evidence.timebase.start_s + (pulse.switchOff ?? from) * step_s,
     startsInRing: pulse.switchOff === null,
     noise,
     levelOn,
@@ -66,23 +74,37 @@ export function gatherWindow(evidence: CaptureEvidence, pulse: PulseEvidence): S
   };
 }
 
-function periodOf(pulse: PulseEvidence, step_s: number): number | null {
-  const mode = pulse.fit?.modes[0];
-  return mode ? 1 / (mode.frequency_Hz * step_s) : pulse.period;
-}
-
 function turn(blocks: Blocks): void {
   for (let i = 0; i < blocks.count; i++) blocks.values[i] = -blocks.values[i];
   blocks.level = -blocks.level;
   for (let k = 0; k < blocks.moments.length; k++) blocks.moments[k] = -blocks.moments[k];
 }
 
-/** The next conduction may begin inside the window: its flat stretch at the end and the edge before it go. */
-function leaveOutConduction(blocks: Blocks, levelOn: number, tolerance: number): void {
-  let end = blocks.count;
-  while (end > 0 && Math.abs(blocks.values[end - 1] - levelOn) < tolerance) end--;
-  if (blocks.count - end < 3) return;
-  end = Math.max(0, end - 2);
+/**
+ * The next conduction may begin inside the window: from where the trace lies still, nearer to the level of
+ * conduction than to what the ring settles to, all goes. Judged by means over a stretch, for the two levels
+ * may be closer than the noise.
+ */
+function leaveOutConduction(blocks: Blocks, levelOn: number, noise: number, period: number): void {
+  const { values, count } = blocks;
+  const length = Math.max(4, Math.round(0.3 * period));
+  const apart = Math.abs(median(values.subarray(count >> 1, count)) - levelOn);
+  let [sum, square] = [0, 0];
+  for (let i = 0; i < count; i++) {
+    sum += values[i] - levelOn;
+    square += (values[i] - levelOn) ** 2;
+    if (i >= length) {
+      sum -= values[i - length] - levelOn;
+      square -= (values[i - length] - levelOn) ** 2;
+    }
+    if (i < length - 1) continue;
+    const mean = sum / length;
+    const still = square / length - mean * mean < (2 * noise) ** 2;
+    if (still && Math.abs(mean) < 0.35 * apart) return cut(blocks, Math.max(0, i + 1 - length - 2));
+  }
+}
+
+function cut(blocks: Blocks, end: number): void {
   blocks.count = end;
   const segments: number[] = [];
   for (let s = 0; s < blocks.segments.length; s += 2)
@@ -90,7 +112,7 @@ function leaveOutConduction(blocks: Blocks, levelOn: number, tolerance: number):
   blocks.segments = segments;
 }
 
-/** A bouncing contact closes again: the last sample at the conduction's level well before half a period; null: none. */
+/** A bouncing contact closes again: the end of a stretch at the conduction's level well before half a period; null: none. */
 function lastClosed(
   pulse: PulseEvidence,
   samples: Float64Array,
@@ -99,10 +121,15 @@ function lastClosed(
   lsb: number,
 ): number | null {
   if (pulse.levelOn === null || pulse.switchOff === null) return null;
-  const tolerance = 3 * (pulse.fit?.noise ?? 0) + lsb;
-  for (let i = Math.min(samples.length, Math.floor(to)) - 1; i >= from; i--)
-    if (pulse.polarity * (samples[i] - pulse.levelOn) < tolerance) return i;
-  return null;
+  const tolerance = 3 * (pulse.fit?.noise ?? 0) + lsb / 2;
+  // A spark throws the node through this level, a contact holds it there.
+  const least = Math.max(3, (0.008 * (to - from)) / 0.3);
+  let [still, last] = [0, null as number | null];
+  for (let i = from; i < Math.min(samples.length, Math.floor(to)); i++) {
+    still = Math.abs(samples[i] - pulse.levelOn) < tolerance ? still + 1 : 0;
+    if (still >= least) last = i;
+  }
+  return last;
 }
 
 /**

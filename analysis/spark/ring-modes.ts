@@ -1,0 +1,45 @@
+/** Which of a fit's modes are the coil's, and one period of the ring for every pulse of a run. */
+import type { CaptureEvidence, PulseEvidence } from "../evidence.ts";
+import { median } from "../numeric/median.ts";
+import type { FittedMode } from "../ring/fit-format.ts";
+
+/** The strongest mode, what is not much weaker, and what is faster: a slow faint one is hum or a baseline. */
+export function ringModes(modes: FittedMode[]): FittedMode[] {
+  const size = (mode: FittedMode) => Math.hypot(mode.cosine, mode.sine);
+  const strongest = modes.reduce<FittedMode | null>(
+    (best, mode) => (!best || size(mode) > size(best) ? mode : best),
+    null,
+  );
+  if (!strongest) return [];
+  return modes.filter(
+    (mode) => mode.frequency_Hz >= strongest.frequency_Hz || size(mode) > 0.3 * size(strongest),
+  );
+}
+
+/** Periods this close are of one ring. */
+const ALIKE = 0.15;
+
+/**
+ * In samples of each pulse's own capture. A pulse whose own period no other pulse shares, while most share
+ * one, is given theirs: an arc's fast ring may be all that its fit found.
+ */
+export function ringPeriods(places: { capture: CaptureEvidence; pulse: PulseEvidence }[]): (number | null)[] {
+  const own_s = places.map(({ capture, pulse }) => {
+    const step_s = capture.timebase.step_s;
+    if (step_s === null) return null;
+    const mode = ringModes(pulse.fit?.modes ?? [])[0];
+    return mode ? 1 / mode.frequency_Hz : pulse.period === null ? null : pulse.period * step_s;
+  });
+  const known = own_s.filter((period) => period !== null);
+  const usual = known.length > 2 ? median(known) : null;
+  const alike = (a: number, b: number) => Math.abs(a / b - 1) < ALIKE;
+  const shared = (period: number) => known.filter((other) => alike(period, other)).length;
+  return places.map(({ capture }, i) => {
+    const { step_s } = capture.timebase;
+    let period = own_s[i];
+    if (step_s === null) return null;
+    if (usual !== null && shared(usual) * 2 > known.length && (period === null || shared(period) < 3))
+      period = usual;
+    return period === null ? null : period / step_s;
+  });
+}
