@@ -24,6 +24,7 @@ export function queries(db: DatabaseSyncInstance, trail: Trail) {
     `SELECT captures.*, readings.json FROM captures LEFT JOIN readings ON readings.id = captures.reading
      WHERE captures.id = ?`,
   );
+  const readings = db.prepare("SELECT * FROM readings WHERE capture = ? ORDER BY id");
   const problems = db.prepare("SELECT path, text FROM problems WHERE run = ? ORDER BY path");
 
   function runRow(run: number): Row {
@@ -47,6 +48,17 @@ export function queries(db: DatabaseSyncInstance, trail: Trail) {
       const row = oneCapture.get(capture) as Row | undefined;
       if (!row) throw new CallError("no-such-capture", `the book has no capture ${capture}`);
       return captureDetail(row);
+    },
+
+    /** All readings of a capture, the oldest first: which program concluded what, with which setup. */
+    readingsOf(capture: number): { version: string; at: string; setup: Setup; reading: CaptureReading }[] {
+      const rows = readings.all(capture) as Row[];
+      return rows.map(({ version, at, setup, json }) => ({
+        version,
+        at,
+        setup: parse<Setup>(setup),
+        reading: unpack<CaptureReading>(json),
+      }));
     },
 
     runs(query: Argument<"runs">): Page<RunRow> {

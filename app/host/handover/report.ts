@@ -116,7 +116,7 @@ async function drawPulse(
     return html`<figure>${pulseDrawing(trace, picture, pulse)}${reasons}</figure>`;
   } catch (error) {
     return html`<figure>
-      <p class="quiet">The trace can't be drawn: ${(error as Error).message}</p>
+      <p class="quiet">The trace could not be drawn: ${(error as Error).message}</p>
       ${reasons}
     </figure>`;
   }
