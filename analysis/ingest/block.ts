@@ -1,6 +1,8 @@
 /** Where the data lie: which lines, which columns; what stands beside and above is metadata. */
+import { ReadingError } from "../errors.ts";
 import { filledWidth } from "./cells.ts";
 import type { DialectChoice, Row, Run } from "./dialect.ts";
+import { firstStretch } from "./stretches.ts";
 import { looksSymbolic } from "./symbols.ts";
 
 export interface Block {
@@ -14,6 +16,8 @@ export interface Block {
   numeric: number[];
   /** Columns of words and symbols beside them. */
   symbolic: number[];
+  /** Lines of numbers above the data that were taken for a table of the preamble. */
+  skipped: number;
 }
 
 const isNumber = (kind: string) => kind === "number" || kind === "over" || kind === "missing";
@@ -27,9 +31,11 @@ export function findBlock({ rows, best }: DialectChoice): Block {
     row.kinds.length <= best.width + 1 &&
     numeric.some((column) => isNumber(row.kinds[column])) &&
     numeric.every((column) => row.kinds[column] !== "text");
-  const stretch = firstLongStretch(rows, isData);
-  const symbolic = symbolColumns(rows.slice(stretch.from, stretch.to), best.width, numeric);
-  return { ...stretch, width: best.width, numeric, symbolic };
+  const { stretch, skipped } = firstStretch(rows, isData, numeric);
+  const data = rows.slice(stretch.from, stretch.to);
+  const symbolic = symbolColumns(data, best.width, numeric);
+  refuseHalfNumbers(data, best.width, [...numeric, ...symbolic]);
+  return { from: stretch.from, to: stretch.to, width: best.width, numeric, symbolic, skipped };
 }
 
 /** The pattern most lines share, and columns that fill up later (blank while the screen still rolled). */
@@ -66,24 +72,6 @@ function fillsUp(rows: Row[], column: number): boolean {
   return texts === 0 && filled >= 0.9 * after.length && filled >= 3;
 }
 
-/**
- * The first stretch of data lines that is at least half as long as the longest: a short one before it
- * is a table of the preamble, later ones are further segments.
- */
-function firstLongStretch(rows: Row[], isData: (row: Row) => boolean): { from: number; to: number } {
-  const stretches: { from: number; to: number; lines: number }[] = [];
-  let open: { from: number; to: number; lines: number } | null = null;
-  for (const [i, row] of rows.entries()) {
-    if (isData(row)) {
-      if (!open) stretches.push((open = { from: i, to: i, lines: 0 }));
-      open.to = i + 1;
-      open.lines++;
-    } else if (!row.kinds.every((kind) => kind === "blank") || row.kinds.length > 1) open = null;
-  }
-  const longest = Math.max(...stretches.map(({ lines }) => lines));
-  return stretches.find(({ lines }) => lines >= longest / 2) ?? stretches[0];
-}
-
 function symbolColumns(rows: Row[], width: number, numeric: number[]): number[] {
   const columns: number[] = [];
   for (let column = 0; column < width; column++) {
@@ -93,4 +81,20 @@ function symbolColumns(rows: Row[], width: number, numeric: number[]): number[] 
     if (new Set(cells.map((cell) => cell.trim())).size > 1) columns.push(column);
   }
   return columns;
+}
+
+/** Numbers and words mixed down a whole column: damage, which must not pass for metadata beside the data. */
+function refuseHalfNumbers(rows: Row[], width: number, known: number[]): void {
+  for (let column = 0; column < width; column++) {
+    if (known.includes(column)) continue;
+    const later = rows.slice(rows.length >> 1);
+    const numbers = later.filter(({ kinds }) => isNumber(kinds[column])).length;
+    const texts = later.filter(({ kinds }) => kinds[column] === "text").length;
+    if (numbers < 0.1 * later.length || texts < 0.02 * later.length || texts < 3) continue;
+    throw new ReadingError(
+      "damaged-lines",
+      `Cell ${column + 1} of the rows is a number in some lines and text in others`,
+      "The file is damaged or no waveform; export it again",
+    );
+  }
 }

@@ -59,7 +59,7 @@ const [isNumber, isBlank, isText] = [0, 1, 4];
 
 /** Parses whole lines, which end after a line end, or at the end of the file. */
 export function parseBulk(lines: Uint8Array, plan: BulkPlan): ParsedChunk {
-  const bytes = plan.joinCommas ? joinDecimalCommas(lines) : lines;
+  const bytes = withLineEnd(plan.joinCommas ? joinDecimalCommas(lines) : lines);
   const { width, separator, columns } = plan;
   const blanks = separator === space;
   const padding = separator === tab ? space : tab;
@@ -94,11 +94,7 @@ export function parseBulk(lines: Uint8Array, plan: BulkPlan): ParsedChunk {
         byte = bytes[after];
         while (byte === space || byte === padding) byte = bytes[++after];
         const closed =
-          after >= end ||
-          byte === separator ||
-          byte === lineFeed ||
-          byte === carriageReturn ||
-          (blanks && after > scanEnd);
+          byte === separator || byte === lineFeed || byte === carriageReturn || (blanks && after > scanEnd);
         if (scanEnd > at && closed && value < 9.8e37 && value > -9.8e37) {
           values[slot][row] = value;
           kindOf[slot] = isNumber;
@@ -114,7 +110,6 @@ export function parseBulk(lines: Uint8Array, plan: BulkPlan): ParsedChunk {
       }
       at = after;
       cell++;
-      if (at >= end) break;
       byte = bytes[at];
       if (byte === lineFeed || byte === carriageReturn) break;
       if (!blanks) byte = bytes[++at];
@@ -123,6 +118,16 @@ export function parseBulk(lines: Uint8Array, plan: BulkPlan): ParsedChunk {
     else chunk.oddLine(lineStart, at, cell, (odd & 2) !== 0);
   }
   return chunk.done();
+}
+
+/** The loops stop at a line end: reading behind the array would make every read slower. */
+function withLineEnd(bytes: Uint8Array): Uint8Array {
+  const last = bytes[bytes.length - 1];
+  if (last === lineFeed || last === carriageReturn) return bytes;
+  const ended = new Uint8Array(bytes.length + 1);
+  ended.set(bytes);
+  ended[bytes.length] = lineFeed;
+  return ended;
 }
 
 /** Quoted cells may hold the separator; a quote inside is doubled (RFC 4180, section 2). */

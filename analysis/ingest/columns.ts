@@ -18,6 +18,8 @@ export class Columns {
   private readonly counter: number | null;
   /** Cells of the last data lines. */
   tail: string[][] = [];
+  /** A last line that was cut, left out. */
+  cutLine: string | null = null;
   private bytes = 0;
 
   /** `rows`: how many are likely, so that arrays are seldom copied. Memory never touched costs nothing. */

@@ -21,11 +21,12 @@ export function damageNotes(layout: Layout, columns: Columns): Note[] {
       { byte: layout.dataStart + (first ?? odd[0]).byte },
     );
   }
+  const lineOf = ({ row }: (typeof odd)[number]) => layout.dataLine + row;
   const say = (code: string, lines: typeof odd, text: string) => {
     if (lines.length > 0)
       notes.push({
         code,
-        text: `${lines.length} ${text} (the first after ${lines[0].row} samples: "${lines[0].text.slice(0, 60)}").`,
+        text: `${lines.length} ${text} (the first at line ${lineOf(lines[0])} or soon after: "${lines[0].text.slice(0, 60)}").`,
       });
   };
   say(
@@ -34,6 +35,19 @@ export function damageNotes(layout: Layout, columns: Columns): Note[] {
     "lines hold cells that are no numbers; those samples count as unusable",
   );
   say("long-lines", byKind("long"), "lines have more cells than the others; the first ones are used");
+  if (columns.cutLine !== null) {
+    const text = `The file ends in mid-line ("${columns.cutLine.slice(0, 60)}"); that line is left out.`;
+    notes.push({ code: "cut-last-line", text });
+  }
+  if (layout.block.skipped > 0) {
+    const text = `${layout.block.skipped} lines of numbers above the data were taken for a table of the header.`;
+    notes.push({ code: "lines-skipped", text });
+  }
+  const stated = Math.min(...layout.timing.lengths);
+  if (Number.isFinite(stated) && stated > 1.02 * rows) {
+    const text = `The header states ${stated} samples, the file holds ${rows}: it may have been cut.`;
+    notes.push({ code: "fewer-samples", text });
+  }
   say(
     "short-lines",
     byKind("short"),

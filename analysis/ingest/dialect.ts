@@ -30,15 +30,29 @@ export interface DialectChoice {
 
 const separators = ["\t", ";", ",", " "];
 
+/** Judged by the last of the lines, where the data are; up to this many characters of them. */
+const judged = 150_000;
+
 /** null when no line holds a number in any dialect. */
 export function chooseDialect(lines: string[], decimalMark: "." | "," | null): DialectChoice | null {
-  let chosen: DialectChoice | null = null;
-  for (const dialect of candidates(lines, decimalMark)) {
-    const rows = lines.map((line) => readRow(line, dialect));
-    const best = bestRun(rows);
-    if (best && (!chosen || best.score > chosen.best.score)) chosen = { dialect, rows, best };
+  const sample = lastLines(lines);
+  let chosen: { dialect: Dialect; score: number } | null = null;
+  for (const dialect of candidates(sample, decimalMark)) {
+    const score = bestRun(sample.map((line) => readRow(line, dialect)))?.score ?? -Infinity;
+    if (score > (chosen?.score ?? -Infinity)) chosen = { dialect, score };
   }
-  return chosen;
+  if (!chosen) return null;
+  const { dialect } = chosen;
+  const rows = lines.map((line) => readRow(line, dialect));
+  const best = bestRun(rows);
+  return best && { dialect, rows, best };
+}
+
+function lastLines(lines: string[]): string[] {
+  let from = lines.length;
+  for (let size = 0; from > 0 && (size < judged || lines.length - from < 3); from--)
+    size += lines[from - 1].length;
+  return lines.slice(from);
 }
 
 // In order of preference: a later one must do better, not as well.

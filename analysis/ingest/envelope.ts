@@ -12,11 +12,17 @@ export function envelopeChannels(channels: RawChannel[], { from, to, reversed }:
       low[k] = Math.min(a, b);
       high[k] = Math.max(a, b);
     }
-    const inTime = (values: Float64Array) => (reversed ? values.toReversed() : values);
     const name = raw.name.name || String(raw.position + 1);
     return [
-      { ...raw, position: 2 * i, name: { ...raw.name, name: `${name} low` }, values: inTime(low) },
-      { ...raw, position: 2 * i + 1, name: { ...raw.name, name: `${name} high` }, values: inTime(high) },
+      { ...raw, position: 2 * i, name: { ...raw.name, name: `${name} low` }, values: inTime(low, reversed) },
+      {
+        ...raw,
+        position: 2 * i + 1,
+        name: { ...raw.name, name: `${name} high` },
+        values: inTime(high, reversed),
+      },
     ];
   });
 }
+
+const inTime = (values: Float64Array, reversed: boolean) => (reversed ? values.toReversed() : values);

@@ -5,6 +5,7 @@ import type { Setup } from "../setup/schema.ts";
 import { assemble } from "./assemble.ts";
 import { parseBulk, type BulkPlan, type ParsedChunk } from "./bulk.ts";
 import { splitCells } from "./cells.ts";
+import { isCutLine } from "./cut-line.ts";
 import { Columns } from "./columns.ts";
 import { detectEncoding, utf16ToUtf8 } from "./encoding.ts";
 import { planLayout, type Layout } from "./layout.ts";
@@ -36,6 +37,7 @@ export interface Ingested {
 
 const headBytes = 512 * 1024;
 const longestHead = 32 * 1024 * 1024;
+const tailBytes = 8 * 1024;
 const pieceBytes = 2 * 1024 * 1024;
 
 /** For small files and tests: everything at once. Throws ReadingError. */
@@ -48,12 +50,15 @@ export function ingestBytes(bytes: Uint8Array, setup: Setup, _name?: string): Ca
   const layout = planLayout(head, head.length === text.length, setup);
   const columns = new Columns(layout, likelyRows(layout, text.length));
   let from = layout.dataStart;
-  while (from < text.length) {
-    const to = endOfPiece(text, Math.min(text.length, from + pieceBytes), from);
+  for (let size = pieceBytes; from < text.length; size = pieceBytes) {
+    let to = lastLineEnd(text, from, from + size);
+    while (to === from && from + size < text.length) to = lastLineEnd(text, from, from + (size *= 2));
+    if (to === from) break;
     columns.append(parseBulk(text.subarray(from, to), layout.plan), to - from);
     from = to;
   }
-  return finish(layout, columns, setup, text.subarray(Math.max(layout.dataStart, text.length - 4096)));
+  const tail = text.subarray(Math.max(layout.dataStart, from - tailBytes), from);
+  return finish(layout, columns, setup, { tail, unended: text.subarray(from) });
 }
 
 /** For files of any size: never more of them in memory than a few pieces. Throws ReadingError. */
@@ -68,8 +73,14 @@ export async function ingest(
   refuseForeign(head);
   const layout = planLayout(head, stream.ended, setup);
   const columns = new Columns(layout, likelyRows(layout, source.size));
-  const tail = await readData(stream, head.subarray(layout.dataStart), layout, columns, options);
-  return { captures: finish(layout, columns, setup, tail), layout: layout.signature };
+  const end = await readData(stream, head.subarray(layout.dataStart), layout, columns, options);
+  return { captures: finish(layout, columns, setup, end), layout: layout.signature };
+}
+
+/** How the text ends: its last whole lines, and a last line without a line end. */
+interface TextEnd {
+  tail: Uint8Array;
+  unended: Uint8Array;
 }
 
 async function readData(
@@ -78,61 +89,63 @@ async function readData(
   { plan }: Layout,
   columns: Columns,
   options: IngestOptions,
-): Promise<Uint8Array> {
+): Promise<TextEnd> {
   const parser = options.parser ?? { lanes: 1, parse: async (bytes, plan) => parseBulk(bytes, plan) };
   const underWay: { result: Promise<ParsedChunk>; bytes: number }[] = [];
   const settle = async () => {
     const { result, bytes } = underWay.shift()!;
     columns.append(await result, bytes);
   };
-  let rest = first;
   let tail = new Uint8Array(0);
-  while (!stream.ended || rest.length > 0) {
+  let piece = joined(first, new Uint8Array(0));
+  for (;;) {
     if (options.signal?.aborted) throw cancelled();
-    const piece = joined(rest, stream.ended ? new Uint8Array(0) : await stream.next(pieceBytes));
-    const end = stream.ended ? piece.length : endOfPiece(piece, piece.length, 0);
-    rest = piece.slice(end);
-    if (end === piece.length && !stream.ended && rest.length === 0 && !endsLine(piece)) {
-      rest = piece;
-      if (rest.length > 64 * pieceBytes) throw endlessLine();
-      continue;
+    const end = lastLineEnd(piece, 0, piece.length);
+    const rest = piece.slice(end);
+    if (end > 0) {
+      const bytes = piece.subarray(0, end);
+      tail = bytes.slice(Math.max(0, end - tailBytes));
+      underWay.push({ result: parser.parse(bytes, plan), bytes: end });
+      if (underWay.length > parser.lanes) await settle();
+      options.progress?.(Math.min(1, stream.consumed / stream.size));
     }
-    const bytes = piece.subarray(0, end);
-    if (bytes.length > 0) tail = bytes.slice(Math.max(0, bytes.length - 4096));
-    underWay.push({ result: parser.parse(bytes, plan), bytes: end });
-    if (underWay.length > parser.lanes) await settle();
-    options.progress?.(Math.min(1, stream.consumed / stream.size));
-    if (options.signal?.aborted) throw cancelled();
+    if (rest.length > longestHead) throw endlessLine();
+    if (stream.ended) {
+      while (underWay.length > 0) await settle();
+      return { tail, unended: rest };
+    }
+    piece = joined(rest, await stream.next(pieceBytes));
   }
-  while (underWay.length > 0) await settle();
-  return tail;
 }
 
-function finish(layout: Layout, columns: Columns, setup: Setup, tail: Uint8Array): Capture[] {
+function finish(layout: Layout, columns: Columns, setup: Setup, { tail, unended }: TextEnd): Capture[] {
+  const cellsOf = (bytes: Uint8Array) =>
+    splitLines(bytes).map(({ text }) => splitCells(text, layout.dialect.separator));
+  columns.tail = cellsOf(tail)
+    .slice(-40)
+    .filter(({ length }) => length >= layout.plan.width);
+  const [last] = cellsOf(unended);
+  if (last && isCutLine(last, columns.tail, layout.plan))
+    columns.cutLine = last.join(layout.dialect.separator);
+  else if (last) columns.append(parseBulk(unended, layout.plan), unended.length);
   if (columns.nul >= 0) throw nulByte(layout.dataStart + columns.nul);
-  columns.tail = splitLines(tail)
-    .map(({ text }) => splitCells(text, layout.dialect.separator))
-    .filter(({ length }) => length >= layout.plan.width)
-    .slice(-40);
   return assemble(layout, columns, setup);
 }
 
 /** Too few lines to see how a file is built: its lines are long. */
 function isShort(head: Uint8Array): boolean {
   let ends = 0;
-  for (let at = 0; at < head.length && ends < 64; at++) if (head[at] === 10 || head[at] === 13) ends++;
+  for (let at = 0; at < head.length; at++) if (head[at] === 10 || head[at] === 13) ends++;
   if (ends === 0 && head.length >= longestHead) throw endlessLine();
-  return ends < 64 && head.length < longestHead;
+  return (ends < 64 || head.length > 2000 * ends) && head.length < longestHead;
 }
 
-/** Just behind the last line end before `limit`; `limit` itself where there is none or at the text's end. */
-function endOfPiece(bytes: Uint8Array, limit: number, from: number): number {
-  if (limit === bytes.length && from > 0) return limit;
-  for (let at = limit; at > from; at--) if (bytes[at - 1] === 10 || bytes[at - 1] === 13) return at;
-  return limit;
+/** Just behind the last line end between `from` and `to`; `from` where there is none. */
+function lastLineEnd(bytes: Uint8Array, from: number, to: number): number {
+  let at = Math.min(to, bytes.length);
+  while (at > from && bytes[at - 1] !== 10 && bytes[at - 1] !== 13) at--;
+  return at;
 }
-
-const endsLine = (bytes: Uint8Array) => bytes[bytes.length - 1] === 10 || bytes[bytes.length - 1] === 13;
 
 /** A little more than the file should hold, from the length of its first lines. */
 function likelyRows(layout: Layout, size: number): number {

@@ -67,7 +67,8 @@ function fromColumn(
   const other = layout.timing.intervals.find(({ step_s }) => step_s !== stated?.step_s);
   if (stated && coarse) return { start_s, step_s: stated.step_s, stepUncertainty_s: 0, samples };
   if (!stated && other) notes.push(conflictNote(other, measured));
-  if (time.quantum > 0.5 * step) notes.push(roundedNote(measured, scaleBy(uncertainty, factor)));
+  if (time.measured!.unevenness > 0.02 && time.quantum > 0.05 * step)
+    notes.push(roundedNote(measured, scaleBy(uncertainty, factor)));
   return { start_s, step_s: measured, stepUncertainty_s: scaleBy(uncertainty, factor), samples };
 }
 
