@@ -6,11 +6,10 @@ import { inferTank, type Tank } from "./coil/infer.ts";
 import type { ChannelMap, PulseEvidence } from "./evidence.ts";
 import type { SwitchOff } from "./events/event-format.ts";
 import { isVoltage } from "./events/channels.ts";
-import { medianOf } from "./numeric/robust.ts";
 import { readRamp, type Ramp } from "./ramp/read-ramp.ts";
 import type { PulseReading, RingReading } from "./reading-format.ts";
 import { describeRing, modeCovariance, refusedRing } from "./ring/describe.ts";
-import { amplitude, judgeFit } from "./ring/quality.ts";
+import { judgeFit } from "./ring/quality.ts";
 import { ringOfPulse, type PulseRing } from "./ring/ring-of-pulse.ts";
 import type { Setup } from "./setup/schema.ts";
 
@@ -71,7 +70,7 @@ function fitPulse(context: PulseContext, off: SwitchOff): PulseRing | null {
 
 function describePulseRing(context: PulseContext, ring: PulseRing): RingReading {
   const channel = context.capture.channels[context.map.ring!];
-  const judgement = judgeFit(ring.fit, context.noise);
+  const judgement = judgeFit(ring.fit, ring.fit.noise);
   return describeRing(channel, ring.fit, judgement, context.capture.timebase.start_s, context.timeRelative);
 }
 
@@ -161,25 +160,4 @@ function nodePeak({ kick, fit }: PulseEvidence, map: ChannelMap, setup: Setup): 
   if (map.ring === map.coilVoltage && setup.supply_V)
     return Math.abs(kick.value - (fit?.baseline[0] ?? 0)) + setup.supply_V;
   return null;
-}
-
-/** Whether a pulse found on a voltage trace alone is one: a ring, or a kick beyond a change of state. */
-export function isPulse(context: PulseContext, { reading, evidence }: Pulse): boolean {
-  if (reading.ring && reading.ring.quality !== "refused") {
-    const main = evidence.fit!.modes.reduce((a, b) => (amplitude(b) > amplitude(a) ? b : a));
-    if (amplitude(main) > 3 * context.noise) return true;
-  }
-  const { kick, levelOn } = evidence;
-  if (!kick || levelOn === null || context.map.ring === null) return false;
-  const channel = context.capture.channels[context.map.ring];
-  const tail = medianOf(
-    channel.samples,
-    Math.floor((evidence.freeFrom + evidence.freeTo) / 2),
-    evidence.freeTo,
-  );
-  const change = Math.abs(tail - levelOn);
-  return (
-    change > Math.max(4 * context.noise, 1.5 * (channel.lsb ?? 0)) &&
-    Math.abs(kick.value - levelOn) > 2 * change
-  );
 }

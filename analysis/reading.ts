@@ -6,8 +6,9 @@ import type { Capture, Note } from "./capture.ts";
 import { combinePulses } from "./coil/combine.ts";
 import type { CaptureEvidence } from "./evidence.ts";
 import { mapChannels } from "./events/channels.ts";
-import { findSwitchOffs } from "./events/switch-offs.ts";
-import { isPulse, readPulse, type Pulse, type PulseContext } from "./pulse.ts";
+import { confirm } from "./events/confirm.ts";
+import { findSwitchOffs, type Events } from "./events/switch-offs.ts";
+import { readPulse, type Pulse, type PulseContext } from "./pulse.ts";
 import { combineRamps } from "./ramp/combine-ramps.ts";
 import { emptyReading } from "./reading-channels.ts";
 import { differenceNoise } from "./ring/noise.ts";
@@ -37,15 +38,26 @@ export function readCapture(capture: Capture, setup: Setup): CaptureEvidence {
     noise: channel ? differenceNoise(channel.samples, 0, channel.samples.length, channel.lsb) : 0,
     timeRelative: stepUncertainty_s / step_s,
   };
-  const pulses: Pulse[] = [];
-  for (const off of events.offs) {
-    const pulse = readPulse(context, off, pulses.length);
-    if (events.source !== "voltage" || isPulse(context, pulse)) pulses.push(pulse);
-  }
+  const pulses = pulsesOf(context, events);
   reading.pulses = pulses.map((pulse) => pulse.reading);
   evidence.pulses = pulses.map((pulse) => pulse.evidence);
   reading.combined = combinePulses(reading.pulses);
   reading.ramp = combineRamps(reading.pulses);
   reading.run.pulses = pulses.length;
   return evidence;
+}
+
+/** Gate and current say that it was switched; a voltage trace alone has to prove it. */
+function pulsesOf(context: PulseContext, { offs, source }: Events): Pulse[] {
+  const found = offs.map((off, k) => readPulse(context, off, k));
+  const { ring } = context.map;
+  if (source !== "voltage" || ring === null) return found;
+  const candidates = found.map(({ evidence, reading }) => ({
+    evidence,
+    quality: reading.ring?.quality ?? null,
+  }));
+  const kept = confirm(context.capture.channels[ring], candidates, context.noise);
+  const pulses = found.filter((_, k) => kept[k]);
+  pulses.forEach((pulse, index) => (pulse.reading.index = pulse.evidence.index = index));
+  return pulses;
 }

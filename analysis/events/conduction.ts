@@ -25,7 +25,26 @@ export function conductionStart(
   }
   if (at <= back) return back;
   if (off - at < width) return null;
-  for (let i = at; i > at - width && i > back; i--)
-    if (Math.abs(samples[i] - expected) > 2 * tolerance) return i + 0.5;
-  return at;
+  return stepWithin(samples, Math.max(back, at - 2 * width), Math.min(Math.floor(off), at + width));
+}
+
+/** Where between two samples a step divides [from, to) best into two levels (least squares). */
+function stepWithin(samples: Float64Array, from: number, to: number): number {
+  const all = meanAndDeviation(samples, from, to);
+  let best = from;
+  let bestGain = -1;
+  let sum = 0;
+  let count = 0;
+  for (let i = from; i < to - 1; i++) {
+    if (Number.isFinite(samples[i])) {
+      sum += samples[i] - all.mean;
+      count++;
+    }
+    const gain = count > 0 && count < all.count ? (sum * sum) / (count * (1 - count / all.count)) : 0;
+    if (gain > bestGain) {
+      bestGain = gain;
+      best = i;
+    }
+  }
+  return best + 0.5;
 }

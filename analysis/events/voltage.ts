@@ -1,5 +1,5 @@
 /** Switch-offs from a voltage trace: onsets of the kick's own direction out of the conduction level. */
-import { medianOf } from "../numeric/robust.ts";
+import { meanAndDeviation, medianOf } from "../numeric/robust.ts";
 import { makeBlocks } from "../ring/blocks.ts";
 import { differenceNoise } from "../ring/noise.ts";
 import { strongestLines } from "../ring/start.ts";
@@ -12,10 +12,13 @@ import { scaleOf } from "./scale.ts";
 const OPPOSITE_SHARE = 0.6;
 /** Rough periods the ring's own is looked for in. */
 const LOOKED_PERIODS = 200;
-/** Conduction levels of one record agree within this share of the largest swing. */
-const LEVEL_SHARE = 0.05;
+/** Conduction levels of one record agree (hum, AC coupling) within this share of the swing that follows. */
+const LEVEL_SHARE = 0.12;
 /** Scatter of a conduction, in units of the noise. */
 const FLAT = 2;
+/** Swings below this share of the record's largest are looked at twice. */
+const SMALL_SHARE = 0.34;
+const STEP_OVERSHOOT = 2.3;
 
 export function voltageSwitchOffs(
   samples: Float64Array,
@@ -29,7 +32,13 @@ export function voltageSwitchOffs(
   const period = ringPeriod(samples, first, rough.period);
   const scale = { ...rough, period };
   const moved = Math.abs(period / rough.period - 1) > 0.15;
-  const onsets = outOfConduction(moved ? findOnsets(samples, scale, noise, lsb) : first, noise, lsb);
+  const onsets = outOfConduction(
+    samples,
+    moved ? findOnsets(samples, scale, noise, lsb) : first,
+    period,
+    noise,
+    lsb,
+  );
   const width = Math.max(2, Math.round(scale.period / 8));
   const offs: SwitchOff[] = onsets.map((onset, k) => {
     const previous = k > 0 ? onsets[k - 1].at : 0;
@@ -48,11 +57,29 @@ export function voltageSwitchOffs(
     };
   });
   for (let k = 0; k < offs.length; k++) offs[k].freeTo = freeEnd(samples, offs, onsets, k, lsb, width);
-  return { offs, period: scale.period };
+  const early = beginsInRing(samples, offs[0] ?? null, scale.period, noise);
+  return { offs: early ? [early, ...offs] : offs, period: scale.period };
 }
 
 const toleranceOf = (onset: Onset, lsb: number | null, width: number) =>
   Math.max((5 * onset.scatter) / Math.sqrt(width), 1.1 * (lsb ?? 0), 2e-3 * Math.abs(onset.swing));
+
+/** A record that starts inside a ring: swinging from its first period on, and less so later. */
+function beginsInRing(
+  samples: Float64Array,
+  first: SwitchOff | null,
+  period: number,
+  noise: number,
+): SwitchOff | null {
+  const to = first ? Math.floor(first.on ?? first.at!) : samples.length;
+  const length = Math.min(Math.ceil(period), to >> 2);
+  if (length < 6) return null;
+  const begin = meanAndDeviation(samples, 0, length);
+  const end = meanAndDeviation(samples, to - length, to);
+  if (!(begin.deviation > 4 * noise && begin.deviation > 1.2 * end.deviation)) return null;
+  const polarity = first?.polarity ?? 1;
+  return { at: null, u: null, on: null, freeFrom: 0, freeTo: to, polarity, levelOn: null, scatter: null };
+}
 
 /** Next switching edge: the next pulse's conduction, or a conduction that runs to the record's end. */
 function freeEnd(
@@ -98,16 +125,30 @@ function ringPeriod(samples: Float64Array, onsets: Onset[], rough: number): numb
   return line ? ((2 * Math.PI) / line.omega) * width : rough;
 }
 
+/** A body diode lets go, or the switch closes: the swing is little more than the change of level behind it. */
+function isStep(samples: Float64Array, onset: Onset, period: number): boolean {
+  const from = Math.ceil(onset.at + period);
+  const settled = medianOf(samples, from, Math.min(samples.length, from + Math.ceil(4 * period)));
+  return Math.abs(onset.swing) < STEP_OVERSHOOT * Math.abs(settled - onset.level);
+}
+
 /** Onsets out of a flat level, in the kick's direction, all from the same level. */
-function outOfConduction(onsets: Onset[], noise: number, lsb: number | null): Onset[] {
+function outOfConduction(
+  samples: Float64Array,
+  onsets: Onset[],
+  period: number,
+  noise: number,
+  lsb: number | null,
+): Onset[] {
   const flat = onsets.filter((onset) => onset.scatter < FLAT * noise + 0.02 * Math.abs(onset.swing));
   if (flat.length === 0) return [];
   const anchor = flat.reduce((a, b) => (sharpness(b) > sharpness(a) ? b : a));
   const reach = Math.max(...flat.map((onset) => Math.abs(onset.swing)));
-  const tolerance = Math.max(6 * noise, 2 * (lsb ?? 0), LEVEL_SHARE * reach);
+  const tolerance = Math.max(6 * noise, 2 * (lsb ?? 0));
   return flat.filter(
     (onset) =>
-      Math.abs(onset.level - anchor.level) < tolerance &&
+      Math.abs(onset.level - anchor.level) < Math.max(tolerance, LEVEL_SHARE * Math.abs(onset.swing)) &&
+      !(Math.abs(onset.swing) < SMALL_SHARE * reach && isStep(samples, onset, period)) &&
       (onset.polarity === anchor.polarity || Math.abs(onset.swing) > OPPOSITE_SHARE * reach),
   );
 }

@@ -65,6 +65,23 @@ export function makeBlocks(
   return { values, count, segments, used, decimation, level, power, moments };
 }
 
+/**
+ * The blocks with overrange samples kept at the screen's edge: too wrong for a fit, but right in time, so
+ * the spectrum finds the ring's own frequency where only the steep parts of its waves are on screen.
+ */
+export function pinnedValues(samples: Float64Array, from: number, blocks: Blocks): Float64Array {
+  if (blocks.used === blocks.count) return blocks.values;
+  const out = new Float64Array(blocks.count);
+  const { decimation } = blocks;
+  for (let b = 0; b < blocks.count; b++) {
+    let sum = 0;
+    for (let i = from + b * decimation; i < from + (b + 1) * decimation; i++)
+      sum += samples[i] - blocks.level;
+    out[b] = Number.isFinite(sum) ? sum / decimation : 0;
+  }
+  return out;
+}
+
 /** Block ranges of [0, count) that touch no unusable sample. */
 function usableSegments(
   from: number,

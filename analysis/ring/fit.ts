@@ -1,5 +1,5 @@
 /** The ring on a given window: modes, baseline, covariance. */
-import { makeBlocks, type Blocks } from "./blocks.ts";
+import { makeBlocks, pinnedValues, type Blocks } from "./blocks.ts";
 import { toModes, unitCovariance } from "./covariance.ts";
 import { residualBlocks } from "./evaluate.ts";
 import type { RingFit } from "./fit-format.ts";
@@ -50,7 +50,8 @@ export function fitRing(
   else {
     const fine = Math.floor((options.period ?? 0) / SEARCH_PER_CYCLE);
     const by = Math.max(1, Math.ceil(length / SEARCH_VALUES), fine);
-    const found = searchModes(makeBlocks(samples, from, to, unusable, by), options.mostModes ?? 2);
+    const blocks = makeBlocks(samples, from, to, unusable, by);
+    const found = searchModes(blocks, pinnedValues(samples, from, blocks), options.mostModes ?? 2);
     if (!found) return null;
     start = scaled(found.modes, 1 / by);
   }

@@ -9,7 +9,7 @@ import { medianOf } from "../numeric/robust.ts";
 import { fitRing } from "./fit.ts";
 import { afterFlatTops } from "./flat-tops.ts";
 import { noiseLimit, residualProfile } from "./residuals.ts";
-import { disturbedRing, undisturbedRing, type Place, type WindowedRing } from "./window.ts";
+import { disturbedRing, merged, undisturbedRing, type Place, type WindowedRing } from "./window.ts";
 
 export interface PulseRing extends WindowedRing {
   /** Instant of the switch-off by the model; null where the ring is not seen from its beginning. */
@@ -41,8 +41,9 @@ function withoutCutWaves(place: Place): WindowedRing | null {
 
 /** The same ring fitted from the switch-off on, where its first samples agree. */
 function extended(place: Omit<Place, "from">, off: SwitchOff, ring: WindowedRing): PulseRing {
-  const { samples, step_s, noise, lsb, unusable } = place;
+  const { samples, step_s, noise, lsb } = place;
   const { fit } = ring;
+  const unusable = ring.masked.length > 0 ? merged(place.unusable, ring.masked) : place.unusable;
   if (off.at === null || off.levelOn === null) return { ...ring, switchOff: null };
   const period = 1 / (fit.modes[0].frequency_Hz * step_s);
   const crossing = modelCrossing(fit, off.at, Math.max(2, REACH * period), off.levelOn, off.polarity);

@@ -24,9 +24,12 @@ export function residualBuffer(count: number): Float64Array {
 /** What a wave explains before it counts as one: about 1 in 1000 records of noise reach it. */
 const priceOfMode = (used: number) => 18 + 2 * Math.log(used);
 
-/** Modes and baseline degree for these blocks; null when there is no oscillation at all. */
-export function searchModes(blocks: Blocks, most: number): Solution | null {
-  let best = fitNext(blocks, [], blocks.values, 0);
+/**
+ * Modes and baseline degree for these blocks; null when there is no oscillation at all. `pinned`: the
+ * same values with the overrange ones kept (see pinnedValues).
+ */
+export function searchModes(blocks: Blocks, pinned: Float64Array, most: number): Solution | null {
+  let best = fitNext(blocks, [], pinned, 0);
   if (!best || blocks.power - best.cost < priceOfMode(blocks.used) * variance(blocks, best)) return null;
   while (best.modes.length < most) {
     const residual = residualBuffer(blocks.count);
@@ -69,7 +72,7 @@ function earned(blocks: Blocks, before: Solution, after: Solution): boolean {
   const added = after.modes.at(-1)!;
   const excess = Math.max(1, excessAt(colourOf(residual, blocks.count), added.omega));
   const plausible =
-    added.decay > -0.5 / blocks.count &&
+    after.modes.every((mode) => mode.decay > -0.5 / blocks.count) &&
     added.omega > 2 * Math.PI * 0.6 * Math.max(added.decay / 4, 1 / blocks.count);
   return plausible && before.cost - after.cost > priceOfMode(blocks.used) * noise * excess;
 }

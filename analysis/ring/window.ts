@@ -122,7 +122,8 @@ function withoutBursts(place: Place, whole: RingFit | null): WindowedRing | null
   return null;
 }
 
-function merged(a: ArrayLike<number>, b: number[]): number[] {
+/** Two lists of stretches as one, sorted and apart. */
+export function merged(a: ArrayLike<number>, b: number[]): number[] {
   const pairs: [number, number][] = [];
   for (let k = 0; k + 1 < a.length; k += 2) pairs.push([a[k], a[k + 1]]);
   for (let k = 0; k + 1 < b.length; k += 2) pairs.push([b[k], b[k + 1]]);

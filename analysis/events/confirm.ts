@@ -1,0 +1,70 @@
+/**
+ * Which candidates of a voltage trace are pulses: those with a ring, those whose kick stands beyond a
+ * change of state (a spark leaves no ring), and those that resemble the pulses so confirmed.
+ */
+import type { Channel } from "../capture.ts";
+import type { PulseEvidence } from "../evidence.ts";
+import { meanAndDeviation, medianOf } from "../numeric/robust.ts";
+import type { RingQuality } from "../reading-format.ts";
+import { amplitude } from "../ring/quality.ts";
+
+export interface Candidate {
+  evidence: PulseEvidence;
+  quality: RingQuality | null;
+}
+
+/** Candidates in order of time; answers for each whether it is a pulse. */
+export function confirm(channel: Channel, candidates: Candidate[], noise: number): boolean[] {
+  const sure = candidates.map((candidate) => hasRing(candidate, noise) || kicks(channel, candidate, noise));
+  const known = candidates.filter((_, k) => sure[k] && candidates[k].evidence.switchOff !== null);
+  if (known.length === 0) return sure;
+  const swing = medianOf(known.map(({ evidence }) => swingOf(evidence)));
+  const level = medianOf(known.map(({ evidence }) => evidence.levelOn ?? NaN));
+  return candidates.map(({ evidence }, k) => {
+    if (sure[k]) return true;
+    if (evidence.levelOn === null || evidence.switchOff === null) return false;
+    const alike = Math.abs(evidence.levelOn - level) < Math.max(6 * noise, 0.1 * swing);
+    return alike && swingOf(evidence) > 0.3 * swing && isSmooth(channel, evidence);
+  });
+}
+
+const swingOf = ({ kick, levelOn }: PulseEvidence) => (kick ? Math.abs(kick.value - (levelOn ?? 0)) : 0);
+
+function hasRing({ evidence, quality }: Candidate, noise: number): boolean {
+  const { fit } = evidence;
+  if (!fit || quality === "refused" || quality === null) return false;
+  const largest = Math.max(...fit.modes.map(amplitude));
+  if (evidence.switchOff !== null) return largest > 3 * noise;
+  // Without its beginning on screen a wave must be the clearer a ring.
+  const main = fit.modes.find((mode) => amplitude(mode) === largest)!;
+  const decays = main.decay_per_s * (fit.to - fit.from) * fit.step_s > 0.4;
+  return decays && largest > 6 * noise && fit.residual < 3 * fit.noise;
+}
+
+/** The kick goes well beyond the change from the conduction level to the level after it. */
+function kicks(channel: Channel, { evidence }: Candidate, noise: number): boolean {
+  const { kick, levelOn, freeFrom, freeTo } = evidence;
+  if (!kick || levelOn === null) return false;
+  const tail = medianOf(channel.samples, Math.floor(freeTo - (freeTo - freeFrom) / 3), freeTo);
+  const change = Math.abs(tail - levelOn);
+  return (
+    change > Math.max(4 * noise, 1.5 * (channel.lsb ?? 0)) &&
+    Math.abs(kick.value - levelOn) > 2 * change &&
+    isSmooth(channel, evidence)
+  );
+}
+
+/** Neighbouring samples alike over the first half period (von Neumann's ratio): a wave, not a noise burst. */
+function isSmooth(channel: Channel, { freeFrom, freeTo, period, levelOn }: PulseEvidence): boolean {
+  const { samples } = channel;
+  const to = Math.min(freeTo, freeFrom + Math.max(6, Math.ceil((period ?? 16) / 2)));
+  const { mean } = meanAndDeviation(samples, freeFrom, to);
+  const centre = levelOn ?? mean;
+  let steps = 0;
+  let squares = 0;
+  for (let i = freeFrom + 1; i < to; i++) {
+    steps += (samples[i] - samples[i - 1]) ** 2 || 0;
+    squares += (samples[i] - centre) ** 2 || 0;
+  }
+  return steps < 0.8 * squares;
+}
