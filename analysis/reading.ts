@@ -8,6 +8,7 @@ import type { CaptureEvidence } from "./evidence.ts";
 import { mapChannels } from "./events/channels.ts";
 import { confirm } from "./events/confirm.ts";
 import { findSwitchOffs, type Events } from "./events/switch-offs.ts";
+import { notesOn } from "./notes.ts";
 import { readPulse, type Pulse, type PulseContext } from "./pulse.ts";
 import { combineRamps } from "./ramp/combine-ramps.ts";
 import { emptyReading } from "./reading-channels.ts";
@@ -44,6 +45,7 @@ export function readCapture(capture: Capture, setup: Setup): CaptureEvidence {
   reading.combined = combinePulses(reading.pulses);
   reading.ramp = combineRamps(reading.pulses);
   reading.run.pulses = pulses.length;
+  notes.push(...notesOn(map, setup, reading.pulses));
   return evidence;
 }
 

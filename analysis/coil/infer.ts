@@ -3,6 +3,7 @@
  * C = 1/(L·ω0²) for a stated inductance, R = 2·α·L the equivalent series resistance. Uncertainty by the
  * law of propagation with the covariance of frequency and decay (JCGM 100:2008, 5.2).
  */
+import { effectiveCapacitance_F } from "./secondary.ts";
 import type { BudgetLine, Figure, Measured } from "../reading-format.ts";
 import { standard } from "../setup/toleranced.ts";
 import type { Setup } from "../setup/schema.ts";
@@ -22,25 +23,34 @@ export interface RingInput {
   timeRelative: number;
 }
 
-/** Capacitance the coil sees, as stated: capacitor and stray, each with its uncertainty. */
-export function statedCapacitance(setup: Setup): { value: number; parts: BudgetLine[] } | null {
+/**
+ * Capacitance the coil sees at its lower mode (ω0² = `square`), from capacitor, stray capacitance and a
+ * stated secondary, each with what it adds to the uncertainty. Null without a stated capacitor.
+ */
+export function statedCapacitance(
+  setup: Setup,
+  square: number,
+): { value: number; parts: BudgetLine[] } | null {
   const capacitor = standard(setup.capacitor_F);
   if (!capacitor) return null;
   const stray = standard(setup.strayCapacitance_F);
+  const primary = capacitor.value + (stray?.value ?? 0);
+  const value = effectiveCapacitance_F(primary, square, setup);
+  const slope = (effectiveCapacitance_F(primary * 1.0001, square, setup) - value) / (primary * 0.0001);
   return {
-    value: capacitor.value + (stray?.value ?? 0),
+    value,
     parts: [
-      { source: "capacitor tolerance", u: capacitor.u },
-      { source: "stray capacitance", u: stray?.u ?? 0 },
+      { source: "capacitor tolerance", u: Math.abs(slope) * capacitor.u },
+      { source: "stray capacitance", u: Math.abs(slope) * (stray?.u ?? 0) },
     ],
   };
 }
 
 export function inferTank(ring: RingInput, setup: Setup): Tank {
-  const c = statedCapacitance(setup);
   const l = standard(setup.knownInductance_H);
   const omega = 2 * Math.PI * ring.frequency_Hz;
   const square = omega * omega + ring.decay_per_s ** 2;
+  const c = statedCapacitance(setup, square);
   // Relative change of 1/ω0² by frequency and decay.
   const byF = (-2 * omega * 2 * Math.PI) / square;
   const byA = (-2 * ring.decay_per_s) / square;
