@@ -64,7 +64,13 @@ function ringNote(pulse: PulseReading): MarginNote | null {
   const place_s =
     ring.from_s === null || ring.to_s === null ? null : ring.from_s + (ring.to_s - ring.from_s) * 0.4;
   if (!mode || ring.quality === "refused")
-    return { id: "ring", title: "Ring not fitted", text: ring.reason ?? "", tone: "warning", place_s };
+    return {
+      id: "ring",
+      title: "Ring not fitted",
+      text: sentence(ring.reason ?? ""),
+      tone: "warning",
+      place_s,
+    };
   const sentences = [
     `Q ${figureText(mode.q, "")}.`,
     pulse.inductance_H ? `L ${figureText(pulse.inductance_H, "H")}.` : "",

@@ -11,7 +11,7 @@ export const Captures = memo(function Captures({ detail, rows }: { detail: RunDe
   return (
     <section className="captures" aria-labelledby="captures-title">
       <h2 id="captures-title">{plural(captureRows.length, "capture")}</h2>
-      <ul>
+      <ul className={captureRows.length > 100 ? "long" : undefined}>
         {captureRows.map((row) => {
           const pulses = byCapture.get(row.capture) ?? [];
           const record =

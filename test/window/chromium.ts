@@ -6,10 +6,12 @@ import { describe } from "vitest";
 const path = "/usr/bin/chromium";
 const found = existsSync(path);
 
-if (!found && process.env.CI) throw new Error(`window tests need a Chromium at ${path}; in CI its absence is a failure`);
+if (!found && process.env.CI)
+  throw new Error(`window tests need a Chromium at ${path}; in CI its absence is a failure`);
 if (!found) console.log(`no Chromium at ${path}: the window tests are skipped`);
 
 /** `describe`, skipped where no Chromium is. */
 export const describeWindow = found ? describe : describe.skip;
 
-export const launch = (): Promise<Browser> => chromium.launch({ executablePath: path, chromiumSandbox: false });
+export const launch = (): Promise<Browser> =>
+  chromium.launch({ executablePath: path, chromiumSandbox: false });

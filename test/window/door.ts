@@ -22,7 +22,11 @@ export interface TestDoor extends LocalDoor {
 export async function openDoor(options: { demo?: boolean } = {}): Promise<TestDoor> {
   if (!existsSync(worker)) throw new Error("dist/ is missing: run npm run build before the window tests");
   const folder = mkdtempSync(join(tmpdir(), "ringbook-window-"));
-  const host = await createHost({ bookPath: join(folder, "book.db"), workerUrl: pathToFileURL(worker), demo });
+  const host = await createHost({
+    bookPath: join(folder, "book.db"),
+    workerUrl: pathToFileURL(worker),
+    demo,
+  });
   const door = await openLocalDoor(host, { page: join(root, "dist/renderer") });
   const ask: TestDoor["ask"] = async (name, argument) => {
     const reply = await host.answer(name, argument);

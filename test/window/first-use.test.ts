@@ -58,7 +58,13 @@ describeWindow("first use", () => {
     await page.keyboard.press("k");
     const overview = page.getByRole("dialog");
     await overview.waitFor();
-    for (const does of ["open captures", "open the marked pulse", "turn the setup card over", "undo", "print"])
+    for (const does of [
+      "open captures",
+      "open the marked pulse",
+      "turn the setup card over",
+      "undo",
+      "print",
+    ])
       expect(await overview.getByText(does).count(), does).toBeGreaterThan(0);
     await expectAccessible(page);
     await page.keyboard.press("Escape");
@@ -87,7 +93,10 @@ describeWindow("first use", () => {
       const { page } = sheet;
       await page.getByText(/^54 pulses:/).waitFor();
       expect(await sidewaysOverflow(page)).toBeLessThanOrEqual(0);
-      await page.locator(".written-line").first().click({ position: { x: 12, y: 20 } });
+      await page
+        .locator(".written-line")
+        .first()
+        .click({ position: { x: 12, y: 20 } });
       await page.locator(".note-list li").first().waitFor();
       expect(await sidewaysOverflow(page)).toBeLessThanOrEqual(0);
       await expectAccessible(page);

@@ -29,7 +29,10 @@ describeWindow("a run", () => {
     const { page } = sheet;
     await page.locator(".greeting").waitFor();
     const captures = filesOf(demo, (name) => /^(pulse-0[1-4]\.csv|setup\.json)$/.test(name));
-    await dropFiles(page, [...captures, { name: "<img src=x onerror=alert(1)>.csv", text: "not a capture\n" }]);
+    await dropFiles(page, [
+      ...captures,
+      { name: "<img src=x onerror=alert(1)>.csv", text: "not a capture\n" },
+    ]);
     const problem = page.locator(".job li", { hasText: "<img src=x onerror=alert(1)>.csv" });
     await problem.waitFor({ timeout: 30_000 });
     await page.getByText(/^4 pulses: \d+ sparked/).waitFor();
@@ -89,7 +92,10 @@ describeWindow("a run", () => {
     const { page } = sheet;
     await page.getByText(/^54 pulses:/).waitFor();
     for (const words of ["a table (CSV)", "readings (JSON Lines)", "a report page"]) {
-      const [download] = await Promise.all([page.waitForEvent("download"), page.getByRole("button", { name: words }).click()]);
+      const [download] = await Promise.all([
+        page.waitForEvent("download"),
+        page.getByRole("button", { name: words }).click(),
+      ]);
       expect(download.suggestedFilename().length).toBeGreaterThan(4);
     }
     await page.keyboard.press("f");
@@ -110,7 +116,10 @@ describeWindow("a run", () => {
     await page.getByText("Watching").waitFor();
     const [capture] = filesOf(demo, (name) => name === "pulse-05.csv");
     writeFileSync(join(folder, capture.name), capture.text);
-    await page.locator(".watch").getByText(/1 capture so far/).waitFor({ timeout: 20_000 });
+    await page
+      .locator(".watch")
+      .getByText(/1 capture so far/)
+      .waitFor({ timeout: 20_000 });
     expect(await page.locator(".watch-log li").count()).toBeGreaterThan(0);
     await page.getByRole("button", { name: "stop" }).click();
     await page.getByText("Watching").waitFor({ state: "hidden" });

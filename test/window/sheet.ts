@@ -20,8 +20,13 @@ export async function openSheet(
   path = "/",
   options: BrowserContextOptions = {},
 ): Promise<Sheet> {
-  const context = await browser.newContext({ viewport: { width: 1360, height: 860 }, colorScheme: "light", ...options });
+  const context = await browser.newContext({
+    viewport: { width: 1360, height: 860 },
+    colorScheme: "light",
+    ...options,
+  });
   const page = await context.newPage();
+  page.setDefaultTimeout(6000);
   const noise: string[] = [];
   page.on("console", (message) => {
     if (message.type() === "error" || message.type() === "warning") noise.push(message.text());
@@ -49,7 +54,9 @@ export async function expectAccessible(page: Page): Promise<void> {
     const { violations } = await (window as never as { axe: typeof import("axe-core") }).axe.run();
     return violations
       .filter(({ impact }) => impact === "serious" || impact === "critical")
-      .map(({ id, nodes }) => `${id}: ${nodes.map((node) => `${node.html} ${node.failureSummary}`).join("\n")}`);
+      .map(
+        ({ id, nodes }) => `${id}: ${nodes.map((node) => `${node.html} ${node.failureSummary}`).join("\n")}`,
+      );
   });
   expect(found).toEqual([]);
 }
