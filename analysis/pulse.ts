@@ -71,7 +71,15 @@ function fitPulse(context: PulseContext, off: SwitchOff): PulseRing | null {
 function describePulseRing(context: PulseContext, ring: PulseRing): RingReading {
   const channel = context.capture.channels[context.map.ring!];
   const judgement = judgeFit(ring.fit, ring.fit.noise);
-  return describeRing(channel, ring.fit, judgement, context.capture.timebase.start_s, context.timeRelative);
+  const reading = describeRing(
+    channel,
+    ring.fit,
+    judgement,
+    context.capture.timebase.start_s,
+    context.timeRelative,
+  );
+  reading.nonlinear = ring.nonlinear;
+  return reading;
 }
 
 function refusal(context: PulseContext): RingReading | null {
