@@ -32,6 +32,8 @@ const separators = ["\t", ";", ",", " "];
 
 /** Judged by the last of the lines, where the data are; up to this many characters of them. */
 const judged = 150_000;
+/** Lines with as many words as numbers ("Event 7") are prose unless there are many. */
+const fewestMixed = 10;
 
 /** null when no line holds a number in any dialect. */
 export function chooseDialect(lines: string[], decimalMark: "." | "," | null): DialectChoice | null {
@@ -45,7 +47,8 @@ export function chooseDialect(lines: string[], decimalMark: "." | "," | null): D
   const { dialect } = chosen;
   const rows = lines.map((line) => readRow(line, dialect));
   const best = bestRun(rows);
-  return best && { dialect, rows, best };
+  const words = best !== null && (best.score < 0 || (best.score === 0 && best.to - best.from < fewestMixed));
+  return best === null || words ? null : { dialect, rows, best };
 }
 
 function lastLines(lines: string[]): string[] {

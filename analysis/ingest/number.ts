@@ -33,7 +33,7 @@ export function readCell(cell: string, format: NumberFormat): { kind: CellKind; 
 /** A number in the file's spelling, else null: signs, either decimal mark, grouped digits, D exponents. */
 export function readNumber(text: string, format: NumberFormat): number | null {
   if (format.decimal === "." && plain.test(text)) return Number(text);
-  let spelled = text.replace(/^−/, "-").replace(/d(?=[+-]?\d+$)/i, "e");
+  let spelled = text.replace(/^−/, "-").replace(/(?<=[.,]\d*)d(?=[+-]?\d+$)/i, "e");
   if (format.thousands !== null && spelled.includes(format.thousands)) {
     if (!grouped(spelled, format)) return null;
     spelled = spelled.replaceAll(format.thousands, "");

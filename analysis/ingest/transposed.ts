@@ -24,7 +24,8 @@ export function refuseTooWide({ numeric }: Block, line: number): void {
 
 export function rowChannels(rows: Row[], { numeric }: Block, format: NumberFormat): RawChannel[] {
   const words = [...Array(numeric[0]).keys()];
-  return rows.map(({ cells }) => {
+  const whole = rows.filter(({ cells }) => cells.length > numeric[0]);
+  return whole.map(({ cells }) => {
     const tally = { blank: 0, missing: 0, over: 0, text: 0 };
     const values = Float64Array.from(numeric, (column) => {
       const { kind, value } = readCell(cells[column] ?? "", format);

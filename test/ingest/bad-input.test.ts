@@ -55,9 +55,9 @@ describe("refused with a code, a place and advice", () => {
   });
 });
 
-describe("read, with what is wrong in the notes", () => {
-  const codes = (text: string) => ingestBytes(utf8(text), {})[0].notes.map(({ code }) => code);
+const codes = (text: string) => ingestBytes(utf8(text), {})[0].notes.map(({ code }) => code);
 
+describe("read, with what is wrong in the notes", () => {
   it("cut in mid-line: the broken last row is dropped", () => {
     const cut = good.slice(0, good.length - 4);
     const [capture] = ingestBytes(utf8(cut), {});
@@ -89,6 +89,12 @@ describe("read, with what is wrong in the notes", () => {
   });
 });
 
+const code = (path: string) =>
+  readFile(path, {}).then(
+    () => "read",
+    (error: ReadingError) => error.code,
+  );
+
 describe("files on the machine", () => {
   const folder = mkdtempSync(join(tmpdir(), "ringbook-reading-"));
   afterAll(() => rmSync(folder, { recursive: true, force: true }));
@@ -96,12 +102,6 @@ describe("files on the machine", () => {
     writeFileSync(join(folder, name), content);
     return join(folder, name);
   };
-  const code = (path: string) =>
-    readFile(path, {}).then(
-      () => "read",
-      (error: ReadingError) => error.code,
-    );
-
   it("a folder, a missing file, a damaged archive", async () => {
     mkdirSync(join(folder, "inner.csv"));
     expect(await code(join(folder, "inner.csv"))).toBe("is-folder");

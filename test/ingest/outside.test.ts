@@ -9,6 +9,7 @@ import { ingestBytes } from "../../analysis/ingest/index.ts";
 import { splitLines } from "../../analysis/ingest/lines.ts";
 
 const utf8 = (text: string) => new TextEncoder().encode(text);
+const unix = (text: string) => text.replaceAll("\r\n", "\n");
 const table = (bytes: Uint8Array) => splitLines(bytes).map(({ text }) => splitCells(text, ","));
 
 /** File, first data row for PapaParse (empty lines not counted), column of each channel, factor of its unit. */
@@ -52,7 +53,6 @@ describe("csv-spectrum", () => {
   it.each(names)("%s", (file) => {
     const [names, ...rows] = table(readFileSync(join(folder, "csvs", file)));
     const expected = JSON.parse(readFileSync(join(folder, "json", file.replace(".csv", ".json")), "utf8"));
-    const unix = (text: string) => text.replaceAll("\r\n", "\n");
     const objects = rows.map((cells) => Object.fromEntries(cells.map((cell, i) => [names[i], unix(cell)])));
     expect(objects).toEqual(
       expected.map((row: Record<string, string>) =>
