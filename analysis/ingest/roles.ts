@@ -31,8 +31,12 @@ export function guessRoles(capture: Capture): Note[] {
     if (role) settle(channel, role, "its name");
   }
   const unnamed = open.filter(({ role }) => role === "other");
-  // The strongest kick first: it is the switch node if any is.
-  for (const channel of unnamed.toSorted((a, b) => kick(shapes.get(b)) - kick(shapes.get(a)))) {
+  // The strongest kick first: it is the switch node, unless it stands far above another and in kilovolts.
+  const secondary = farStrongest(unnamed.map((channel) => ({ channel, shape: shapes.get(channel) ?? null })));
+  if (secondary) settle(secondary, "secondary", "its kilovolts beside a smaller kick");
+  for (const channel of unnamed
+    .filter(({ role }) => role === "other")
+    .toSorted((a, b) => kick(shapes.get(b)) - kick(shapes.get(a)))) {
     const guess = byShape(channel, shapes.get(channel) ?? null, taken);
     if (guess) settle(channel, guess.role, guess.why);
   }
@@ -65,6 +69,23 @@ function byName({ name, unit }: Channel): ChannelRole | null {
 const kick = (shape: Shape | null | undefined) =>
   shape ? Math.max(shape.above, shape.below) * (1 - shape.busy) : 0;
 
+interface Shaped {
+  channel: Channel;
+  shape: Shape | null;
+}
+
+function farStrongest(channels: Shaped[]): Channel | null {
+  const volts = channels.filter(
+    ({ channel, shape }) => shape && channel.unit !== "A" && rings(shape) && shape.rampShare < 0.8,
+  );
+  const [first, second] = volts.toSorted((a, b) => kick(b.shape) - kick(a.shape));
+  if (!second || !first.shape || !second.shape) return null;
+  const ranges = [first.shape.high - first.shape.low, second.shape.high - second.shape.low];
+  return ranges[0] > 1500 && ranges[0] > 5 * ranges[1] && ranges[1] > 30 ? first.channel : null;
+}
+
+const rings = (shape: Shape) => shape.swings >= 2 || shape.busy < 0.3;
+
 function byShape(
   channel: Channel,
   shape: Shape | null,
@@ -73,9 +94,13 @@ function byShape(
   if (!shape || (channel.unit !== "V" && channel.unit !== "" && channel.unit !== "counts")) return null;
   if (shape.atExtremes > 0.9 && shape.high - shape.low < 60)
     return taken.has("gate") ? null : { role: "gate", why: "its two levels" };
-  if (channel.unit !== "V" && shape.rampShare > 0.8 && !taken.has("coil-current"))
+  if (
+    channel.unit !== "V" &&
+    shape.rampShare > (taken.has("switch-node") ? 0.5 : 0.8) &&
+    !taken.has("coil-current")
+  )
     return { role: "coil-current", why: "its ramp" };
-  const leaves = shape.swings >= 2 || shape.busy < 0.3;
+  const leaves = rings(shape);
   if (!taken.has("switch-node") && !taken.has("coil-voltage") && leaves)
     return { role: "switch-node", why: "its kick and ring" };
   if (!taken.has("secondary") && leaves && channel.unit === "V" && shape.high - shape.low > 2000)

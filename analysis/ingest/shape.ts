@@ -16,7 +16,7 @@ export interface Shape {
   busy: number;
   /** How often it swings past rest by more than a tenth of the range, in turn to either side. */
   swings: number;
-  /** Largest straight rise from the rest level as a share of the height above it: near 1 for a ramp. */
+  /** Largest slow rise from the rest level as a share of the height above it: near 1 for a ramp. */
   rampShare: number;
 }
 
@@ -31,6 +31,7 @@ export function shapeOf(samples: Float64Array): Shape | null {
   }
   if (!(high > low)) return null;
   const rest = restLevel(samples, low, high);
+  const { swings, spacing } = countSwings(samples, rest, 0.1 * (high - low));
   const near = 0.08 * (high - low);
   const reach = 0.25 * Math.max(high - rest, rest - low);
   let extremes = 0;
@@ -56,8 +57,8 @@ export function shapeOf(samples: Float64Array): Shape | null {
     below: rest - low,
     peakAt,
     busy: busy / count,
-    swings: countSwings(samples, rest, 0.1 * (high - low)),
-    rampShare: straightRise(samples, low, high, rest),
+    swings,
+    rampShare: longestRise(samples, { low, high, rest }, spacing),
   };
 }
 
@@ -70,36 +71,51 @@ function restLevel(samples: Float64Array, low: number, high: number): number {
 }
 
 /**
- * In 200 block means: the largest rise that starts at rest and stays within 8 % of its chord (a quarter
- * of a sine strays by 21 %, a half by 10 %), as a share of the height above rest.
+ * In 200 block means: the largest rise that starts at rest, keeps rising (noise of 3 % apart), is half
+ * way up about half way through and lasts longer than the ring's swings do, as a share of the height above rest.
  */
-function straightRise(samples: Float64Array, low: number, high: number, rest: number): number {
+function longestRise(
+  samples: Float64Array,
+  { low, high, rest }: { low: number; high: number; rest: number },
+  swing: number,
+): number {
+  const range = high - low;
   const means = blockMeans(samples, Math.min(200, samples.length >> 1));
+  const shortest = Math.max(4, (2 * swing * means.length) / samples.length);
   let largest = 0;
-  let from = 0;
-  for (let b = 1; b <= means.length; b++) {
-    if (means[b] > means[b - 1]) continue;
-    const rise = means[b - 1] - means[from];
-    const fromRest = Math.abs(means[from] - rest) < 0.15 * (high - low);
-    if (b - from >= 5 && fromRest && isChord(means.slice(from, b), rise)) largest = Math.max(largest, rise);
-    from = b;
+  for (let from = 0; from < means.length; from++) {
+    if (!(Math.abs(means[from] - rest) < 0.1 * range)) continue;
+    let top = from;
+    for (let b = from + 1; b < means.length && means[b] > means[top] - 0.03 * range; b++)
+      if (means[b] > means[top]) top = b;
+    const rise = means[top] - means[from];
+    const half = means.findIndex((mean, b) => b >= from && mean - means[from] >= rise / 2);
+    const steady = half - from > 0.2 * (top - from) && half - from < 0.8 * (top - from);
+    if (top - from >= shortest && steady) largest = Math.max(largest, rise);
   }
   return largest / (high - rest);
 }
 
-function countSwings(samples: Float64Array, rest: number, reach: number): number {
+/** Swings past rest by more than `reach`, in turn to either side; the median time between them, in samples. */
+function countSwings(
+  samples: Float64Array,
+  rest: number,
+  reach: number,
+): { swings: number; spacing: number } {
   let side = 0;
-  let swings = 0;
-  for (const value of samples) {
+  const at: number[] = [];
+  for (let i = 0; i < samples.length; i++) {
+    const value = samples[i];
     const now = value > rest + reach ? 1 : value < rest - reach ? -1 : side;
-    if (now !== side) swings++;
+    if (now !== side) at.push(i);
     side = now;
   }
-  return swings;
+  const spacings = at
+    .slice(1)
+    .map((place, i) => place - at[i])
+    .toSorted((a, b) => a - b);
+  return { swings: at.length, spacing: spacings[spacings.length >> 1] ?? 0 };
 }
-
-const isChord = (means: number[], rise: number) =>
-  means.every((mean, i) => Math.abs(mean - means[0] - (rise * i) / (means.length - 1)) <= 0.08 * rise);
 
 function blockMeans(samples: Float64Array, blocks: number): number[] {
   return Array.from({ length: blocks }, (_, b) => {
