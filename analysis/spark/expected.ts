@@ -41,7 +41,9 @@ export function expectedOf(
   if (models.length === 0) return null;
   const values = new Float64Array(count);
   for (const model of models) addModel(values, model, window, rest, models.length);
-  return { values, from: 0, slack: 0.02 };
+  // Before a model's own first block there is nothing to go by.
+  const starts = models.map((model) => Math.ceil((model.window.first_s - window.first_s) / window.step_s));
+  return { values, from: Math.max(0, ...starts), slack: 0.02 };
 }
 
 /** The other pulse's own blocks, read between its block centres, scaled to this pulse's place in the train. */

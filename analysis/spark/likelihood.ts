@@ -70,7 +70,7 @@ function byItself(traits: Traits, most: number | null): Likelihood {
     away: null,
     loss,
   });
-  if (misfit < NOISE && gain < NOISE) return answer(0.005, "one-ring");
+  if (traits.oneRing) return soundRing(traits) ? answer(0.005, "one-ring") : answer(0.4, "doubt");
   if (!traits.ringAfter) return cutShort(traits, Math.max(misfit, gain));
   if (ringBefore && jump !== null) {
     if (jump > 0.2) return answer(0.98, "course");
@@ -84,7 +84,9 @@ function byItself(traits: Traits, most: number | null): Likelihood {
   if (misfit > 2 * NOISE && turned > 0.7 * FREE_START)
     return answer(turned > FREE_START ? 0.97 : 0.7, "turned");
   if (loss !== null && loss > 0.25) return answer(0.6, "doubt");
-  return answer(loss !== null && loss > 0.2 ? 0.3 : 0.05, "ring-goes-on");
+  // Long past a clamp or a bounce and still no free ring: something went on, be it only a core's own bend.
+  const long = misfit > 3 * NOISE && traits.late;
+  return loss !== null && (loss > 0.2 || long) ? answer(0.3, "doubt") : answer(0.05, "ring-goes-on");
 }
 
 /** Radians; a saturating core leads by up to about as much, a clamp lags by less. */
@@ -92,10 +94,18 @@ const FREE_START = 1.2;
 
 /**
  * A ring that was free from switch-off on starts near the level of conduction and rises: its low mode, carried
- * back, is nearly a sine. How far it is turned from that, in radians; a lead counts half, for a saturating
- * core rings faster at first.
+ * back, is nearly a sine. How far it is turned from that, in radians: a lag counts more, a lead
+ * less, for a saturating core rings faster at first.
  */
 function phaseTurned([cosine, sine]: [number, number]): number {
   const turn = Math.atan2(-cosine, sine);
-  return turn > 0 ? turn * 1.5 : -turn;
+  return turn > 0 ? turn * 1.5 : -0.6 * turn;
+}
+
+/** One ring explains a pulse only if it is the ring the kick began: of its size, and starting where it starts. */
+function soundRing({ rest, kick, startsInRing, clipped }: Traits): boolean {
+  if (startsInRing) return true;
+  if (!rest) return false;
+  const share = Math.hypot(...rest) / kick;
+  return share > 0.45 && (share < 1.5 || clipped) && phaseTurned(rest) < FREE_START;
 }

@@ -4,8 +4,11 @@ import { median } from "../numeric/median.ts";
 import type { FittedMode } from "../ring/fit-format.ts";
 
 /** The strongest mode, what is not much weaker, and what is faster: a slow faint one is hum or a baseline. */
-export function ringModes(modes: FittedMode[]): FittedMode[] {
-  const size = (mode: FittedMode) => Math.hypot(mode.cosine, mode.sine);
+export function ringModes(fitted: FittedMode[]): FittedMode[] {
+  const modes = fitted.filter(
+    ({ frequency_Hz, decay_per_s }) =>
+      decay_per_s < 3 * frequency_Hz || fitted[0].frequency_Hz < frequency_Hz,
+  );
   const strongest = modes.reduce<FittedMode | null>(
     (best, mode) => (!best || size(mode) > size(best) ? mode : best),
     null,
@@ -32,7 +35,6 @@ export function ringPeriods(places: { capture: CaptureEvidence; pulse: PulseEvid
   });
   const known = own_s.filter((period) => period !== null);
   const usual = known.length > 2 ? median(known) : null;
-  const alike = (a: number, b: number) => Math.abs(a / b - 1) < ALIKE;
   const shared = (period: number) => known.filter((other) => alike(period, other)).length;
   return places.map(({ capture }, i) => {
     const { step_s } = capture.timebase;
@@ -43,3 +45,6 @@ export function ringPeriods(places: { capture: CaptureEvidence; pulse: PulseEvid
     return period === null ? null : period / step_s;
   });
 }
+
+const alike = (a: number, b: number) => Math.abs(a / b - 1) < ALIKE;
+const size = (mode: FittedMode) => Math.hypot(mode.cosine, mode.sine);

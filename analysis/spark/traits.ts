@@ -16,6 +16,8 @@ export interface Traits {
   ringBefore: boolean;
   /** A ring was seen after it. */
   ringAfter: boolean;
+  /** The free ring after begins later than half a period. */
+  late: boolean;
   /** One free ring explains the whole pulse to the noise. */
   oneRing: boolean;
   /** The disturbance begins in the last stretch of the window. */
@@ -27,6 +29,9 @@ export interface Traits {
   /** Largest excursion in the first period and its block. */
   kick: number;
   kickBlock: number;
+  /** Blocks of the first period are missing: the kick may be larger than it looks. */
+  clipped: boolean;
+  startsInRing: boolean;
   /** Share of the amplitude that is missing after the disturbance, by the pulse's own evidence; null: unknown. */
   loss: number | null;
 }
@@ -37,11 +42,7 @@ export const NOISE = 12;
 const LEAST_RING = 0.7;
 
 /** `ceiling`: variance a block at most has where the ring is free, as the run's quiet pulses show it. */
-export function traitsOf(
-  window: SparkWindow,
-  modes: KnownMode[],
-  ceiling = Number.POSITIVE_INFINITY,
-): Traits {
+export function traitsOf(window: SparkWindow, modes: KnownMode[], ceiling = 16 * window.noise ** 2): Traits {
   const { blocks, period } = window;
   const amplitude = largest(window, 0, blocks.count).size;
   const stride = Math.max(1, Math.round(period / 8));
@@ -53,14 +54,16 @@ export function traitsOf(
   const ringBefore = a >= LEAST_RING * period && fits(split, "before", sums.columns);
   const ringAfter = blocks.count - b >= LEAST_RING * period && split.after.blocks > 2 * sums.columns;
   const tail = ringBefore && blocks.count - a < LEAST_RING * period;
+  const clipped = !measured(window, 0, Math.ceil(period));
   const oneRing = split.misfit < NOISE * NOISE && split.gain < NOISE * NOISE;
   const rest = oneRing
     ? carriedBack(sums, split.whole.coefficients, 0, window, modes[0])
     : ringAfter
       ? carriedBack(sums, split.after.coefficients, b, window, modes[0])
       : null;
-  const known = rest !== null && isKnown(rest, first.size, oneRing ? 0 : b, split, window, modes[0]);
-  const kick = { kick: first.size, kickBlock: first.block };
+  const known =
+    rest !== null && isKnown(rest, first.size * (clipped ? 2 : 1), oneRing ? 0 : b, split, window, modes[0]);
+  const kick = { kick: first.size, kickBlock: first.block, clipped, startsInRing: window.startsInRing };
   const jump = ringBefore && ringAfter ? jumpOf(sums, split, a, b, modes[0], window) : null;
   const traits = {
     sums,
@@ -71,6 +74,7 @@ export function traitsOf(
     ringBefore,
     ringAfter,
     tail,
+    late: b > 0.5 * period,
     oneRing,
     rest: known ? rest : null,
     jump,
@@ -147,4 +151,12 @@ export function largest(window: SparkWindow, from: number, to: number): { size: 
     for (let i = Math.max(from, segments[s]); i < Math.min(to, segments[s + 1]); i++)
       if (Math.abs(values[i]) > size) [size, block] = [Math.abs(values[i]), i];
   return { size, block };
+}
+
+/** Whether every block of [from, to) holds a measurement. */
+function measured({ blocks }: SparkWindow, from: number, to: number): boolean {
+  const { segments } = blocks;
+  for (let s = 0; s < segments.length; s += 2)
+    if (segments[s] <= from && segments[s + 1] >= Math.min(to, blocks.count)) return true;
+  return false;
 }

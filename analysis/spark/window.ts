@@ -81,15 +81,15 @@ function turn(blocks: Blocks): void {
 }
 
 /**
- * The next conduction may begin inside the window: from where the trace lies still, nearer to the level of
- * conduction than to what the ring settles to, all goes. Judged by means over a stretch, for the two levels
- * may be closer than the noise.
+ * The next conduction may begin inside the window: from where the trace lies still for most of a period (at
+ * the window's end: for a third of one), nearer to the level of conduction than to what the ring settles to,
+ * all goes. Judged by means over stretches, for the two levels may be closer than the noise.
  */
 function leaveOutConduction(blocks: Blocks, levelOn: number, noise: number, period: number): void {
   const { values, count } = blocks;
   const length = Math.max(4, Math.round(0.3 * period));
   const apart = Math.abs(median(values.subarray(count >> 1, count)) - levelOn);
-  let [sum, square] = [0, 0];
+  let [sum, square, since] = [0, 0, -1];
   for (let i = 0; i < count; i++) {
     sum += values[i] - levelOn;
     square += (values[i] - levelOn) ** 2;
@@ -97,10 +97,13 @@ function leaveOutConduction(blocks: Blocks, levelOn: number, noise: number, peri
       sum -= values[i - length] - levelOn;
       square -= (values[i - length] - levelOn) ** 2;
     }
-    if (i < length - 1) continue;
     const mean = sum / length;
-    const still = square / length - mean * mean < (2 * noise) ** 2;
-    if (still && Math.abs(mean) < 0.35 * apart) return cut(blocks, Math.max(0, i + 1 - length - 2));
+    const still =
+      i >= length - 1 && square / length - mean * mean < (2 * noise) ** 2 && Math.abs(mean) < 0.35 * apart;
+    if (!still) since = -1;
+    else if (since < 0) since = i + 1 - length;
+    if (since >= 0 && (i - since > 0.8 * period || i === count - 1))
+      return cut(blocks, Math.max(0, since - 2));
   }
 }
 
@@ -112,7 +115,11 @@ function cut(blocks: Blocks, end: number): void {
   blocks.segments = segments;
 }
 
-/** A bouncing contact closes again: the end of a stretch at the conduction's level well before half a period; null: none. */
+/**
+ * A bouncing contact closes again: the end of a stretch at the conduction's level well before half a period;
+ * null: none. It shorts the capacitance, so the trace falls to that level at once; a spark's swing through it
+ * or along it comes by a bend.
+ */
 function lastClosed(
   pulse: PulseEvidence,
   samples: Float64Array,
@@ -122,39 +129,37 @@ function lastClosed(
 ): number | null {
   if (pulse.levelOn === null || pulse.switchOff === null) return null;
   const tolerance = 3 * (pulse.fit?.noise ?? 0) + lsb / 2;
-  // A spark throws the node through this level, a contact holds it there.
-  const least = Math.max(3, (0.008 * (to - from)) / 0.3);
-  let [still, last] = [0, null as number | null];
+  const height = (i: number) => pulse.polarity * (samples[i] - pulse.levelOn!);
+  let [highest, closed, last] = [0, false, null as number | null];
   for (let i = from; i < Math.min(samples.length, Math.floor(to)); i++) {
-    still = Math.abs(samples[i] - pulse.levelOn) < tolerance ? still + 1 : 0;
-    if (still >= least) last = i;
+    const down = Math.abs(height(i)) < tolerance;
+    // Fallen from above half of the highest within two samples.
+    if (down && !closed)
+      closed = Math.max(height(i - 1), height(i - 2)) > Math.max(0.5 * highest, 4 * tolerance);
+    if (!down) closed = false;
+    if (closed) last = i;
+    highest = Math.max(highest, height(i));
   }
   return last;
 }
 
 /**
- * Scatter of block means where the switch conducts and nothing happens: holds the coloured part of the noise
- * that differences of samples miss. 0 where that stretch is too short.
+ * Scatter of block means where the switch conducts and nothing happens, about a straight line: holds the
+ * coloured part of the noise that differences of samples miss. 0 where that stretch is too short.
  */
 function conductionNoise(pulse: PulseEvidence, samples: Float64Array, decimation: number): number {
   if (pulse.switchOff === null) return 0;
   const to = Math.floor(pulse.switchOff) - 2;
-  const from = Math.max(
-    0,
-    pulse.switchOn === null ? to - 24 * decimation : pulse.switchOn + 4,
-    to - 64 * decimation,
-  );
-  const { values, count } = makeBlocks(
-    samples,
-    Math.ceil(from),
-    Math.max(Math.ceil(from), to),
-    [],
-    decimation,
-  );
+  const conducts = pulse.switchOn === null ? to - 24 * decimation : (pulse.switchOn + to) / 2;
+  const from = Math.ceil(Math.max(0, conducts, to - 64 * decimation));
+  const { values, count } = makeBlocks(samples, from, Math.max(from, to), [], decimation);
   if (count < 8) return 0;
-  // Second differences: a slope or slow bend of the conduction's level is no noise. Middle of |white| is 0.6745·√6·σ.
-  const bends = Float64Array.from({ length: count - 6 }, (_, i) =>
-    Math.abs(values[i] - 2 * values[i + 3] + values[i + 6]),
-  );
-  return median(bends) / (0.6745 * Math.sqrt(6));
+  const middle = (count - 1) / 2;
+  let [square, lean, spread] = [0, 0, 0];
+  for (let i = 0; i < count; i++) {
+    square += values[i] ** 2;
+    lean += values[i] * (i - middle);
+    spread += (i - middle) ** 2;
+  }
+  return Math.sqrt(Math.max(0, square - (lean * lean) / spread) / (count - 2));
 }
