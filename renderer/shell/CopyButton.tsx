@@ -6,7 +6,8 @@ import { useSay } from "./say.tsx";
 export function CopyButton({ text, keyName, does }: { text: () => string; keyName: string; does: string }) {
   const say = useSay();
   const copy = useCallback(() => {
-    navigator.clipboard.writeText(text()).then(
+    // Other programs read a plain blank between a figure and its unit.
+    navigator.clipboard.writeText(text().replaceAll("\u00a0", " ")).then(
       () => say("Copied."),
       () => say("The browser does not let this page write to the clipboard."),
     );
