@@ -54,9 +54,10 @@ function pulsesOf(context: PulseContext, { offs, source }: Events): Pulse[] {
   const found = offs.map((off, k) => readPulse(context, off, k));
   const { ring } = context.map;
   if (source !== "voltage" || ring === null) return found;
-  const candidates = found.map(({ evidence, reading }) => ({
+  const candidates = found.map(({ evidence, reading }, k) => ({
     evidence,
     quality: reading.ring?.quality ?? null,
+    witnessed: offs[k].witnessed,
   }));
   const kept = confirm(context.capture.channels[ring], candidates, context.noise);
   const pulses = found.filter((_, k) => kept[k]);

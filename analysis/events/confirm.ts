@@ -11,17 +11,20 @@ import { amplitude } from "../ring/quality.ts";
 export interface Candidate {
   evidence: PulseEvidence;
   quality: RingQuality | null;
+  witnessed: boolean | null;
 }
 
 /** Candidates in order of time; answers for each whether it is a pulse. */
 export function confirm(channel: Channel, candidates: Candidate[], noise: number): boolean[] {
-  const sure = candidates.map((candidate) => hasRing(candidate, noise) || kicks(channel, candidate, noise));
+  const sure = candidates.map(
+    (candidate) => candidate.witnessed ?? (hasRing(candidate, noise) || kicks(channel, candidate, noise)),
+  );
   const known = candidates.filter((_, k) => sure[k] && candidates[k].evidence.switchOff !== null);
   if (known.length === 0) return sure;
   const swing = medianOf(known.map(({ evidence }) => swingOf(evidence)));
   const level = medianOf(known.map(({ evidence }) => evidence.levelOn ?? NaN));
-  return candidates.map(({ evidence }, k) => {
-    if (sure[k]) return true;
+  return candidates.map(({ evidence, witnessed }, k) => {
+    if (sure[k] || witnessed === false) return sure[k];
     if (evidence.levelOn === null || evidence.switchOff === null) return false;
     const alike = Math.abs(evidence.levelOn - level) < Math.max(6 * noise, 0.1 * swing);
     return alike && swingOf(evidence) > 0.3 * swing && isSmooth(channel, evidence);

@@ -4,11 +4,11 @@
  * fast as it falls.
  */
 import { differenceNoise } from "../ring/noise.ts";
-import { medianOf } from "../numeric/robust.ts";
 import type { Conduction } from "./gate.ts";
 
 /** The fall must be this much faster than the rise. */
 const ASYMMETRY = 0.3;
+const LEAST_SHARE = 0.2;
 
 export interface CurrentPulse extends Conduction {
   peak: number;
@@ -16,7 +16,6 @@ export interface CurrentPulse extends Conduction {
 }
 
 export function currentConductions(samples: Float64Array, lsb: number | null): CurrentPulse[] {
-  const level = medianOf(samples, 0, samples.length, 16_384);
   let low = Infinity;
   let high = -Infinity;
   for (const y of samples) {
@@ -25,14 +24,16 @@ export function currentConductions(samples: Float64Array, lsb: number | null): C
   }
   if (!(high > low)) return [];
   const zero = Math.min(Math.max(0, low), high);
-  const sign = high - zero >= zero - low ? 1 : -1;
   const top = Math.max(high - zero, zero - low);
   const noise = differenceNoise(samples, 0, samples.length, lsb);
-  if (top < 8 * noise || !Number.isFinite(level)) return [];
-  return excursions(samples, zero, sign, top, noise);
+  if (top < 8 * noise) return [];
+  // A ring swings as far the other way: the ramp's own direction is the one that makes conductions.
+  const up = excursions(samples, zero, 1, top, noise);
+  const down = excursions(samples, zero, -1, top, noise);
+  return down.length > up.length ? down : up;
 }
 
-/** Stretches above 30 % of the largest current, judged by the times from and to 15 % and 85 % of their peak. */
+/** Stretches above a fifth of the largest current, judged by the times from and to 15 % and 85 % of their peak. */
 function excursions(
   samples: Float64Array,
   zero: number,
@@ -45,13 +46,13 @@ function excursions(
   let i = 0;
   let floor = 0;
   while (i < samples.length) {
-    if (!(value(i) > 0.3 * top)) {
+    if (!(value(i) > LEAST_SHARE * top)) {
       i++;
       continue;
     }
     let peakAt = i;
     let end = i;
-    while (end < samples.length && !(value(end) < 0.15 * top)) {
+    while (end < samples.length && !(value(end) < 0.5 * LEAST_SHARE * top)) {
       if (value(end) >= value(peakAt)) peakAt = end;
       end++;
     }

@@ -15,4 +15,6 @@ export interface SwitchOff {
   levelOn: number | null;
   /** Scatter of the trace during conduction about a straight line; null when not seen. */
   scatter: number | null;
+  /** Whether gate or current shows it as well; null where there is no such channel. */
+  witnessed: boolean | null;
 }

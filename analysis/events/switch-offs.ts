@@ -39,14 +39,54 @@ export function findSwitchOffs(capture: Capture, map: ChannelMap): Events {
       );
       return { offs, period: seen.period, source: "current" };
     }
-    for (const off of seen.offs) off.on ??= nearestOn(pulses, off.at!, seen.period);
+    if (pulses.length > 0 && map.ring !== map.current)
+      return {
+        offs: withCurrent(capture, seen.offs, pulses, seen.period),
+        period: seen.period,
+        source: "voltage",
+      };
   }
   return { ...seen, source: "voltage" };
 }
 
-function nearestOn(conductions: Conduction[], at: number, reach: number): number | null {
-  const near = conductions.find(({ off }) => off !== null && Math.abs(off - at) < reach);
-  return near?.on ?? null;
+/** Voltage and current together: the current confirms, and adds what the voltage does not show. */
+function withCurrent(capture: Capture, seen: SwitchOff[], pulses: Conduction[], period: number): SwitchOff[] {
+  const reach = 0.5 * period;
+  const matched = seen.filter(
+    ({ at }) => at === null || pulses.some(({ off }) => Math.abs(off! - at) < reach),
+  );
+  // Currents that do not belong to these switch-offs (another branch, a noisy clamp) have no say.
+  if (2 * matched.length < seen.length) return seen;
+  const offs = seen.map((off) => {
+    const pulse = off.at === null ? null : pulses.find((other) => Math.abs(other.off! - off.at!) < reach);
+    return {
+      ...off,
+      on: off.on ?? pulse?.on ?? null,
+      witnessed: off.at === null ? null : pulse !== undefined,
+    };
+  });
+  const alone = pulses.filter(
+    ({ off }) => !seen.some(({ at }) => at !== null && Math.abs(at - off!) < reach),
+  );
+  const known = offs.find((off) => off.at !== null);
+  for (const { on, off } of alone)
+    offs.push({
+      at: off,
+      u: 0.5,
+      on,
+      freeFrom: Math.ceil(off!),
+      freeTo: capture.timebase.samples,
+      polarity: known?.polarity ?? 1,
+      levelOn: known?.levelOn ?? null,
+      scatter: known?.scatter ?? null,
+      witnessed: true,
+    });
+  offs.sort((a, b) => (a.at ?? -1) - (b.at ?? -1));
+  offs.forEach((off, k) => {
+    const next = offs[k + 1];
+    if (next) off.freeTo = Math.min(off.freeTo, Math.floor(next.on ?? next.at!));
+  });
+  return offs;
 }
 
 /** A gate may be inverted: whichever polarity ends where the kicks begin; high conducts if neither tells. */
@@ -84,6 +124,7 @@ function fromConductions(
       polarity: kick?.polarity ?? 1,
       levelOn: kick?.levelOn ?? null,
       scatter: kick?.scatter ?? null,
+      witnessed: true,
     });
   });
   return offs;

@@ -29,7 +29,7 @@ export function voltageSwitchOffs(
   if (!rough) return { offs: [], period: 0 };
   const first = findOnsets(samples, rough, noise, lsb);
   // Arcs and a fast second mode make the spacing of half-waves too short: the ring itself tells better.
-  const period = ringPeriod(samples, first, rough.period);
+  const period = ringPeriod(samples, first, rough.period, noise);
   const scale = { ...rough, period };
   const moved = Math.abs(period / rough.period - 1) > 0.15;
   const onsets = outOfConduction(
@@ -54,6 +54,7 @@ export function voltageSwitchOffs(
       polarity: onset.polarity,
       levelOn: onset.level,
       scatter: onset.scatter,
+      witnessed: null,
     };
   });
   for (let k = 0; k < offs.length; k++) offs[k].freeTo = freeEnd(samples, offs, onsets, k, lsb, width);
@@ -78,7 +79,17 @@ function beginsInRing(
   const end = meanAndDeviation(samples, to - length, to);
   if (!(begin.deviation > 4 * noise && begin.deviation > 1.2 * end.deviation)) return null;
   const polarity = first?.polarity ?? 1;
-  return { at: null, u: null, on: null, freeFrom: 0, freeTo: to, polarity, levelOn: null, scatter: null };
+  return {
+    at: null,
+    u: null,
+    on: null,
+    freeFrom: 0,
+    freeTo: to,
+    polarity,
+    levelOn: null,
+    scatter: null,
+    witnessed: null,
+  };
 }
 
 /** Next switching edge: the next pulse's conduction, or a conduction that runs to the record's end. */
@@ -112,17 +123,35 @@ function freeEnd(
 /** Standing out most from the quiet before it. */
 const sharpness = (onset: Onset) => Math.abs(onset.swing) / onset.scatter;
 
-/** Period of the strongest oscillation after the sharpest onset; `rough` without one. */
-function ringPeriod(samples: Float64Array, onsets: Onset[], rough: number): number {
+/**
+ * Period of the strongest oscillation after the sharpest onset; `rough` without one. While an arc burns
+ * the fast modes are stronger: where the later part rings more slowly, that is the ring.
+ */
+function ringPeriod(samples: Float64Array, onsets: Onset[], rough: number, noise: number): number {
   if (onsets.length === 0) return rough;
   const anchor = onsets.reduce((a, b) => (sharpness(b) > sharpness(a) ? b : a));
   const next = onsets.find((onset) => onset.at > anchor.at && sharpness(onset) > 0.4 * sharpness(anchor));
   const from = Math.ceil(anchor.at);
   const to = Math.floor(Math.min(next?.at ?? samples.length, samples.length, from + LOOKED_PERIODS * rough));
+  if (to - from < 3 * rough) return rough;
+  const early = linePeriod(samples, from, to, rough, 1.5, 0) ?? rough;
+  const late = linePeriod(samples, Math.round(from + 0.4 * (to - from)), to, rough, 4, 40 * noise * noise);
+  return late !== null && late > 1.2 * early && late < 6 * early ? late : early;
+}
+
+/** Period of the strongest line of samples[from … to) with at least so many cycles and so much energy. */
+function linePeriod(
+  samples: Float64Array,
+  from: number,
+  to: number,
+  rough: number,
+  cycles: number,
+  energy: number,
+): number | null {
   const width = Math.max(1, Math.floor(rough / 16));
   const blocks = makeBlocks(samples, from, to, [], width);
-  const [line] = strongestLines(blocks.values, blocks.count, 1, 1.5);
-  return line ? ((2 * Math.PI) / line.omega) * width : rough;
+  const [line] = strongestLines(blocks.values, blocks.count, 1, cycles);
+  return line && line.energy > energy / width ? ((2 * Math.PI) / line.omega) * width : null;
 }
 
 /** A body diode lets go, or the switch closes: the swing is little more than the change of level behind it. */
@@ -140,11 +169,14 @@ function outOfConduction(
   noise: number,
   lsb: number | null,
 ): Onset[] {
-  const flat = onsets.filter((onset) => onset.scatter < FLAT * noise + 0.02 * Math.abs(onset.swing));
-  if (flat.length === 0) return [];
+  if (onsets.length === 0) return [];
+  // Hum and coloured noise show in the quiet stretches only: the calmer of them set the measure.
+  const calm = onsets.map((onset) => onset.scatter).toSorted((a, b) => a - b)[onsets.length >> 2];
+  const unrest = Math.max(noise, Math.min(calm, 3 * noise));
+  const flat = onsets.filter((onset) => onset.scatter < FLAT * unrest + 0.02 * Math.abs(onset.swing));
   const anchor = flat.reduce((a, b) => (sharpness(b) > sharpness(a) ? b : a));
   const reach = Math.max(...flat.map((onset) => Math.abs(onset.swing)));
-  const tolerance = Math.max(6 * noise, 2 * (lsb ?? 0));
+  const tolerance = Math.max(6 * unrest, 2 * (lsb ?? 0));
   return flat.filter(
     (onset) =>
       Math.abs(onset.level - anchor.level) < Math.max(tolerance, LEVEL_SHARE * Math.abs(onset.swing)) &&

@@ -40,10 +40,13 @@ export function judgeFit(fit: RingFit, noise: number): Judgement {
     return refuse(`only ${perCycle.toFixed(1)} samples a cycle: too few to tell the frequency`);
   if (frequencyU > 0.05 * mode.frequency_Hz)
     return refuse("too much noise: the frequency is uncertain by more than 5 %");
+  const decays = mode.decay_per_s > 2 * decayU;
+  if (cycles < 2 && !decays)
+    return refuse(`only ${cycles.toFixed(1)} cycles to be seen, and no decay to be told: no ring`);
   const reasons: string[] = [];
   if (cycles < LEAST_CYCLES)
     reasons.push(`only ${cycles.toFixed(1)} cycles of the ring can be seen (3 are needed)`);
-  if (!(mode.decay_per_s > 2 * decayU)) reasons.push("the window is too short to tell the decay from none");
+  if (!decays) reasons.push("the window is too short to tell the decay from none");
   if (perCycle < LEAST_PER_CYCLE) reasons.push(`only ${perCycle.toFixed(1)} samples a cycle (6 are needed)`);
   if (fit.residual > GOOD_RESIDUAL * noise)
     reasons.push(
