@@ -11,8 +11,11 @@ export interface Named {
 
 /** Entries must be taken before the first await: the browser empties the list after the event. */
 export async function filesOfDrop(items: DataTransferItemList): Promise<Named[]> {
-  const entries = Array.from(items, (item) => item.webkitGetAsEntry()).filter((entry) => entry !== null);
-  const found = await Promise.all(entries.map((entry) => walk(entry, "")));
+  const dropped = Array.from(items, (item) => ({ entry: item.webkitGetAsEntry(), file: item.getAsFile() }));
+  const found = await Promise.all(
+    // A file that is on no disk (dragged out of another program) has no entry.
+    dropped.map(({ entry, file }) => (entry ? walk(entry, "") : file ? [{ name: file.name, file }] : [])),
+  );
   return found.flat();
 }
 
