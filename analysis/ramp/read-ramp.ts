@@ -5,7 +5,9 @@ import type { SwitchOff } from "../events/event-format.ts";
 import type { Figure, RampReading } from "../reading-format.ts";
 import type { Setup } from "../setup/schema.ts";
 import { meanAndDeviation } from "../numeric/robust.ts";
+import { differenceNoise } from "../ring/noise.ts";
 import { fitRamp, type RampFit } from "./exponential.ts";
+import { fitSaturating, type SaturatingFit } from "./saturating.ts";
 
 /** Points the fit uses; longer ramps are averaged down. */
 const MOST_POINTS = 1024;
@@ -45,9 +47,25 @@ export function readRamp(capture: Capture, map: ChannelMap, off: SwitchOff, setu
   if (!values) return empty("the current is clipped or missing during the conduction");
   const begin = off.on ?? from;
   const first_s = (from + (width - 1) / 2 - begin) * step;
-  const fit = fitRamp(values, first_s, step * width);
+  const fit = fitRamp(values, first_s, step * width, currentBefore(channel, off.on, to - from, width));
   if (!fit) return empty("no current ramp to be fitted");
-  return describe(fit, (off.at - begin) * step, off.on !== null, driving_V(capture, map, off, setup), setup);
+  const drive_V = driving_V(capture, map, off, setup);
+  const noise = differenceNoise(channel.samples, from, to, channel.lsb) / Math.sqrt(width);
+  const ramp = describe(fit, (off.at - begin) * step, off.on !== null, drive_V, setup);
+  return drive_V === null
+    ? ramp
+    : withSaturation(ramp, fit, values, first_s, step * width, drive_V, noise, setup);
+}
+
+/** The current before conduction where it is flat: it is the initial current, measured once more. */
+function currentBefore(channel: Channel, on: number | null, length: number, width: number) {
+  if (on === null) return undefined;
+  const to = Math.floor(on - 2);
+  const from = Math.max(0, to - length);
+  if (to - from < 8) return undefined;
+  const { mean, deviation } = meanAndDeviation(channel.samples, from, to);
+  const noise = differenceNoise(channel.samples, from, to, channel.lsb);
+  return deviation < 1.3 * noise ? { mean, count: (to - from) / width } : undefined;
 }
 
 function blockMeans(channel: Channel, from: number, to: number, width: number): Float64Array | null {
@@ -127,6 +145,65 @@ function describe(
     u: Math.hypot(0.5 * reading.inductance_H.u * final.value ** 2, inductance * final.value * final.u),
   };
   return { reading, current_A: final };
+}
+
+/** Residuals this far above the noise, or a current that bends upwards, are worth the saturating model. */
+const MISFIT = 1.25;
+/** Points the saturating model is fitted to. */
+const SATURATING_POINTS = 160;
+
+/** Replaces L and R by the saturating core's where the plain exponential does not explain the ramp. */
+function withSaturation(
+  ramp: Ramp,
+  plain: RampFit,
+  values: Float64Array,
+  first_s: number,
+  step_s: number,
+  drive_V: number,
+  noise: number,
+  setup: Setup,
+): Ramp {
+  const bends = plain.rate < -4 * Math.sqrt(plain.covariance[8]);
+  if (!bends && !(plain.residual > MISFIT * noise)) return ramp;
+  const by = Math.max(1, Math.ceil(values.length / SATURATING_POINTS));
+  const sign = Math.sign(values.at(-1)!);
+  const coarse = Float64Array.from({ length: Math.floor(values.length / by) }, (_, k) => {
+    let sum = 0;
+    for (let i = k * by; i < (k + 1) * by; i++) sum += sign * values[i];
+    return sum / by;
+  });
+  const first = first_s + ((by - 1) / 2) * step_s;
+  const head = fitRamp(coarse.slice(0, Math.max(12, coarse.length >> 2)), first, step_s * by);
+  const inductance_H = Math.abs(drive_V) / Math.max(1e-30, head?.slope ?? sign * plain.slope);
+  const start = {
+    inductance_H,
+    resistance_ohm: 0.3 * (Math.abs(drive_V) / Math.max(...coarse)),
+    initial_A: coarse[0],
+  };
+  const fit = fitSaturating(coarse, first, step_s * by, Math.abs(drive_V), start);
+  if (!fit || fit.residual > 0.8 * plain.residual || fit.saturation_A > 1.1 * Math.max(...coarse))
+    return ramp;
+  const { reading } = ramp;
+  const [uL, uR, uI] = fit.u;
+  reading.inductance_H = { value: fit.inductance_H, u: uL };
+  reading.resistance_ohm = fit.resistance_ohm > 0 ? { value: fit.resistance_ohm, u: uR } : null;
+  reading.resistance20_ohm = windingAt20(reading.resistance_ohm, setup);
+  reading.saturationCurrent_A = { value: sign * fit.saturation_A, u: uI };
+  reading.timeConstant_s = null;
+  reading.energy_J = storedEnergy(fit, ramp.current_A);
+  reading.reason = null;
+  return ramp;
+}
+
+/** ∫ L(i)·i di up to the current at switch-off (Simpson's rule). */
+function storedEnergy(fit: SaturatingFit, current: Figure): Figure {
+  if (!current) return null;
+  const top = Math.abs(current.value);
+  const at = (i: number) => (fit.inductance_H * i) / (1 + (i / fit.knee_A) ** fit.exponent);
+  let sum = 0;
+  for (let k = 0; k <= 64; k++) sum += (k === 0 || k === 64 ? 1 : k % 2 ? 4 : 2) * at((k * top) / 64);
+  const value = (sum * top) / 192;
+  return { value, u: value * Math.hypot(fit.u[0] / fit.inductance_H, (2 * current.u) / top) };
 }
 
 /** Copper's temperature coefficient at 20 °C (IEC 60028). */
