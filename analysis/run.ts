@@ -3,11 +3,12 @@ import { combinePulses } from "./coil/combine.ts";
 import type { Note } from "./capture.ts";
 import type { CaptureEvidence, PulseEvidence } from "./evidence.ts";
 import { combineRamps } from "./ramp/combine-ramps.ts";
-import type { CaptureReading, PulseReading, RunCounts } from "./reading-format.ts";
+import type { CaptureReading, Measured, PulseReading, RunCounts, SparkReading } from "./reading-format.ts";
 import type { Setup } from "./setup/schema.ts";
 import { countPulses, verdictOf } from "./spark/counts.ts";
 import { expectedOf } from "./spark/expected.ts";
-import { judgePulses } from "./spark/judge.ts";
+import { breakdownOf, sparkEnergy_J, type Breakdown } from "./spark/account.ts";
+import { judgePulses, type Judged } from "./spark/judge.ts";
 import { timesOf } from "./spark/onset.ts";
 import { ringModes, ringPeriods } from "./spark/ring-modes.ts";
 import { noEvidence, sparkReading } from "./spark/spark-reading.ts";
@@ -43,17 +44,9 @@ export function judgeRun(evidence: CaptureEvidence[], setup: Setup): RunJudgemen
   });
   const verdicts = judgePulses(judgeable);
   const run = judgeable.flatMap((place, i) => (verdicts[i] ? [{ ...place, judged: verdicts[i] }] : []));
-  const sparks = new Map(
-    run.map(({ pulse, window, judged }, i) => {
-      const expected = judged.likelihood.probability > 0.1 ? expectedOf(judged, run, i, window) : null;
-      return [pulse, sparkReading(judged, window, timesOf(window, judged.traits, expected))];
-    }),
-  );
+  const found = new Map(run.map((place, i) => [place.pulse, findings(place, run, i, setup)]));
   const readings = evidence.map((capture) => {
-    const pulses = capture.reading.pulses.map((pulse, p): PulseReading => {
-      const spark = sparks.get(capture.pulses[p]);
-      return { ...pulse, spark: spark ?? noEvidence("no ring was found to judge by", pulse.switchOffTime_s) };
-    });
+    const pulses = capture.reading.pulses.map((pulse, p) => judgedPulse(pulse, found.get(capture.pulses[p])));
     return judgedCapture(capture.reading, pulses, setup);
   });
   const pulses = readings.flatMap((reading) => reading.pulses);
@@ -61,6 +54,40 @@ export function judgeRun(evidence: CaptureEvidence[], setup: Setup): RunJudgemen
     readings,
     run: { ...countPulses(pulses, setup), combined: combinePulses(quietOf(pulses)), notes: [] },
   };
+}
+
+interface Place {
+  pulse: PulseEvidence;
+  window: SparkWindow;
+  judged: Judged;
+}
+
+interface Findings {
+  spark: SparkReading;
+  energy_J: Measured | null;
+  breakdown: Breakdown | null;
+  onsetUncertainty_s: number | null;
+}
+
+function findings({ pulse, window, judged }: Place, run: Place[], i: number, setup: Setup): Findings {
+  const likely = judged.likelihood.probability > 0.1 || (window.secondary?.strikes.length ?? 0) > 0;
+  const expected = likely ? expectedOf(judged, run, i, window) : null;
+  const times = timesOf(window, judged.traits, expected);
+  const breakdown = likely ? breakdownOf(window, setup, expected, times) : null;
+  const spark = sparkReading(judged, window, times, breakdown);
+  const sparked = spark.verdict === "spark";
+  const energy_J = sparked ? sparkEnergy_J(judged, i, pulse, setup, window) : null;
+  return { spark, energy_J, breakdown, onsetUncertainty_s: times.onsetUncertainty_s };
+}
+
+function judgedPulse(pulse: PulseReading, found: Findings | undefined): PulseReading {
+  if (!found) return { ...pulse, spark: noEvidence("no ring was found to judge by", pulse.switchOffTime_s) };
+  const { spark, energy_J, breakdown, onsetUncertainty_s } = found;
+  const u = { ...pulse.u };
+  if (spark.onset_s !== null && onsetUncertainty_s !== null) u["spark.onset_s"] = onsetUncertainty_s;
+  if (spark.breakdown_V !== null && breakdown) u["spark.breakdown_V"] = breakdown.u;
+  if (energy_J) u["energy_J.spark"] = energy_J.u;
+  return { ...pulse, spark, u, energy_J: { ...pulse.energy_J, spark: energy_J?.value ?? null } };
 }
 
 function windowOf(capture: CaptureEvidence, pulse: PulseEvidence, period: number | null): SparkWindow | null {

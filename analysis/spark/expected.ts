@@ -9,6 +9,8 @@ export interface Expected {
   from: number;
   /** Share of its size that it may be wrong by. */
   slack: number;
+  /** Level the ring settles to, in the same blocks. */
+  settled: number;
 }
 
 /** Quiet pulses averaged for the expectation. */
@@ -26,7 +28,12 @@ export function expectedOf(
   if (traits.ringBefore) {
     const { coefficients } = traits.split.before;
     const values = Float64Array.from({ length: count }, (_, i) => traits.sums.value(coefficients, i));
-    return { values, from: Math.max(0, traits.a - Math.round(window.period)), slack: 0 };
+    return {
+      values,
+      from: Math.max(0, traits.a - Math.round(window.period)),
+      slack: 0,
+      settled: traits.split.after.coefficients[0],
+    };
   }
   const rest = judged.reference?.rest[place];
   if (!rest) return null;
@@ -43,7 +50,7 @@ export function expectedOf(
   for (const model of models) addModel(values, model, window, rest, models.length);
   // Before a model's own first block there is nothing to go by.
   const starts = models.map((model) => Math.ceil((model.window.first_s - window.first_s) / window.step_s));
-  return { values, from: Math.max(0, ...starts), slack: 0.02 };
+  return { values, from: Math.max(0, ...starts), slack: 0.02, settled: traits.split.after.coefficients[0] };
 }
 
 /** The other pulse's own blocks, read between its block centres, scaled to this pulse's place in the train. */

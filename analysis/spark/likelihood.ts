@@ -1,5 +1,5 @@
 /** From what a pulse shows to the probability of a spark. */
-import { distance, type Reference } from "./reference.ts";
+import { distance, scaled, type Reference } from "./reference.ts";
 import { NOISE, type Traits } from "./traits.ts";
 
 export interface Likelihood {
@@ -30,11 +30,10 @@ function againstRun(traits: Traits, reference: Reference, rest: [number, number]
     excess,
     reference.misfit > NOISE ? 0 : Math.sqrt(Math.max(0, traits.split.gain)),
   );
-  if (!traits.rest) return cutShort(traits, disturbed);
-  // Less current gives a smaller ring and a smaller kick alike; a spark takes from the ring alone.
-  const scale = traits.kick / reference.kick;
-  const scaled: [number, number] = [rest[0] * scale, rest[1] * scale];
-  const away = Math.min(distance(traits.rest, rest), distance(traits.rest, scaled));
+  if (!traits.rest || traits.spent) return cutShort(traits, disturbed);
+  const calm = disturbed <= NOISE;
+  const scale = currentScale(traits.kick / reference.kick, calm);
+  const away = Math.min(distance(traits.rest, rest), distance(traits.rest, scaled(rest, scale)));
   const loss = 1 - Math.hypot(...traits.rest) / (Math.hypot(...rest) * Math.min(1, scale));
   const sure = away / Math.max(0.01, reference.stray);
   const answer = (probability: number, because: Likelihood["because"]) => ({
@@ -43,20 +42,31 @@ function againstRun(traits: Traits, reference: Reference, rest: [number, number]
     away,
     loss,
   });
-  if (disturbed > NOISE && away > 0.08 && sure > 4) return answer(away > 0.15 ? 0.999 : 0.98, "loss");
-  if (disturbed > NOISE && sure > 4 && away > 0.03) return answer(0.8, "loss");
-  if (disturbed <= NOISE && loss > 0.15 && sure > 8) return answer(0.97, "missing");
-  if (disturbed <= NOISE && loss > 0.05 && sure > 6) return answer(0.6, "missing");
-  if (disturbed <= NOISE) return answer(sure > 5 ? 0.03 : 0.001, "one-ring");
+  if (calm) {
+    if (loss > 0.15 && sure > 8) return answer(0.97, "missing");
+    if (loss > 0.05 && sure > 6) return answer(0.6, "missing");
+    return answer(sure > 5 ? 0.03 : 0.001, "one-ring");
+  }
+  const plain = disturbed > 3 * NOISE;
+  if (away > 0.08 && sure > (plain ? 2 : 4)) return answer(away > 0.15 ? 0.999 : 0.98, "loss");
+  if (away > 0.03 && sure > (plain ? 2 : 4)) return answer(plain && !traits.ringBefore ? 0.93 : 0.7, "loss");
   return answer(sure > 3 ? 0.2 : 0.01, "ring-goes-on");
+}
+
+/**
+ * Less current gives a smaller ring and a smaller kick alike. But a spark cuts the kick as well: where the
+ * trace is disturbed, only the few percent that a current strays by are taken from the kick.
+ */
+function currentScale(ratio: number, calm: boolean): number {
+  return calm || (ratio > 0.9 && ratio < 1.1) ? ratio : 1;
 }
 
 /** Nothing free is left after the disturbance: the arc burns until the next edge, or there is none. */
 function cutShort(traits: Traits, disturbed: number): Likelihood {
   const nothing = { away: null, loss: traits.loss };
   if (disturbed <= NOISE) return { probability: 0.005, because: "one-ring", ...nothing };
-  // The window's very end may hold the next edge: no spark is read from it.
-  if (traits.tail) return { probability: 0.03, because: "one-ring", ...nothing };
+  // The window's very end may hold the next edge: no spark is read from it, nor from a ring that is spent.
+  if (traits.tail || traits.spent) return { probability: 0.03, because: "one-ring", ...nothing };
   if (traits.ringBefore && disturbed > 20) return { probability: 0.97, because: "course", ...nothing };
   return { probability: disturbed > 20 ? 0.8 : 0.4, because: "doubt", ...nothing };
 }
@@ -71,7 +81,7 @@ function byItself(traits: Traits, most: number | null): Likelihood {
     loss,
   });
   if (traits.oneRing) return soundRing(traits) ? answer(0.005, "one-ring") : answer(0.4, "doubt");
-  if (!traits.ringAfter) return cutShort(traits, Math.max(misfit, gain));
+  if (!traits.ringAfter || traits.spent) return cutShort(traits, Math.max(misfit, gain));
   if (ringBefore && jump !== null) {
     if (jump > 0.2) return answer(0.98, "course");
     if (jump > 0.1) return answer(0.6, "doubt");

@@ -30,7 +30,10 @@ export function referenceOf(traits: Traits[], quiet: number[]): Reference | null
     const rests = near.slice(0, 2 * NEIGHBOURS).map((p) => traits[p].rest!);
     return [median(rests.map(([c]) => c)), median(rests.map(([, s]) => s))] as [number, number];
   });
-  const strays = known.flatMap((i) => (rest[i] ? [distance(traits[i].rest!, rest[i])] : []));
+  const kick = median(known.map((i) => traits[i].kick));
+  const strays = known.flatMap((i) =>
+    rest[i] ? [distance(traits[i].rest!, scaled(rest[i], traits[i].kick / kick))] : [],
+  );
   const stray = known.length > 2 ? 1.5 * median(strays) : 0.02;
   // Pulses that do not agree are no reference.
   if (stray > MOST_STRAY) return null;
@@ -39,7 +42,7 @@ export function referenceOf(traits: Traits[], quiet: number[]): Reference | null
     quiet: known.length,
     rest,
     stray,
-    kick: median(known.map((i) => traits[i].kick)),
+    kick,
     misfit: median(misfits),
     misfitSpread: known.length > 2 ? robustSpread(misfits) : 0.2 * median(misfits),
   };
@@ -49,3 +52,6 @@ export function referenceOf(traits: Traits[], quiet: number[]): Reference | null
 export function distance(rest: [number, number], from: [number, number]): number {
   return Math.hypot(rest[0] - from[0], rest[1] - from[1]) / Math.hypot(...from);
 }
+
+/** The same ring from another current: kick and ring grow alike. */
+export const scaled = (rest: [number, number], by: number): [number, number] => [rest[0] * by, rest[1] * by];

@@ -1,18 +1,133 @@
-/** What the secondary's own channels show: a collapse of the voltage, a pulse of current. */
+/** What the secondary's own channels show: the voltage's collapse, the arc's current. */
+import type { Channel } from "../capture.ts";
 import type { CaptureEvidence, PulseEvidence } from "../evidence.ts";
+import { median } from "../numeric/median.ts";
 
 export interface SecondaryEvidence {
-  /** Sample positions of each breakdown and where the voltage comes back; null: not on screen. */
+  /** Sample positions (fractional); breakdown in the channel's unit, null off screen or from the current alone. */
   strikes: { onset: number; extinction: number | null; breakdown_V: number | null }[];
-  /** Largest magnitude of the secondary voltage after switch-off; null without that channel. */
+  /** Largest magnitude of the secondary voltage after switch-off; null without that channel or clipped. */
   peak_V: number | null;
 }
 
+/** Null where no secondary channel is on screen. */
 export function gatherSecondary(
-  _evidence: CaptureEvidence,
-  _pulse: PulseEvidence,
-  _from: number,
-  _to: number,
+  evidence: CaptureEvidence,
+  pulse: PulseEvidence,
+  from: number,
+  to: number,
 ): SecondaryEvidence | null {
+  const { channels, map } = evidence;
+  const voltage = map.secondary === null ? null : channels[map.secondary];
+  const current = map.secondaryCurrent === null ? null : channels[map.secondaryCurrent];
+  const period = pulse.period ?? to - from;
+  if (voltage) {
+    const strikes = collapses(voltage, from, to, period);
+    return { strikes, peak_V: peakOf(voltage, from, to) };
+  }
+  return current ? { strikes: currentPulses(current, from, to), peak_V: null } : null;
+}
+
+function peakOf({ samples, unusable }: Channel, from: number, to: number): number | null {
+  for (let u = 0; u < unusable.length; u += 2) if (unusable[u] < to && unusable[u + 1] > from) return null;
+  let peak = 0;
+  for (let i = from; i < to; i++) peak = Math.max(peak, Math.abs(samples[i]));
+  return peak;
+}
+
+/** Noise from third differences: a ring's own curve hardly counts in them. */
+function noiseOf(samples: Float64Array, from: number, to: number): number {
+  const bends: number[] = [];
+  for (let i = from; i + 3 < to; i++)
+    bends.push(Math.abs(samples[i + 3] - 3 * samples[i + 2] + 3 * samples[i + 1] - samples[i]));
+  return bends.length === 0 ? 0 : median(bends) / (0.6745 * Math.sqrt(20));
+}
+
+/** An arc takes the voltage away within this many samples, and leaves this share of it at most. */
+const FALLS_WITHIN = 2;
+const LEFT = 0.4;
+/** Breakdowns are looked for above this share of the pulse's largest voltage. */
+const LEAST = 0.12;
+
+/**
+ * A breakdown: the voltage falls to a small part of itself within two samples and stays there for a few more,
+ * where the secondary's own ring would swing through.
+ */
+function collapses(
+  { samples, lsb }: Channel,
+  from: number,
+  to: number,
+  period: number,
+): SecondaryEvidence["strikes"] {
+  const noise = Math.max(noiseOf(samples, from, to), lsb ?? 0);
+  let largest = 0;
+  for (let i = from; i < to; i++) largest = Math.max(largest, Math.abs(samples[i]));
+  const least = Math.max(LEAST * largest, 10 * noise);
+  const stays = Math.max(2, Math.round(0.01 * period));
+  const strikes: SecondaryEvidence["strikes"] = [];
+  for (let i = from + 2; i + FALLS_WITHIN + stays < to; i++) {
+    const before = samples[i];
+    if (Math.abs(before) < least || !fallsAway(samples, i, stays)) continue;
+    const onset = lastHigh(samples, i);
+    const extinction = comesBack(samples, onset + 2, to, before, noise);
+    strikes.push({ onset: onset + 0.5, extinction, breakdown_V: extrapolated(samples, onset) });
+    i = Math.max(i + FALLS_WITHIN + stays, Math.floor(extinction ?? to));
+  }
+  return strikes;
+}
+
+function fallsAway(samples: Float64Array, i: number, stays: number): boolean {
+  const before = samples[i];
+  const sign = Math.sign(before);
+  for (let k = FALLS_WITHIN; k <= FALLS_WITHIN + stays; k++)
+    if (sign * samples[i + k] > LEFT * Math.abs(before) || sign * samples[i + k] < -LEFT * Math.abs(before))
+      return false;
+  return true;
+}
+
+/** The sample before the steepest step of the fall. */
+function lastHigh(samples: Float64Array, i: number): number {
+  let [best, steepest] = [i, 0];
+  for (let k = i - 1; k < i + FALLS_WITHIN; k++) {
+    const step = Math.abs(samples[k + 1] - samples[k]);
+    if (step > steepest) [best, steepest] = [k, step];
+  }
+  return best;
+}
+
+/** The voltage went on rising for half a sample, on average, after the last one seen. */
+function extrapolated(samples: Float64Array, last: number): number {
+  const slope = (samples[last] - samples[last - 2]) / 2;
+  const sign = Math.sign(samples[last]);
+  return samples[last] + (sign * slope > 0 ? slope / 2 : 0);
+}
+
+/** The arc's voltage stays small and steady; it is out when the voltage leaves that level for good. */
+function comesBack(
+  samples: Float64Array,
+  from: number,
+  to: number,
+  before: number,
+  noise: number,
+): number | null {
+  const burning = median(samples.subarray(from, Math.min(to, from + 5)));
+  const limit = Math.max(0.08 * Math.abs(before), 6 * noise);
+  for (let i = from; i + 2 < to; i++)
+    if ([i, i + 1, i + 2].every((k) => Math.abs(samples[k] - burning) > limit)) return i - 0.5;
   return null;
+}
+
+/** Without the voltage: stretches in which the secondary's current stands well out of its own noise. */
+function currentPulses({ samples, lsb }: Channel, from: number, to: number): SecondaryEvidence["strikes"] {
+  const rest = median(samples.subarray(from, to));
+  const limit = 8 * Math.max(noiseOf(samples, from, to), (lsb ?? 0) / 2);
+  const strikes: SecondaryEvidence["strikes"] = [];
+  for (let i = from; i + 1 < to; i++) {
+    if (Math.abs(samples[i] - rest) < limit || Math.abs(samples[i + 1] - rest) < limit) continue;
+    let end = i + 2;
+    while (end < to && Math.abs(samples[end] - rest) > limit / 2) end++;
+    strikes.push({ onset: i - 0.5, extinction: end < to ? end - 0.5 : null, breakdown_V: null });
+    i = end;
+  }
+  return strikes;
 }

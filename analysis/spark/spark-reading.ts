@@ -1,8 +1,10 @@
 /** The verdict of a pulse as it is printed and kept. */
-import type { SparkReading, Verdict } from "../reading-format.ts";
+import { formatNumber } from "../format/figure.ts";
+import type { SparkReading, Strike, Verdict } from "../reading-format.ts";
+import type { Breakdown } from "./account.ts";
 import type { Judged } from "./judge.ts";
 import type { SparkTimes } from "./onset.ts";
-import { reasonsOf } from "./reasons.ts";
+import { reasonsOf, type Reason } from "./reasons.ts";
 import type { SparkWindow } from "./window.ts";
 
 /** A word is said when the other is less likely than one in ten. */
@@ -11,25 +13,69 @@ const SURE = 0.9;
 export const verdictFor = (probability: number): Verdict =>
   probability > SURE ? "spark" : probability < 1 - SURE ? "no-spark" : "unclear";
 
-export function sparkReading(judged: Judged, window: SparkWindow, times: SparkTimes): SparkReading {
-  const { probability } = judged.likelihood;
-  const verdict = verdictFor(probability);
-  const reasons = reasonsOf(judged, window, times);
+export function sparkReading(
+  judged: Judged,
+  window: SparkWindow,
+  times: SparkTimes,
+  breakdown: Breakdown | null,
+): SparkReading {
+  const seen = withSecondary(judged.likelihood.probability, window);
+  const verdict = verdictFor(seen.probability);
   const sparked = verdict !== "no-spark";
+  const strikes = sparked ? strikesOf(window, times) : [];
+  const reasons = [
+    ...seen.reasons,
+    ...(agree(seen.probability, judged) ? reasonsOf(judged, window, times) : []),
+    ...breakdownReason(sparked ? breakdown : null, strikes[0]?.onset_s ?? null),
+  ];
   return {
     verdict,
-    probability,
-    confidence: Math.max(probability, 1 - probability),
-    onset_s: sparked ? times.onset_s : null,
-    extinction_s: sparked ? times.extinction_s : null,
-    breakdown_V: null,
-    breakdownFrom: null,
-    strikes:
-      sparked && times.onset_s !== null ? [{ onset_s: times.onset_s, extinction_s: times.extinction_s }] : [],
+    probability: seen.probability,
+    confidence: Math.max(seen.probability, 1 - seen.probability),
+    onset_s: strikes[0]?.onset_s ?? null,
+    extinction_s: strikes[strikes.length - 1]?.extinction_s ?? null,
+    breakdown_V: sparked ? (breakdown?.value ?? null) : null,
+    breakdownFrom: sparked ? (breakdown?.from ?? null) : null,
+    strikes,
     judgedAgainst: judged.reference ? "run" : "itself",
     reasons: reasons.map(({ text }) => text),
     places_s: reasons.map(({ place_s }) => place_s),
   };
+}
+
+/** The primary's reasons are given where they speak for the same word. */
+const agree = (probability: number, { likelihood }: Judged) =>
+  probability > 0.5 === likelihood.probability > 0.5 || verdictFor(likelihood.probability) === "unclear";
+
+/** The secondary's own trace decides: a collapse is a spark; without one only the primary's clear word stands. */
+function withSecondary(probability: number, { secondary, zero_s, raw }: SparkWindow) {
+  if (!secondary) return { probability, reasons: [] as Reason[] };
+  const first = secondary.strikes[0];
+  if (!first)
+    return { probability: probability > SURE ? probability : probability * 0.3, reasons: [] as Reason[] };
+  const at = raw.start_s + first.onset * raw.step_s;
+  const what =
+    first.breakdown_V === null
+      ? "the secondary's current sets in"
+      : `the secondary's voltage collapses from ${formatNumber(Math.abs(first.breakdown_V), "V", 3)}`;
+  const text = `${what} ${formatNumber(at - zero_s, "s", 3)} after switch-off`;
+  return { probability: 0.999, reasons: [{ text, place_s: at }] };
+}
+
+/** From the secondary where it is on screen, else the one stretch the node shows. */
+function strikesOf({ secondary, raw }: SparkWindow, times: SparkTimes): Strike[] {
+  if (secondary && secondary.strikes.length > 0)
+    return secondary.strikes.map(({ onset, extinction }) => ({
+      onset_s: raw.start_s + onset * raw.step_s,
+      extinction_s: extinction === null ? null : raw.start_s + extinction * raw.step_s,
+    }));
+  return times.onset_s === null ? [] : [{ onset_s: times.onset_s, extinction_s: times.extinction_s }];
+}
+
+function breakdownReason(breakdown: Breakdown | null, place_s: number | null): Reason[] {
+  if (breakdown?.from !== "ratio") return [];
+  const text = `breakdown near ${formatNumber(breakdown.value, "V", 2)}, referred from the switch node through the stated turns ratio`;
+  return [{ text, place_s }];
 }
 
 /** Nothing to judge by: said so, with even odds. */

@@ -16,6 +16,8 @@ export interface Traits {
   ringBefore: boolean;
   /** A ring was seen after it. */
   ringAfter: boolean;
+  /** At the disturbance the ring before had already sunk into the noise: too little for a spark. */
+  spent: boolean;
   /** The free ring after begins later than half a period. */
   late: boolean;
   /** One free ring explains the whole pulse to the noise. */
@@ -74,6 +76,7 @@ export function traitsOf(window: SparkWindow, modes: KnownMode[], ceiling = 16 *
     ringBefore,
     ringAfter,
     tail,
+    spent: ringBefore && leftAt(sums, split, a, window, modes[0]) < 4 * Math.sqrt(split.variance),
     late: b > 0.5 * period,
     oneRing,
     rest: known ? rest : null,
@@ -132,6 +135,13 @@ function jumpOf(
   const [c2, s2] = sums.amplitudeAt(split.after.coefficients, LOW, to);
   const decayed = Math.exp(-mode.decay_per_s * (to - from) * window.step_s);
   return Math.hypot(c2 / decayed - c1, s2 / decayed - s1) / Math.hypot(c1, s1);
+}
+
+/** Amplitude of the ring before, a period earlier, decayed to the disturbance: its end alone is poorly known. */
+function leftAt(sums: RingSums, split: Split, a: number, window: SparkWindow, mode: KnownMode): number {
+  const earlier = Math.max(0, a - Math.round(window.period));
+  const decayed = Math.exp(-mode.decay_per_s * (a - earlier) * window.step_s);
+  return sizeAt(sums, split.before, earlier) * decayed;
 }
 
 function lossOf(traits: Omit<Traits, "misfit" | "loss">, window: SparkWindow): number | null {

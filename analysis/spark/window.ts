@@ -23,6 +23,8 @@ export interface SparkWindow {
   /** Blocks in one period of the ring. */
   period: number;
   secondary: SecondaryEvidence | null;
+  /** The capture's own time axis, for positions in samples. */
+  raw: { start_s: number; step_s: number };
 }
 
 /** Enough to place an onset to a hundredth of a period, few enough to judge fast. */
@@ -71,6 +73,7 @@ export function gatherWindow(
     levelOn,
     period: period / decimation,
     secondary: gatherSecondary(evidence, pulse, from, to),
+    raw: { start_s: evidence.timebase.start_s, step_s },
   };
 }
 
@@ -81,7 +84,7 @@ function turn(blocks: Blocks): void {
 }
 
 /**
- * The next conduction may begin inside the window: from where the trace lies still for most of a period (at
+ * The next conduction may begin inside the window: from where the trace lies still for half a period (at
  * the window's end: for a third of one), nearer to the level of conduction than to what the ring settles to,
  * all goes. Judged by means over stretches, for the two levels may be closer than the noise.
  */
@@ -102,7 +105,7 @@ function leaveOutConduction(blocks: Blocks, levelOn: number, noise: number, peri
       i >= length - 1 && square / length - mean * mean < (2 * noise) ** 2 && Math.abs(mean) < 0.35 * apart;
     if (!still) since = -1;
     else if (since < 0) since = i + 1 - length;
-    if (since >= 0 && (i - since > 0.8 * period || i === count - 1))
+    if (since >= 0 && (i - since > 0.5 * period || i === count - 1))
       return cut(blocks, Math.max(0, since - 2));
   }
 }

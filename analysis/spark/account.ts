@@ -1,0 +1,65 @@
+/** The energy an arc took from the ring, and the breakdown voltage as far as the primary side tells it. */
+import type { PulseEvidence } from "../evidence.ts";
+import type { Measured } from "../reading-format.ts";
+import type { Setup } from "../setup/schema.ts";
+import type { Expected } from "./expected.ts";
+import type { Judged } from "./judge.ts";
+import { sizeAt } from "./split.ts";
+import type { SparkTimes } from "./onset.ts";
+import type { SparkWindow } from "./window.ts";
+
+/**
+ * ½·C·(A² − B²): A the amplitude the quiet ring would have where the free ring begins again, B what it has.
+ * So the quiet ring's own loss is left out. C is the capacitance the low mode sees: stated, plus the
+ * secondary's reflected by the square of the turns ratio. Null without C, a quiet ring or an end of the arc.
+ */
+export function sparkEnergy_J(
+  judged: Judged,
+  place: number,
+  pulse: PulseEvidence,
+  setup: Setup,
+  window: SparkWindow,
+): Measured | null {
+  const { traits, reference } = judged;
+  const capacitance = pulse.capacitance_F;
+  if (!capacitance || !traits.ringAfter) return null;
+  const reflected = (setup.secondaryCapacitance_F ?? 0) * (setup.turnsRatio ?? 0) ** 2;
+  const decay = traits.modes[0].decay_per_s;
+  const left = sizeAt(traits.sums, traits.split.after, traits.b);
+  const rest = reference?.rest[place];
+  const quiet = rest
+    ? Math.hypot(...rest) * Math.exp(-decay * (window.first_s + traits.b * window.step_s))
+    : traits.ringBefore
+      ? sizeAt(traits.sums, traits.split.before, traits.a) *
+        Math.exp(-decay * (traits.b - traits.a) * window.step_s)
+      : null;
+  if (quiet === null || quiet <= left) return null;
+  const c = capacitance.value + reflected;
+  const value = 0.5 * c * (quiet * quiet - left * left);
+  const stray = reference?.stray ?? 0.03;
+  const u = Math.hypot((value * capacitance.u) / c, c * quiet * quiet * stray);
+  return { value, u };
+}
+
+export interface Breakdown {
+  value: number;
+  u: number;
+  from: "secondary" | "ratio";
+}
+
+/** From the secondary's trace, else the node's swing about its settled level times the stated turns ratio. */
+export function breakdownOf(
+  window: SparkWindow,
+  setup: Setup,
+  expected: Expected | null,
+  times: SparkTimes,
+): Breakdown | null {
+  const measured = window.secondary?.strikes[0]?.breakdown_V;
+  if (measured) return { value: Math.abs(measured), u: 0.02 * Math.abs(measured), from: "secondary" };
+  if (!setup.turnsRatio || times.block === null || !expected) return null;
+  const block = Math.min(window.blocks.count - 1, Math.max(0, Math.round(times.block)));
+  const swing = Math.abs(window.blocks.values[block] - expected.settled);
+  const value = swing * setup.turnsRatio;
+  // Leakage keeps some of the swing from the secondary, or adds to it: a fifth, common practice, no source.
+  return { value, u: 0.2 * value, from: "ratio" };
+}
