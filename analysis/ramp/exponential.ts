@@ -20,16 +20,8 @@ const g = (x: number) => (Math.abs(x) < 1e-4 ? 1 - x / 2 + (x * x) / 6 : -Math.e
 /** dg/dx. */
 const slopeOfG = (x: number) => (Math.abs(x) < 1e-3 ? -0.5 + x / 3 : (Math.exp(-x) - g(x)) / x);
 
-/**
- * times in seconds from conduction's start, evenly spaced: t_k = first_s + k·step_s. `before`: mean of a
- * flat current before conduction and the values it is worth; it is the initial current measured.
- */
-export function fitRamp(
-  values: Float64Array,
-  first_s: number,
-  step_s: number,
-  before: { mean: number; count: number } = { mean: 0, count: 0 },
-): RampFit | null {
+/** times in seconds from conduction's start, evenly spaced: t_k = first_s + k·step_s. */
+export function fitRamp(values: Float64Array, first_s: number, step_s: number): RampFit | null {
   const n = values.length;
   if (n < 6) return null;
   const length = first_s + (n - 1) * step_s;
@@ -38,7 +30,7 @@ export function fitRamp(
   let best = Infinity;
   const gram = new Float64Array(9);
   for (let round = 0; round < 30; round++) {
-    const linear = linearPart(values, first_s, step_s, rate, before);
+    const linear = linearPart(values, first_s, step_s, rate);
     if (!linear) return null;
     parameters = linear;
     gram.fill(0);
@@ -54,10 +46,6 @@ export function fitRamp(
         for (let b = 0; b < 3; b++) gram[a * 3 + b] += row[a] * row[b];
       }
     }
-    const rest = before.mean - parameters[0];
-    gram[0] += before.count;
-    right[0] += before.count * rest;
-    cost += before.count * rest * rest;
     const inverted = inverse(gram, 3);
     if (!inverted) return null;
     const step = inverted[6] * right[0] + inverted[7] * right[1] + inverted[8] * right[2];
@@ -81,16 +69,10 @@ export function fitRamp(
   return null;
 }
 
-function linearPart(
-  values: Float64Array,
-  first_s: number,
-  step_s: number,
-  rate: number,
-  before: { mean: number; count: number },
-): number[] | null {
-  let n = before.count;
+function linearPart(values: Float64Array, first_s: number, step_s: number, rate: number): number[] | null {
+  let n = 0;
   let sx = 0;
-  let sy = before.count * before.mean;
+  let sy = 0;
   let sxx = 0;
   let sxy = 0;
   for (let k = 0; k < values.length; k++) {

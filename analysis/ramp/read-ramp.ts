@@ -47,7 +47,7 @@ export function readRamp(capture: Capture, map: ChannelMap, off: SwitchOff, setu
   if (!values) return empty("the current is clipped or missing during the conduction");
   const begin = off.on ?? from;
   const first_s = (from + (width - 1) / 2 - begin) * step;
-  const fit = fitRamp(values, first_s, step * width, currentBefore(channel, off.on, to - from, width));
+  const fit = fitRamp(values, first_s, step * width);
   if (!fit) return empty("no current ramp to be fitted");
   const drive_V = driving_V(capture, map, off, setup);
   const noise = differenceNoise(channel.samples, from, to, channel.lsb) / Math.sqrt(width);
@@ -55,17 +55,6 @@ export function readRamp(capture: Capture, map: ChannelMap, off: SwitchOff, setu
   return drive_V === null
     ? ramp
     : withSaturation(ramp, fit, values, first_s, step * width, drive_V, noise, setup);
-}
-
-/** The current before conduction where it is flat: it is the initial current, measured once more. */
-function currentBefore(channel: Channel, on: number | null, length: number, width: number) {
-  if (on === null) return undefined;
-  const to = Math.floor(on - 2);
-  const from = Math.max(0, to - length);
-  if (to - from < 8) return undefined;
-  const { mean, deviation } = meanAndDeviation(channel.samples, from, to);
-  const noise = differenceNoise(channel.samples, from, to, channel.lsb);
-  return deviation < 1.3 * noise ? { mean, count: (to - from) / width } : undefined;
 }
 
 function blockMeans(channel: Channel, from: number, to: number, width: number): Float64Array | null {

@@ -16,8 +16,8 @@ export interface SaturatingFit {
   knee_A: number;
 }
 
-const STEPS_PER_POINT = 2;
-const MOST_ITERATIONS = 25;
+const STEPS_PER_POINT = 3;
+const MOST_ITERATIONS = 30;
 /** ln L0, R, ln Is, ln n, i0. */
 const PARAMETERS = 5;
 
@@ -55,12 +55,13 @@ export function fitSaturating(
   const n = values.length;
   const top = Math.max(...values);
   let best: { p: number[]; cost: number } | null = null;
-  for (const share of [0.35, 0.8]) {
+  const starts = [0.25, 0.6, 1].flatMap((share) => [2, 5].map((exponent) => ({ share, exponent })));
+  for (const { share, exponent } of starts) {
     const p = [
       Math.log(start.inductance_H),
       start.resistance_ohm,
       Math.log(share * top),
-      Math.log(3),
+      Math.log(exponent),
       start.initial_A,
     ];
     const found = descend(values, first_s, step_s, drive_V, p);
