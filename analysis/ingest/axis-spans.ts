@@ -36,7 +36,7 @@ export function axisSpans(layout: Layout, columns: Columns, group: AxisGroup): R
     .filter(({ from, to }) => to - from >= 2)
     .map((span) => {
       const quantum = quantumOf(layout, group.axis!, columns, span);
-      const measured = measureInterval(span, values, quantum);
+      const measured = measureInterval(span, values, quantum, column.anchors);
       const inSpan = mended.filter((row) => row >= span.from && row < span.to).length;
       return {
         ...common,

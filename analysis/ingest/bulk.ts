@@ -235,7 +235,7 @@ class ChunkBuilder {
   done(): ParsedChunk {
     return {
       rows: this.rows,
-      values: this.values.map((column) => column.slice(0, this.rows)),
+      values: this.values.map((column) => column.subarray(0, this.rows)),
       tallies: this.tallies,
       odd: this.odd,
       oddMore: this.oddMore,

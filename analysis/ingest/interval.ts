@@ -4,6 +4,7 @@
  * (JCGM 100:2008, 4.3.7), at both ends.
  */
 import type { Span } from "./spans.ts";
+import { anchorEvery } from "./time-column.ts";
 import { typicalStep } from "./spans.ts";
 
 export interface MeasuredInterval {
@@ -18,14 +19,24 @@ export interface MeasuredInterval {
 
 const mostFilled = 0.2;
 
-/** `quantum`: the last digit's worth of the times as they are written. */
-export function measureInterval(span: Span, values: Float64Array | null, quantum: number): MeasuredInterval {
+/**
+ * `quantum`: the last digit's worth of the times as they are written. `values` of the whole column, or null
+ * where only its anchors (every few thousandth time) were kept.
+ */
+export function measureInterval(
+  span: Span,
+  values: Float64Array | null,
+  quantum: number,
+  anchors: number[],
+): MeasuredInterval {
   const rows = span.to - span.from;
   if (rows < 2) return { step: NaN, uncertainty: 0, unevenness: 0, gaps: [] };
   const gaps = values ? findGaps(values.subarray(span.from, span.to), quantum) : [];
   const samples = rows + gaps.reduce((sum, { missing }) => sum + missing, 0);
   const step = (span.last - span.first) / (samples - 1);
-  const errors = values ? residuals(values.subarray(span.from, span.to), step, gaps) : { rms: 0, largest: 0 };
+  const errors = values
+    ? residuals(values.subarray(span.from, span.to), step, gaps)
+    : anchorErrors(span, step, anchors);
   const uneven =
     errors.largest > Math.max(1.05 * quantum, 0.75 * Math.abs(step)) &&
     errors.largest > 1e-3 * Math.abs(span.last - span.first);
@@ -52,6 +63,14 @@ function findGaps(values: Float64Array, quantum: number): { row: number; missing
     missing += Math.round(steps) - 1;
   }
   return missing <= mostFilled * values.length ? gaps : [];
+}
+
+/** Distances from the straight line where only every few thousandth time was kept. */
+function anchorErrors({ from, to, first }: Span, step: number, anchors: number[]) {
+  let largest = 0;
+  for (let k = Math.ceil(from / anchorEvery); k < anchors.length && k * anchorEvery < to; k++)
+    largest = Math.max(largest, Math.abs(anchors[k] - first - (k * anchorEvery - from) * step) || 0);
+  return { rms: 0, largest };
 }
 
 function residuals(values: Float64Array, step: number, gaps: { row: number; missing: number }[]) {

@@ -21,39 +21,58 @@ const groundShare = 0.03;
 
 export function findUnusable(samples: Float64Array, lsb: number | null): Usable {
   const range = extremes(samples);
-  const bad = new Uint8Array(samples.length);
+  const marks = new Marks(samples.length);
   let overrange = 0;
-  for (let i = 0; i < samples.length; i++) {
-    if (Number.isFinite(samples[i])) continue;
-    bad[i] = samples[i] === samples[i] ? 2 : 1;
-    samples[i] = NaN;
+  if (range.finite < samples.length) {
+    for (let i = 0; i < samples.length; i++) {
+      if (Number.isFinite(samples[i])) continue;
+      marks.set(i, i + 1, samples[i] === samples[i] ? 2 : 1);
+      samples[i] = NaN;
+    }
+    overrange += countGaps(samples, marks.bad, range);
   }
-  overrange += markGaps(samples, bad, range);
   const step = lsb ?? (range.high - range.low) / 250;
   if (range.high > range.low && !isTwoLevel(samples, range)) {
-    overrange += markPinned(samples, bad, range.high, 1, step, range);
-    overrange += markPinned(samples, bad, range.low, -1, step, range);
+    overrange += markPinned(samples, marks, range.high, 1, step, range);
+    overrange += markPinned(samples, marks, range.low, -1, step, range);
   }
-  return { samples, unusable: stretches(bad), overrange, lsb };
+  return { samples, unusable: marks.any ? stretches(marks.bad) : new Int32Array(0), overrange, lsb };
+}
+
+/** Per sample 0 good, 1 missing, 2 over range; made only when there is something to mark. */
+class Marks {
+  bad = new Uint8Array(0);
+  any = false;
+
+  constructor(private readonly length: number) {}
+
+  set(from: number, to: number, kind: 1 | 2): void {
+    if (!this.any) this.bad = new Uint8Array(this.length);
+    this.any = true;
+    this.bad.fill(kind, from, to);
+  }
 }
 
 interface Range {
   low: number;
   high: number;
+  finite: number;
 }
 
 function extremes(samples: Float64Array): Range {
-  let [low, high] = [Infinity, -Infinity];
+  let [low, high, finite] = [Infinity, -Infinity, 0];
   for (let i = 0; i < samples.length; i++) {
     const value = samples[i];
-    if (value < low && value > -Infinity) low = value;
-    if (value > high && value < Infinity) high = value;
+    if (value - value !== 0) continue;
+    finite++;
+    if (value < low) low = value;
+    if (value > high) high = value;
   }
-  return { low, high };
+  return { low, high, finite };
 }
 
 /** Infinite samples are over range; so is a gap inside the record whose edge reaches for an extreme. */
-function markGaps(samples: Float64Array, bad: Uint8Array, { low, high }: Range): number {
+function countGaps(samples: Float64Array, bad: Uint8Array, { low, high }: Range): number {
   const near = 0.1 * (high - low);
   const atExtreme = (i: number) =>
     i >= 0 && i < samples.length && (samples[i] > high - near || samples[i] < low + near);
@@ -71,23 +90,18 @@ function markGaps(samples: Float64Array, bad: Uint8Array, { low, high }: Range):
 }
 
 /** Almost all samples rest at one of two levels: a gate or logic signal. */
-function isTwoLevel(samples: Float64Array, { low, high }: Range): boolean {
+function isTwoLevel(samples: Float64Array, { low, high, finite }: Range): boolean {
   const near = 0.08 * (high - low);
-  let between = 0;
-  let count = 0;
-  for (let i = 0; i < samples.length; i++) {
-    const value = samples[i];
-    if (value !== value) continue;
-    count++;
-    if (value > low + near && value < high - near) between++;
-  }
-  return between < 0.05 * count;
+  let left = 0.05 * finite;
+  for (let i = 0; i < samples.length && left > 0; i++)
+    if (samples[i] > low + near && samples[i] < high - near) left--;
+  return left > 0;
 }
 
 /** Marks pinned runs at one extreme (`side` +1 high, −1 low); answers how many samples. */
 function markPinned(
   samples: Float64Array,
-  bad: Uint8Array,
+  marks: Marks,
   edge: number,
   side: 1 | -1,
   lsb: number,
@@ -107,7 +121,7 @@ function markPinned(
     i = end;
   }
   if (runs.length === 0 || total > mostPinned * samples.length) return 0;
-  for (const [from, to] of runs) bad.fill(2, from, to);
+  for (const [from, to] of runs) marks.set(from, to, 2);
   return runs.reduce((sum, [from, to]) => sum + to - from, 0);
 }
 

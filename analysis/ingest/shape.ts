@@ -10,8 +10,6 @@ export interface Shape {
   /** Largest distance from rest, up and down. */
   above: number;
   below: number;
-  /** Where the largest distance from rest lies, in samples. */
-  peakAt: number;
   /** Share of samples more than a quarter of the way from rest to the peak. */
   busy: number;
   /** How often it swings past rest by more than a tenth of the range, in turn to either side. */
@@ -22,8 +20,30 @@ export interface Shape {
 
 const bins = 256;
 
+const looked = 100_000;
+
+/** Every stretch of a long record by its lowest and highest sample: shapes need no more. */
+function thinned(samples: Float64Array): Float64Array {
+  const blocks = looked / 2;
+  if (samples.length <= 2 * looked) return samples;
+  const kept = new Float64Array(2 * blocks);
+  for (let b = 0; b < blocks; b++) {
+    const to = Math.floor(((b + 1) * samples.length) / blocks);
+    let low = Math.floor((b * samples.length) / blocks);
+    let high = low;
+    for (let i = low + 1; i < to; i++) {
+      if (samples[i] < samples[low] || samples[low] !== samples[low]) low = i;
+      if (samples[i] > samples[high] || samples[high] !== samples[high]) high = i;
+    }
+    kept[2 * b] = samples[Math.min(low, high)];
+    kept[2 * b + 1] = samples[Math.max(low, high)];
+  }
+  return kept;
+}
+
 /** null without two different values. */
-export function shapeOf(samples: Float64Array): Shape | null {
+export function shapeOf(record: Float64Array): Shape | null {
+  const samples = thinned(record);
   let [low, high] = [Infinity, -Infinity];
   for (const value of samples) {
     if (value < low) low = value;
@@ -37,8 +57,6 @@ export function shapeOf(samples: Float64Array): Shape | null {
   let extremes = 0;
   let busy = 0;
   let count = 0;
-  let peakAt = 0;
-  let farthest = -1;
   for (let i = 0; i < samples.length; i++) {
     const value = samples[i];
     if (value !== value) continue;
@@ -46,7 +64,6 @@ export function shapeOf(samples: Float64Array): Shape | null {
     const distance = Math.abs(value - rest);
     if (value < low + near || value > high - near) extremes++;
     if (distance > reach) busy++;
-    if (distance > farthest) [farthest, peakAt] = [distance, i];
   }
   return {
     low,
@@ -55,7 +72,6 @@ export function shapeOf(samples: Float64Array): Shape | null {
     atExtremes: extremes / count,
     above: high - rest,
     below: rest - low,
-    peakAt,
     busy: busy / count,
     swings,
     rampShare: longestRise(samples, { low, high, rest }, spacing),

@@ -21,18 +21,21 @@ export interface Spans {
 }
 
 export function splitSpans(column: TimeColumn): Spans {
+  const untouched = { mended: [], unitSwitches: 0 };
+  if (column.regular) return { spans: spansBetween(column, [], null), values: null, ...untouched };
   const kept = column.values?.slice() ?? null;
-  if (!kept)
+  if (!kept) {
+    const joints = column.joints.filter(({ before, after }) => Math.abs(after - before) > column.largest);
     return {
       spans: spansBetween(
         column,
-        column.joints.map(({ row }) => row),
+        joints.map(({ row }) => row),
         null,
       ),
       values: null,
-      mended: [],
-      unitSwitches: 0,
+      ...untouched,
     };
+  }
   const mended = mendOutliers(kept, column.direction);
   const unitSwitches = undoUnitSwitches(kept);
   const joints = findJoints(kept);

@@ -23,11 +23,11 @@ export class TextStream {
     return this.encoding === "bytes" ? bytes : utf16ToUtf8(bytes, this.encoding);
   }
 
-  /** Exactly `length` bytes (an even number: whole code units), fewer only at the end. */
+  /** About `length` bytes (an even number: whole code units), few only at the end. */
   private async read(length: number): Promise<Uint8Array> {
     const parts: Uint8Array[] = [];
     let held = 0;
-    while (held < length) {
+    while (held < length / 2 || held % 2 === 1) {
       const part = await this.source.read(this.consumed, length - held);
       if (part.length === 0) {
         this.ended = true;

@@ -69,6 +69,8 @@ function fromColumn(
   if (!stated && other) notes.push(conflictNote(other, measured));
   if (time.measured!.unevenness > 0.02 && time.quantum > 0.05 * step)
     notes.push(roundedNote(measured, scaleBy(uncertainty, factor)));
+  const strayed = time.measured!.unevenness;
+  if (strayed > 1.5 && strayed * step > 1.05 * time.quantum) notes.push(jitterNote(strayed));
   return { start_s, step_s: measured, stepUncertainty_s: scaleBy(uncertainty, factor), samples };
 }
 
@@ -140,6 +142,11 @@ const unevenNote = (): Note => ({
   question:
     "Export with a fixed sample interval, or state the interval in seconds if the time column is wrong.",
   answers: "sampleInterval_s",
+});
+
+const jitterNote = (steps: number): Note => ({
+  code: "time-jitter",
+  text: `Times stray from an even spacing by up to ${steps.toPrecision(2)} samples; the interval is that of the whole record.`,
 });
 
 const conflictNote = (stated: { step_s: number; key: string }, measured: number): Note => ({

@@ -5,7 +5,7 @@
 
 /** Rows up to which the values themselves are kept for a closer look. */
 const keptRows = 4_000_000;
-const anchorEvery = 4096;
+export const anchorEvery = 4096;
 const mostJoints = 100_000;
 
 export interface Joint {
@@ -29,7 +29,21 @@ export class TimeColumn {
   repeats = 0;
   missing = 0;
   readonly anchors: number[] = [];
-  private kept: Float64Array | null = new Float64Array(1024);
+  /** Smallest and largest step, zero apart, as sizes. */
+  smallest = Infinity;
+  largest = 0;
+  private kept: Float64Array | null;
+
+  /** `rows`: how many are likely. */
+  constructor(rows: number) {
+    this.kept = new Float64Array(Math.min(keptRows, rows));
+  }
+
+  /** One record on an even grid: nothing to mend, to split or to fill. */
+  get regular(): boolean {
+    const joined = this.joints.length + this.missing + this.repeats > 0;
+    return this.rows > 2 && !joined && this.largest <= 1.5 * this.smallest;
+  }
 
   /** All values; null where there are too many to keep. */
   get values(): Float64Array | null {
@@ -40,26 +54,32 @@ export class TimeColumn {
     if (this.direction === 0) this.direction = directionOf(chunk);
     this.keep(chunk);
     const { direction } = this;
-    let last = this.last;
+    let { last, smallest, largest, pairs } = this;
     for (let i = 0; i < chunk.length; i++) {
       const value = chunk[i];
-      const row = this.rows + i;
-      if (row % anchorEvery === 0) this.anchors.push(value);
       if (value !== value) {
         this.missing++;
-        this.pairs = false;
+        pairs = false;
         continue;
       }
-      if (last !== last) this.first = value;
-      else {
-        const step = (value - last) * direction;
-        if (step < 0) this.join({ row, before: last, after: value });
-        else if (step === 0) this.repeats++;
-        if ((step === 0) !== (row % 2 === 1)) this.pairs = false;
-      }
+      const before = last;
+      const step = (value - before) * direction;
       last = value;
+      if (step > 0) {
+        if (step < smallest) smallest = step;
+        if (step > largest) largest = step;
+      } else if (step === 0) this.repeats++;
+      else if (step < 0) this.join({ row: this.rows + i, before, after: value });
+      else this.first = value;
+      if (pairs && (step === 0) !== ((this.rows + i) % 2 === 1)) pairs = false;
     }
-    this.last = last;
+    for (
+      let row = Math.ceil(this.rows / anchorEvery) * anchorEvery;
+      row < this.rows + chunk.length;
+      row += anchorEvery
+    )
+      this.anchors.push(chunk[row - this.rows]);
+    Object.assign(this, { last, smallest, largest, pairs });
     this.rows += chunk.length;
   }
 

@@ -42,29 +42,43 @@ export async function openFile(path: string): Promise<FileSource> {
         throw changedFile(before.size, after.size);
       return raw.digest();
     },
-    close: () => handle.close(),
+    close: () => raw.close(),
   };
 }
 
-const pieceBytes = 1024 * 1024;
+const pieceBytes = 2 * 1024 * 1024;
 
+/** Reads one piece ahead, so that the disk and the parser work at the same time. */
 class HashedFile {
   position = 0;
   private readonly hash = createHash("sha256");
+  private ahead: Promise<Uint8Array> | null = null;
 
   constructor(private readonly handle: FileHandle) {}
 
   async next(): Promise<Uint8Array> {
-    const piece = new Uint8Array(pieceBytes);
-    const { bytesRead } = await this.handle.read(piece, 0, pieceBytes, this.position);
-    this.position += bytesRead;
-    const bytes = piece.subarray(0, bytesRead);
+    const bytes = await (this.ahead ?? this.readAt(this.position));
+    this.position += bytes.length;
+    this.ahead = bytes.length > 0 ? this.readAt(this.position) : null;
+    // Who stops early leaves a read behind that nobody awaits.
+    this.ahead?.catch(() => undefined);
     this.hash.update(bytes);
     return bytes;
   }
 
+  private async readAt(position: number): Promise<Uint8Array> {
+    const piece = new Uint8Array(pieceBytes);
+    const { bytesRead } = await this.handle.read(piece, 0, pieceBytes, position);
+    return piece.subarray(0, bytesRead);
+  }
+
   async drain(): Promise<void> {
     while ((await this.next()).length > 0);
+  }
+
+  async close(): Promise<void> {
+    await this.ahead?.catch(() => undefined);
+    await this.handle.close();
   }
 
   digest(): string {
