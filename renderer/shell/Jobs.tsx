@@ -1,7 +1,7 @@
 /** What is being read: how far, how long still, and a way to stop it; then what could not be read. */
 import { useEffect } from "react";
 import type { JobState } from "../../app/bridge.ts";
-import { plural, timeLeft } from "../format/words.ts";
+import { fileName, plural, timeLeft } from "../format/words.ts";
 import { useDesk } from "../state/bench.tsx";
 import { useKeys } from "../state/keys.ts";
 import { hrefOf } from "../state/route.ts";
@@ -47,11 +47,12 @@ function JobLine({ job, onCancel }: { job: JobState; onCancel(): void }) {
   return (
     <div className="job">
       <p role={isWorking ? undefined : "status"}>
-        {job.what}: {isWorking ? `${job.done} of ${job.total}` : ended[job.state]}
+        {job.what}:{" "}
+        {isWorking ? (job.total > 0 ? `${job.done} of ${job.total}` : "looking …") : ended[job.state]}
         {isWorking && job.secondsLeft !== null && `, ${timeLeft(job.secondsLeft)}`}{" "}
         {isWorking ? (
           <>
-            <progress max={job.total} value={job.done} aria-label={job.what} />{" "}
+            <progress max={Math.max(job.total, 1)} value={job.done} aria-label={job.what} />{" "}
             <button type="button" className="small" onClick={onCancel}>
               <kbd>Esc</kbd> stop
             </button>
@@ -71,7 +72,7 @@ function JobLine({ job, onCancel }: { job: JobState; onCancel(): void }) {
           <ul>
             {job.problems.map((problem) => (
               <li key={problem.file + problem.code}>
-                <strong>{problem.file}</strong>: {problem.text}
+                <strong title={problem.file}>{fileName(problem.file)}</strong>: {problem.text}
               </li>
             ))}
           </ul>
