@@ -62,7 +62,11 @@ export function ringTrial(seed: number, range: TrialRange = wholeRange): RingTri
   const random = seeded(seed);
   const q = logBetween(random, ...range.q);
   const cycles = logBetween(random, 3, Math.min(100, 2 * q));
-  const perCycle = logBetween(random, range.perCycle[0], Math.min(range.perCycle[1], range.mostSamples / cycles));
+  const perCycle = logBetween(
+    random,
+    range.perCycle[0],
+    Math.min(range.perCycle[1], range.mostSamples / cycles),
+  );
   const snr_dB = random.between(...range.snr_dB);
   const frequency_Hz = logBetween(random, 500, 200_000);
   const omega = 2 * Math.PI * frequency_Hz;
@@ -131,7 +135,7 @@ export function ringBound(trial: RingTrial): RingBound {
     modes.forEach(({ amplitude, decay_per_s, frequency_Hz, phase_rad }, m) => {
       const e = Math.exp(-decay_per_s * t);
       const angle = 2 * Math.PI * frequency_Hz * t + phase_rad;
-      row[4 * m + 1] = (-amplitude * e * Math.sin(angle) * 2 * Math.PI * t * unit);
+      row[4 * m + 1] = -amplitude * e * Math.sin(angle) * 2 * Math.PI * t * unit;
       row[4 * m + 2] = -amplitude * e * Math.cos(angle) * t * unit;
       row[4 * m + 3] = amplitude * e * Math.cos(angle);
       row[4 * m + 4] = -amplitude * e * Math.sin(angle);
@@ -139,12 +143,60 @@ export function ringBound(trial: RingTrial): RingBound {
     for (let r = 0; r < width; r++)
       for (let c = 0; c <= r; c++) information.set(r, c, information.get(r, c) + row[r] * row[c]);
   }
-  for (let r = 0; r < width; r++) for (let c = r + 1; c < width; c++) information.set(r, c, information.get(c, r));
+  for (let r = 0; r < width; r++)
+    for (let c = r + 1; c < width; c++) information.set(r, c, information.get(c, r));
   const variance = trial.sigma ** 2 + trial.lsb ** 2 / 12;
   const covariance = inverse(information);
   const deviation = (at: number) => unit * Math.sqrt(variance * covariance.get(at, at));
   return {
     frequency_Hz: modes.map((_, m) => deviation(4 * m + 1)),
     decay_per_s: modes.map((_, m) => deviation(4 * m + 2)),
+  };
+}
+
+/**
+ * A ring with a weaker second mode at least 1.5/window away. `strength`: the second mode's matched-filter
+ * amplitude √(Σ s²)/σ over the window.
+ */
+export function twoModeTrial(
+  seed: number,
+  strength: [number, number] = [8, 200],
+): RingTrial & { strength: number } {
+  const random = seeded(seed);
+  const q = logBetween(random, 8, 60);
+  const cycles = logBetween(random, 5, Math.min(60, 2 * q));
+  const perCycle = logBetween(random, 24, Math.min(400, 8000 / cycles));
+  const snr_dB = random.between(30, 60);
+  const frequency_Hz = logBetween(random, 1000, 50_000);
+  const window_s = cycles / frequency_Hz;
+  const decay_per_s = (2 * Math.PI * frequency_Hz) / Math.sqrt(4 * q * q - 1);
+  const amplitude = logBetween(random, 50, 400);
+  const sigma = amplitude / Math.sqrt(2 * 10 ** (snr_dB / 10));
+  const step_s = 1 / (frequency_Hz * perCycle);
+  const furthest = Math.min(8, perCycle / 8);
+  const second_Hz = frequency_Hz + Math.max(1.5 / window_s, frequency_Hz * random.between(0, furthest - 1));
+  const secondDecay = decay_per_s * logBetween(random, 0.5, 6);
+  const shape: TrueMode = {
+    frequency_Hz: second_Hz,
+    decay_per_s: secondDecay,
+    amplitude: 1,
+    phase_rad: random.between(-3.1, 3.1),
+  };
+  let energy = 0;
+  for (let t = 0; t < window_s; t += step_s) energy += ringAt([shape], t) ** 2;
+  const wanted = logBetween(random, ...strength);
+  shape.amplitude = Math.min((wanted * sigma) / Math.sqrt(energy), 0.5 * amplitude);
+  const main: TrueMode = { frequency_Hz, decay_per_s, amplitude, phase_rad: 0 };
+  // The node is continuous at the switch-off: the main mode starts where the second leaves off.
+  const offset = amplitude * 0.05;
+  main.phase_rad = -Math.acos(
+    Math.max(-1, Math.min(1, (-offset - shape.amplitude * Math.cos(shape.phase_rad)) / amplitude)),
+  );
+  const screen = 2.6 * amplitude;
+  const bits = sigma >= (0.5 * screen) / 256 ? 8 : 12;
+  const scope = { cycles, perCycle, snr_dB, sigma, bits, screen };
+  return {
+    ...digitised(seed, random, [main, shape], offset, step_s, scope),
+    strength: (shape.amplitude * Math.sqrt(energy)) / sigma,
   };
 }

@@ -7,7 +7,7 @@ import { digitise, type ScopeInput } from "./simulate-scope.ts";
 import { randomBench, randomScope, type RandomBench, type Trouble } from "./spark-bench.ts";
 import { strength } from "./spark-strength.ts";
 
-export type SparkKind = "first-rise" | "late" | "low" | "glow";
+export type SparkKind = "first-rise" | "late" | "low" | "glow" | "weak";
 
 export interface PulseTruth {
   spark: boolean;
@@ -27,7 +27,10 @@ export interface SimulatedRun {
   setup: Setup;
   truths: PulseTruth[][];
   period_s: number;
+  /** Samples in one period of the low mode. */
   perPeriod: number;
+  /** Samples from each switch-off to the next edge or the record's end. */
+  free: number;
 }
 
 export interface RunRecipe {
@@ -72,6 +75,7 @@ export function simulateRun(seed: number, recipe: RunRecipe): SimulatedRun {
     truths: captures.map((made) => made.truths),
     period_s: bench.period_s,
     perPeriod: bench.period_s / bench.step_s,
+    free: bench.free,
     setup: {
       format: "ringbook.setup/1",
       expected: "spark",
@@ -156,12 +160,16 @@ function gapOf(
   const local_V = kind === "first-rise" ? reach_V : Math.max(...ahead.map(Math.abs));
   const breakdown_V = local_V * Math.min(0.97, share * (1 + 0.05 * random.normal()));
   const current_A = bench.current_A / bench.turnsRatio;
-  if (kind === "glow") {
+  if (kind === "glow" || kind === "weak") {
     const { inductance_H, capacitance_F } = bench.circuit.secondary;
     return {
       breakdown_V,
       lag_s: random.uniform() < 0.5 ? 0 : lag_s,
-      kind: { glow_ohm: Math.sqrt(inductance_H / capacitance_F) * random.between(0.5, 4) },
+      kind: {
+        glow_ohm:
+          Math.sqrt(inductance_H / capacitance_F) *
+          (kind === "weak" ? 10 ** random.between(0.6, 2) : random.between(0.5, 4)),
+      },
       hold: breakdown_V * random.between(0.3, 0.6),
     };
   }
