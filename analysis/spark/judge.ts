@@ -50,8 +50,9 @@ interface Own {
 
 /** Modes of the run and the variance of its free rings, from its clean pulses; else from a search in some. */
 function modeSets(candidates: Candidate[]): { sets: KnownMode[][]; ceiling?: number } {
+  const lowest = lowestShared(candidates);
   const own = candidates.flatMap(({ window, modes }): Own[] => {
-    if (modes.length === 0) return [];
+    if (modes.length === 0 || modes[0].frequency_Hz > 1.6 * lowest) return [];
     const traits = traitsOf(window, modes);
     return [{ modes, traits, excess: traits.split.variance / window.noise ** 2 }];
   });
@@ -68,6 +69,13 @@ function modeSets(candidates: Candidate[]): { sets: KnownMode[][]; ceiling?: num
     return sets.length > 0 ? [bestTraits(window, sets, ceiling).modes] : [];
   });
   return { sets: agreedModes(best), ceiling };
+}
+
+/** The lowest frequency that two pulses share: an arc's fast ring may be all that other pulses show. */
+function lowestShared(candidates: Candidate[]): number {
+  const lows = candidates.flatMap(({ modes }) => (modes.length > 0 ? [modes[0].frequency_Hz] : []));
+  const shared = lows.filter((f) => lows.filter((other) => Math.abs(other / f - 1) < 0.1).length > 1);
+  return shared.length > 0 ? Math.min(...shared) : Number.POSITIVE_INFINITY;
 }
 
 /** A spark leaves less of the ring: of clean pulses near one frequency those with the most left are the quiet ones. */
@@ -104,18 +112,27 @@ function mostLeft(group: Traits[]): number | null {
   return sizes.length > 1 ? Math.max(...sizes) : null;
 }
 
-/** Pulses to begin with: clean ones, else ones without clear loss of their own that agree; the strongest rings. */
+/**
+ * Pulses to begin with: clean ones, the strongest rings among them; or many that no free ring explains but that
+ * agree closely, where they have clearly more left than the clean ones.
+ */
 function seeds(group: Traits[]): number[] {
   const places = group.flatMap(({ rest }, i) => (rest ? [i] : []));
-  const clean = places.filter((i) => isClean(group[i]));
-  const candidates =
-    clean.length > 0 ? clean : places.filter((i) => likelihoodOf(group[i], null, i).probability < 0.7);
-  if (candidates.length === 0) return [];
   const size = (i: number) => Math.hypot(...group[i].rest!);
-  const top = candidates.toSorted((p, q) => size(q) - size(p)).slice(0, Math.ceil(candidates.length / 2));
-  const centre = median(top.map(size));
-  const alike = candidates.filter((i) => Math.abs(size(i) / centre - 1) < 0.12);
-  // Without a clean pulse only many that agree closely count as quiet.
-  const close = candidates.filter((i) => Math.abs(size(i) / centre - 1) < 0.04);
-  return clean.length > 0 || close.length >= Math.max(3, 0.3 * group.length) ? alike : [];
+  const strongest = (of: number[], within: number) => {
+    const top = of.toSorted((p, q) => size(q) - size(p)).slice(0, Math.ceil(of.length / 2));
+    const centre = median(top.map(size));
+    return { centre, alike: of.filter((i) => Math.abs(size(i) / centre - 1) < within) };
+  };
+  const clean = strongest(
+    places.filter((i) => isClean(group[i])),
+    0.12,
+  );
+  const others = strongest(
+    places.filter((i) => likelihoodOf(group[i], null, i).probability < 0.75),
+    0.04,
+  );
+  const agree = others.alike.length >= Math.max(3, 0.25 * group.length);
+  if (clean.alike.length === 0) return agree ? others.alike : [];
+  return agree && others.centre > 1.2 * clean.centre ? others.alike : clean.alike;
 }

@@ -68,7 +68,11 @@ function cutShort(traits: Traits, disturbed: number): Likelihood {
   // The window's very end may hold the next edge: no spark is read from it, nor from a ring that is spent.
   if (traits.tail || traits.spent) return { probability: 0.03, because: "one-ring", ...nothing };
   if (traits.ringBefore && disturbed > 20) return { probability: 0.97, because: "course", ...nothing };
-  return { probability: disturbed > 20 ? 0.8 : 0.4, because: "doubt", ...nothing };
+  return {
+    probability: disturbed > 5 * NOISE && traits.loss === 1 ? 0.95 : disturbed > 20 ? 0.8 : 0.4,
+    because: "doubt",
+    ...nothing,
+  };
 }
 
 function byItself(traits: Traits, most: number | null): Likelihood {

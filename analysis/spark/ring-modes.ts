@@ -21,10 +21,11 @@ export function ringModes(fitted: FittedMode[]): FittedMode[] {
 
 /** Periods this close are of one ring. */
 const ALIKE = 0.15;
+const FAR_SHORTER = 0.5;
 
 /**
- * In samples of each pulse's own capture. A pulse whose own period no other pulse shares, while most share
- * one, is given theirs: an arc's fast ring may be all that its fit found.
+ * In samples of each pulse's own capture. An arc's fast ring may be all that a fit found: a pulse whose period
+ * is far shorter than one that others share, or that no other shares while most share one, is given theirs.
  */
 export function ringPeriods(places: { capture: CaptureEvidence; pulse: PulseEvidence }[]): (number | null)[] {
   const own_s = places.map(({ capture, pulse }) => {
@@ -36,11 +37,13 @@ export function ringPeriods(places: { capture: CaptureEvidence; pulse: PulseEvid
   const known = own_s.filter((period) => period !== null);
   const usual = known.length > 2 ? median(known) : null;
   const shared = (period: number) => known.filter((other) => alike(period, other)).length;
+  const longest = Math.max(0, ...known.filter((period) => shared(period) > 1));
   return places.map(({ capture }, i) => {
     const { step_s } = capture.timebase;
-    let period = own_s[i];
     if (step_s === null) return null;
-    if (usual !== null && shared(usual) * 2 > known.length && (period === null || shared(period) < 3))
+    let period = own_s[i];
+    if (period !== null && period < FAR_SHORTER * longest) period = longest;
+    else if (usual !== null && shared(usual) * 2 > known.length && (period === null || shared(period) < 3))
       period = usual;
     return period === null ? null : period / step_s;
   });

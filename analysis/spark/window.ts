@@ -92,6 +92,8 @@ function leaveOutConduction(blocks: Blocks, levelOn: number, noise: number, peri
   const { values, count } = blocks;
   const length = Math.max(4, Math.round(0.3 * period));
   const apart = Math.abs(median(values.subarray(count >> 1, count)) - levelOn);
+  // Coloured noise moves a mean by up to its own size.
+  const near = Math.min(0.5 * apart, Math.max(0.35 * apart, 1.2 * noise));
   let [sum, square, since] = [0, 0, -1];
   for (let i = 0; i < count; i++) {
     sum += values[i] - levelOn;
@@ -102,7 +104,7 @@ function leaveOutConduction(blocks: Blocks, levelOn: number, noise: number, peri
     }
     const mean = sum / length;
     const still =
-      i >= length - 1 && square / length - mean * mean < (2 * noise) ** 2 && Math.abs(mean) < 0.35 * apart;
+      i >= length - 1 && square / length - mean * mean < (2 * noise) ** 2 && Math.abs(mean) < near;
     if (!still) since = -1;
     else if (since < 0) since = i + 1 - length;
     if (since >= 0 && (i - since > 0.5 * period || i === count - 1))
