@@ -2,9 +2,11 @@
 import type { Capture, Channel, Note } from "./capture.ts";
 import type { CaptureReading, ChannelReading } from "./reading-format.ts";
 
+const finite = (value: number | undefined) => (Number.isFinite(value) ? (value as number) : null);
+
 function describeChannel(channel: Channel): ChannelReading {
   const { samples } = channel;
-  const finite = (value: number | undefined) => (Number.isFinite(value) ? (value as number) : null);
+
   let low = Infinity;
   let high = -Infinity;
   for (const y of samples) {

@@ -58,6 +58,8 @@ export interface RampReading {
   energy_J: Figure;
   /** Winding resistance at 20 °C, from the ramp less the stated external resistance. */
   resistance20_ohm: Figure;
+  /** Incremental inductance against current, where the core saturates. */
+  curve?: { current_A: number[]; inductance_H: number[] } | null;
   reason: string | null;
 }
 

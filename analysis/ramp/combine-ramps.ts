@@ -22,6 +22,7 @@ export function combineRamps(pulses: PulseReading[]): RampReading | null {
   const reason = ramps.every((ramp) => ramp.reason !== null) ? ramps[0].reason : null;
   return {
     ...(Object.fromEntries(keys.map((key) => [key, mean(key)])) as Record<(typeof keys)[number], Figure>),
+    curve: ramps.find((ramp) => ramp.curve)?.curve ?? null,
     reason,
   };
 }

@@ -179,9 +179,17 @@ function withSaturation(
   reading.resistance20_ohm = windingAt20(reading.resistance_ohm, setup);
   reading.saturationCurrent_A = { value: sign * fit.saturation_A, u: uI };
   reading.timeConstant_s = null;
+  reading.curve = curveOf(fit, Math.max(...coarse));
   reading.energy_J = storedEnergy(fit, ramp.current_A);
   reading.reason = null;
   return ramp;
+}
+
+/** L(i) at 25 currents up to the largest seen. */
+function curveOf(fit: SaturatingFit, top: number): RampReading["curve"] {
+  const current_A = Array.from({ length: 25 }, (_, k) => (k * top) / 24);
+  const inductance_H = current_A.map((i) => fit.inductance_H / (1 + (i / fit.knee_A) ** fit.exponent));
+  return { current_A, inductance_H };
 }
 
 /** ∫ L(i)·i di up to the current at switch-off (Simpson's rule). */

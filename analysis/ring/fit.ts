@@ -72,8 +72,8 @@ const perSample = (mode: { frequency_Hz: number; decay_per_s: number }, step_s: 
 /** A slow baseline where the offset leaves one behind: slope, then up to cubic. */
 function withBaseline(blocks: Blocks, plain: Solution): Solution {
   let best = plain;
-  const bend = slowRest(blocks, plain);
-  for (let degree = 1; degree <= 3 && bend > 16; degree++) {
+  if (slowRest(blocks, plain) < 16) return plain;
+  for (let degree = 1; degree <= 3; degree++) {
     const curved = solve(blocks, best.modes, degree);
     if (curved.stopped === "singular") break;
     if (best.cost - curved.cost > (8 + Math.log(blocks.used)) * variance(blocks, curved)) best = curved;
@@ -102,7 +102,7 @@ function slowRest(blocks: Blocks, solution: Solution): number {
 function inOrder(solution: Solution): Solution {
   const order = solution.modes
     .map((_, m) => m)
-    .sort((a, b) => solution.modes[a].omega - solution.modes[b].omega);
+    .toSorted((a, b) => solution.modes[a].omega - solution.modes[b].omega);
   const linear = solution.linear.slice();
   order.forEach((m, at) => {
     linear[2 * at] = solution.linear[2 * m];

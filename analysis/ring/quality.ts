@@ -15,6 +15,8 @@ const GOOD_RESIDUAL = 1.5;
 /** Residuals this large against the ring itself mean that it is no ring. */
 const REFUSED_SHARE = 0.35;
 
+const refuse = (reason: string): Judgement => ({ quality: "refused", reason });
+
 export function judgeFit(fit: RingFit, noise: number): Judgement {
   const mode = fit.modes.reduce((a, b) => (amplitude(b) > amplitude(a) ? b : a));
   const window_s = (fit.to - fit.from) * fit.step_s;
@@ -28,7 +30,6 @@ export function judgeFit(fit: RingFit, noise: number): Judgement {
   const seen_s = mode.decay_per_s > 0 ? Math.min(window_s, foldings / mode.decay_per_s) : window_s;
   const cycles = seen_s * mode.frequency_Hz;
   const power = Math.hypot(...fit.modes.map((m) => rmsOf(m, window_s)));
-  const refuse = (reason: string): Judgement => ({ quality: "refused", reason });
   if (!(mode.decay_per_s > 0) && -mode.decay_per_s > 2 * decayU && -mode.decay_per_s * window_s > 0.05)
     return refuse("the oscillation grows instead of dying away: not the free ring of a coil");
   if (mode.decay_per_s + 2 * decayU < (Math.PI * mode.frequency_Hz) / MOST_Q)

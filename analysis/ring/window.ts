@@ -54,8 +54,7 @@ export function disturbedRing(place: Place): WindowedRing | null {
   if (patched) return patched;
   const late = lateStart(place, whole);
   const early = earlyEnd(place);
-  const reach = (fit: RingFit | null) => (fit ? informative(fit) : 0);
-  if (late && reach(late) >= reach(early))
+  if (late && informative(late) >= (early ? informative(early) : 0))
     return { fit: late, clean: true, courseChanges: false, masked: [] };
   if (early)
     return { fit: early, clean: true, courseChanges: early.to < place.to - place.period, masked: [] };
@@ -106,7 +105,7 @@ function withoutBursts(place: Place, whole: RingFit | null): WindowedRing | null
     const length = stretch(place, fit);
     const unusable = merged(place.unusable, masked);
     const { rms } = residualProfile(place.samples, fit, fit.from, fit.to, length, unusable);
-    const typical = Math.max(noiseOf(place), Float64Array.from(rms).sort()[rms.length >> 1] || 0);
+    const typical = Math.max(noiseOf(place), rms.toSorted()[rms.length >> 1] || 0);
     const limit = CLEAN * noiseLimit(typical, length);
     let share = 0;
     rms.forEach((value, s) => {
