@@ -20,12 +20,14 @@ const TEMPERATURES_C = [-20, 20, 60, 100];
 export function coilFromCaptures(readings: CaptureReading[], setups: Setup[]): CoilReading {
   const setup: Setup = setups.at(-1) ?? {};
   const pulses = readings.flatMap((reading) => reading.pulses);
-  const quiet = pulses.filter((pulse) => pulse.spark?.verdict !== "spark");
   const line = lineOf(readings, setups);
   const ramp = combineRamps(pulses);
   const notes: Note[] = [];
-  const inductance_H = line.inductance_H ?? combinePulses(quiet).inductance_H ?? ramp?.inductance_H ?? null;
-  const drive = driveOf(quiet, pulses, setup, inductance_H);
+  const inductance_H =
+    line.inductance_H ?? combinePulses(quietOf(readings)).inductance_H ?? ramp?.inductance_H ?? null;
+  // Peaks and the capacitor in use are those of the last capture; its setup is the one in force.
+  const last = readings.slice(-1);
+  const drive = driveOf(quietOf(last), pulses, setup, inductance_H);
   const dwell = dwellOf(pulses, setup, inductance_H, notes);
   if (line.reason)
     notes.push({ code: "no-capacitor-line", text: `No added-capacitor line: ${line.reason}.` });
@@ -40,10 +42,13 @@ export function coilFromCaptures(readings: CaptureReading[], setups: Setup[]): C
       ? { x: ramp.curve.current_A, y: ramp.curve.inductance_H, u: ramp.curve.current_A.map(() => null) }
       : null,
     dwell,
-    stress: stresses({ ...drive, ...loadOf(pulses, ramp?.resistance_ohm ?? null, setup, readings) }, setup),
+    stress: stresses({ ...drive, ...loadOf(last, ramp?.resistance_ohm ?? null, setup) }, setup),
     drive,
   };
 }
+
+const quietOf = (readings: CaptureReading[]) =>
+  readings.flatMap(({ pulses }) => pulses.filter((pulse) => pulse.spark?.verdict !== "spark"));
 
 function lineOf(readings: CaptureReading[], setups: Setup[]): AddedCapacitorLine {
   const points: RingAtCapacitor[] = [];
@@ -151,7 +156,8 @@ function dwellOf(
   );
 }
 
-function loadOf(pulses: PulseReading[], resistance_ohm: Figure, setup: Setup, readings: CaptureReading[]) {
+function loadOf(readings: CaptureReading[], resistance_ohm: Figure, setup: Setup) {
+  const pulses = readings.flatMap((reading) => reading.pulses);
   const peaks = pulses.flatMap((pulse) => (pulse.peak_V === null ? [] : [pulse.peak_V]));
   const dwells = pulses.flatMap((pulse) => (pulse.dwell_s === null ? [] : [pulse.dwell_s]));
   return {
