@@ -3,7 +3,15 @@ import type { Browser } from "playwright-core";
 import { afterAll, afterEach, beforeAll, expect, it } from "vitest";
 import { describeWindow, launch } from "./chromium.ts";
 import { openDoor, type TestDoor } from "./door.ts";
-import { closeSilent, dropFiles, expectAccessible, goTo, openSheet, type Sheet } from "./sheet.ts";
+import {
+  closeSilent,
+  dropFiles,
+  expectAccessible,
+  goTo,
+  openContents,
+  openSheet,
+  type Sheet,
+} from "./sheet.ts";
 
 describeWindow("the setup card", () => {
   let browser: Browser;
@@ -95,8 +103,7 @@ describeWindow("the setup card", () => {
   it("asks for the interval that a file does not tell, beside its first lines, and reads it with the answer", async () => {
     sheet = await openSheet(browser, door, "/");
     const { page } = sheet;
-    await page.keyboard.press("b");
-    await page.getByRole("heading", { name: "Contents" }).waitFor();
+    await openContents(page);
     const lines = ["node,gate", "Volt,Volt"];
     for (let at = 0; at < 3000; at++) lines.push(`${ring(at * 2e-6 - 1e-3).toFixed(2)},${at < 500 ? 5 : 0}`);
     await dropFiles(page, [{ name: "no-interval.csv", text: lines.join("\n") }]);

@@ -3,7 +3,14 @@ import type { Browser } from "playwright-core";
 import { afterAll, afterEach, beforeAll, expect, it } from "vitest";
 import { describeWindow, launch } from "./chromium.ts";
 import { openDoor, type TestDoor } from "./door.ts";
-import { closeSilent, expectAccessible, openSheet, sidewaysOverflow, type Sheet } from "./sheet.ts";
+import {
+  closeSilent,
+  expectAccessible,
+  openContents,
+  openSheet,
+  sidewaysOverflow,
+  type Sheet,
+} from "./sheet.ts";
 
 describeWindow("first use", () => {
   let browser: Browser;
@@ -39,8 +46,7 @@ describeWindow("first use", () => {
     const { page } = sheet;
     await page.getByRole("heading", { name: /Kiln burner/ }).waitFor();
     expect(page.url()).toMatch(/#\/run\/1$/);
-    await page.keyboard.press("b");
-    await page.getByRole("heading", { name: "Contents" }).waitFor();
+    await openContents(page);
     await expectAccessible(page);
     await page.keyboard.press("/");
     await page.keyboard.type("no such run");

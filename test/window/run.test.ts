@@ -5,7 +5,16 @@ import type { Browser } from "playwright-core";
 import { afterAll, afterEach, beforeAll, expect, it } from "vitest";
 import { describeWindow, launch } from "./chromium.ts";
 import { demo, openDoor, type TestDoor } from "./door.ts";
-import { closeSilent, dropFiles, expectAccessible, filesOf, goTo, openSheet, type Sheet } from "./sheet.ts";
+import {
+  closeSilent,
+  dropFiles,
+  expectAccessible,
+  filesOf,
+  goTo,
+  openContents,
+  openSheet,
+  type Sheet,
+} from "./sheet.ts";
 
 describeWindow("a run", () => {
   let browser: Browser;
@@ -107,7 +116,7 @@ describeWindow("a run", () => {
     mkdirSync(folder);
     sheet = await openSheet(browser, door, "/");
     const { page } = sheet;
-    await page.keyboard.press("b");
+    await openContents(page);
     await page.getByRole("heading", { name: "A folder to watch" }).waitFor();
     await page.keyboard.press("w");
     await page.keyboard.type(folder);

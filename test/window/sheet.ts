@@ -39,6 +39,13 @@ export async function openSheet(
 
 export const goTo = (page: Page, path: string) => page.evaluate((path) => (location.hash = `#${path}`), path);
 
+/** To the book's contents by key, once the place where the book was closed is restored. */
+export async function openContents(page: Page): Promise<void> {
+  await page.locator(".sheet-head").waitFor();
+  await page.keyboard.press("b");
+  await page.getByRole("heading", { name: "Contents" }).waitFor();
+}
+
 /** Closes the page and asserts that it was silent. */
 export async function closeSilent(sheet: Sheet | undefined): Promise<void> {
   if (!sheet) return;

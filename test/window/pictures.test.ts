@@ -1,0 +1,121 @@
+/**
+ * The gallery of the README: the demo run on every sheet, light, dark and narrow. Every run takes the
+ * pictures; `npm run pictures` keeps them in docs/pictures.
+ */
+import { mkdirSync } from "node:fs";
+import { join } from "node:path";
+import type { Browser } from "playwright-core";
+import { afterAll, beforeAll, expect, it } from "vitest";
+import type { PulseRow } from "../../app/bridge.ts";
+import { describeWindow, launch } from "./chromium.ts";
+import { openDoor, type TestDoor } from "./door.ts";
+import { closeSilent, openContents, openSheet, type Sheet } from "./sheet.ts";
+
+const folder = join(import.meta.dirname, "../../docs/pictures");
+const keep = process.env.PICTURES === "1";
+
+interface Picture {
+  name: string;
+  path(rows: PulseRow[]): string;
+  width: number;
+  height: number;
+  dark?: boolean;
+  /** What must be on the page before the picture is taken. */
+  shows: string;
+  before?(sheet: Sheet): Promise<void>;
+}
+
+/** A single capture's pulse whose spark comes late enough to be seen at a glance. */
+const sparking = (rows: PulseRow[]) =>
+  rows
+    .filter((row) => row.verdict === "spark" && row.quality === "good")
+    .toSorted((a, b) => (b.sketchOnset ?? 0) - (a.sketchOnset ?? 0))[0];
+const quiet = (rows: PulseRow[]) => rows.find((row) => row.verdict === "no-spark" && row.quality === "good")!;
+const pathOf = (row: PulseRow) => `/pulse/1/${row.capture}/${row.pulse}`;
+
+const pictures: Picture[] = [
+  { name: "run", path: () => "/run/1", width: 1280, height: 900, shows: ".run-chart .lozenge" },
+  {
+    name: "pulse",
+    path: (rows) => pathOf(sparking(rows)),
+    width: 1280,
+    height: 860,
+    shows: ".pulse-figure .fitted",
+  },
+  {
+    name: "pulse-dark",
+    path: (rows) => pathOf(sparking(rows)),
+    width: 1280,
+    height: 860,
+    dark: true,
+    shows: ".pulse-figure .fitted",
+  },
+  {
+    name: "misfire",
+    path: (rows) => pathOf(quiet(rows)),
+    width: 1280,
+    height: 860,
+    shows: ".pulse-figure .fitted",
+  },
+  { name: "narrow", path: (rows) => pathOf(sparking(rows)), width: 420, height: 900, shows: ".note-list li" },
+  {
+    name: "coil",
+    path: () => "/coil/Igniter%20coil%20A",
+    width: 1280,
+    height: 1100,
+    shows: ".plot .scatterlayer",
+  },
+  {
+    name: "card",
+    path: () => "/run/1",
+    width: 1280,
+    height: 900,
+    shows: ".card-face",
+    before: ({ page }) => turnCard(page),
+  },
+  {
+    name: "book",
+    path: () => "/",
+    width: 1280,
+    height: 620,
+    shows: ".sheet-head",
+    before: ({ page }) => openContents(page),
+  },
+];
+
+async function turnCard(page: Sheet["page"]) {
+  await page.keyboard.press("e");
+  await page.locator(".card-back").waitFor();
+  await page.locator("#setup-card").scrollIntoViewIfNeeded();
+  await page.evaluate(() => document.querySelector("#setup-card")!.scrollIntoView());
+}
+
+describeWindow("pictures of the demo run", () => {
+  let browser: Browser;
+  let door: TestDoor;
+  let rows: PulseRow[];
+  beforeAll(async () => {
+    [browser, door] = await Promise.all([launch(), openDoor({ demo: true })]);
+    ({ rows } = await door.ask("pulses", { run: 1, limit: 1000 }));
+    if (keep) mkdirSync(folder, { recursive: true });
+  });
+  afterAll(async () => {
+    await browser?.close();
+    await door?.end();
+  });
+
+  it.each(pictures)("$name", async ({ name, path, width, height, dark, shows, before }) => {
+    const options = {
+      viewport: { width, height },
+      colorScheme: dark ? ("dark" as const) : ("light" as const),
+    };
+    const sheet = await openSheet(browser, door, path(rows), options);
+    await sheet.page.locator(shows).first().waitFor({ state: "attached", timeout: 15_000 });
+    await before?.(sheet);
+    await sheet.page.waitForTimeout(400);
+    const bytes = await sheet.page.screenshot(keep ? { path: join(folder, `${name}.png`) } : {});
+    // A blank page of this size compresses to a few kilobytes.
+    expect(bytes.length).toBeGreaterThan(15_000);
+    await closeSilent(sheet);
+  });
+});
