@@ -31,6 +31,7 @@ const systemAdvice: Record<string, string> = {
 export function describeFailure(error: unknown): Failure {
   if (error instanceof CallError) return { code: error.code, text: error.message };
   if (error instanceof ReadingError) return { code: error.code, text: withPlace(error) };
+  if (isFailure(error)) return error;
   if (error instanceof SetupError) return { code: "wrong-setup", text: error.message };
   const { code, message } = error as { code?: unknown; message?: unknown };
   if (typeof code === "string" && code in systemAdvice) {
@@ -40,6 +41,12 @@ export function describeFailure(error: unknown): Failure {
   const text = typeof message === "string" && message !== "" ? message : String(error);
   return { code: typeof code === "string" ? code : "failed", text };
 }
+
+/** Described already, in a thread or where it was met. */
+const isFailure = (error: unknown): error is Failure =>
+  !(error instanceof Error) &&
+  typeof (error as Failure).code === "string" &&
+  typeof (error as Failure).text === "string";
 
 function withPlace(error: ReadingError): string {
   const { line, byte } = error.place;

@@ -3,11 +3,15 @@ import type { BenchEvent } from "../bridge.ts";
 import { openBook } from "./book/index.ts";
 import { answerCall, type Handlers, type Reply } from "./call.ts";
 import { bookHandlers } from "./handlers/book.ts";
-import { readingHandlers } from "./handlers/reading.ts";
-import { viewHandlers } from "./handlers/view.ts";
+import { coilHandlers } from "./handlers/coil.ts";
+import { readingHandlers, startReading } from "./handlers/reading.ts";
+import { createViews, viewHandlers } from "./handlers/view.ts";
+import { watchHandlers } from "./handlers/watch.ts";
 import { createJobs } from "./jobs/jobs.ts";
 import { createThread } from "./threads/thread.ts";
 import { createUploads } from "./uploads.ts";
+import { createWatches } from "./watch/watches.ts";
+import { rememberedFolders, watchTools } from "./watch/tools.ts";
 
 export interface HostOptions {
   bookPath: string;
@@ -40,8 +44,20 @@ export async function createHost(options: HostOptions): Promise<Host> {
   const viewer = createThread(options.workerUrl);
   const jobs = createJobs(emit);
   const uploads = createUploads(options.uploads ?? join(options.bookPath, "..", "dropped"));
-  const bench = { book, reader, viewer, jobs, uploads, emit, demo: options.demo };
-  const handlers: Handlers = { ...bookHandlers(bench), ...readingHandlers(bench), ...viewHandlers(bench) };
+  const views = createViews(book, viewer);
+  const watches = createWatches(
+    watchTools(book, emit, (paths) => startReading(bench, paths, null, null).finished),
+  );
+  const bench = { book, reader, viewer, views, watches, jobs, uploads, emit, demo: options.demo };
+  const handlers: Handlers = {
+    ...bookHandlers(bench),
+    ...coilHandlers(bench),
+    ...readingHandlers(bench),
+    ...viewHandlers(bench),
+    ...watchHandlers(bench),
+  };
+  // A folder that went away meanwhile is no reason not to start.
+  for (const path of rememberedFolders(book)) await watches.watch(path).catch(() => {});
 
   return {
     answer: (name, argument) => answerCall(handlers, name, argument),
@@ -51,6 +67,7 @@ export async function createHost(options: HostOptions): Promise<Host> {
     },
     idle: () => jobs.idle(),
     async close() {
+      watches.close();
       for (const { job, state } of jobs.list()) if (state === "working") jobs.cancel(job);
       await Promise.all([reader.stop("the program ends"), viewer.stop("the program ends")]);
       await jobs.idle();

@@ -30,17 +30,24 @@ export async function findSources(paths: string[], stated: Setup | null): Promis
   const found: Sources = { files: [], problems: [] };
   const seen = new Set<string>();
   for (const path of paths) {
-    try {
-      for (const file of await filesAt(path)) {
-        if (seen.has(resolve(file)) || isSetupFile(file)) continue;
-        seen.add(resolve(file));
-        found.files.push({ path: file, ...(await readSetups(file, stated)) });
-      }
-    } catch (error) {
-      found.problems.push({ file: path, ...describeFailure(error) });
+    for (const file of await orProblem(found, path, () => filesAt(path), [])) {
+      if (seen.has(resolve(file)) || isSetupFile(file)) continue;
+      seen.add(resolve(file));
+      const setup = await orProblem(found, file, () => readSetups(file, stated), null);
+      if (setup) found.files.push({ path: file, ...setup });
     }
   }
   return found;
+}
+
+/** What can't be had is a problem of its own file only: the others of the folder are still read. */
+async function orProblem<T>(found: Sources, file: string, get: () => Promise<T>, otherwise: T): Promise<T> {
+  try {
+    return await get();
+  } catch (error) {
+    found.problems.push({ file, ...describeFailure(error) });
+    return otherwise;
+  }
 }
 
 const byName = new Intl.Collator("en", { numeric: true });

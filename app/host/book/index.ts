@@ -123,6 +123,14 @@ function bookOn(db: DatabaseSyncInstance, path: string, readOnly: boolean, note:
         .all(run) as { path: string }[];
     },
 
+    /** Whether the file was kept as it is: same size, and not changed since. */
+    knows(file: string, bytes: number, changed_ms: number): boolean {
+      const row = db
+        .prepare("SELECT added FROM captures WHERE path = ? AND bytes = ? ORDER BY id DESC LIMIT 1")
+        .get(file, bytes) as { added: string } | undefined;
+      return row !== undefined && Date.parse(row.added) >= changed_ms;
+    },
+
     captureFile(capture: number) {
       const { run, file, setup, reading } = ask.capture(capture);
       return { run, path: file, record: reading.record.index, setup, reading };

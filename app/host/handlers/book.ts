@@ -15,7 +15,7 @@ type FromBook =
   | "setPreference";
 
 /** What the bench book answers by itself. */
-export function bookHandlers({ book, emit }: BenchParts): Pick<Handlers, FromBook> {
+export function bookHandlers({ book, emit, views }: BenchParts): Pick<Handlers, FromBook> {
   return {
     hello: () => ({
       version,
@@ -32,7 +32,7 @@ export function bookHandlers({ book, emit }: BenchParts): Pick<Handlers, FromBoo
       emit({ type: "run-changed", run: book.captureFile(capture).run });
       return { ruled };
     },
-    exportRun: ({ run, kind }) => exportRun(book, run, kind),
+    exportRun: ({ run, kind }) => exportRun(book, run, kind, views),
     preferences: () => book.preferences(),
     setPreference({ key, value }) {
       book.setPreference(key, value);

@@ -1,16 +1,29 @@
+import type { Argument } from "../../bridge.ts";
+import type { Book } from "../book/index.ts";
 import type { Handlers } from "../call.ts";
+import { fileHead } from "../file-head.ts";
+import type { Views } from "../handover/index.ts";
+import type { Thread } from "../threads/thread.ts";
 import type { BenchParts } from "./bench-parts.ts";
 
 /** Windows onto raw samples, answered by a thread that holds them. */
-export function viewHandlers({ book, viewer }: BenchParts): Pick<Handlers, "trace" | "ringPicture"> {
+export function createViews(book: Book, viewer: Thread): Views {
   return {
-    async trace({ capture, ...request }) {
+    async trace({ capture, ...request }: Argument<"trace">) {
       const { path, record, setup } = book.captureFile(capture);
       return viewer.ask("trace", { file: { path, setup }, record, ...request });
     },
-    async ringPicture({ capture, ...request }) {
+    async ringPicture({ capture, ...request }: Argument<"ringPicture">) {
       const { path, record, setup, reading } = book.captureFile(capture);
       return viewer.ask("ringPicture", { file: { path, setup }, record, reading, ...request });
     },
   };
 }
+
+export const viewHandlers = ({
+  book,
+  views,
+}: BenchParts): Pick<Handlers, "trace" | "ringPicture" | "fileHead"> => ({
+  ...views,
+  fileHead: ({ capture, lines }) => fileHead(book.captureFile(capture).path, lines),
+});

@@ -1,3 +1,4 @@
+import { countSentence } from "../../../analysis/format/counts.ts";
 import { formatNumber } from "../../../analysis/format/figure.ts";
 import { version } from "../../../package.json";
 import type { CaptureDetail, RunDetail } from "../../bridge.ts";
@@ -20,7 +21,7 @@ export async function reportPage(run: RunDetail, captures: CaptureDetail[], view
       <p>${[run.coil, run.taken, `${run.captures} captures`].filter(Boolean).join(" · ")}</p>
     </header>
     <main>
-      <p class="counts">${countSentence(run)}</p>
+      <p class="counts">${countSentence(run.counts)}</p>
       ${attention(run)}
       <h2>What was found</h2>
       ${figureTable(run, captures)}
@@ -44,19 +45,6 @@ export async function reportPage(run: RunDetail, captures: CaptureDetail[], view
 <meta http-equiv="Content-Security-Policy" content="default-src 'none'; style-src 'unsafe-inline'">
 <title>${escape(run.name)}</title><style>${reportStyle}</style></head><body>${body.text}</body></html>
 `;
-}
-
-const percent = (share: number) => (share * 100).toFixed(1);
-
-/** "54 pulses: 36 sparked, 17 misfired, 1 unclear. Misfire rate 32.1 % (19.5 to 47.5 % at 95 %)." */
-function countSentence({ counts }: RunDetail): string {
-  const { pulses, sparks, quiet, unclear, misfires, misfireRate } = counts;
-  const silent = misfires === null ? `${quiet} stayed quiet` : `${misfires} misfired`;
-  const counted = `${pulses} pulses: ${sparks} sparked, ${silent}, ${unclear} unclear.`;
-  if (!misfireRate) return counted;
-  const value = misfireRate.value === null ? "cannot be given" : `${percent(misfireRate.value)} %`;
-  const { low, high, level } = misfireRate;
-  return `${counted} Misfire rate ${value} (${percent(low)} to ${percent(high)} % at ${level * 100} %).`;
 }
 
 function attention({ attention: found }: RunDetail): Markup {

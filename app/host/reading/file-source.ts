@@ -53,9 +53,13 @@ class HashedFile {
   position = 0;
   private readonly hash = createHash("sha256");
   private ahead: Promise<Uint8Array> | null = null;
+  // Two pieces take turns: one is parsed while the other fills.
+  private turn = 0;
+  private readonly pieces = [new Uint8Array(pieceBytes), new Uint8Array(pieceBytes)];
 
   constructor(private readonly handle: FileHandle) {}
 
+  /** What it answers holds until the next call. */
   async next(): Promise<Uint8Array> {
     const bytes = await (this.ahead ?? this.readAt(this.position));
     this.position += bytes.length;
@@ -67,7 +71,7 @@ class HashedFile {
   }
 
   private async readAt(position: number): Promise<Uint8Array> {
-    const piece = new Uint8Array(pieceBytes);
+    const piece = this.pieces[this.turn++ % 2];
     const { bytesRead } = await this.handle.read(piece, 0, pieceBytes, position);
     return piece.subarray(0, bytesRead);
   }
@@ -93,7 +97,7 @@ function gunzipped(raw: HashedFile): ByteSource {
       for (;;) {
         const bytes = await raw.next();
         if (bytes.length === 0) return;
-        yield bytes;
+        yield bytes.slice();
       }
     })(),
   );

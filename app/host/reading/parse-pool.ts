@@ -1,6 +1,7 @@
 /** Worker threads that parse pieces of one file side by side, where the entry has told their script. */
 import { availableParallelism } from "node:os";
 import { Worker } from "node:worker_threads";
+import type { ParseResult, ParseTask } from "./parse-worker.ts";
 import type { BulkPlan, ChunkParser, ParsedChunk } from "../../../analysis/ingest/index.ts";
 
 let script: URL | null = null;
@@ -32,12 +33,15 @@ interface Waiting {
 class Pool implements ParserPool {
   readonly lanes: number;
   private next = 0;
+  private readonly spares: ArrayBuffer[] = [];
+  private readonly values: ArrayBuffer[] = [];
   private readonly waiting = new Map<number, Waiting>();
 
   constructor(private readonly workers: Worker[]) {
     this.lanes = workers.length + 1;
     for (const worker of workers) {
-      worker.on("message", ({ id, chunk }: { id: number; chunk: ParsedChunk }) => {
+      worker.on("message", ({ id, chunk, spare }: ParseResult) => {
+        this.spares.push(spare);
         this.waiting.get(id)?.resolve(chunk);
         this.waiting.delete(id);
       });
@@ -45,12 +49,22 @@ class Pool implements ParserPool {
     }
   }
 
+  spare(): ArrayBuffer | undefined {
+    return this.spares.pop();
+  }
+
+  release({ values }: ParsedChunk): void {
+    this.values.push(...values.map(({ buffer }) => buffer));
+  }
+
   parse(bytes: Uint8Array<ArrayBuffer>, plan: BulkPlan): Promise<ParsedChunk> {
     const id = this.next++;
     const result = new Promise<ParsedChunk>((resolve, reject) => this.waiting.set(id, { resolve, reject }));
     // Who stops early leaves results behind that nobody awaits.
     result.catch(() => undefined);
-    this.workers[id % this.workers.length].postMessage({ id, bytes, plan }, [bytes.buffer]);
+    const reuse = this.values.splice(0, plan.columns.length);
+    const task: ParseTask = { id, bytes, plan, reuse };
+    this.workers[id % this.workers.length].postMessage(task, [bytes.buffer, ...reuse]);
     return result;
   }
 

@@ -36,7 +36,7 @@ export function ringPicture(
   return {
     fitted: curve(grid(window.from, end), model.value),
     expected: horizon > end ? curve(grid(end, horizon), model.value) : { time_s: [], value: [] },
-    residuals: residuals(capture, channel, model, window, pixels),
+    residuals: residuals(channel, model, window, pixels),
     peaks: peaks(capture, channel, model, window),
     envelope: curve(grid(window.from, Math.max(end, horizon)), model.envelope),
     offset: ring.offset,
@@ -67,7 +67,7 @@ function samplesOf(capture: Capture, ring: RingReading): Stretch {
 }
 
 /** Sample less fitted ring, lowest and highest of each slot; null where a slot holds no number. */
-function residuals(capture: Capture, channel: Channel, model: Model, window: Stretch, pixels: number) {
+function residuals(channel: Channel, model: Model, window: Stretch, pixels: number) {
   const count = window.last - window.first + 1;
   const slots = Math.max(0, Math.min(count, pixels));
   const drawn: RingPicture["residuals"] = { time_s: [], low: [], high: [] };
