@@ -23,7 +23,7 @@ const SURE = 7;
 
 /** Null for a trace without excursions (constant, empty). `noise`: per sample. */
 export function scaleOf(samples: Float64Array, noise: number): Scale | null {
-  const level = medianOf(samples, 0, samples.length, 4096);
+  const level = medianOf(samples);
   if (!Number.isFinite(level)) return null;
   let found: Scale | null = null;
   for (let width = 1; width <= samples.length / 16; width *= 2) {

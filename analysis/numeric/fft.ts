@@ -27,7 +27,8 @@ function planOf(n: number): Plan {
 
 /** In place, radix 2, decimation in time; re and im of length n in bit-reversed order. */
 function transform({ cos, sin, re, im }: Plan, n: number): void {
-  for (let half = 1; half < n; half *= 2) {
+  firstTwoStages(re, im, n);
+  for (let half = 4; half < n; half *= 2) {
     const stride = n / (2 * half);
     for (let start = 0; start < n; start += 2 * half)
       for (let k = 0, t = 0; k < half; k++, t += stride) {
@@ -43,8 +44,30 @@ function transform({ cos, sin, re, im }: Plan, n: number): void {
   }
 }
 
+/** The stages whose factors are 1 and −j only. n is at least 4. */
+function firstTwoStages(re: Float64Array, im: Float64Array, n: number): void {
+  for (let i = 0; i < n; i += 4) {
+    const a = re[i] + re[i + 1];
+    const aj = im[i] + im[i + 1];
+    const b = re[i] - re[i + 1];
+    const bj = im[i] - im[i + 1];
+    const c = re[i + 2] + re[i + 3];
+    const cj = im[i + 2] + im[i + 3];
+    const d = re[i + 2] - re[i + 3];
+    const dj = im[i + 2] - im[i + 3];
+    re[i] = a + c;
+    im[i] = aj + cj;
+    re[i + 1] = b + dj;
+    im[i + 1] = bj - d;
+    re[i + 2] = a - c;
+    im[i + 2] = aj - cj;
+    re[i + 3] = b - dj;
+    im[i + 3] = bj + d;
+  }
+}
+
 /**
- * |X_k|² for k = 0 … n/2 of the first `count` values (zero beyond), n a power of two ≥ 4, count ≤ n.
+ * |X_k|² for k = 0 … n/2 of the first `count` values (zero beyond), n a power of two ≥ 8, count ≤ n.
  * The real data are folded into a complex transform of half the length.
  */
 export function powerSpectrum(values: Float64Array, count: number, n: number, out: Float64Array): void {
@@ -74,4 +97,4 @@ export function powerSpectrum(values: Float64Array, count: number, n: number, ou
 }
 
 /** Smallest power of two ≥ n. */
-export const powerOfTwo = (n: number): number => 2 ** Math.ceil(Math.log2(Math.max(4, n)));
+export const powerOfTwo = (n: number): number => 2 ** Math.ceil(Math.log2(Math.max(8, n)));

@@ -25,8 +25,8 @@ export interface FitOptions {
 
 /** Values the search looks at; longer windows are averaged down first. */
 const SEARCH_VALUES = 4096;
-/** Enough to see modes up to some 20 times faster than the ring. */
-const SEARCH_PER_CYCLE = 64;
+/** Enough to see modes up to some 15 times faster than the ring. */
+const SEARCH_PER_CYCLE = 40;
 /** Values a cycle of the fastest mode the last pass keeps: block means lose 1 − sinc² = 0.3 %. */
 const FINE_PER_CYCLE = 32;
 const none = new Int32Array(0);

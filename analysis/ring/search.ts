@@ -66,13 +66,14 @@ function fitNext(blocks: Blocks, known: Mode[], values: Float64Array, noise: num
 }
 
 function earned(blocks: Blocks, before: Solution, after: Solution): boolean {
-  const noise = variance(blocks, after);
-  const residual = residualBuffer(blocks.count);
-  residualBlocks(blocks, after, residual);
   const added = after.modes.at(-1)!;
-  const excess = Math.max(1, excessAt(colourOf(residual, blocks.count), added.omega));
   const plausible =
     after.modes.every((mode) => mode.decay > -0.5 / blocks.count) &&
     added.omega > 2 * Math.PI * 0.6 * Math.max(added.decay / 4, 1 / blocks.count);
-  return plausible && before.cost - after.cost > priceOfMode(blocks.used) * noise * excess;
+  const price = priceOfMode(blocks.used) * variance(blocks, after);
+  const gain = before.cost - after.cost;
+  if (!plausible || gain < price) return false;
+  const residual = residualBuffer(blocks.count);
+  residualBlocks(blocks, after, residual);
+  return gain > price * excessAt(colourOf(residual, blocks.count), added.omega);
 }
