@@ -95,7 +95,10 @@ function sparkNotes(pulse: PulseReading, setup: Setup): MarginNote[] {
   }));
   // A verdict without an onset stands where its first reason points.
   const place_s = spark.onset_s ?? reasons.find((reason) => reason.place_s !== null)?.place_s ?? null;
-  const near = (place: number | null) => place === null || place === place_s;
+  // What is said of the same instant, to a fraction of the ring's period, stands in one note.
+  const reach_s = 0.2 / (pulse.ring?.modes[0]?.frequency_Hz.value ?? Infinity);
+  const near = (place: number | null) =>
+    place === null || (place_s !== null && Math.abs(place - place_s) <= reach_s);
   const own = reasons.filter((reason) => near(reason.place_s)).map((reason) => reason.text);
   const elsewhere = reasons.filter((reason) => !near(reason.place_s)).slice(0, 3);
   return [
@@ -121,11 +124,14 @@ function verdictNote(
   const after = onset_s === null ? null : onset_s - (pulse.switchOffTime_s ?? 0);
   const word = verdictWord(verdict, setup.expected);
   const title = `${word[0].toUpperCase()}${word.slice(1)}`;
-  const breakdown = breakdown_V === null ? "" : `Breakdown ${plain(breakdown_V, "V")}${from(breakdownFrom)}.`;
+  const breakdown =
+    breakdown_V === null || why.some((reason) => /breakdown/i.test(reason))
+      ? ""
+      : `Breakdown ${plain(breakdown_V, "V")}${from(breakdownFrom)}.`;
   return {
     id: "spark",
     title: verdict === "spark" && after !== null ? `${title}, ${plain(after, "s")} after switch-off` : title,
-    text: [...why.slice(0, 2), breakdown].filter(Boolean).join(" "),
+    text: [...why.slice(0, 3), breakdown].filter(Boolean).join(" "),
     tone: verdict === "no-spark" ? "ink" : verdict === "spark" ? "spark" : "warning",
     place_s,
   };

@@ -7,6 +7,8 @@ import { describeWindow, launch } from "./chromium.ts";
 import { openDoor, type TestDoor } from "./door.ts";
 import { closeSilent, expectAccessible, openSheet, type Sheet } from "./sheet.ts";
 
+const pathOf = (row: PulseRow) => `/pulse/1/${row.capture}/${row.pulse}`;
+
 describeWindow("a pulse", () => {
   let browser: Browser;
   let door: TestDoor;
@@ -25,7 +27,6 @@ describeWindow("a pulse", () => {
     sheet = undefined;
   });
 
-  const pathOf = (row: PulseRow) => `/pulse/1/${row.capture}/${row.pulse}`;
   const first = (wanted: (row: PulseRow) => boolean) =>
     rows.find((row) => wanted(row) && row.quality === "good")!;
   const open = async (row: PulseRow, options = {}) => {

@@ -16,6 +16,8 @@ import {
   type Sheet,
 } from "./sheet.ts";
 
+const sum = (numbers: number[]) => numbers.reduce((all, one) => all + one, 0);
+
 describeWindow("a run", () => {
   let browser: Browser;
   let door: TestDoor;
@@ -64,7 +66,6 @@ describeWindow("a run", () => {
       lozenges: lines.map((line) => line.querySelector(".lozenge")!.getAttribute("d")!.split("Z").length - 1),
       circles: lines.map((line) => line.querySelector(".circle")!.getAttribute("d")!.split("Z").length - 1),
     }));
-    const sum = (numbers: number[]) => numbers.reduce((all, one) => all + one, 0);
     expect(sum(drawn.lozenges)).toBe(rows.filter((row) => row.verdict === "spark").length);
     expect(sum(drawn.circles)).toBe(rows.filter((row) => row.verdict === "no-spark").length);
     await page.getByRole("heading", { name: "Look at this first" }).waitFor();
