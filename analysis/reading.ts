@@ -36,7 +36,9 @@ export function readCapture(capture: Capture, setup: Setup): CaptureEvidence {
     setup,
     map,
     period: events.period,
-    noise: channel ? differenceNoise(channel.samples, 0, channel.samples.length, channel.lsb) : 0,
+    noise:
+      events.noise ??
+      (channel ? differenceNoise(channel.samples, 0, channel.samples.length, channel.lsb) : 0),
     timeRelative: stepUncertainty_s / step_s,
   };
   const pulses = pulsesOf(context, events);

@@ -11,6 +11,8 @@ export interface Events {
   offs: SwitchOff[];
   /** One ring period in samples, rough; 0 where unknown. */
   period: number;
+  /** Noise per sample of the ring channel where it was a voltage. */
+  noise: number | null;
   source: "gate" | "voltage" | "current";
 }
 
@@ -19,13 +21,15 @@ export function findSwitchOffs(capture: Capture, map: ChannelMap): Events {
   const seen =
     channel && isVoltage(map, map.ring)
       ? voltageSwitchOffs(channel.samples, channel.lsb)
-      : { offs: [], period: 0 };
+      : { offs: [], period: 0, noise: null };
+  const { period, noise } = seen;
   if (map.gate !== null) {
-    const conductions = bestGate(capture.channels[map.gate].samples, seen.offs, seen.period);
+    const conductions = bestGate(capture.channels[map.gate].samples, seen.offs, period);
     if (conductions.some(({ off }) => off !== null))
       return {
-        offs: fromConductions(capture, conductions, seen.offs, seen.period),
-        period: seen.period,
+        offs: fromConductions(capture, conductions, seen.offs, period),
+        period,
+        noise,
         source: "gate",
       };
   }
@@ -33,16 +37,17 @@ export function findSwitchOffs(capture: Capture, map: ChannelMap): Events {
     const current = capture.channels[map.current];
     const pulses = currentConductions(current.samples, current.lsb);
     if (seen.offs.length === 0 && pulses.length > 0) {
-      const offs = fromConductions(capture, pulses, [], seen.period);
+      const offs = fromConductions(capture, pulses, [], period);
       offs.forEach(
         (off, k) => (off.polarity = map.ring === map.current ? (-pulses[k].polarity as 1 | -1) : 1),
       );
-      return { offs, period: seen.period, source: "current" };
+      return { offs, period, noise, source: "current" };
     }
     if (pulses.length > 0 && map.ring !== map.current)
       return {
-        offs: withCurrent(capture, seen.offs, pulses, seen.period),
-        period: seen.period,
+        offs: withCurrent(capture, seen.offs, pulses, period),
+        period,
+        noise,
         source: "voltage",
       };
   }

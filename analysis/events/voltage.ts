@@ -23,10 +23,10 @@ const STEP_OVERSHOOT = 2.3;
 export function voltageSwitchOffs(
   samples: Float64Array,
   lsb: number | null,
-): { offs: SwitchOff[]; period: number } {
+): { offs: SwitchOff[]; period: number; noise: number } {
   const noise = differenceNoise(samples, 0, samples.length, lsb);
   const rough = scaleOf(samples, noise);
-  if (!rough) return { offs: [], period: 0 };
+  if (!rough) return { offs: [], period: 0, noise };
   const first = findOnsets(samples, rough, noise, lsb);
   // Arcs and a fast second mode make the spacing of half-waves too short: the ring itself tells better.
   const period = ringPeriod(samples, first, rough.period, noise);
@@ -59,7 +59,7 @@ export function voltageSwitchOffs(
   });
   for (let k = 0; k < offs.length; k++) offs[k].freeTo = freeEnd(samples, offs, onsets, k, lsb, width);
   const early = beginsInRing(samples, offs[0] ?? null, scale.period, noise);
-  return { offs: early ? [early, ...offs] : offs, period: scale.period };
+  return { offs: early ? [early, ...offs] : offs, period: scale.period, noise };
 }
 
 const toleranceOf = (onset: Onset, lsb: number | null, width: number) =>

@@ -2,7 +2,7 @@
 import { median } from "./median.ts";
 
 /** Median of the finite values of samples[from … to), from at most `most` of them evenly spaced; NaN if none. */
-export function medianOf(samples: ArrayLike<number>, from = 0, to = samples.length, most = 1024): number {
+export function medianOf(samples: ArrayLike<number>, from = 0, to = samples.length, most = 512): number {
   const stride = Math.max(1, Math.ceil((to - from) / most));
   const values: number[] = [];
   for (let i = from; i < to; i += stride) if (Number.isFinite(samples[i])) values.push(samples[i]);

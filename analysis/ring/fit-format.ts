@@ -30,6 +30,8 @@ export interface RingFit {
   residual: number;
   /** Noise per sample, from the data without the ring model (differences and quiet stretches). */
   noise: number;
+  /** Per mode, the noise's power density at its frequency over the mean density (1: white). */
+  excess: number[];
   /** Samples averaged into one for the fit (block means; the model accounts for them exactly). */
   decimation: number;
   iterations: number;

@@ -17,6 +17,8 @@ export interface FitOptions {
   mostModes?: number;
   /** Modes known beforehand (another window of the same ring): no search, refined as they are. */
   start?: { frequency_Hz: number; decay_per_s: number }[];
+  /** The same ring on another window: its modes, baseline and colour of noise are taken over, and refined. */
+  like?: RingFit;
   /** One period of the ring in samples, rough: lets the search average down what is sampled far finer. */
   period?: number;
   /** Noise per sample where it is known; else from the window's differences. */
@@ -46,7 +48,8 @@ export function fitRing(
   const length = to - from;
   if (length < 8) return null;
   let start: Mode[];
-  if (options.start) start = options.start.map((mode) => perSample(mode, step_s));
+  const known = options.like?.modes ?? options.start;
+  if (known) start = known.map((mode) => perSample(mode, step_s));
   else {
     const fine = Math.floor((options.period ?? 0) / SEARCH_PER_CYCLE);
     const by = Math.max(1, Math.ceil(length / SEARCH_VALUES), fine);
@@ -59,8 +62,9 @@ export function fitRing(
   const decimation = Math.max(1, Math.floor((2 * Math.PI) / fastest / FINE_PER_CYCLE));
   const blocks = makeBlocks(samples, from, to, unusable, decimation);
   if (blocks.used < 4 * start.length + 2) return null;
-  const solution = withBaseline(blocks, solve(blocks, scaled(start, decimation), 0));
-  solution.modes = solution.modes.slice();
+  const degree = (options.like?.baseline.length ?? 1) - 1;
+  const plain = solve(blocks, scaled(start, decimation), degree);
+  const solution = options.like ? plain : withBaseline(blocks, plain);
   return describe(samples, from, to, step_s, blocks, inOrder(solution), options);
 }
 
@@ -128,8 +132,8 @@ function describe(
   const noise = options.noise ?? differenceNoise(samples, from, to, options.lsb ?? null);
   const quantisation = (options.lsb ?? 0) ** 2 / 12 / blocks.decimation;
   const perBlock = Math.max(variance(blocks, solution), quantisation);
-  const colour = colourOf(residual, blocks.count);
-  const colours = solution.modes.map(({ omega }) => Math.sqrt(excessAt(colour, omega)));
+  const excess = options.like?.excess ?? excessOf(residual, blocks, solution);
+  const colours = excess.map((ratio) => Math.sqrt(ratio));
   const size = 4 * modes.length;
   const covariance = unit.map(
     (value, k) => value * perBlock * colours[Math.floor(k / size) >> 2] * colours[(k % size) >> 2],
@@ -143,10 +147,16 @@ function describe(
     covariance,
     residual: Math.sqrt(perBlock * blocks.decimation),
     noise,
+    excess,
     decimation: blocks.decimation,
     iterations: solution.iterations,
     stopped: solution.stopped,
   };
+}
+
+function excessOf(residual: Float64Array, blocks: Blocks, solution: Solution): number[] {
+  const colour = colourOf(residual, blocks.count);
+  return solution.modes.map(({ omega }) => excessAt(colour, omega));
 }
 
 /** From powers of the block number to powers of t/(window length); block b's centre is at (b + ½ − 1/(2D))·D. */

@@ -81,7 +81,7 @@ function extended(place: Omit<Place, "from">, off: SwitchOff, ring: WindowedRing
   const start = Math.ceil(crossing.at + Math.min(u, 0.02 * period));
   const switchOff = { at: crossing.at, u };
   if (start >= fit.from) return { ...ring, switchOff, nonlinear: null };
-  const longer = fitRing(samples, start, fit.to, step_s, { unusable, lsb, noise, start: fit.modes });
+  const longer = fitRing(samples, start, fit.to, step_s, { unusable, lsb, noise, like: fit });
   if (!longer) return { ...ring, switchOff, nonlinear: null };
   const { rms } = residualProfile(samples, longer, start, fit.from + 2, fit.from + 2 - start, unusable);
   const agrees = !(rms[0] > 1.15 * noiseLimit(Math.max(noise, longer.residual), fit.from + 2 - start));

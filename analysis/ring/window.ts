@@ -80,9 +80,7 @@ function fitTrimmed(place: Place, from: number, to: number, extra: FitOptions = 
   const slowest = Math.min(...fit.modes.map((mode) => mode.decay_per_s));
   const end = Math.ceil(from + Math.max(FOLDINGS / (slowest * place.step_s), 3 * place.period));
   if (!(slowest > 0) || end > from + 0.9 * (to - from)) return fit;
-  return (
-    fitRing(place.samples, from, end, place.step_s, options(place, { ...extra, start: fit.modes })) ?? fit
-  );
+  return fitRing(place.samples, from, end, place.step_s, options(place, { ...extra, like: fit })) ?? fit;
 }
 
 function isClean(place: Place, fit: RingFit, unusable = place.unusable): boolean {
