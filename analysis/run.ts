@@ -44,7 +44,8 @@ export function judgeRun(evidence: CaptureEvidence[], setup: Setup): RunJudgemen
   });
   const verdicts = judgePulses(judgeable);
   const run = judgeable.flatMap((place, i) => (verdicts[i] ? [{ ...place, judged: verdicts[i] }] : []));
-  const found = new Map(run.map((place, i) => [place.pulse, findings(place, run, i, setup)]));
+  const quiet = run.flatMap(({ judged }, i) => (judged.likelihood.probability < 0.1 ? [i] : []));
+  const found = new Map(run.map((place, i) => [place.pulse, findings(place, run, quiet, i, setup)]));
   const readings = evidence.map((capture) => {
     const pulses = capture.reading.pulses.map((pulse, p) => judgedPulse(pulse, found.get(capture.pulses[p])));
     return judgedCapture(capture.reading, pulses, setup);
@@ -69,14 +70,20 @@ interface Findings {
   onsetUncertainty_s: number | null;
 }
 
-function findings({ pulse, window, judged }: Place, run: Place[], i: number, setup: Setup): Findings {
+function findings(
+  { pulse, window, judged }: Place,
+  run: Place[],
+  quiet: number[],
+  i: number,
+  setup: Setup,
+): Findings {
   const likely = judged.likelihood.probability > 0.1 || (window.secondary?.strikes.length ?? 0) > 0;
-  const expected = likely ? expectedOf(judged, run, i, window) : null;
+  const expected = likely ? expectedOf(judged, run, quiet, i, window) : null;
   const times = timesOf(window, judged.traits, expected);
   const breakdown = likely ? breakdownOf(window, setup, expected, times) : null;
   const spark = sparkReading(judged, window, times, breakdown);
   const sparked = spark.verdict === "spark";
-  const energy_J = sparked ? sparkEnergy_J(judged, i, pulse, setup, window) : null;
+  const energy_J = sparked ? sparkEnergy_J(judged, pulse, setup, window) : null;
   return { spark, energy_J, breakdown, onsetUncertainty_s: times.onsetUncertainty_s };
 }
 

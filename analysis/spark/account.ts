@@ -15,7 +15,6 @@ import type { SparkWindow } from "./window.ts";
  */
 export function sparkEnergy_J(
   judged: Judged,
-  place: number,
   pulse: PulseEvidence,
   setup: Setup,
   window: SparkWindow,
@@ -26,7 +25,7 @@ export function sparkEnergy_J(
   const reflected = (setup.secondaryCapacitance_F ?? 0) * (setup.turnsRatio ?? 0) ** 2;
   const decay = traits.modes[0].decay_per_s;
   const left = sizeAt(traits.sums, traits.split.after, traits.b);
-  const rest = reference?.rest[place];
+  const rest = judged.quietRest;
   const quiet = rest
     ? Math.hypot(...rest) * Math.exp(-decay * (window.first_s + traits.b * window.step_s))
     : traits.ringBefore

@@ -1,5 +1,6 @@
 /** The waveform a pulse would have shown without a spark, as far as it can be known. */
 import type { Judged } from "./judge.ts";
+import { nearest } from "./reference.ts";
 import type { SparkWindow } from "./window.ts";
 
 export interface Expected {
@@ -17,9 +18,11 @@ export interface Expected {
 const MODELS = 4;
 
 /** From the ring before the disturbance, else from quiet pulses of the run; null with neither. */
+/** `quiet`: ascending places in `run` of the pulses taken for quiet. */
 export function expectedOf(
   judged: Judged,
   run: { judged: Judged; window: SparkWindow }[],
+  quiet: number[],
   place: number,
   window: SparkWindow,
 ): Expected | null {
@@ -35,15 +38,11 @@ export function expectedOf(
       settled: traits.split.after.coefficients[0],
     };
   }
-  const rest = judged.reference?.rest[place];
+  const rest = judged.quietRest;
   if (!rest) return null;
-  const models = run
-    .map((other, i) => ({ ...other, far: Math.abs(i - place) }))
-    .filter(
-      ({ judged: other, far }) =>
-        far > 0 && other.likelihood.probability < 0.1 && other.traits.modes === traits.modes,
-    )
-    .toSorted((p, q) => p.far - q.far)
+  const models = nearest(quiet, place, 2 * MODELS)
+    .map((i) => run[i])
+    .filter((other) => other.judged.traits.modes === traits.modes)
     .slice(0, MODELS);
   if (models.length === 0) return null;
   const values = new Float64Array(count);

@@ -17,6 +17,8 @@ export interface Judged {
   traits: Traits;
   likelihood: Likelihood;
   reference: Reference | null;
+  /** What the low mode would be at this pulse's switch-off by the quiet pulses near it; null without reference. */
+  quietRest: [cosine: number, sine: number] | null;
 }
 
 /** Pulses searched for modes of their own when no pulse is clean. */
@@ -103,6 +105,7 @@ function judgeGroup(group: Traits[]): Judged[] {
     traits,
     likelihood: likelihoodOf(traits, reference, i, most),
     reference,
+    quietRest: reference?.rest[i] ?? null,
   }));
 }
 

@@ -25,9 +25,9 @@ export function referenceOf(traits: Traits[], quiet: number[]): Reference | null
   const known = quiet.filter((i) => traits[i].rest !== null);
   if (known.length === 0) return null;
   const rest = traits.map((_, i) => {
-    const near = known.toSorted((p, q) => Math.abs(p - i) - Math.abs(q - i)).filter((p) => p !== i);
+    const near = nearest(known, i, 2 * NEIGHBOURS);
     if (near.length === 0) return null;
-    const rests = near.slice(0, 2 * NEIGHBOURS).map((p) => traits[p].rest!);
+    const rests = near.map((p) => traits[p].rest!);
     return [median(rests.map(([c]) => c)), median(rests.map(([, s]) => s))] as [number, number];
   });
   const kick = median(known.map((i) => traits[i].kick));
@@ -48,9 +48,31 @@ export function referenceOf(traits: Traits[], quiet: number[]): Reference | null
   };
 }
 
+/** The `count` places nearest to i, i itself left out; `sorted` ascends. */
+export function nearest(sorted: number[], i: number, count: number): number[] {
+  let right = sorted.findIndex((place) => place >= i);
+  if (right < 0) right = sorted.length;
+  let left = right - 1;
+  if (sorted[right] === i) right++;
+  const found: number[] = [];
+  while (found.length < count && (left >= 0 || right < sorted.length)) {
+    const takeLeft = right >= sorted.length || (left >= 0 && i - sorted[left] <= sorted[right] - i);
+    found.push(takeLeft ? sorted[left--] : sorted[right++]);
+  }
+  return found;
+}
+
+/** Radians that two switch-offs, each known to a sample or two, may differ by. */
+const PHASE_SLACK = 0.15;
+
 /** Distance of two complex amplitudes as a share of the second. */
 export function distance(rest: [number, number], from: [number, number]): number {
-  return Math.hypot(rest[0] - from[0], rest[1] - from[1]) / Math.hypot(...from);
+  const size = Math.hypot(...from);
+  const cross = rest[0] * from[1] - rest[1] * from[0];
+  const dot = rest[0] * from[0] + rest[1] * from[1];
+  const turn = Math.max(0, Math.abs(Math.atan2(cross, dot)) - PHASE_SLACK);
+  const length = Math.hypot(...rest);
+  return Math.hypot(length * Math.cos(turn) - size, length * Math.sin(turn)) / size;
 }
 
 /** The same ring from another current: kick and ring grow alike. */

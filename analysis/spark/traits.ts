@@ -7,6 +7,7 @@ export interface Traits {
   sums: RingSums;
   split: Split;
   modes: KnownMode[];
+  ceiling: number;
   /** √ of what one ring leaves over, in σ: the strength a disturbance has in this record. */
   misfit: number;
   /** Block where the ring before ends, and where the ring after begins. */
@@ -43,8 +44,33 @@ export const NOISE = 12;
 /** Shorter stretches say nothing certain of a ring, in periods. */
 const LEAST_RING = 0.7;
 
+/** Traits of a window held from the last time the run was judged: growing by a pulse hardly moves its modes. */
+const held = new WeakMap<SparkWindow, Traits[]>();
+
+const agrees = (a: number, b: number, within: number) => Math.abs(a - b) <= within * Math.abs(b);
+
+const sameModes = (a: KnownMode[], b: KnownMode[]) =>
+  a.length === b.length &&
+  a.every(
+    (mode, m) =>
+      agrees(mode.frequency_Hz, b[m].frequency_Hz, 2e-4) && agrees(mode.decay_per_s, b[m].decay_per_s, 0.01),
+  );
+
 /** `ceiling`: variance a block at most has where the ring is free, as the run's quiet pulses show it. */
 export function traitsOf(window: SparkWindow, modes: KnownMode[], ceiling = 16 * window.noise ** 2): Traits {
+  const earlier = held.get(window) ?? [];
+  const same = earlier.find(
+    (traits) => sameModes(traits.modes, modes) && agrees(traits.ceiling, ceiling, 0.1),
+  );
+  if (same) return same.modes === modes ? same : { ...same, modes };
+  const traits = { ...freshTraits(window, modes, ceiling), ceiling };
+  held.set(window, [...earlier.slice(-MOST_HELD + 1), traits]);
+  return traits;
+}
+
+const MOST_HELD = 4;
+
+function freshTraits(window: SparkWindow, modes: KnownMode[], ceiling: number): Omit<Traits, "ceiling"> {
   const { blocks, period } = window;
   const amplitude = largest(window, 0, blocks.count).size;
   const stride = Math.max(1, Math.round(period / 8));
@@ -144,7 +170,7 @@ function leftAt(sums: RingSums, split: Split, a: number, window: SparkWindow, mo
   return sizeAt(sums, split.before, earlier) * decayed;
 }
 
-function lossOf(traits: Omit<Traits, "misfit" | "loss">, window: SparkWindow): number | null {
+function lossOf(traits: Omit<Traits, "misfit" | "loss" | "ceiling">, window: SparkWindow): number | null {
   const { sums, split, a, b, modes } = traits;
   const decay = modes[0].decay_per_s * window.step_s;
   const after = traits.ringAfter ? sizeAt(sums, split.after, b) : 0;

@@ -1,6 +1,5 @@
 /** What judging needs of a pulse's raw samples: block means from switch-off to the next edge. */
 import type { CaptureEvidence, PulseEvidence } from "../evidence.ts";
-import { median } from "../numeric/median.ts";
 import { makeBlocks, type Blocks } from "../ring/blocks.ts";
 import { gatherSecondary, type SecondaryEvidence } from "./secondary.ts";
 
@@ -91,7 +90,7 @@ function turn(blocks: Blocks): void {
 function leaveOutConduction(blocks: Blocks, levelOn: number, noise: number, period: number): void {
   const { values, count } = blocks;
   const length = Math.max(4, Math.round(0.3 * period));
-  const apart = Math.abs(median(values.subarray(count >> 1, count)) - levelOn);
+  const apart = Math.abs(swingsAbout(blocks, period) - levelOn);
   // Coloured noise moves a mean by up to its own size.
   const near = Math.min(0.5 * apart, Math.max(0.35 * apart, 1.2 * noise));
   let [sum, square, since] = [0, 0, -1];
@@ -110,6 +109,15 @@ function leaveOutConduction(blocks: Blocks, levelOn: number, noise: number, peri
     if (since >= 0 && (i - since > 0.5 * period || i === count - 1))
       return cut(blocks, Math.max(0, since - 2));
   }
+}
+
+/** Mean over whole periods, after the first: what the ring swings about. */
+function swingsAbout({ values, count }: Blocks, period: number): number {
+  const from = count > 3 * period ? Math.round(period) : 0;
+  const to = Math.round(from + Math.max(1, Math.floor((0.7 * count - from) / period)) * period);
+  let sum = 0;
+  for (let i = from; i < Math.min(to, count); i++) sum += values[i];
+  return sum / Math.max(1, Math.min(to, count) - from);
 }
 
 function cut(blocks: Blocks, end: number): void {
