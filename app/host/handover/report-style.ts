@@ -14,6 +14,10 @@ table { border-collapse: collapse; width: 100%; font-size: .82rem; font-variant-
 th { text-align: left; font-weight: normal; color: #55534c; border-bottom: 1px solid #1a1a18; }
 td, th { padding: .18rem .6rem .18rem 0; vertical-align: top; overflow-wrap: anywhere; }
 tr + tr td { border-top: 1px solid #e6e3d8; }
+.log td, .log th { white-space: nowrap; overflow-wrap: normal; }
+.log td.why { white-space: normal; border-top: 0; padding: 0 0 .3rem 1.2rem; color: #55534c; font-size: .95em; }
+.log tbody { break-inside: avoid; }
+.log tbody + tbody td:not(.why) { border-top: 1px solid #e6e3d8; }
 .hash { font: .68rem/1.3 "DejaVu Sans Mono", monospace; }
 figure { margin: 1rem 0; break-inside: avoid; }
 figcaption b { color: #1a1a18; font-weight: normal; }

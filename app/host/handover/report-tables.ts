@@ -71,11 +71,33 @@ export function setupTable({ setup, origins }: RunDetail): Markup {
 
 const stated = (value: unknown) => (typeof value === "string" ? value : JSON.stringify(value));
 
-export const pulseLog = (captures: CaptureDetail[]) =>
-  table(
-    ["file", "pulse", "switch-off", "kick", "ring", "Q", "verdict", "probability", "reasons"],
-    captures.flatMap(({ file, reading }) => reading.pulses.map((pulse) => logRow(file, pulse))),
-  );
+const logColumns = ["file", "pulse", "switch-off", "kick", "ring", "Q", "verdict", "probability"];
+
+/** Two rows a pulse: its figures, and under them why. */
+export function pulseLog(captures: CaptureDetail[]): Markup {
+  const pulses = captures.flatMap(({ file, reading }) => reading.pulses.map((pulse) => ({ file, pulse })));
+  return html`<table class="log">
+    <thead>
+      <tr>
+        ${logColumns.map((name) => html`<th>${name}</th>`)}
+      </tr>
+    </thead>
+    ${pulses.map(
+      ({ file, pulse }) =>
+        html`<tbody>
+          <tr>
+            ${logRow(file, pulse).map((cell) => html`<td>${cell}</td>`)}
+          </tr>
+          <tr>
+            <td class="why" colspan="${logColumns.length}">${reasonsOf(pulse)}</td>
+          </tr>
+        </tbody>`,
+    )}
+  </table>`;
+}
+
+const reasonsOf = ({ ruled, spark }: PulseReading) =>
+  [ruled?.remark, ...(spark?.reasons ?? [])].filter(Boolean).join("; ");
 
 function logRow(file: string, pulse: PulseReading): string[] {
   const { ring, spark, ruled } = pulse;
@@ -92,6 +114,5 @@ function logRow(file: string, pulse: PulseReading): string[] {
     formatFigure(mode?.q ?? null, ""),
     verdict,
     spark ? spark.probability.toFixed(3) : "–",
-    [ruled?.remark, ...(spark?.reasons ?? [])].filter(Boolean).join("; "),
   ];
 }

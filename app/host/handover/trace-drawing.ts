@@ -21,7 +21,7 @@ export function pulseDrawing(trace: TraceWindow, ring: RingPicture | null, pulse
     ${level(pulse, trace, y)}
     <path class="ink" d="${envelopePath(trace, x, y)}" />
     <path class="fit" d="${linePath(fitted.time_s, fitted.value, x, y)}" />
-    ${marks(pulse).flatMap(({ time, word, kind }) => (inside(time) ? [mark(x(time), word, kind)] : []))}
+    ${marks(pulse).flatMap(({ time, word, kind }, i) => (inside(time) ? [mark(x(time), word, kind, i)] : []))}
     <text x="0" y="${height - 4}">${formatNumber(trace.from_s, "s", 5)}</text>
     <text x="${width}" y="${height - 4}" text-anchor="end">${formatNumber(trace.to_s, "s", 5)}</text>
   </svg>`;
@@ -51,9 +51,10 @@ function marks({ switchOffTime_s, spark }: PulseReading): Mark[] {
   return found;
 }
 
-const mark = (at: number, word: string, kind: string) =>
+/** Words of marks that lie close together stand above each other. */
+const mark = (at: number, word: string, kind: string, row: number) =>
   html`<line class="${kind}" x1="${at}" x2="${at}" y1="0" y2="${height - foot}" />
-    <text class="${kind}" x="${at + 3}" y="${height - foot - 3}">${word}</text>`;
+    <text class="${kind}" x="${at + 3}" y="${height - foot - 3 - row * 12}">${word}</text>`;
 
 /** Up along the highest samples, back along the lowest: no spike is lost, whatever the scale. */
 function envelopePath(trace: TraceWindow, x: (time: number) => number, y: (value: number) => number): string {
