@@ -3,22 +3,22 @@ import { useCallback } from "react";
 import { Caution } from "../help/Caution.tsx";
 import { SheetHead } from "../shell/SheetHead.tsx";
 import { useSay } from "../shell/say.tsx";
-import { messageOf, useBench } from "../state/bench.tsx";
+import { messageOf, useDesk } from "../state/bench.tsx";
 import { useKeys } from "../state/keys.ts";
 import { hrefOf } from "../state/route.ts";
 import { useOpen } from "../shell/Open.tsx";
 import { WatchFolder } from "./WatchFolder.tsx";
 
 export function Greeting() {
-  const bench = useBench();
+  const { bench, follow } = useDesk();
   const say = useSay();
   const { choose, chooseFolder } = useOpen();
   const demo = useCallback(() => {
     bench.call("openDemo", {}).then(
-      () => say("Reading the demo run."),
+      ({ job }) => follow(job),
       (error: unknown) => say(messageOf(error)),
     );
-  }, [bench, say]);
+  }, [bench, follow, say]);
   useKeys("first page", [{ key: "enter", does: "read the demo run", act: demo }]);
   return (
     <article className="greeting">

@@ -95,16 +95,16 @@ function useLastPlace(path: string): void {
   }, [values, path, set]);
 }
 
-/** A run just read from the contents page opens by itself: that is what it was read for. */
+/** A run that was read because of what was done on this page opens by itself: that is what it was for. */
 function useFinishedRun(route: Route): void {
-  const { jobs } = useDesk();
+  const { jobs, followed } = useDesk();
   const seen = useRef(new Set<string>());
   useEffect(() => {
     for (const job of jobs) {
-      if (job.state === "working" || seen.current.has(job.job)) continue;
+      if (job.state === "working" || !followed.includes(job.job) || seen.current.has(job.job)) continue;
       seen.current.add(job.job);
       if (job.state === "done" && job.run !== null && route.view === "book")
         go({ view: "run", run: job.run });
     }
-  }, [jobs, route.view]);
+  }, [jobs, followed, route.view]);
 }

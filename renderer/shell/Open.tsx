@@ -11,7 +11,7 @@ import {
 } from "react";
 import { filesOfDrop, sourcesOf, type Named } from "../bench/drop.ts";
 import { plural } from "../format/words.ts";
-import { messageOf, useBench } from "../state/bench.tsx";
+import { messageOf, useDesk } from "../state/bench.tsx";
 import { useSay } from "./say.tsx";
 
 interface Open {
@@ -23,7 +23,7 @@ const OpenContext = createContext<Open>({ choose() {}, chooseFolder() {} });
 export const useOpen = () => useContext(OpenContext);
 
 export function OpenProvider({ children }: { children: ReactNode }) {
-  const bench = useBench();
+  const { bench, follow } = useDesk();
   const say = useSay();
   const files = useRef<HTMLInputElement>(null);
   const folder = useRef<HTMLInputElement>(null);
@@ -35,12 +35,12 @@ export function OpenProvider({ children }: { children: ReactNode }) {
         const report = (sent: number) => say(`Taking in ${sent} of ${plural(named.length, "file")} …`);
         const sources = await sourcesOf(bench, named, report);
         if (sources.length === 0) say("There is no capture among these files.");
-        else await bench.call("open", { sources });
+        else follow((await bench.call("open", { sources })).job);
       } catch (error) {
         say(messageOf(error));
       }
     },
-    [bench, say],
+    [bench, follow, say],
   );
   const over = useDropAnywhere(take, say);
   const open = useMemo(

@@ -1,5 +1,5 @@
 /** The Bench for every component, and answers that are asked anew when the book changes. */
-import { createContext, useContext, useEffect, useMemo, useState, type ReactNode } from "react";
+import { createContext, useCallback, useContext, useEffect, useMemo, useState, type ReactNode } from "react";
 import type { Answer, Argument, Bench, BenchEvent, CommandName, JobState } from "../../app/bridge.ts";
 
 interface Desk {
@@ -10,6 +10,9 @@ interface Desk {
   runs: Record<number, number>;
   jobs: JobState[];
   forgetJob(job: string): void;
+  /** Jobs started on this page: their runs open when they are done. */
+  followed: string[];
+  follow(job: string): void;
 }
 
 const DeskContext = createContext<Desk | null>(null);
@@ -26,6 +29,7 @@ export function DeskProvider({ bench, children }: { bench: Bench; children: Reac
   const [book, setBook] = useState(0);
   const [runs, setRuns] = useState<Record<number, number>>({});
   const [jobs, setJobs] = useState<JobState[]>([]);
+  const [followed, setFollowed] = useState<string[]>([]);
 
   useEffect(() => {
     const keepJob = (job: JobState) =>
@@ -47,15 +51,18 @@ export function DeskProvider({ bench, children }: { bench: Bench; children: Reac
     return end;
   }, [bench]);
 
+  const follow = useCallback((job: string) => setFollowed((old) => [...old, job]), []);
   const desk = useMemo(
     () => ({
       bench,
       book,
       runs,
       jobs,
+      followed,
+      follow,
       forgetJob: (job: string) => setJobs((old) => old.filter((other) => other.job !== job)),
     }),
-    [bench, book, runs, jobs],
+    [bench, book, runs, jobs, followed, follow],
   );
   return <DeskContext value={desk}>{children}</DeskContext>;
 }

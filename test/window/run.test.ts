@@ -22,6 +22,8 @@ describeWindow("a run", () => {
   let browser: Browser;
   let door: TestDoor;
   let sheet: Sheet | undefined;
+  /** The demo run, once it is read. */
+  let run: number;
   beforeAll(async () => {
     [browser, door] = await Promise.all([launch(), openDoor()]);
   });
@@ -56,7 +58,7 @@ describeWindow("a run", () => {
   it("shows the whole demo run as handwriting, its counts, what to look at first, and its course", async () => {
     const { job } = await door.ask("openDemo", {});
     await door.host.idle();
-    const run = (await door.ask("jobs", {})).find((state) => state.job === job)!.run!;
+    run = (await door.ask("jobs", {})).find((state) => state.job === job)!.run!;
     const { rows } = await door.ask("pulses", { run, limit: 1000 });
     sheet = await openSheet(browser, door, `/run/${run}`);
     const { page } = sheet;
@@ -76,7 +78,7 @@ describeWindow("a run", () => {
   });
 
   it("leads to a pulse by click, by keys and from the attention list", async () => {
-    sheet = await openSheet(browser, door, "/run/2");
+    sheet = await openSheet(browser, door, `/run/${run}`);
     const { page } = sheet;
     await page.getByText(/^54 pulses:/).waitFor();
     const line = page.locator(".written-line").first();
@@ -90,14 +92,16 @@ describeWindow("a run", () => {
     await page.getByText(/^Pulse \d+: /).waitFor();
     await page.keyboard.press("Enter");
     await page.getByText(/pulse \d+ of 54/).waitFor();
-    await goTo(page, "/run/2");
+    await goTo(page, `/run/${run}`);
     const attention = page.locator(".attention a[href^='#/pulse']").first();
     await attention.click();
     await page.locator(".pulse-figure").waitFor();
   });
 
   it("leaves as CSV, JSON Lines and a report page; figures are copied", async () => {
-    sheet = await openSheet(browser, door, "/run/2", { permissions: ["clipboard-read", "clipboard-write"] });
+    sheet = await openSheet(browser, door, `/run/${run}`, {
+      permissions: ["clipboard-read", "clipboard-write"],
+    });
     const { page } = sheet;
     await page.getByText(/^54 pulses:/).waitFor();
     for (const words of ["a table (CSV)", "readings (JSON Lines)", "a report page"]) {
