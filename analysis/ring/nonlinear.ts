@@ -20,18 +20,24 @@ const PARTS = 4;
 const LEAST_CYCLES = 3;
 /** A move counts from this many standard uncertainties on. */
 const SURE = 4;
+/** A frequency that seems to move further than this is another wave. */
+const MOST_MOVE = 0.25;
 
 /** Null where frequency and decay stay, or where there are too few cycles to tell. */
 export function amplitudeDependence(place: Place, whole: RingFit): AmplitudeDependence | null {
   const mode = whole.modes.reduce((a, b) => (amplitude(b) > amplitude(a) ? b : a));
-  const cycles = (whole.to - whole.from) * place.step_s * mode.frequency_Hz;
+  // Only where the ring stands out of the noise: the last part must tell its frequency.
+  const foldings = Math.log(amplitude(mode) / (2 * Math.max(whole.residual, place.noise)));
+  const alive = mode.decay_per_s > 0 ? foldings / (mode.decay_per_s * place.step_s) : Infinity;
+  const length = Math.min(whole.to - whole.from, Math.floor(alive));
+  const cycles = length * place.step_s * mode.frequency_Hz;
   const count = Math.min(PARTS, Math.floor(cycles / LEAST_CYCLES));
   if (count < 2) return null;
   const fits: RingFit[] = [];
   for (let k = 0; k < count; k++) {
-    const at = (share: number) => whole.from + Math.round((share * (whole.to - whole.from)) / count);
+    const at = (share: number) => whole.from + Math.round((share * length) / count);
     const fit = fitRing(place.samples, at(k), at(k + 1), place.step_s, { ...place, start: [mode] });
-    if (!fit) return null;
+    if (!fit || Math.abs(fit.modes[0].frequency_Hz / mode.frequency_Hz - 1) > MOST_MOVE) return null;
     fits.push(fit);
   }
   const frequency = moves(fits, 0);
