@@ -89,7 +89,9 @@ function useLastPlace(path: string): void {
   useEffect(() => {
     if (values === null) return;
     const last = values["last"];
-    if (!restored.current && path === "/" && last && last !== "/") location.replace(`#${last}`);
+    // The address itself, not this render's path: somebody may have gone elsewhere meanwhile.
+    const atStart = location.hash === "" || location.hash === "#/";
+    if (!restored.current && atStart && last && last !== "/") location.replace(`#${last}`);
     else if (restored.current && last !== path) set("last", path);
     restored.current = true;
   }, [values, path, set]);

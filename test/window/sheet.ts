@@ -33,7 +33,10 @@ export async function openSheet(
   });
   page.on("pageerror", (error) => noise.push(String(error.stack)));
   await page.goto(door.address);
-  if (path !== "/") await goTo(page, path);
+  if (path !== "/") {
+    await page.locator(".sheet-head").waitFor();
+    await goTo(page, path);
+  }
   return { page, noise, close: () => context.close() };
 }
 
