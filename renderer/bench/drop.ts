@@ -53,12 +53,16 @@ export async function sourcesOf(
     if (pathOf) sources.push({ path: pathOf(file) });
     else {
       const bytes = new Uint8Array(await file.arrayBuffer());
-      const kept = await bench.call("addFile", { name, bytes });
+      const kept = await bench.call("addFile", { name: inFolder(name), bytes });
       if (!isSidecar(name)) sources.push(kept);
     }
     onSent(at + 1);
   }
   return sources;
 }
+
+/** A run is a folder: loose files make one run a day, not one for ever. */
+const inFolder = (name: string) =>
+  name.includes("/") ? name : `dropped ${new Date().toLocaleDateString("sv-SE")}/${name}`;
 
 const isSidecar = (name: string) => name.endsWith(".json");

@@ -80,14 +80,14 @@ export const Attention = memo(function Attention({ detail, rows }: Props) {
 
 function SaidLine({ text, items, run, numbers }: Said & { run: number; numbers: Map<string, number> }) {
   const [first] = items;
-  if (first.capture === null)
-    return first.kind === "setup-missing" ? (
+  const onCard = first.kind === "setup-missing" || first.kind === "question";
+  if (onCard)
+    return (
       <a href="#setup-card" onClick={toCard}>
         {text}
       </a>
-    ) : (
-      text
     );
+  if (first.capture === null) return text;
   const placed = items.filter((item) => item.capture !== null);
   const number = (item: Item) => numbers.get(`${item.capture}/${item.pulse ?? 0}`);
   return (

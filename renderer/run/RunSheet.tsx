@@ -105,15 +105,17 @@ export function RunSheet({ run }: { run: number }) {
         onOpen={open}
       />
       <PictureButtons of=".run-chart svg" name={detail.name} />
-      <SetupCard
-        run={detail}
-        capture={detail.captureRows.find((row) => row.error === null)?.capture ?? null}
-        reading={null}
-      />
+      <SetupCard run={detail} capture={captureOfCard(detail)} reading={null} />
       <Captures detail={detail} rows={rows} />
       <Exports run={run} />
     </article>
   );
+}
+
+/** The card shows the columns of a capture that asks something, else of the first that was read. */
+function captureOfCard({ attention, captureRows }: RunDetail): number | null {
+  const asking = attention.find((item) => item.kind === "question")?.capture;
+  return asking ?? captureRows.find((row) => row.error === null)?.capture ?? null;
 }
 
 type Combined = RunDetail["combined"];
