@@ -1,0 +1,35 @@
+import { afterAll, beforeAll, describe, vi } from "vitest";
+import type { Bench } from "../../app/bridge.ts";
+import { exposed, ipcHandlers, ipcRenderer, StandInWindow } from "../desktop/electron-stand-in.ts";
+import { keepsTheContract } from "./contract.ts";
+import { temporaryHost } from "./host.ts";
+
+vi.mock("electron", async () => (await import("../desktop/electron-stand-in.ts")).electron());
+
+let place: Awaited<ReturnType<typeof temporaryHost>>;
+let closeDoor: () => void;
+
+/** Main process and preload in one process; only Electron's wires between them are the stand-in's. */
+beforeAll(async () => {
+  const { openDesktopDoor } = await import("../../app/desktop/ipc.ts");
+  const { callChannel } = await import("../../app/desktop/channels.ts");
+  const { pageAddress } = await import("../../app/desktop/guard.ts");
+  await import("../../app/desktop/preload.ts");
+  place = await temporaryHost();
+  const window = new StandInWindow({ webPreferences: {} });
+  const top = { url: pageAddress, parent: null, origin: new URL(pageAddress).origin };
+  window.webContents.send = (channel: unknown, event: unknown) =>
+    void ipcRenderer.emit(channel as string, {}, structuredClone(event));
+  ipcRenderer.invoke.mockImplementation(async (channel: string, ...args: unknown[]) => {
+    const handler = ipcHandlers.get(channel === callChannel ? callChannel : "");
+    // What crosses IPC is cloned, as Electron does.
+    return structuredClone(await handler?.({ senderFrame: top }, ...structuredClone(args)));
+  });
+  closeDoor = openDesktopDoor(place.host, window as never);
+});
+afterAll(async () => {
+  closeDoor();
+  await place.end();
+});
+
+describe("the desktop door", () => keepsTheContract(() => exposed.ringbook as Bench));
