@@ -34,7 +34,7 @@ export function readPulse(context: PulseContext, off: SwitchOff, index: number):
   const ring = fitPulse(context, off);
   const reading = ring ? describePulseRing(context, ring) : refusal(context);
   const fit = ring && reading?.quality !== "refused" ? ring.fit : null;
-  const byModel = fit && isVoltage(context.map, context.map.ring) ? ring!.switchOff : null;
+  const byModel = fit ? ring!.switchOff : null;
   const instant = byModel ?? { at: off.at, u: off.u };
   const ramp = readRamp(context.capture, context.map, { ...off, at: instant.at }, context.setup);
   const tank = fit ? tankOf(context, fit) : null;

@@ -25,7 +25,23 @@ export function conductionStart(
   }
   if (at <= back) return back;
   if (off - at < width) return null;
-  return stepWithin(samples, Math.max(back, at - 2 * width), Math.min(Math.floor(off), at + width));
+  const from = Math.max(back, at - 2 * width);
+  const to = Math.min(Math.floor(off), at + width);
+  return firstStray(samples, from, to, width, tolerance) ?? stepWithin(samples, from, to);
+}
+
+/** Walking back from `to`: just after the first sample that is far off the last ones; null where none is. */
+function firstStray(
+  samples: Float64Array,
+  from: number,
+  to: number,
+  width: number,
+  tolerance: number,
+): number | null {
+  const calm = meanAndDeviation(samples, to, to + width);
+  const limit = Math.max(6 * calm.deviation, 2 * tolerance);
+  for (let i = to - 1; i >= from; i--) if (Math.abs(samples[i] - calm.mean) > limit) return i + 0.5;
+  return null;
 }
 
 /** Where between two samples a step divides [from, to) best into two levels (least squares). */

@@ -1,9 +1,10 @@
 /** All evidence of a capture's switch-offs brought together: gate, else voltage, else current. */
-import type { Capture } from "../capture.ts";
+import type { Capture, Channel } from "../capture.ts";
 import type { ChannelMap } from "../evidence.ts";
 import { currentConductions } from "./current.ts";
 import type { SwitchOff } from "./event-format.ts";
 import { gateConductions, type Conduction } from "./gate.ts";
+import { linePeriod } from "./line-period.ts";
 import { isVoltage } from "./channels.ts";
 import { voltageSwitchOffs } from "./voltage.ts";
 
@@ -41,7 +42,7 @@ export function findSwitchOffs(capture: Capture, map: ChannelMap): Events {
       offs.forEach(
         (off, k) => (off.polarity = map.ring === map.current ? (-pulses[k].polarity as 1 | -1) : 1),
       );
-      return { offs, period, noise, source: "current" };
+      return { offs, period: period || periodAfter(current, offs), noise, source: "current" };
     }
     if (pulses.length > 0 && map.ring !== map.current)
       return {
@@ -52,6 +53,12 @@ export function findSwitchOffs(capture: Capture, map: ChannelMap): Events {
       };
   }
   return { ...seen, source: "voltage" };
+}
+
+/** The ring's period on a current alone, from the first free interval. */
+function periodAfter({ samples }: Channel, [first]: SwitchOff[]): number {
+  const width = Math.max(1, Math.floor((first.freeTo - first.freeFrom) / 4096));
+  return linePeriod(samples, first.freeFrom, first.freeTo, width, 1.5, 0) ?? 0;
 }
 
 /** Voltage and current together: the current confirms, and adds what the voltage does not show. */

@@ -1,10 +1,9 @@
 /** Switch-offs from a voltage trace: onsets of the kick's own direction out of the conduction level. */
 import { meanAndDeviation, medianOf } from "../numeric/robust.ts";
-import { makeBlocks } from "../ring/blocks.ts";
 import { differenceNoise } from "../ring/noise.ts";
-import { strongestLines } from "../ring/start.ts";
 import { conductionStart } from "./conduction.ts";
 import type { SwitchOff } from "./event-format.ts";
+import { linePeriod } from "./line-period.ts";
 import { findOnsets, type Onset } from "./onsets.ts";
 import { scaleOf } from "./scale.ts";
 
@@ -134,24 +133,10 @@ function ringPeriod(samples: Float64Array, onsets: Onset[], rough: number, noise
   const from = Math.ceil(anchor.at);
   const to = Math.floor(Math.min(next?.at ?? samples.length, samples.length, from + LOOKED_PERIODS * rough));
   if (to - from < 3 * rough) return rough;
-  const early = linePeriod(samples, from, to, rough, 1.5, 0) ?? rough;
-  const late = linePeriod(samples, Math.round(from + 0.4 * (to - from)), to, rough, 4, 40 * noise * noise);
-  return late !== null && late > 1.2 * early && late < 6 * early ? late : early;
-}
-
-/** Period of the strongest line of samples[from … to) with at least so many cycles and so much energy. */
-function linePeriod(
-  samples: Float64Array,
-  from: number,
-  to: number,
-  rough: number,
-  cycles: number,
-  energy: number,
-): number | null {
   const width = Math.max(1, Math.floor(rough / 16));
-  const blocks = makeBlocks(samples, from, to, [], width);
-  const [line] = strongestLines(blocks.values, blocks.count, 1, cycles);
-  return line && line.energy > energy / width ? ((2 * Math.PI) / line.omega) * width : null;
+  const early = linePeriod(samples, from, to, width, 1.5, 0) ?? rough;
+  const late = linePeriod(samples, Math.round(from + 0.4 * (to - from)), to, width, 4, 40 * noise * noise);
+  return late !== null && late > 1.2 * early && late < 6 * early ? late : early;
 }
 
 /** A body diode lets go, or the switch closes: the swing is little more than the change of level behind it. */
@@ -177,9 +162,12 @@ function outOfConduction(
   const anchor = flat.reduce((a, b) => (sharpness(b) > sharpness(a) ? b : a));
   const reach = Math.max(...flat.map((onset) => Math.abs(onset.swing)));
   const tolerance = Math.max(6 * unrest, 2 * (lsb ?? 0));
+  const within = (onset: Onset, about: number, widths: number) =>
+    Math.abs(onset.level - about) < widths * Math.max(tolerance, LEVEL_SHARE * Math.abs(onset.swing));
+  const level = medianOf(flat.filter((onset) => within(onset, anchor.level, 2)).map((onset) => onset.level));
   return flat.filter(
     (onset) =>
-      Math.abs(onset.level - anchor.level) < Math.max(tolerance, LEVEL_SHARE * Math.abs(onset.swing)) &&
+      within(onset, level, 1) &&
       !(Math.abs(onset.swing) < SMALL_SHARE * reach && isStep(samples, onset, period)) &&
       (onset.polarity === anchor.polarity || Math.abs(onset.swing) > OPPOSITE_SHARE * reach),
   );

@@ -4,7 +4,7 @@
  * cycle of a ring of Q 5 holds a quarter of its information.
  */
 import type { SwitchOff } from "../events/event-format.ts";
-import { modelCrossing } from "../events/instant.ts";
+import { modelCrossing, slopeMatch } from "../events/instant.ts";
 import { medianOf } from "../numeric/robust.ts";
 import type { RingFit } from "./fit-format.ts";
 import { fitRing } from "./fit.ts";
@@ -73,8 +73,12 @@ function extended(place: Omit<Place, "from">, off: SwitchOff, ring: WindowedRing
   const { samples, step_s, noise, lsb } = place;
   const { fit } = ring;
   const unusable = ring.masked.length > 0 ? merged(place.unusable, ring.masked) : place.unusable;
-  if (off.at === null || off.levelOn === null) return { ...ring, switchOff: null, nonlinear: null };
+  if (off.at === null) return { ...ring, switchOff: null, nonlinear: null };
   const period = 1 / (fit.modes[0].frequency_Hz * step_s);
+  if (off.levelOn === null) {
+    const at = slopeMatch(fit, samples, off.at, period);
+    return { ...ring, switchOff: at === null ? null : { at, u: 0.01 * period }, nonlinear: null };
+  }
   const crossing = modelCrossing(fit, off.at, Math.max(2, REACH * period), off.levelOn, off.polarity);
   if (!crossing) return { ...ring, switchOff: null, nonlinear: null };
   const u = Math.hypot(0.02, noise / crossing.slope / Math.sqrt(Math.max(1, period / 12)));

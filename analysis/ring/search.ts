@@ -13,6 +13,7 @@ import { bestStart, coarser, scaled, strongestLines } from "./start.ts";
 /** Values a cycle in the coarse passes; the last pass keeps more. */
 const COARSE_PER_CYCLE = 12;
 const LINES_TRIED = 3;
+const FULL = 0.85;
 
 const buffer = { residual: new Float64Array(0) };
 
@@ -49,7 +50,9 @@ export function variance(blocks: Blocks, solution: Solution): number {
 
 function fitNext(blocks: Blocks, known: Mode[], values: Float64Array, noise: number): Solution | null {
   if (blocks.used < 4 * known.length + 8) return null;
-  const lines = strongestLines(values, blocks.count, LINES_TRIED).filter((line) => line.energy > 8 * noise);
+  // Where much is off screen the harmonics fit the rest as well: only the spectrum of it all tells.
+  const tried = known.length === 0 && blocks.used < FULL * blocks.count ? 1 : LINES_TRIED;
+  const lines = strongestLines(values, blocks.count, tried).filter((line) => line.energy > 8 * noise);
   if (lines.length === 0) return null;
   const fastest = Math.max(...lines.map((line) => line.omega), ...known.map((mode) => mode.omega));
   const coarse = coarser(blocks, fastest, COARSE_PER_CYCLE);
