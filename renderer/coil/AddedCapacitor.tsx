@@ -10,7 +10,7 @@ export function AddedCapacitor({ line }: { line: CoilSheet["addedCapacitor"] }) 
   const plot = useMemo(
     () =>
       line &&
-      line.points.length > 1 && {
+      line.inductance_H !== null && {
         data: (ink: Ink) => curves(line, ink),
         x: "added capacitor, F",
         y: "1/ω₀², s²",

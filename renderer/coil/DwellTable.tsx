@@ -67,11 +67,11 @@ function curves(dwell: NonNullable<CoilSheet["dwell"]>, ink: Ink) {
     y: dwell.time_s.map((row) => (row[column] ? row[column].value * 1e3 : null)),
     mode: "text+lines+markers" as const,
     // The outer curves are named where they start, the ones between by pointing at them.
-    text: [column === 0 || column === dwell.temperatures_C.length - 1 ? `${temperature} °C` : ""],
+    text: [column === 0 || column === dwell.temperatures_C.length - 1 ? stated(temperature, "°C") : ""],
     textposition: column === 0 ? ("bottom left" as const) : ("top right" as const),
     cliponaxis: false,
     line: { color: ink.ink, width: 1.5, dash: dashes[column % dashes.length] },
     marker: { size: 5, color: ink.ink },
-    hovertemplate: `${temperature} °C, %{x} V: %{y:.3r} ms<extra></extra>`,
+    hovertemplate: `${stated(temperature, "°C")}, %{x} V: %{y:.3r} ms<extra></extra>`,
   }));
 }

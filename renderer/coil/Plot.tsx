@@ -60,7 +60,12 @@ function layoutOf({ x, y, xLog, height = 260 }: Props, { ink, faint, rule }: Ink
     showlegend: false,
     hovermode: "closest",
     dragmode: "zoom",
-    xaxis: { ...axis, title: { text: x }, type: xLog ? "log" : "linear", ...(xLog && { dtick: 1 }) },
+    xaxis: {
+      ...axis,
+      title: { text: x },
+      type: xLog ? "log" : "linear",
+      ...(xLog && { dtick: 1, exponentformat: "none" as const }),
+    },
     yaxis: { ...axis, title: { text: y } },
   };
 }

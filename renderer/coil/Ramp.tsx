@@ -9,10 +9,15 @@ export function Ramp({ sheet: { ramp, saturation } }: { sheet: CoilSheet }) {
     () =>
       saturation && {
         data: (ink: Ink) => [
-          { x: saturation.x, y: saturation.y, mode: "lines" as const, line: { color: ink.ink, width: 1.5 } },
+          {
+            x: saturation.x,
+            y: saturation.y.map((inductance) => inductance * 1e3),
+            mode: "lines" as const,
+            line: { color: ink.ink, width: 1.5 },
+          },
         ],
         x: "current, A",
-        y: "incremental inductance, H",
+        y: "incremental inductance, mH",
         label: "Incremental inductance against current",
       },
     [saturation],

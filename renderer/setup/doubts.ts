@@ -1,6 +1,6 @@
 /** Entries that can be right but rarely are: asked about, never refused. */
 import type { CaptureReading } from "../../analysis/reading-format.ts";
-import type { Setup, Toleranced } from "../../analysis/setup/schema.ts";
+import type { Setup } from "../../analysis/setup/schema.ts";
 import { plain, stated } from "../format/figure.ts";
 import { allFields, type Field } from "./fields.ts";
 
@@ -77,7 +77,5 @@ export function withScale(setup: Setup, name: string, position: number, scale: n
   if (known < 0) return [...channels, { position, name, scale }];
   return channels.map((channel, at) => (at === known ? { ...channel, scale } : channel));
 }
-
-export const statedSize = (value: Toleranced | null | undefined) => sizeOf(value);
 
 const capital = (text: string) => text[0].toUpperCase() + text.slice(1);

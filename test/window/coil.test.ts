@@ -51,7 +51,7 @@ describeWindow("a coil", () => {
     const { page } = sheet;
     const sentence = page.locator(".capacitor-choice .sentence");
     const kick = async () => Number(/Kick ([\d.]+)/.exec((await sentence.textContent()) ?? "")?.[1]);
-    await page.getByText(/^Kick [\d.]+ ±/).waitFor();
+    await page.getByText(/Kick [\d.]+ ±/).waitFor();
     const fitted = await kick();
     await page.getByRole("slider").focus();
     for (let step = 0; step < 20; step++) await page.keyboard.press("ArrowRight");
