@@ -11,6 +11,7 @@ import { go, hrefOf } from "../state/route.ts";
 import { fileName } from "../format/words.ts";
 import { SheetHead } from "../shell/SheetHead.tsx";
 import { PictureButtons } from "../shell/PictureButtons.tsx";
+import { Remarks } from "../shell/Remarks.tsx";
 import { Failure, Waiting } from "../shell/States.tsx";
 import { Figures } from "./Figures.tsx";
 import { marginNotes } from "./notes.ts";
@@ -140,6 +141,7 @@ export function PulseSheet({ run, capture, pulse: index }: Props) {
       />
       <PictureButtons of=".pulse-figure svg" name={`${detail.answer.name} ${label}`} />
       <Figures reading={reading} pulse={pulse} setup={setup} />
+      <Remarks title="Of this capture" notes={reading.notes.filter((note) => note.pulse === undefined)} />
       <SetupCard run={detail.answer} capture={capture} reading={reading} />
     </article>
   );

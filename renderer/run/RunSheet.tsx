@@ -6,6 +6,7 @@ import { figureText, percent, plain } from "../format/figure.ts";
 import { countsSentence, dayText, verdictWord } from "../format/words.ts";
 import { CopyButton } from "../shell/CopyButton.tsx";
 import { SheetHead } from "../shell/SheetHead.tsx";
+import { Remarks } from "../shell/Remarks.tsx";
 import { Failure, Waiting } from "../shell/States.tsx";
 import { PictureButtons } from "../shell/PictureButtons.tsx";
 import { SetupCard } from "../setup/SetupCard.tsx";
@@ -105,6 +106,7 @@ export function RunSheet({ run }: { run: number }) {
         onOpen={open}
       />
       <PictureButtons of=".run-chart svg" name={detail.name} />
+      <Remarks title="Of this run" notes={detail.notes} />
       <SetupCard run={detail} capture={captureOfCard(detail)} reading={null} />
       <Captures detail={detail} rows={rows} />
       <Exports run={run} />

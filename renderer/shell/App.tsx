@@ -99,7 +99,12 @@ function useLastPlace(path: string): void {
 
 /** A run that was read because of what was done on this page opens by itself: that is what it was for. */
 function useFinishedRun(route: Route): void {
-  const { jobs, followed } = useDesk();
+  const { bench, jobs, followed } = useDesk();
+  // The shell asks for a run: its menu of recent runs, a capture opened with the program.
+  useEffect(
+    () => bench.subscribe((event) => event.type === "show-run" && go({ view: "run", run: event.run })),
+    [bench],
+  );
   const seen = useRef(new Set<string>());
   useEffect(() => {
     for (const job of jobs) {
