@@ -9,7 +9,7 @@ import { medianOf } from "../numeric/robust.ts";
 import type { RingFit } from "./fit-format.ts";
 import { fitRing } from "./fit.ts";
 import { amplitudeDependence, type AmplitudeDependence } from "./nonlinear.ts";
-import { amplitude } from "./quality.ts";
+import { amplitude, judgeFit } from "./quality.ts";
 import { afterFlatTops } from "./flat-tops.ts";
 import { noiseLimit, residualProfile } from "./residuals.ts";
 import { disturbedRing, merged, undisturbedRing, type Place, type WindowedRing } from "./window.ts";
@@ -22,8 +22,9 @@ export interface PulseRing extends WindowedRing {
 
 /** Share of a period after the edge before the first window begins. */
 const GUARD = 0.1;
-/** How far the model's instant may be from the edge's, in periods. */
-const REACH = 0.16;
+/** How far the model's instant may be from the edge's, in periods: with the noise's share of the ring. */
+const LEAST_REACH = 0.03;
+const MOST_REACH = 0.16;
 /** A single ring leaves less than this of its amplitude behind, however its frequency moves. */
 const RING_SHARE = 0.25;
 
@@ -33,10 +34,11 @@ export function ringOfPulse(place: Omit<Place, "from">, off: SwitchOff): PulseRi
   if (off.freeTo - begin < 8) return null;
   const whole = { ...place, from: begin };
   const undisturbed = undisturbedRing(whole);
+  const free = undisturbed ? begin : afterCutWaves(whole);
   // A second mode at a harmonic or beside the first, or a little too much left over: the frequency may move.
-  const moving = undisturbed && !suspicious(undisturbed.fit) ? null : nonlinearRing(whole);
+  const moving = free > begin || (undisturbed && !suspicious(undisturbed.fit)) ? null : nonlinearRing(whole);
   if (moving && (moving.clean || !undisturbed)) return moving;
-  const ring = undisturbed ?? withoutCutWaves(whole);
+  const ring = undisturbed ?? disturbedRing({ ...place, from: free });
   if (!ring) return null;
   const fromBeginning = ring.clean && ring.fit.from <= begin + 0.1 * period;
   return fromBeginning ? extended(place, off, ring) : { ...ring, switchOff: null, nonlinear: null };
@@ -57,15 +59,15 @@ function nonlinearRing(place: Place): PulseRing | null {
   if (!found) return null;
   const { small, ...nonlinear } = found;
   const clean = small.residual < 1.5 * Math.max(small.noise, place.noise);
+  if (judgeFit(small, small.noise).quality === "refused") return null;
   return { fit: small, clean, courseChanges: false, masked: [], switchOff: null, nonlinear };
 }
 
-/** After the last half-wave that a diode or a clamp cuts, then whatever one ring explains. */
-function withoutCutWaves(place: Place): WindowedRing | null {
-  const { samples, from, to, period, noise } = place;
+/** First sample after the last half-wave that a diode or a clamp cuts. */
+function afterCutWaves({ samples, from, to, period, noise }: Place): number {
   const level = medianOf(samples, from, Math.min(to, from + Math.ceil(20 * period)));
   const looked = Math.min(to, from + Math.ceil(40 * period));
-  return disturbedRing({ ...place, from: afterFlatTops(samples, from, looked, level, noise, 8 * noise) });
+  return afterFlatTops(samples, from, looked, level, noise, 8 * noise);
 }
 
 /** The same ring fitted from the switch-off on, where its first samples agree. */
@@ -79,7 +81,9 @@ function extended(place: Omit<Place, "from">, off: SwitchOff, ring: WindowedRing
     const at = slopeMatch(fit, samples, off.at, period);
     return { ...ring, switchOff: at === null ? null : { at, u: 0.01 * period }, nonlinear: null };
   }
-  const crossing = modelCrossing(fit, off.at, Math.max(2, REACH * period), off.levelOn, off.polarity);
+  const unrest = noise / Math.max(...fit.modes.map(amplitude));
+  const reach = Math.max(LEAST_REACH, Math.min(MOST_REACH, 2.5 * unrest));
+  const crossing = modelCrossing(fit, off.at, Math.max(2, reach * period), off.levelOn, off.polarity);
   if (!crossing) return { ...ring, switchOff: null, nonlinear: null };
   const u = Math.hypot(0.02, noise / crossing.slope / Math.sqrt(Math.max(1, period / 12)));
   const start = Math.ceil(crossing.at + Math.min(u, 0.02 * period));

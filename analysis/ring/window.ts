@@ -5,6 +5,7 @@
  */
 import type { RingFit } from "./fit-format.ts";
 import { fitRing, type FitOptions } from "./fit.ts";
+import { judgeFit } from "./quality.ts";
 import { noiseLimit, residualProfile } from "./residuals.ts";
 
 export interface WindowedRing {
@@ -61,9 +62,9 @@ export function disturbedRing(place: Place): WindowedRing | null {
   return whole ? { fit: whole, clean: false, courseChanges: false, masked: [] } : null;
 }
 
-/** Cycles in the window, weighed by the amplitude they begin with. */
-const informative = (fit: RingFit) =>
-  Math.hypot(fit.modes[0].cosine, fit.modes[0].sine) ** 2 * (fit.to - fit.from);
+/** Samples in the window, weighed by what the fit is worth. */
+const WORTH = { good: 1, poor: 0.2, refused: 0.001 };
+const informative = (fit: RingFit) => (fit.to - fit.from) * WORTH[judgeFit(fit, fit.noise).quality];
 
 const options = (place: Place, extra: FitOptions = {}): FitOptions => ({
   unusable: place.unusable,
