@@ -141,7 +141,9 @@ describeWindow("a pulse", () => {
     await page.locator(".note-title", { hasText: /^Kick/ }).waitFor();
     const pdf = await page.pdf({ preferCSSPageSize: false });
     expect(pdf.subarray(0, 4).toString()).toBe("%PDF");
-    await page.emulateMedia({ media: "print" });
+    await page.emulateMedia({ media: "print", colorScheme: "dark" });
+    const paper = await page.evaluate(() => getComputedStyle(document.body).backgroundColor);
+    expect(paper).toBe("rgb(255, 255, 255)");
     expect(await page.locator(".foot").isVisible()).toBe(false);
     expect(await page.locator(".pulse-figure").isVisible()).toBe(true);
   });
