@@ -104,7 +104,8 @@ function equalAxes(a: AxisGroup, b: AxisGroup, columns: Columns): boolean {
   const [one, other] = [columns.times.get(a.axis)!, columns.times.get(b.axis)!];
   if (one.rows !== other.rows || !Object.is(one.first, other.first) || !Object.is(one.last, other.last))
     return false;
-  if (one.values && other.values) return one.values.every((value, i) => Object.is(value, other.values![i]));
+  const [values, others] = [one.values(), other.values()];
+  if (values && others) return values.every((value, i) => Object.is(value, others[i]));
   return one.anchors.every((value, i) => Object.is(value, other.anchors[i]));
 }
 

@@ -57,14 +57,14 @@ const [tab, lineFeed, carriageReturn, space, quote] = [9, 10, 13, 32, 34];
 const kinds = ["number", "blank", "missing", "over", "text"] as const;
 const [isNumber, isBlank, isText] = [0, 1, 4];
 
-/** Parses whole lines, which end after a line end, or at the end of the file. */
-export function parseBulk(lines: Uint8Array, plan: BulkPlan): ParsedChunk {
+/** Parses whole lines, which end after a line end, or at the end of the file. `reuse`: memory for the values. */
+export function parseBulk(lines: Uint8Array, plan: BulkPlan, reuse: ArrayBuffer[] = []): ParsedChunk {
   const bytes = withLineEnd(plan.joinCommas ? joinDecimalCommas(lines) : lines);
   const { width, separator, columns } = plan;
   const blanks = separator === space;
   const padding = separator === tab ? space : tab;
   const decimal = plan.format.decimal.charCodeAt(0);
-  const chunk = new ChunkBuilder(bytes, plan);
+  const chunk = new ChunkBuilder(bytes, plan, reuse);
   const slots = new Int32Array(width + 1).fill(-1);
   columns.forEach((column, slot) => (slots[column] = slot));
   const symbols = new Uint8Array(width + 1);
@@ -164,9 +164,13 @@ class ChunkBuilder {
   constructor(
     private readonly bytes: Uint8Array,
     private readonly plan: BulkPlan,
+    reuse: ArrayBuffer[],
   ) {
     this.capacity = Math.ceil(bytes.length / Math.max(2, 6 * plan.width)) + 16;
-    this.values = plan.columns.map(() => new Float64Array(this.capacity));
+    this.values = plan.columns.map((_, slot) => {
+      const used = reuse[slot];
+      return used?.byteLength >= 8 * this.capacity ? new Float64Array(used) : new Float64Array(this.capacity);
+    });
     this.tallies = plan.columns.map(() => ({ blank: 0, missing: 0, over: 0, text: 0 }));
     this.kindOf = new Uint8Array(plan.columns.length);
   }

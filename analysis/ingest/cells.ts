@@ -5,7 +5,8 @@ export function splitCells(line: string, separator: string): string[] {
   const cells: string[] = [];
   let at = 0;
   for (;;) {
-    const quoted = /^[ ]*"((?:[^"]|"")*)"[ ]*/.exec(line.slice(at));
+    quotedCell.lastIndex = at;
+    const quoted = quotedCell.exec(line);
     const next = quoted ? at + quoted[0].length : line.indexOf(separator, at);
     const closed = quoted && (next >= line.length || line.startsWith(separator, next));
     if (quoted && closed) {
@@ -20,6 +21,8 @@ export function splitCells(line: string, separator: string): string[] {
     at = end + separator.length;
   }
 }
+
+const quotedCell = / *"((?:[^"]|"")*)" */y;
 
 /** How many cells stand before the trailing empty ones. */
 export function filledWidth(cells: string[]): number {

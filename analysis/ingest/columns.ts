@@ -26,7 +26,7 @@ export class Columns {
   constructor({ plan, axes }: Layout, rows: number) {
     this.order = plan.columns;
     this.counter = axes.counter;
-    for (const { axis } of axes.groups) if (axis !== null) this.times.set(axis, new TimeColumn(rows));
+    for (const { axis } of axes.groups) if (axis !== null) this.times.set(axis, new TimeColumn());
     for (const column of this.order) {
       this.tallies.set(column, { blank: 0, missing: 0, over: 0, text: 0 });
       if (!this.times.has(column) && column !== axes.counter) this.values.set(column, new Float64Array(rows));

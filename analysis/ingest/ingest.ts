@@ -12,7 +12,7 @@ import { planLayout, type Layout } from "./layout.ts";
 import { splitLines } from "./lines.ts";
 import { nulByte, refuseForeign } from "./refuse.ts";
 import type { ByteSource, CancelSignal } from "./source.ts";
-import { TextStream } from "./text-stream.ts";
+import { concatenate, TextStream } from "./text-stream.ts";
 
 export interface IngestOptions {
   /** Called with the share read so far, 0 … 1, after every piece. */
@@ -27,6 +27,10 @@ export interface ChunkParser {
   /** Pieces worth having under way at once. */
   lanes: number;
   parse(bytes: Uint8Array<ArrayBuffer>, plan: BulkPlan): Promise<ParsedChunk>;
+  /** Memory of a piece that is done with. */
+  spare?(): ArrayBuffer | undefined;
+  /** Its values have been copied: their memory may be used again. */
+  release?(chunk: ParsedChunk): void;
 }
 
 export interface Ingested {
@@ -35,8 +39,10 @@ export interface Ingested {
   layout: string;
 }
 
-const headBytes = 512 * 1024;
+const headBytes = 256 * 1024;
 const longestHead = 32 * 1024 * 1024;
+/** One line of this length is no row of samples. */
+const longestLine = 3 * 1024 * 1024;
 const tailBytes = 8 * 1024;
 const pieceBytes = 2 * 1024 * 1024;
 
@@ -69,7 +75,7 @@ export async function ingest(
 ): Promise<Ingested> {
   const stream = new TextStream(source);
   let head = await stream.next(headBytes);
-  while (!stream.ended && isShort(head)) head = joined(head, await stream.next(3 * head.length));
+  while (!stream.ended && isShort(head)) head = concatenate(head, await stream.next(3 * head.length));
   refuseForeign(head);
   const layout = planLayout(head, stream.ended, setup);
   const columns = new Columns(layout, likelyRows(layout, source.size));
@@ -90,14 +96,19 @@ async function readData(
   columns: Columns,
   options: IngestOptions,
 ): Promise<TextEnd> {
-  const parser = options.parser ?? { lanes: 1, parse: async (bytes, plan) => parseBulk(bytes, plan) };
+  const parser: ChunkParser = options.parser ?? {
+    lanes: 1,
+    parse: async (bytes, plan) => parseBulk(bytes, plan),
+  };
   const underWay: { result: Promise<ParsedChunk>; bytes: number }[] = [];
   const settle = async () => {
     const { result, bytes } = underWay.shift()!;
-    columns.append(await result, bytes);
+    const chunk = await result;
+    columns.append(chunk, bytes);
+    parser.release?.(chunk);
   };
   let tail = new Uint8Array(0);
-  let piece = joined(first, new Uint8Array(0));
+  let piece = concatenate(first, new Uint8Array(0));
   for (;;) {
     if (options.signal?.aborted) throw cancelled();
     const end = lastLineEnd(piece, 0, piece.length);
@@ -114,7 +125,7 @@ async function readData(
       while (underWay.length > 0) await settle();
       return { tail, unended: rest };
     }
-    piece = joined(rest, await stream.next(pieceBytes));
+    piece = concatenate(rest, await stream.next(pieceBytes), parser.spare?.());
   }
 }
 
@@ -136,7 +147,7 @@ function finish(layout: Layout, columns: Columns, setup: Setup, { tail, unended 
 function isShort(head: Uint8Array): boolean {
   let ends = 0;
   for (let at = 0; at < head.length; at++) if (head[at] === 10 || head[at] === 13) ends++;
-  if (ends === 0 && head.length >= longestHead) throw endlessLine();
+  if (ends === 0 && head.length > longestLine) throw endlessLine();
   return (ends < 64 || head.length > 2000 * ends) && head.length < longestHead;
 }
 
@@ -155,13 +166,6 @@ function likelyRows(layout: Layout, size: number): number {
     0,
   );
   return Number.isFinite(size) ? Math.ceil((1.1 * size * lines) / Math.max(1, bytes)) + 16 : 1_000_000;
-}
-
-function joined(a: Uint8Array, b: Uint8Array): Uint8Array<ArrayBuffer> {
-  const whole = new Uint8Array(a.length + b.length);
-  whole.set(a);
-  whole.set(b, a.length);
-  return whole;
 }
 
 const cancelled = () =>

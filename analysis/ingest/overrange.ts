@@ -33,8 +33,7 @@ export function findUnusable(samples: Float64Array, lsb: number | null): Usable 
   }
   const step = lsb ?? (range.high - range.low) / 250;
   if (range.high > range.low && !isTwoLevel(samples, range)) {
-    overrange += markPinned(samples, marks, range.high, 1, step, range);
-    overrange += markPinned(samples, marks, range.low, -1, step, range);
+    overrange += markPinned(samples, marks, step, range);
   }
   return { samples, unusable: marks.any ? stretches(marks.bad) : new Int32Array(0), overrange, lsb };
 }
@@ -98,43 +97,48 @@ function isTwoLevel(samples: Float64Array, { low, high, finite }: Range): boolea
   return left > 0;
 }
 
-/** Marks pinned runs at one extreme (`side` +1 high, −1 low); answers how many samples. */
-function markPinned(
-  samples: Float64Array,
-  marks: Marks,
-  edge: number,
-  side: 1 | -1,
-  lsb: number,
-  range: Range,
-): number {
-  const span = range.high - range.low;
-  if (Math.abs(edge) < groundShare * span) return 0;
+/** Marks pinned runs at both extremes; answers how many samples. */
+function markPinned(samples: Float64Array, marks: Marks, lsb: number, { low, high }: Range): number {
+  const span = high - low;
   const tolerance = Math.min(0.25 * lsb, 1e-6 * span);
-  const runs: [number, number][] = [];
-  let total = 0;
+  const edges = [new Edge(high, 1), new Edge(low, -1)];
   for (let i = 0; i < samples.length; i++) {
-    if (!(side * (edge - samples[i]) <= tolerance)) continue;
+    const value = samples[i];
+    if (value < high - tolerance && value > low + tolerance) continue;
+    const edge = value >= high - tolerance ? edges[0] : value <= low + tolerance ? edges[1] : null;
+    if (!edge) continue;
     let end = i + 1;
-    while (end < samples.length && side * (edge - samples[end]) <= tolerance) end++;
-    total += end - i;
-    if (end - i >= shortestPinned && isAbrupt(samples, i, end, edge, side, lsb)) runs.push([i, end]);
-    i = end;
+    while (end < samples.length && Math.abs(samples[end] - edge.level) <= tolerance) end++;
+    edge.total += end - i;
+    if (end - i >= shortestPinned && isAbrupt(samples, i, end, edge, lsb)) edge.runs.push([i, end]);
+    i = end - 1;
   }
-  if (runs.length === 0 || total > mostPinned * samples.length) return 0;
-  for (const [from, to] of runs) marks.set(from, to, 2);
-  return runs.reduce((sum, [from, to]) => sum + to - from, 0);
+  let count = 0;
+  for (const { level, total, runs } of edges) {
+    if (Math.abs(level) < groundShare * span || total > mostPinned * samples.length) continue;
+    for (const [from, to] of runs) {
+      marks.set(from, to, 2);
+      count += to - from;
+    }
+  }
+  return count;
+}
+
+/** One extreme of the record: `side` +1 the highest, −1 the lowest. */
+class Edge {
+  total = 0;
+  readonly runs: [number, number][] = [];
+
+  constructor(
+    readonly level: number,
+    readonly side: 1 | -1,
+  ) {}
 }
 
 /** Three levels below the edge the stretch is hardly wider than at it. */
-function isAbrupt(
-  samples: Float64Array,
-  from: number,
-  to: number,
-  edge: number,
-  side: number,
-  lsb: number,
-): boolean {
-  const level = edge - side * 3.5 * lsb;
+function isAbrupt(samples: Float64Array, from: number, to: number, edge: Edge, lsb: number): boolean {
+  const { side } = edge;
+  const level = edge.level - side * 3.5 * lsb;
   const allowed = Math.max(1, 0.25 * (to - from));
   let wider = 0;
   for (let i = from - 1; i >= 0 && side * (samples[i] - level) >= 0; i--) if (++wider > allowed) return false;

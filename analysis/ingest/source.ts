@@ -2,7 +2,7 @@
 export interface ByteSource {
   /** Bytes in all; only progress hangs on it (a compressed file does not know). */
   size: number;
-  /** At most `length` bytes at `offset`; none at the end. */
+  /** At most `length` bytes at `offset`, good until the next call; none at the end. */
   read(offset: number, length: number): Promise<Uint8Array> | Uint8Array;
 }
 

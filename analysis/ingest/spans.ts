@@ -23,7 +23,7 @@ export interface Spans {
 export function splitSpans(column: TimeColumn): Spans {
   const untouched = { mended: [], unitSwitches: 0 };
   if (column.regular) return { spans: spansBetween(column, [], null), values: null, ...untouched };
-  const kept = column.values?.slice() ?? null;
+  const kept = column.values();
   if (!kept) {
     const joints = column.joints.filter(({ before, after }) => Math.abs(after - before) > column.largest);
     return {

@@ -25,25 +25,25 @@ export class TextStream {
 
   /** About `length` bytes (an even number: whole code units), few only at the end. */
   private async read(length: number): Promise<Uint8Array> {
-    const parts: Uint8Array[] = [];
-    let held = 0;
-    while (held < length / 2 || held % 2 === 1) {
-      const part = await this.source.read(this.consumed, length - held);
+    let bytes: Uint8Array = new Uint8Array(0);
+    while (bytes.length < length / 2 || bytes.length % 2 === 1) {
+      const part = await this.source.read(this.consumed, length - bytes.length);
+      this.consumed += part.length;
       if (part.length === 0) {
         this.ended = true;
         break;
       }
-      parts.push(part);
-      held += part.length;
-      this.consumed += part.length;
+      bytes = bytes.length === 0 ? part : concatenate(bytes, part);
     }
-    if (parts.length === 1) return parts[0];
-    const whole = new Uint8Array(held);
-    let at = 0;
-    for (const part of parts) {
-      whole.set(part, at);
-      at += part.length;
-    }
-    return whole;
+    return bytes;
   }
+}
+
+/** `into`: memory to be used again, if it is large enough. */
+export function concatenate(a: Uint8Array, b: Uint8Array, into?: ArrayBuffer): Uint8Array<ArrayBuffer> {
+  const length = a.length + b.length;
+  const whole = into && into.byteLength >= length ? new Uint8Array(into, 0, length) : new Uint8Array(length);
+  whole.set(a);
+  whole.set(b, a.length);
+  return whole;
 }

@@ -4,7 +4,7 @@
  */
 
 /** Rows up to which the values themselves are kept for a closer look. */
-const keptRows = 4_000_000;
+const keptRows = 2_000_000;
 export const anchorEvery = 4096;
 const mostJoints = 100_000;
 
@@ -32,12 +32,7 @@ export class TimeColumn {
   /** Smallest and largest step, zero apart, as sizes. */
   smallest = Infinity;
   largest = 0;
-  private kept: Float64Array | null;
-
-  /** `rows`: how many are likely. */
-  constructor(rows: number) {
-    this.kept = new Float64Array(Math.min(keptRows, rows));
-  }
+  private kept: Float64Array[] | null = [];
 
   /** One record on an even grid: nothing to mend, to split or to fill. */
   get regular(): boolean {
@@ -45,14 +40,22 @@ export class TimeColumn {
     return this.rows > 2 && !joined && this.largest <= 1.5 * this.smallest;
   }
 
-  /** All values; null where there are too many to keep. */
-  get values(): Float64Array | null {
-    return this.kept?.subarray(0, this.rows) ?? null;
+  /** A copy of all values; null where there are too many to keep. */
+  values(): Float64Array | null {
+    if (!this.kept) return null;
+    const whole = new Float64Array(this.rows);
+    let at = 0;
+    for (const chunk of this.kept) {
+      whole.set(chunk, at);
+      at += chunk.length;
+    }
+    return whole;
   }
 
   append(chunk: Float64Array): void {
     if (this.direction === 0) this.direction = directionOf(chunk);
-    this.keep(chunk);
+    if (this.rows + chunk.length > keptRows) this.kept = null;
+    this.kept?.push(chunk.slice());
     const { direction } = this;
     let { last, smallest, largest, pairs } = this;
     for (let i = 0; i < chunk.length; i++) {
@@ -86,18 +89,6 @@ export class TimeColumn {
   private join(joint: Joint): void {
     if (this.joints.length < mostJoints) this.joints.push(joint);
     else this.jointsMore++;
-  }
-
-  private keep(chunk: Float64Array): void {
-    if (!this.kept) return;
-    const rows = this.rows + chunk.length;
-    if (rows > keptRows) this.kept = null;
-    else if (rows > this.kept.length) {
-      const grown = new Float64Array(Math.min(keptRows, Math.max(rows, 2 * this.kept.length)));
-      grown.set(this.kept.subarray(0, this.rows));
-      this.kept = grown;
-    }
-    this.kept?.set(chunk, this.rows);
   }
 }
 

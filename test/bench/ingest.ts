@@ -88,6 +88,8 @@ interface Used {
   longestPause_ms: number;
 }
 
+const mb = (count: number) => `${(count / 1e6).toFixed(0)} MB`;
+
 function memory(path: string): void {
   for (const bytes of [speedFile_bytes, largeFile_bytes]) {
     writeCapture(path, bytes);
@@ -95,7 +97,6 @@ function memory(path: string): void {
     const used = JSON.parse(
       execFileSync(process.execPath, ["--import", "tsx", script, path], { encoding: "utf8" }),
     ) as Used;
-    const mb = (count: number) => `${(count / 1e6).toFixed(0)} MB`;
     console.log(
       `${mb(bytes)} file in ${used.seconds.toFixed(1)} s: channel arrays ${mb(used.arrays)}, peak memory ${mb(used.peak)}, ` +
         `beyond the arrays ${mb(used.peak - used.arrays)} (an idle process has ${mb(used.idle)}), longest time between progress ${used.longestPause_ms.toFixed(0)} ms`,
