@@ -3,9 +3,8 @@
  * its voltage. While that lasts the ring is not free.
  */
 
-/** A sinusoid stays within 4 % of its peak for 18 % of the half-wave; a cut one far longer. */
-const NEAR_PEAK = 0.04;
-const FLAT_SHARE = 0.42;
+/** Mean over peak of a half-wave: 2/π for a sinusoid, near 1 for a cut one. */
+const FLAT_RATIO = 0.76;
 const LEAST_SAMPLES = 6;
 
 /**
@@ -42,14 +41,15 @@ function isFlat(
   least: number,
 ): boolean {
   let peak = 0;
-  for (let i = from; i < to; i++) peak = Math.max(peak, Math.abs(samples[i] - level) || 0);
-  if (peak < least) return false;
-  const band = Math.max(NEAR_PEAK * peak, 0) + 2.5 * noise;
-  if (band > 0.25 * peak) return false;
-  let near = 0;
-  for (let i = from; i < to; i++) if (Math.abs(samples[i] - level) > peak - band) near++;
-  // What a clean half-sine would have in that band.
-  const clean = (2 / Math.PI) * Math.acos(1 - band / peak);
-  // Two samples more than the share: few samples fall in the band by chance.
-  return near - 2 > (to - from) * Math.max(FLAT_SHARE, clean + 0.15);
+  let sum = 0;
+  let count = 0;
+  for (let i = from; i < to; i++) {
+    const y = Math.abs(samples[i] - level);
+    if (!Number.isFinite(y)) continue;
+    peak = Math.max(peak, y);
+    sum += y;
+    count++;
+  }
+  // The largest of many noisy samples stands about two deviations too high.
+  return peak > least && sum / count > FLAT_RATIO * (peak - 2 * noise) && peak > 12 * noise;
 }

@@ -53,7 +53,7 @@ export function disturbedRing(place: Place): WindowedRing | null {
   if (whole && isClean(place, whole)) return { fit: whole, clean: true, courseChanges: false, masked: [] };
   const patched = withoutBursts(place, whole);
   if (patched) return patched;
-  const late = lateStart(place, whole);
+  const late = lateStart(place);
   const early = earlyEnd(place);
   if (late && informative(late) >= (early ? informative(early) : 0))
     return { fit: late, clean: true, courseChanges: false, masked: [] };
@@ -137,8 +137,8 @@ export function merged(a: ArrayLike<number>, b: number[]): number[] {
  * The earliest start from which one ring explains the rest (a clamp, an arc or a switch transient comes
  * before it). The tail tells the modes; the start is then moved back as far as they hold.
  */
-function lateStart(place: Place, whole: RingFit | null): RingFit | null {
-  const to = whole?.to ?? place.to;
+function lateStart(place: Place): RingFit | null {
+  const { to } = place;
   let good: RingFit | null = null;
   let bad = place.from;
   for (const share of TAILS) {
