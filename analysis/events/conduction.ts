@@ -26,7 +26,7 @@ export function conductionStart(
   if (at <= back) return back;
   if (off - at < width) return null;
   const from = Math.max(back, at - 2 * width);
-  const to = Math.min(Math.floor(off), at + width);
+  const to = Math.min(Math.floor(off), at + 3 * width);
   return firstStray(samples, from, to, width, tolerance) ?? stepWithin(samples, from, to);
 }
 
@@ -38,7 +38,7 @@ function firstStray(
   width: number,
   tolerance: number,
 ): number | null {
-  const calm = meanAndDeviation(samples, to, to + width);
+  const calm = meanAndDeviation(samples, to - width, to);
   const limit = Math.max(6 * calm.deviation, 2 * tolerance);
   for (let i = to - 1; i >= from; i--) if (Math.abs(samples[i] - calm.mean) > limit) return i + 0.5;
   return null;
