@@ -2,17 +2,16 @@ import type { CaptureEvidence } from "../../../analysis/evidence.ts";
 import { readCapture } from "../../../analysis/reading.ts";
 import { judgeRun } from "../../../analysis/run.ts";
 import { readFile } from "../reading/index.ts";
-import { sketchRun } from "../view/sketch.ts";
-import type { FileToRead, Tasks } from "./tasks.ts";
+import { sketchPulses } from "../view/sketch.ts";
+import type { FileToRead, JudgedFile, Tasks } from "./tasks.ts";
 
 interface Kept {
   sha256: string;
   bytes: number;
   evidence: CaptureEvidence[];
+  /** Drawn when the file was first judged, while its samples were at hand. */
+  sketches: JudgedFile["sketches"] | null;
 }
-
-/** Files whose evidence stays at hand; a run of more is read again when it is judged again. */
-const mostKept = 5000;
 
 /** Reads files into evidence and judges the evidence of a run, which stays here while the run is live. */
 export function createReader() {
@@ -22,11 +21,7 @@ export function createReader() {
     async read(file: FileToRead, onProgress: (fraction: number) => void) {
       const { sha256, bytes, captures } = await readFile(file.path, file.setup, { onProgress });
       const evidence = captures.map((capture) => readCapture(capture, file.setup));
-      kept.set(keyOf(file), { sha256, bytes, evidence });
-      for (const oldest of kept.keys()) {
-        if (kept.size <= mostKept) break;
-        kept.delete(oldest);
-      }
+      kept.set(keyOf(file), { sha256, bytes, evidence, sketches: null });
       return { sha256, bytes, records: captures.length };
     },
 
@@ -36,22 +31,26 @@ export function createReader() {
       const held = files.map((file) => kept.get(keyOf(file)) as Kept);
       const all = held.flatMap(({ evidence }) => evidence);
       const { readings, run } = judgeRun(all, setup);
-      const sketches = sketchRun(all, readings);
       let end = 0;
-      const judged = held.map(({ sha256, bytes, evidence }, i) => {
-        const [from, to] = [end, (end += evidence.length)];
-        const { path } = files[i];
-        return {
-          path,
-          sha256,
-          bytes,
-          readings: readings.slice(from, to),
-          sketches: sketches.slice(from, to),
-        };
+      const judged = held.map((file, i): JudgedFile => {
+        const { sha256, bytes, evidence } = file;
+        const of = readings.slice(end, (end += evidence.length));
+        file.sketches ??= sketchPulses(evidence, readings);
+        return { path: files[i].path, sha256, bytes, readings: of, sketches: file.sketches };
       });
+      forgetSamples(all);
       return { files: judged, run };
     },
   };
+}
+
+/**
+ * Judging holds each pulse's own window from its first time on; the records themselves would fill the
+ * memory in a run of many files.
+ */
+function forgetSamples(evidence: CaptureEvidence[]): void {
+  for (const capture of evidence)
+    capture.channels = capture.channels.map((channel) => ({ ...channel, samples: new Float64Array(0) }));
 }
 
 const keyOf = (file: FileToRead) => JSON.stringify([file.path, file.setup]);

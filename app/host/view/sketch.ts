@@ -13,12 +13,12 @@ export interface Sketch {
 }
 
 /**
- * Small drawings of the pulses of a run on one common stretch of time, so that rings can be compared by
- * eye: a damped one is shorter. Null for a pulse without ring channel, and for all where no ring of the
+ * Small drawings of a file's pulses on a stretch of time common to its run, so that rings can be compared
+ * by eye: a damped one is shorter. Null for a pulse without ring channel, and for all where no ring of the
  * run was fitted.
  */
-export function sketchRun(evidence: CaptureEvidence[], readings: CaptureReading[]): (Sketch | null)[][] {
-  const decay = commonDecay(readings.flatMap(({ pulses }) => pulses));
+export function sketchPulses(evidence: CaptureEvidence[], run: CaptureReading[]): (Sketch | null)[][] {
+  const decay = commonDecay(run.flatMap(({ pulses }) => pulses));
   return evidence.map(({ pulses, channels, timebase, map }) => {
     const { start_s, step_s } = timebase;
     const channel = map.ring === null ? null : channels[map.ring];
