@@ -26,6 +26,7 @@ export default defineConfig({
           ...common,
           name: "window",
           include: ["test/window/**/*.test.ts"],
+          globalSetup: ["test/window/demo-book.ts"],
           fileParallelism: false,
           testTimeout: 60_000,
           hookTimeout: 60_000,

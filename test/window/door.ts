@@ -1,5 +1,5 @@
 /** The real host with a new book behind the real local door, as `npm start` serves it. */
-import { existsSync, mkdtempSync, rmSync } from "node:fs";
+import { copyFileSync, existsSync, mkdtempSync, rmSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { pathToFileURL } from "node:url";
@@ -9,6 +9,7 @@ import type { Answer, Argument, CommandName } from "../../app/bridge.ts";
 
 const root = join(import.meta.dirname, "../..");
 const worker = join(root, "dist/app/worker.js");
+export const workerUrl = pathToFileURL(worker);
 export const demo = join(root, "samples/bench-run");
 
 export interface TestDoor extends LocalDoor {
@@ -22,6 +23,8 @@ export interface TestDoor extends LocalDoor {
 export async function openDoor(options: { demo?: boolean } = {}): Promise<TestDoor> {
   if (!existsSync(worker)) throw new Error("dist/ is missing: run npm run build before the window tests");
   const folder = mkdtempSync(join(tmpdir(), "ringbook-window-"));
+  const prepared = options.demo ? process.env.RINGBOOK_DEMO_BOOK : undefined;
+  if (prepared) copyFileSync(prepared, join(folder, "book.db"));
   const host = await createHost({
     bookPath: join(folder, "book.db"),
     workerUrl: pathToFileURL(worker),
@@ -33,7 +36,7 @@ export async function openDoor(options: { demo?: boolean } = {}): Promise<TestDo
     if ("error" in reply) throw new Error(`${name}: ${reply.error.text}`);
     return reply.answer as never;
   };
-  if (options.demo) {
+  if (options.demo && !prepared) {
     await ask("openDemo", {});
     await host.idle();
   }
