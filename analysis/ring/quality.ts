@@ -42,8 +42,8 @@ export function judgeFit(fit: RingFit, noise: number): Judgement {
   if (frequencyU > 0.05 * mode.frequency_Hz)
     return refuse("too much noise: the frequency is uncertain by more than 5 %");
   const decays = mode.decay_per_s > 2 * decayU;
-  if (!decays && (mode.decay_per_s <= 0 || fit.residual > 3 * noise))
-    return refuse("no decay to be told, and the window holds more than one steady wave: no ring");
+  if (!decays && (mode.decay_per_s <= 0 || cycles > 8 || fit.residual > 3 * noise))
+    return refuse("no decay to be told, where a coil's ring would show one");
   if (cycles < 2 && !decays)
     return refuse(`only ${cycles.toFixed(1)} cycles to be seen, and no decay to be told: no ring`);
   const reasons: string[] = [];
