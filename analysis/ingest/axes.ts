@@ -24,7 +24,9 @@ export interface HeadColumn {
 
 /** `symbolic` columns are values of whichever axis stands before them. */
 export function findAxes(numeric: HeadColumn[], symbolic: number[], timingStated: boolean): Axes {
-  const counter = numeric.length > 1 || timingStated ? numeric.slice(0, 2).find(isCounter) : undefined;
+  const counts = (column: HeadColumn, i: number) =>
+    (i === 0 || countName.test(column.name.name)) && isCounter(column);
+  const counter = numeric.length > 1 || timingStated ? numeric.slice(0, 2).find(counts) : undefined;
   const rest = numeric.filter((column) => column !== counter);
   const first = rest.find(isNamedTime) ?? (timingStated && !counter ? undefined : firstRamp(rest, symbolic));
   const counterFrom = counter ? counter.head[0] : 0;
@@ -38,19 +40,22 @@ export function findAxes(numeric: HeadColumn[], symbolic: number[], timingStated
     const values = columns.filter((column) => column > from && column < to && column !== axis.column);
     return { axis: axis.column, values };
   });
-  return { ...found, groups: groups.filter(({ values }) => values.length > 0) };
+  const filled = groups.filter(({ values }) => values.length > 0);
+  return { ...found, groups: filled.length > 0 ? filled : [{ axis: null, values: columns }] };
 }
+
+const countName = /^(#|n|no|nr|nummer|sample|samples|index|point|count|number)\b/i;
 
 /** 0, 1, 2 … (or from 1), starting anew where a record does; a stated unit of time makes it a time. */
 function isCounter({ head, name }: HeadColumn): boolean {
-  if (name.unit?.symbol === "s" || head.length < 2 || (head[0] !== 0 && head[0] !== 1)) return false;
+  if (name.unit || head.length < 2 || (head[0] !== 0 && head[0] !== 1)) return false;
   let restarts = 0;
   for (let i = 1; i < head.length; i++) {
     if (head[i] === head[i - 1] + 1) continue;
     if (head[i] !== head[0]) return false;
     restarts++;
   }
-  return restarts <= head.length / 3;
+  return restarts <= head.length / 8;
 }
 
 function isNamedTime({ name, head, column }: HeadColumn): boolean {

@@ -31,7 +31,7 @@ export interface DialectChoice {
 const separators = ["\t", ";", ",", " "];
 
 /** Judged by the last of the lines, where the data are; up to this many characters of them. */
-const judged = 100_000;
+const judged = 40_000;
 /** Lines with as many words as numbers ("Event 7") are prose unless there are many. */
 const fewestMixed = 10;
 

@@ -14,7 +14,7 @@ import { nulByte, refuseForeign } from "./refuse.ts";
 import type { ByteSource, CancelSignal } from "./source.ts";
 import { concatenate, TextStream } from "./text-stream.ts";
 
-export interface IngestOptions {
+interface IngestOptions {
   /** Called with the share read so far, 0 … 1, after every piece. */
   progress?: (share: number) => void;
   signal?: CancelSignal;
@@ -33,7 +33,7 @@ export interface ChunkParser {
   release?(chunk: ParsedChunk): void;
 }
 
-export interface Ingested {
+interface Ingested {
   captures: Capture[];
   /** The same for files of the same layout. */
   layout: string;

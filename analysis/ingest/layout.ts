@@ -42,7 +42,7 @@ export interface Layout {
   notes: Note[];
 }
 
-const sniffedLines = 3000;
+const sniffedLines = 1500;
 
 /** `complete`: the head is the whole file, so its last line is not cut. */
 export function planLayout(head: Uint8Array, complete: boolean, setup: Setup): Layout {

@@ -10,7 +10,3 @@ export interface ByteSource {
 export interface CancelSignal {
   readonly aborted: boolean;
 }
-
-export function bytesSource(bytes: Uint8Array): ByteSource {
-  return { size: bytes.length, read: (offset, length) => bytes.subarray(offset, offset + length) };
-}

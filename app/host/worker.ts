@@ -1,9 +1,13 @@
 /** The thread in which captures are read, judged and looked at, so that no door ever waits for them. */
 import { parentPort } from "node:worker_threads";
 import { describeFailure } from "./failure.ts";
+import { useParseWorker } from "./reading/index.ts";
 import { createReader } from "./threads/reader.ts";
 import type { Answered, Asked, TaskName, Tasks } from "./threads/tasks.ts";
 import { createViewer } from "./threads/viewer.ts";
+
+// Built, the parse threads' script is this one's neighbour; plain TypeScript can't be started as a thread.
+if (import.meta.url.endsWith(".js")) useParseWorker(new URL("./parse-worker.js", import.meta.url));
 
 type TaskHandlers = {
   [Name in TaskName]: (

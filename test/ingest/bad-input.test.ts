@@ -143,3 +143,11 @@ describe("files on the machine", () => {
     await expect(readFile(path, {}, { onProgress, signal })).rejects.toMatchObject({ code: "cancelled" });
   });
 });
+
+it("a channel that steps through 0, 1, 2 is no running number", () => {
+  const text = `Time [s],A [V]\n${Array.from({ length: 300 }, (_, i) => `${i}e-6,${i % 3}`).join("\n")}\n`;
+  const [capture] = ingestBytes(utf8(text), {});
+  expect(capture.timebase).toMatchObject({ start_s: 0, samples: 300 });
+  expect(capture.timebase.step_s).toBeCloseTo(1e-6, 15);
+  expect(capture.channels.map(({ name }) => name)).toEqual(["A"]);
+});

@@ -1,7 +1,7 @@
 /** The reader against other readers: PapaParse cell by cell, csv-spectrum's public files, RFC 4180's own text. */
-import { readFileSync, readdirSync } from "node:fs";
-import { createRequire } from "node:module";
-import { dirname, join } from "node:path";
+import { readFileSync } from "node:fs";
+import { join } from "node:path";
+import spectrum from "csv-spectrum";
 import Papa from "papaparse";
 import { describe, expect, it } from "vitest";
 import { splitCells } from "../../analysis/ingest/cells.ts";
@@ -46,19 +46,24 @@ describe("PapaParse on the same files, cell by cell", () => {
   });
 });
 
+interface SpectrumFile {
+  name: string;
+  csv: Buffer;
+  json: Buffer;
+}
+const spectrumFiles = await new Promise<SpectrumFile[]>((resolve, reject) =>
+  spectrum((error, files) => (error ? reject(error) : resolve(files))),
+);
+
 describe("csv-spectrum", () => {
-  const folder = dirname(createRequire(import.meta.url).resolve("csv-spectrum/package.json"));
   // Left out: in that pair the package's own CSV and JSON hold different telephone numbers.
-  const names = readdirSync(join(folder, "csvs")).filter((name) => name !== "location_coordinates.csv");
-  it.each(names)("%s", (file) => {
-    const [names, ...rows] = table(readFileSync(join(folder, "csvs", file)));
-    const expected = JSON.parse(readFileSync(join(folder, "json", file.replace(".csv", ".json")), "utf8"));
+  const files = spectrumFiles.filter(({ name }) => name !== "location_coordinates");
+  it.each(files)("$name", ({ csv, json }) => {
+    const [names, ...rows] = table(csv);
+    const expected: Record<string, string>[] = JSON.parse(json.toString("utf8"));
     const objects = rows.map((cells) => Object.fromEntries(cells.map((cell, i) => [names[i], unix(cell)])));
-    expect(objects).toEqual(
-      expected.map((row: Record<string, string>) =>
-        Object.fromEntries(Object.entries(row).map(([key, value]) => [key, unix(value)])),
-      ),
-    );
+    const alike = expected.map((row) => Object.entries(row).map(([key, value]) => [key, unix(value)]));
+    expect(objects).toEqual(alike.map((entries) => Object.fromEntries(entries)));
   });
 });
 

@@ -1,2 +1,2 @@
-export { isCaptureFile, readFile, type ReadFile, type ReadOptions } from "./read-file.ts";
+export { isCaptureFile, readFile } from "./read-file.ts";
 export { useParseWorker } from "./parse-pool.ts";

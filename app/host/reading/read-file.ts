@@ -6,13 +6,13 @@ import type { Setup } from "../../../analysis/setup/schema.ts";
 import { openFile } from "./file-source.ts";
 import { openParser } from "./parse-pool.ts";
 
-export interface ReadOptions {
+interface ReadOptions {
   /** Share of the file read, 0 … 1. */
   onProgress?: (share: number) => void;
   signal?: CancelSignal;
 }
 
-export interface ReadFile {
+interface ReadFile {
   /** Lower-case hex over the file's bytes as they lie on the disk. */
   sha256: string;
   bytes: number;
