@@ -1,8 +1,10 @@
 /** The setup card: what was read and guessed, questions, doubts, changes at once, templates, undo. */
+import { copyFileSync, mkdirSync } from "node:fs";
+import { join } from "node:path";
 import type { Browser } from "playwright-core";
 import { afterAll, afterEach, beforeAll, expect, it } from "vitest";
 import { describeWindow, launch } from "./chromium.ts";
-import { openDoor, type TestDoor } from "./door.ts";
+import { demo, openDoor, type TestDoor } from "./door.ts";
 import {
   closeSilent,
   dropFiles,
@@ -18,7 +20,14 @@ describeWindow("the setup card", () => {
   let door: TestDoor;
   let sheet: Sheet | undefined;
   beforeAll(async () => {
-    [browser, door] = await Promise.all([launch(), openDoor({ demo: true })]);
+    [browser, door] = await Promise.all([launch(), openDoor()]);
+    // Two quiet pulses of the demo run: a change is judged anew at once.
+    const folder = join(door.folder, "two pulses");
+    mkdirSync(folder);
+    for (const name of ["pulse-03.csv", "pulse-06.csv", "setup.json"])
+      copyFileSync(join(demo, name), join(folder, name));
+    await door.ask("open", { sources: [{ path: folder }] });
+    await door.host.idle();
   });
   afterAll(async () => {
     await browser?.close();
@@ -30,7 +39,7 @@ describeWindow("the setup card", () => {
   });
   const turned = async () => {
     sheet = await openSheet(browser, door, "/run/1");
-    await sheet.page.getByText(/^54 pulses:/).waitFor();
+    await sheet.page.getByText(/^2 pulses:/).waitFor();
     await sheet.page.keyboard.press("e");
     await sheet.page.getByRole("heading", { name: "Setup, the back of the card" }).waitFor();
     return sheet.page;

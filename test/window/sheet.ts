@@ -26,7 +26,8 @@ export async function openSheet(
     ...options,
   });
   const page = await context.newPage();
-  page.setDefaultTimeout(6000);
+  // Generous: a busy machine is slow, not wrong.
+  page.setDefaultTimeout(15_000);
   const noise: string[] = [];
   page.on("console", (message) => {
     if (message.type() === "error" || message.type() === "warning") noise.push(message.text());
