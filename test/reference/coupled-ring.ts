@@ -59,7 +59,8 @@ export function integrateRing(
     coilCurrent_A: new Float64Array(samples),
     strikes: [],
   };
-  const substeps = Math.max(1, Math.ceil(step_s / (fastestPeriod_s(circuit) / 40)));
+  // At least four, so that the gap gives way between two samples and not on one.
+  const substeps = Math.max(4, Math.ceil(step_s / (fastestPeriod_s(circuit) / 40)));
   const h = step_s / substeps;
   let state: State = [start.node_V, start.current_A, start.secondary_V ?? 0, start.secondaryCurrent_A ?? 0];
   let arc = 0;
