@@ -5,8 +5,8 @@ import type { SwitchOff } from "../events/event-format.ts";
 import type { Figure, RampReading } from "../reading-format.ts";
 import type { Setup } from "../setup/schema.ts";
 import { meanAndDeviation } from "../numeric/robust.ts";
-import { differenceNoise } from "../ring/noise.ts";
 import { fitRamp, type RampFit } from "./exponential.ts";
+import { steepens } from "./steepens.ts";
 import { fitSaturating, type SaturatingFit } from "./saturating.ts";
 
 /** Points the fit uses; longer ramps are averaged down. */
@@ -50,11 +50,8 @@ export function readRamp(capture: Capture, map: ChannelMap, off: SwitchOff, setu
   const fit = fitRamp(values, first_s, step * width);
   if (!fit) return empty("no current ramp to be fitted");
   const drive_V = driving_V(capture, map, off, setup);
-  const noise = differenceNoise(channel.samples, from, to, channel.lsb) / Math.sqrt(width);
   const ramp = describe(fit, (off.at - begin) * step, off.on !== null, drive_V, setup);
-  return drive_V === null
-    ? ramp
-    : withSaturation(ramp, fit, values, first_s, step * width, drive_V, noise, setup);
+  return drive_V === null ? ramp : withSaturation(ramp, fit, values, first_s, step * width, drive_V, setup);
 }
 
 function blockMeans(channel: Channel, from: number, to: number, width: number): Float64Array | null {
@@ -136,8 +133,6 @@ function describe(
   return { reading, current_A: final };
 }
 
-/** Residuals this far above the noise, or a current that bends upwards, are worth the saturating model. */
-const MISFIT = 1.25;
 /** Points the saturating model is fitted to. */
 const SATURATING_POINTS = 160;
 
@@ -149,11 +144,8 @@ function withSaturation(
   first_s: number,
   step_s: number,
   drive_V: number,
-  noise: number,
   setup: Setup,
 ): Ramp {
-  const bends = plain.rate < -4 * Math.sqrt(plain.covariance[8]);
-  if (!bends && !(plain.residual > MISFIT * noise)) return ramp;
   const by = Math.max(1, Math.ceil(values.length / SATURATING_POINTS));
   const sign = Math.sign(values.at(-1)!);
   const coarse = Float64Array.from({ length: Math.floor(values.length / by) }, (_, k) => {
@@ -162,6 +154,8 @@ function withSaturation(
     return sum / by;
   });
   const first = first_s + ((by - 1) / 2) * step_s;
+  const alike = fitRamp(coarse, first, step_s * by);
+  if (!alike || !steepens(coarse)) return ramp;
   const head = fitRamp(coarse.slice(0, Math.max(12, coarse.length >> 2)), first, step_s * by);
   const inductance_H = Math.abs(drive_V) / Math.max(1e-30, head?.slope ?? sign * plain.slope);
   const start = {
@@ -170,8 +164,7 @@ function withSaturation(
     initial_A: coarse[0],
   };
   const fit = fitSaturating(coarse, first, step_s * by, Math.abs(drive_V), start);
-  if (!fit || fit.residual > 0.8 * plain.residual || fit.saturation_A > 1.1 * Math.max(...coarse))
-    return ramp;
+  if (!fit || !explainsMore(fit, alike, coarse.length) || fit.saturation_A > Math.max(...coarse)) return ramp;
   const { reading } = ramp;
   const [uL, uR, uI] = fit.u;
   reading.inductance_H = { value: fit.inductance_H, u: uL };
@@ -183,6 +176,12 @@ function withSaturation(
   reading.energy_J = storedEnergy(fit, ramp.current_A);
   reading.reason = null;
   return ramp;
+}
+
+/** By the Bayesian information criterion, two parameters more, and clearly so (Kass & Raftery, JASA 90, 1995). */
+function explainsMore(fit: SaturatingFit, plain: RampFit, count: number): boolean {
+  const costs = (plain.residual ** 2 * (count - 3)) / (fit.residual ** 2 * (count - 5));
+  return count * Math.log(costs) > 2 * Math.log(count) + 10;
 }
 
 /** L(i) at 25 currents up to the largest seen. */
