@@ -1,48 +1,43 @@
 /** How the record was taken, where that can fool quietly: from the header's words and from the data. */
-import type { AcquisitionCode, Capture, Note } from "../capture.ts";
+import type { AcquisitionCode, Capture, Channel, Note } from "../capture.ts";
 import type { Layout } from "./layout.ts";
+import { ringStart } from "./ring-start.ts";
 
 interface Acquired {
   codes: AcquisitionCode[];
   notes: Note[];
 }
 
-const words: [AcquisitionCode, RegExp, RegExp, string][] = [
-  [
-    "ac-coupled",
-    /coupl|kopplung/i,
-    /(^|\W)ac(\W|$)/i,
-    "AC coupling: levels are not absolute, so absolute peaks and margins are not given.",
-  ],
-  [
-    "averaged",
-    /acq|mode|averag|mittel|process/i,
-    /averag|mittel|\bavg\b|\bmean\b/i,
-    "Averaged over several shots: a spark in some of them blurs; verdicts stay unclear and the resolution is not trusted.",
-  ],
-  [
-    "peak-detect",
-    /acq|mode|sampl|detect/i,
-    /peak[ -]?det|envelope|hüllkurve|min[ /-]?max/i,
+const texts: Record<AcquisitionCode, string> = {
+  "ac-coupled": "AC coupling: levels are not absolute, so absolute peaks and margins are not given.",
+  averaged:
+    "Averaged over several shots: a spark in some of them blurs, so verdicts stay unclear and the resolution is not trusted.",
+  "peak-detect":
     "Peak detection: each interval keeps only its extremes; switch-offs can be used, a ring only roughly.",
-  ],
-  [
-    "roll-mode",
-    /acq|mode|horiz|time ?base/i,
-    /\broll\b/i,
-    "Roll mode: the record was still filling when it was saved.",
-  ],
+  "roll-mode": "Roll mode: the record was still filling when it was saved.",
+  undersampled:
+    "Sampled too coarsely for the kick: it rises within two samples, or the ring has fewer than six samples a cycle; frequencies may be aliases.",
+  "starts-in-ring": "The record begins inside a ring: its switch-off lies before the first sample.",
+};
+
+/** What header words say: the code, a setting's key, its value. */
+const words: [AcquisitionCode, RegExp, RegExp][] = [
+  ["ac-coupled", /coupl|kopplung/i, /(^|\W)ac(\W|$)/i],
+  ["averaged", /acq|mode|averag|mittel|process/i, /averag|mittel|\bavg\b|\bmean\b/i],
+  ["peak-detect", /acq|mode|sampl|detect/i, /peak[ -]?det|envelope|hüllkurve|min[ /-]?max/i],
+  ["roll-mode", /acq|mode|horiz|time ?base/i, /\broll\b/i],
 ];
 
 export function acquisitionOf(capture: Capture, layout: Layout, pairs: boolean): Acquired {
-  const found = new Map<AcquisitionCode, string>();
-  for (const [code, key, value, text] of words)
-    if (layout.header.settings.some((setting) => says(setting, key, value))) found.set(code, text);
-  if (pairs || twins(capture)) found.set("peak-detect", words[2][3]);
-  if (capture.channels.some(leadingBlank)) found.set("roll-mode", words[3][3]);
+  const found = new Set<AcquisitionCode>();
+  for (const [code, key, value] of words)
+    if (layout.header.settings.some((setting) => says(setting, key, value))) found.add(code);
+  if (pairs || twins(capture)) found.add("peak-detect");
+  if (capture.channels.some(leadingBlank)) found.add("roll-mode");
+  for (const channel of capture.channels.filter(isRinging)) addFromRing(channel, found);
   return {
-    codes: [...found.keys()],
-    notes: [...found].map(([code, text]) => ({ code, text })),
+    codes: [...found],
+    notes: [...found].map((code) => ({ code, text: texts[code] })),
   };
 }
 
@@ -51,20 +46,29 @@ function says(
   keyed: RegExp,
   valued: RegExp,
 ): boolean {
-  const texts = values.map(({ text }) => text);
-  return (
-    texts.some((text) => valued.test(text)) && (keyed.test(key) || texts.some((text) => keyed.test(text)))
-  );
+  const said = values.map(({ text }) => text);
+  return said.some((text) => valued.test(text)) && (keyed.test(key) || said.some((text) => keyed.test(text)));
 }
 
 /** "A" and "A peak": lowest and highest of each interval in two columns. */
 const twins = ({ channels }: Capture) =>
-  channels.some(
-    ({ name }, i) =>
-      i > 0 &&
-      name.startsWith(channels[i - 1].name) &&
-      /(peak|max|min|env)/i.test(name.slice(channels[i - 1].name.length)),
-  );
+  channels.some(({ name }, i) => {
+    const before = channels[i - 1]?.name;
+    return (
+      before !== undefined && name.startsWith(before) && /peak|max|min|env/i.test(name.slice(before.length))
+    );
+  });
 
-const leadingBlank = ({ unusable, samples }: Capture["channels"][number]) =>
-  unusable[0] === 0 && unusable[1] >= 3 && unusable[1] < samples.length;
+const leadingBlank = ({ unusable, samples, overrange }: Channel) =>
+  unusable[0] === 0 && unusable[1] >= 3 && unusable[1] < samples.length && overrange < unusable[1];
+
+const isRinging = ({ role }: Channel) => role === "switch-node" || role === "coil-voltage";
+
+function addFromRing(channel: Channel, found: Set<AcquisitionCode>): void {
+  const ring = ringStart(channel.samples);
+  if (!ring) return;
+  if (ring.fromFirstSample) found.add("starts-in-ring");
+  else if (ring.riseSamples <= 2) found.add("undersampled");
+  if (ring.samplesACycle !== null && ring.samplesACycle < 6) found.add("undersampled");
+  if (ring.sagShare !== null && ring.sagShare > 0.12) found.add("ac-coupled");
+}
