@@ -63,7 +63,8 @@ function fitPulse(context: PulseContext, off: SwitchOff): PulseRing | null {
   const { map, capture, step_s } = context;
   if (map.ring === null) return null;
   const { samples, lsb, unusable } = capture.channels[map.ring];
-  const noise = Math.max(context.noise, off.scatter ?? 0);
+  // Coloured noise shows in the quiet before; a trace that was not quiet must not pass for noise.
+  const noise = Math.max(context.noise, Math.min(off.scatter ?? 0, 3 * context.noise));
   const period = context.period || (off.freeTo - off.freeFrom) / 8;
   return ringOfPulse({ samples, step_s, to: off.freeTo, period, noise, lsb, unusable }, off);
 }
