@@ -68,7 +68,7 @@ function addFromRing(channel: Channel, found: Set<AcquisitionCode>): void {
   const ring = ringStart(channel.samples);
   if (!ring) return;
   if (ring.fromFirstSample) found.add("starts-in-ring");
-  else if (ring.riseSamples <= 2) found.add("undersampled");
+  else if (ring.samplesACycle !== null && ring.riseSamples <= 2) found.add("undersampled");
   if (ring.samplesACycle !== null && ring.samplesACycle < 6) found.add("undersampled");
   if (ring.sagShare !== null && ring.sagShare > 0.12) found.add("ac-coupled");
 }
