@@ -62,17 +62,19 @@ type InvokeHandler = (event: unknown, ...args: unknown[]) => Promise<unknown>;
 type PageHandler = (request: { url: string; method: string }) => Promise<Response>;
 type Permission = (contents: StandInContents, permission: string, answer: (granted: boolean) => void) => void;
 
+type Check = (contents: null, permission: string, origin: string) => boolean;
+
 export const app = new StandInApp();
 export const ipcHandlers = new Map<string, InvokeHandler>();
 export const schemes = new Map<string, PageHandler>();
 export const session = {
   requests: null as Permission | null,
-  checks: null as ((contents: null, permission: string, origin: string) => boolean) | null,
+  checks: null as Check | null,
   devices: null as (() => boolean) | null,
   protocol: { handle: (scheme: string, handler: PageHandler) => schemes.set(scheme, handler) },
   setPermissionRequestHandler: (handler: Permission) => (session.requests = handler),
-  setPermissionCheckHandler: (handler: typeof session.checks) => (session.checks = handler),
-  setDevicePermissionHandler: (handler: typeof session.devices) => (session.devices = handler),
+  setPermissionCheckHandler: (handler: Check) => (session.checks = handler),
+  setDevicePermissionHandler: (handler: () => boolean) => (session.devices = handler),
 };
 export const privileged: unknown[] = [];
 export const errorBoxes: string[][] = [];
