@@ -41,6 +41,9 @@ describeWindow("a run", () => {
     const { page } = sheet;
     await page.locator(".greeting").waitFor();
     const captures = filesOf(demo, (name) => /^(pulse-0[1-4]\.csv|setup\.json)$/.test(name));
+    // A setup of its own, so that it is a run of its own.
+    const setup = captures.find(({ name }) => name === "setup.json")!;
+    setup.text = JSON.stringify({ ...JSON.parse(setup.text), run: "Dropped on the page" });
     await dropFiles(page, [
       ...captures,
       { name: "<img src=x onerror=alert(1)>.csv", text: "not a capture\n" },
