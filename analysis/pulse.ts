@@ -1,29 +1,15 @@
 /** One pulse: ring, L–C–R, kick, energies, ramp. */
-import type { Capture } from "./capture.ts";
 import { findKick } from "./coil/peak.ts";
 import { losslessAmplitude_V } from "./coil/kick.ts";
-import { inferTank, type Tank } from "./coil/infer.ts";
+import type { Tank } from "./coil/infer.ts";
+import { expectedInductance } from "./coil/plausible.ts";
 import type { ChannelMap, PulseEvidence } from "./evidence.ts";
 import type { SwitchOff } from "./events/event-format.ts";
 import { isVoltage } from "./events/channels.ts";
 import { readRamp, type Ramp } from "./ramp/read-ramp.ts";
 import type { PulseReading, RingReading } from "./reading-format.ts";
-import { describeRing, modeCovariance, refusedRing } from "./ring/describe.ts";
-import { judgeFit } from "./ring/quality.ts";
-import { ringOfPulse, type PulseRing } from "./ring/ring-of-pulse.ts";
+import { periodOf, readRing, type PulseContext } from "./pulse-ring.ts";
 import type { Setup } from "./setup/schema.ts";
-
-export interface PulseContext {
-  capture: Capture;
-  step_s: number;
-  setup: Setup;
-  map: ChannelMap;
-  /** Rough ring period in samples, 0 unknown. */
-  period: number;
-  /** Noise per sample of the ring channel. */
-  noise: number;
-  timeRelative: number;
-}
 
 export interface Pulse {
   reading: PulseReading;
@@ -31,14 +17,11 @@ export interface Pulse {
 }
 
 export function readPulse(context: PulseContext, off: SwitchOff, index: number): Pulse {
-  const ring = fitPulse(context, off);
-  const reading = ring ? describePulseRing(context, ring) : refusal(context);
-  const fit = ring && reading?.quality !== "refused" ? ring.fit : null;
-  const byModel = fit ? ring!.switchOff : null;
-  const instant = byModel ?? { at: off.at, u: off.u };
-  const ramp = readRamp(context.capture, context.map, { ...off, at: instant.at }, context.setup);
-  const tank = fit ? tankOf(context, fit) : null;
+  const ramp = readRamp(context.capture, context.map, off, context.setup);
   const kick = kickOf(context, off);
+  const expected = expectedInductance(ramp?.reading.inductance_H ?? null, context.setup);
+  const { ring, fit, tank, switchOff, courseChanges } = readRing(context, off, kick, expected);
+  const instant = switchOff ?? { at: off.at, u: off.u };
   const evidence: PulseEvidence = {
     index,
     switchOff: instant.at,
@@ -49,56 +32,14 @@ export function readPulse(context: PulseContext, off: SwitchOff, index: number):
     polarity: off.polarity,
     levelOn: off.levelOn,
     kick,
-    period: fit ? 1 / (fit.modes[0].frequency_Hz * fit.step_s) : context.period || null,
-    courseChanges: ring?.courseChanges ?? false,
+    period: fit ? periodOf(fit) : context.period || null,
+    courseChanges,
     fit,
     current_A: ramp?.current_A ?? null,
     inductance_H: tank?.inductance_H ?? null,
     capacitance_F: tank?.capacitance_F ?? null,
   };
-  return { reading: assemble(context, evidence, reading, tank, ramp), evidence };
-}
-
-function fitPulse(context: PulseContext, off: SwitchOff): PulseRing | null {
-  const { map, capture, step_s } = context;
-  if (map.ring === null) return null;
-  const { samples, lsb, unusable } = capture.channels[map.ring];
-  // Coloured noise shows in the quiet before; a trace that was not quiet must not pass for noise.
-  const noise = Math.max(context.noise, Math.min(off.scatter ?? 0, 3 * context.noise));
-  const period = context.period || (off.freeTo - off.freeFrom) / 8;
-  return ringOfPulse({ samples, step_s, to: off.freeTo, period, noise, lsb, unusable }, off);
-}
-
-function describePulseRing(context: PulseContext, ring: PulseRing): RingReading {
-  const channel = context.capture.channels[context.map.ring!];
-  const judgement = judgeFit(ring.fit, ring.fit.noise);
-  const reading = describeRing(
-    channel,
-    ring.fit,
-    judgement,
-    context.capture.timebase.start_s,
-    context.timeRelative,
-  );
-  reading.nonlinear = ring.nonlinear;
-  return reading;
-}
-
-function refusal(context: PulseContext): RingReading | null {
-  if (context.map.ring === null) return null;
-  const channel = context.capture.channels[context.map.ring];
-  return refusedRing(
-    channel,
-    "no damped oscillation stands out of the noise after the switch-off",
-    context.noise,
-  );
-}
-
-function tankOf(context: PulseContext, fit: NonNullable<PulseEvidence["fit"]>): Tank {
-  const { frequency_Hz, decay_per_s } = fit.modes[0];
-  return inferTank(
-    { frequency_Hz, decay_per_s, covariance: modeCovariance(fit, 0), timeRelative: context.timeRelative },
-    context.setup,
-  );
+  return { reading: assemble(context, evidence, ring, tank, ramp), evidence };
 }
 
 function kickOf({ capture, map, period }: PulseContext, off: SwitchOff): PulseEvidence["kick"] {
