@@ -184,3 +184,13 @@ function settingsBeside(lines: Line[], rows: Row[], block: Block): Setting[] {
   }
   return settings.filter(({ values }) => values.length > 0);
 }
+
+/** The "key:value:" or "key=value" lines of a settings file. */
+export function sidecarSettings(text: string): Setting[] {
+  return text.split(/[\r\n]+/).flatMap((line, i) => {
+    const match = /^\s*([^:=]+?)\s*[:=]\s*(.*?)[:;,\s]*$/.exec(line);
+    return match && match[2] !== ""
+      ? [{ key: match[1], values: [{ text: match[2], column: 1 }], line: i + 1 }]
+      : [];
+  });
+}

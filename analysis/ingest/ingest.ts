@@ -20,6 +20,8 @@ interface IngestOptions {
   signal?: CancelSignal;
   /** Parses pieces elsewhere (worker threads); without one they are parsed here. */
   parser?: ChunkParser;
+  /** Text of a settings file that belongs to this one. */
+  sidecar?: string | null;
 }
 
 /** Takes over the bytes it is given: they may be transferred to another thread. */
@@ -77,7 +79,7 @@ export async function ingest(
   let head = await stream.next(headBytes);
   while (!stream.ended && isShort(head)) head = concatenate(head, await stream.next(3 * head.length));
   refuseForeign(head);
-  const layout = planLayout(head, stream.ended, setup);
+  const layout = planLayout(head, stream.ended, setup, options.sidecar ?? null);
   const columns = new Columns(layout, likelyRows(layout, source.size));
   const end = await readData(stream, head.subarray(layout.dataStart), layout, columns, options);
   return { captures: finish(layout, columns, setup, end), layout: layout.signature };

@@ -9,7 +9,7 @@ import type { RawChannel } from "./channel.ts";
 import { chooseDialect, type Dialect, type DialectChoice } from "./dialect.ts";
 import { commaNote, isCommaAmbiguous } from "./decimal-comma.ts";
 import { joinDecimalCommas } from "./join-commas.ts";
-import { readHeader, type Header } from "./header.ts";
+import { readHeader, sidecarSettings, type Header } from "./header.ts";
 import { splitLines, type Line } from "./lines.ts";
 import { nameColumns } from "./names.ts";
 import { refuseSpectrum } from "./spectrum.ts";
@@ -44,9 +44,15 @@ export interface Layout {
 
 const sniffedLines = 1500;
 
-/** `complete`: the head is the whole file, so its last line is not cut. */
-export function planLayout(head: Uint8Array, complete: boolean, setup: Setup): Layout {
+/** `complete`: the head is the whole file, so its last line is not cut. `sidecar`: settings from another file. */
+export function planLayout(
+  head: Uint8Array,
+  complete: boolean,
+  setup: Setup,
+  sidecar: string | null = null,
+): Layout {
   const parts = sniff(head, complete, setup);
+  if (sidecar !== null) parts.header.settings.push(...sidecarSettings(sidecar));
   const ambiguous = isCommaAmbiguous(parts);
   if (!ambiguous || setup.decimalMark === ".") return describeLayout(parts, false);
   if (setup.decimalMark !== ",") return describeLayout(parts, true);

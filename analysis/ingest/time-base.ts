@@ -76,11 +76,18 @@ function fromColumn(
 
 /** Values only (S4, S13), or a running number (S3, S20): start and step from the header, else asked. */
 function withoutColumn({ timing }: Layout, time: RecordTime, samples: number): Timed {
+  const range = timing.ranges.find(({ length }) => length === samples);
+  if (timing.intervals.length === 0 && range && range.start_s !== null && range.stop_s !== null) {
+    // Whether the stop is the last sample's time or one step later is not said.
+    const step_s = (range.stop_s - range.start_s) / (samples - 1);
+    const stepUncertainty_s = step_s / Math.sqrt(12) / (samples - 1);
+    return { timebase: { start_s: range.start_s, step_s, stepUncertainty_s, samples }, notes: [] };
+  }
   const [stated] = timing.intervals;
   const differing =
     stated && timing.intervals.find(({ step_s }) => Math.abs(step_s / stated.step_s - 1) > 0.01);
   if (stated && !differing) {
-    const start_s = (timing.start_s ?? 0) + (time.counterFrom && timing.start_s !== null ? 0 : 0);
+    const start_s = timing.start_s ?? 0;
     return { timebase: { start_s, step_s: stated.step_s, stepUncertainty_s: 0, samples }, notes: [] };
   }
   const what = differing

@@ -7,6 +7,8 @@ export interface StatedTiming {
   intervals: { step_s: number; key: string; line: number }[];
   start_s: number | null;
   lengths: number[];
+  /** First and last time of so many samples, where they stand together. */
+  ranges: { length: number; start_s: number | null; stop_s: number | null }[];
   axisUnit: string | null;
 }
 
@@ -16,10 +18,11 @@ const rateKey = /(sampl\w*|abtast\w*)[\s_.-]*(rate|freq\w*)|^(rate|fs|sps)\b|abt
 const notTiming = /vert|volt|scale|division|\bdiv\b|trigger (period|interval)|update|y[\s_-]*incr|\by\b/i;
 const startKey =
   /^(x|h|t|horizontal|time)?[\s_.-]*(origin|start|zero|t0|first|begin\w*)|^(t|x)0$|start time/i;
+const stopKey = /^(x|h|t|horizontal|time)?[\s_.-]*(stop|end|last)|(stop|end)[\s_.-]*(time)?$/i;
 const lengthKey = /length|points|samples|\bcount\b|\bmemory\b|number of|anzahl|^n$/i;
 
 export function statedTiming(header: Header): StatedTiming {
-  const timing: StatedTiming = { intervals: [], start_s: null, lengths: [], axisUnit: null };
+  const timing: StatedTiming = { intervals: [], start_s: null, lengths: [], ranges: [], axisUnit: null };
   for (const setting of header.settings) {
     const key = setting.key;
     if (/(horiz\w*|^x|time)[\s_-]*unit/i.test(key)) timing.axisUnit ??= setting.values[0].text;
@@ -27,11 +30,26 @@ export function statedTiming(header: Header): StatedTiming {
       addInterval(timing, setting, (value) => 1 / value, "Hz");
     else if (intervalKey.test(key) && !notTiming.test(key))
       addInterval(timing, setting, (value) => value, "s");
-    else if (lengthKey.test(key)) timing.lengths.push(...wholeNumbers(setting));
-    else if (startKey.test(key)) timing.start_s ??= quantity(setting, "s");
+    else if (lengthKey.test(key)) addLengths(timing, setting);
+    else if (stopKey.test(key) && timing.ranges.length > 0)
+      timing.ranges[timing.ranges.length - 1].stop_s ??= quantity(setting, "s");
+    else if (startKey.test(key)) addStart(timing, quantity(setting, "s"));
   }
   addFromNames(timing, header);
   return timing;
+}
+
+function addLengths(timing: StatedTiming, setting: Setting): void {
+  const lengths = wholeNumbers(setting);
+  timing.lengths.push(...lengths);
+  timing.ranges.push(...lengths.map((length) => ({ length, start_s: null, stop_s: null })));
+}
+
+/** A start behind a record length belongs to it; the first one is also the file's. */
+function addStart(timing: StatedTiming, start_s: number | null): void {
+  timing.start_s ??= start_s;
+  const range = timing.ranges[timing.ranges.length - 1];
+  if (range) range.start_s ??= start_s;
 }
 
 function addInterval(timing: StatedTiming, setting: Setting, from: (value: number) => number, unit: string) {

@@ -2,7 +2,7 @@ import { readdir, stat } from "node:fs/promises";
 import { basename, dirname, join, resolve } from "node:path";
 import type { Setup } from "../../analysis/setup/schema.ts";
 import { CallError, describeFailure, type Failure } from "./failure.ts";
-import { isCaptureFile } from "./reading/index.ts";
+import { isCaptureFile, isFurtherChannel, isSidecar } from "./reading/index.ts";
 import { readSetups, type MergedSetup } from "./setups.ts";
 
 export interface CaptureSource extends MergedSetup {
@@ -34,7 +34,8 @@ export async function findSources(paths: string[], stated: Setup | null): Promis
       if (seen.has(resolve(file)) || isSetupFile(file)) continue;
       seen.add(resolve(file));
       const setup = await orProblem(found, file, () => readSetups(file, stated), null);
-      if (setup) found.files.push({ path: file, ...setup });
+      // Further channels of a shot are read with its first file.
+      if (setup && !isFurtherChannel(file, setup.setup)) found.files.push({ path: file, ...setup });
     }
   }
   return found;
@@ -64,7 +65,9 @@ async function filesAt(path: string): Promise<string[]> {
       "no-captures",
       "there is no capture in this folder. Captures end in .csv, .txt, .tsv or .dat, also with .gz; subfolders are not searched",
     );
-  return names.toSorted(byName.compare).map((name) => join(path, name));
+  const files = names.toSorted(byName.compare).map((name) => join(path, name));
+  const sidecars = await Promise.all(files.map(isSidecar));
+  return files.filter((_, i) => !sidecars[i]);
 }
 
 /** Dropped or named along with the captures it belongs to; it is read with each of them. */

@@ -1,2 +1,3 @@
-export { isCaptureFile, readFile } from "./read-file.ts";
+export { isCaptureFile, isFurtherChannel, isSidecar } from "./neighbours.ts";
 export { useParseWorker } from "./parse-pool.ts";
+export { readFile } from "./read-file.ts";

@@ -1,9 +1,11 @@
-import { basename } from "node:path";
-import type { Capture } from "../../../analysis/capture.ts";
+import { basename, dirname, join } from "node:path";
+import type { Capture, Note } from "../../../analysis/capture.ts";
 import { ReadingError } from "../../../analysis/errors.ts";
 import { ingest, type CancelSignal } from "../../../analysis/ingest/index.ts";
 import type { Setup } from "../../../analysis/setup/schema.ts";
 import { openFile } from "./file-source.ts";
+import { difference, joinCaptures, setupOfFile } from "./join-channels.ts";
+import { channelSiblings, joinedFiles, readSidecar } from "./neighbours.ts";
 import { openParser } from "./parse-pool.ts";
 
 interface ReadOptions {
@@ -21,17 +23,40 @@ interface ReadFile {
   captures: Capture[];
 }
 
-/** Reads one capture file, `.gz` too. Throws ReadingError. */
-export async function readFile(
+/**
+ * Reads one capture file, `.gz` too, with its settings file where the interval stands there, and with the
+ * further files of its shot where the setup names them. Throws ReadingError.
+ */
+export async function readFile(path: string, setup: Setup, options: ReadOptions = {}): Promise<ReadFile> {
+  const files = joinedFiles(path, setup);
+  if (files.length === 0) {
+    const read = await readOne(path, setup, options);
+    return { ...read, captures: await withOffer(path, setup, read) };
+  }
+  const parts = [];
+  for (const file of files)
+    parts.push({ path: file, ...(await readOne(file, setupOfFile(setup, file), options)) });
+  return { ...parts[0], captures: joinCaptures(parts) };
+}
+
+async function readOne(path: string, setup: Setup, options: ReadOptions): Promise<ReadFile> {
+  const read = await readAlone(path, setup, options, null);
+  if (!read.captures.some(({ notes }) => notes.some(({ code }) => code === "interval-unknown"))) return read;
+  const sidecar = await readSidecar(path);
+  return sidecar === null ? read : readAlone(path, setup, options, sidecar);
+}
+
+async function readAlone(
   path: string,
   setup: Setup,
-  { onProgress, signal }: ReadOptions = {},
+  { onProgress, signal }: ReadOptions,
+  sidecar: string | null,
 ): Promise<ReadFile> {
   const file = await openFile(path);
   const parser = openParser(file.bytes);
   try {
     const progress = () => onProgress?.(file.share());
-    const { captures, layout } = await ingest(file.source, setup, { progress, signal, parser });
+    const { captures, layout } = await ingest(file.source, setup, { progress, signal, parser, sidecar });
     return { sha256: await file.finish(), bytes: file.bytes, layout, captures };
   } catch (error) {
     if (error instanceof ReadingError || !(error instanceof RangeError)) throw error;
@@ -46,6 +71,24 @@ export async function readFile(
   }
 }
 
-/** What a folder's listing takes for captures: by ending, sidecars and setups left out by name. */
-export const isCaptureFile = (name: string) =>
-  /\.(csv|txt|tsv|dat)(\.gz)?$/i.test(name) && !name.startsWith(".");
+/** Above this a neighbour is not read just to offer it. */
+const offered_bytes = 20e6;
+
+/** Files that differ only in a channel mark and share a time base are offered as one capture, never joined unasked. */
+async function withOffer(path: string, setup: Setup, { captures, bytes }: ReadFile): Promise<Capture[]> {
+  if (captures.length !== 1 || bytes > offered_bytes) return captures;
+  const matching: string[] = [];
+  for (const name of await channelSiblings(path)) {
+    const sibling = await readAlone(join(dirname(path), name), setup, {}, null).catch(() => null);
+    if (sibling && difference(captures[0], sibling.captures[0]) === null) matching.push(name);
+  }
+  if (matching.length === 0) return captures;
+  const note: Note = {
+    code: "channel-files",
+    text: `${matching.join(", ")} in the same folder may be further channels of this shot: same time base, names that differ in a channel mark.`,
+    question: "Are these files channels of one capture? Name them under channels[].file to join them.",
+    choices: ["one capture", "captures of their own"],
+    answers: "channels",
+  };
+  return [{ ...captures[0], notes: [...captures[0].notes, note] }];
+}
