@@ -48,8 +48,7 @@ export function Contents() {
       <SheetHead
         title="Contents"
         plainTitle="Contents"
-        beside={plural(runs, "run")}
-        page={place.readOnly ? "read only" : undefined}
+        beside={place.readOnly ? `${plural(runs, "run")}, read only` : plural(runs, "run")}
       />
       {place.note && <p className="problem">{place.note}</p>}
       <form className="search no-print" role="search" onSubmit={(event) => event.preventDefault()}>

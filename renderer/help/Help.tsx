@@ -4,7 +4,7 @@ import { SheetHead } from "../shell/SheetHead.tsx";
 export function Help() {
   return (
     <article className="help">
-      <SheetHead title="How to use this book" plainTitle="Help" />
+      <SheetHead title="How to use this book" plainTitle="Help" page="help" />
       <section>
         <h2>The road from coil to page</h2>
         <p>

@@ -7,6 +7,7 @@ export function KeyOverview({ onClose }: { onClose(): void }) {
   useEffect(() => dialog.current?.showModal(), []);
   const groups = new Map<string, Map<string, string>>();
   for (const { where, actions } of activeLayers()) {
+    if (actions.length === 0) continue;
     const group = groups.get(where) ?? new Map<string, string>();
     for (const { key, does } of actions) group.set(key, does);
     groups.set(where, group);

@@ -6,6 +6,7 @@ interface Props {
   title: ReactNode;
   plainTitle: string;
   beside?: ReactNode;
+  /** Where in the book this is; without it the sheet is the contents itself. */
   page?: string;
 }
 
@@ -18,7 +19,7 @@ export function SheetHead({ title, plainTitle, beside, page }: Props) {
       <h1>{title}</h1>
       {beside && <p className="beside">{beside}</p>}
       <p className="page-number">
-        {plainTitle !== "Contents" && <a href={hrefOf({ view: "book" })}>contents</a>}
+        {page !== undefined && <a href={hrefOf({ view: "book" })}>contents</a>}
         {page && <> · {page}</>}
       </p>
     </header>
