@@ -37,23 +37,28 @@ export interface RingOutcome {
 
 export const periodOf = (fit: RingFit): number => 1 / (fit.modes[0].frequency_Hz * fit.step_s);
 
-/** `expected`: what the coil's inductance ought to be, from ramp or setup; null unknown. */
+/** What else is known of the coil: its inductance from ramp or setup, its winding's resistance from the ramp. */
+export interface KnownCoil {
+  inductance_H: Figure;
+  resistance_ohm: Figure;
+}
+
 export function readRing(
   context: PulseContext,
   off: SwitchOff,
   kick: PulseEvidence["kick"],
-  expected: Figure,
+  known: KnownCoil,
 ): RingOutcome {
   const place = placeOf(context, off);
   const nothing = { fit: null, tank: null, switchOff: null, courseChanges: false };
   if (!place) return { ...nothing, ring: null };
-  const first = outcomeOf(context, ringOfPulse(place, off));
+  const first = outcomeOf(context, ringOfPulse(place, off), known);
   if (!first.fit) return first;
-  const doubt = doubtOf(context, first, off, kick, expected);
+  const doubt = doubtOf(context, first, off, kick, known.inductance_H);
   if (!doubt) return first;
   if (doubt.tooFast) {
-    const slower = slowerRing(context, place, first.fit, expected!);
-    if (slower.fit && !doubtOf(context, slower, off, kick, expected)) return slower;
+    const slower = slowerRing(context, place, first.fit, known);
+    if (slower.fit && !doubtOf(context, slower, off, kick, known.inductance_H)) return slower;
   }
   if (doubt.refused) return { ...nothing, ring: { ...first.ring!, ...refusedFigures, reason: doubt.reason } };
   const reason = [first.ring!.reason, doubt.reason].filter(Boolean).join("; ");
@@ -72,7 +77,7 @@ function placeOf(context: PulseContext, off: SwitchOff): Omit<Place, "from"> | n
   return { samples, step_s, to: off.freeTo, period, noise, lsb, unusable };
 }
 
-function outcomeOf(context: PulseContext, found: PulseRing | null): RingOutcome {
+function outcomeOf(context: PulseContext, found: PulseRing | null, known: KnownCoil): RingOutcome {
   const channel = context.capture.channels[context.map.ring!];
   if (!found) {
     const reason = "no damped oscillation stands out of the noise after the switch-off";
@@ -84,13 +89,14 @@ function outcomeOf(context: PulseContext, found: PulseRing | null): RingOutcome 
   const ring = describeRing(channel, found.fit, judgement, start_s, context.timeRelative);
   ring.nonlinear = found.nonlinear;
   const fit = judgement.quality === "refused" ? null : found.fit;
-  const tank = fit ? tankOf(context, fit) : null;
+  const tank = fit ? tankOf(context, fit, known) : null;
   return { ring, fit, tank, switchOff: fit ? found.switchOff : null, courseChanges: found.courseChanges };
 }
 
-function tankOf({ timeRelative, setup }: PulseContext, fit: RingFit): Tank {
+function tankOf({ timeRelative, setup }: PulseContext, fit: RingFit, known: KnownCoil): Tank {
   const { frequency_Hz, decay_per_s } = fit.modes[0];
-  return inferTank({ frequency_Hz, decay_per_s, covariance: modeCovariance(fit, 0), timeRelative }, setup);
+  const ring = { frequency_Hz, decay_per_s, covariance: modeCovariance(fit, 0), timeRelative };
+  return inferTank(ring, setup, known.resistance_ohm);
 }
 
 function doubtOf(
@@ -110,10 +116,10 @@ function slowerRing(
   context: PulseContext,
   place: Omit<Place, "from">,
   fast: RingFit,
-  expected: { value: number },
+  known: KnownCoil,
 ): RingOutcome {
-  const tank = tankOf(context, fast);
-  const period = periodOf(fast) * Math.sqrt(expected.value / tank.inductance_H!.value);
+  const tank = tankOf(context, fast, known);
+  const period = periodOf(fast) * Math.sqrt(known.inductance_H!.value / tank.inductance_H!.value);
   const found = disturbedRing({ ...place, from: fast.to, period });
-  return outcomeOf(context, found && { ...found, switchOff: null, nonlinear: null });
+  return outcomeOf(context, found && { ...found, switchOff: null, nonlinear: null }, known);
 }

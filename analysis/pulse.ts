@@ -8,7 +8,7 @@ import type { SwitchOff } from "./events/event-format.ts";
 import { isVoltage } from "./events/channels.ts";
 import { readRamp, type Ramp } from "./ramp/read-ramp.ts";
 import type { PulseReading, RingReading } from "./reading-format.ts";
-import { periodOf, readRing, type PulseContext } from "./pulse-ring.ts";
+import { periodOf, readRing, type KnownCoil, type PulseContext } from "./pulse-ring.ts";
 import type { Setup } from "./setup/schema.ts";
 
 export interface Pulse {
@@ -19,8 +19,8 @@ export interface Pulse {
 export function readPulse(context: PulseContext, off: SwitchOff, index: number): Pulse {
   const ramp = readRamp(context.capture, context.map, off, context.setup);
   const kick = kickOf(context, off);
-  const expected = expectedInductance(ramp?.reading.inductance_H ?? null, context.setup);
-  const { ring, fit, tank, switchOff, courseChanges } = readRing(context, off, kick, expected);
+  const known = knownCoil(ramp, context.setup);
+  const { ring, fit, tank, switchOff, courseChanges } = readRing(context, off, kick, known);
   const instant = switchOff ?? { at: off.at, u: off.u };
   const evidence: PulseEvidence = {
     index,
@@ -40,6 +40,14 @@ export function readPulse(context: PulseContext, off: SwitchOff, index: number):
     capacitance_F: tank?.capacitance_F ?? null,
   };
   return { reading: assemble(context, evidence, ring, tank, ramp), evidence };
+}
+
+/** The ramp's loop less what is stated to lie outside the coil. */
+function knownCoil(ramp: Ramp | null, setup: Setup): KnownCoil {
+  const loop = ramp?.reading.resistance_ohm ?? null;
+  const winding = loop && { value: loop.value - (setup.externalResistance_ohm ?? 0), u: loop.u };
+  const inductance_H = expectedInductance(ramp?.reading.inductance_H ?? null, setup);
+  return { inductance_H, resistance_ohm: winding && winding.value > 0 ? winding : null };
 }
 
 function kickOf({ capture, map, period }: PulseContext, off: SwitchOff): PulseEvidence["kick"] {

@@ -27,8 +27,9 @@ export interface RingInput {
 
 const none: Tank = { inductance_H: null, capacitance_F: null, resistance_ohm: null, budget: {} };
 
-export function inferTank(ring: RingInput, setup: Setup): Tank {
-  if (setup.capacitor_F) return fromCapacitor(ring, setup, setup.capacitor_F);
+/** `series_ohm`: the winding's resistance where the ramp gives it; tells series from parallel loss. */
+export function inferTank(ring: RingInput, setup: Setup, series_ohm: Figure = null): Tank {
+  if (setup.capacitor_F) return fromCapacitor(ring, setup, setup.capacitor_F, series_ohm);
   if (setup.knownInductance_H) return fromInductance(ring, setup.knownInductance_H);
   return none;
 }
@@ -57,15 +58,27 @@ const toleranceInput = (source: string, stated: Toleranced | null | undefined): 
 const naturalSquare = (f: number, a: number, interval: number) =>
   ((2 * Math.PI * f) ** 2 + a * a) / (interval * interval);
 
-function fromCapacitor(ring: RingInput, setup: Setup, capacitor: Toleranced): Tank {
+function fromCapacitor(ring: RingInput, setup: Setup, capacitor: Toleranced, series: Figure): Tank {
   const inputs = [
     ...ringInputs(ring),
     toleranceInput("capacitor tolerance", capacitor),
     toleranceInput("stray capacitance", setup.strayCapacitance_F),
+    { source: "ramp resistance", value: 0, u: 0, distribution: "normal" as const },
   ];
   const total = ([f, a, interval, c, stray]: number[]) =>
     effectiveCapacitance_F(c + stray, naturalSquare(f, a, interval), setup);
-  const inductance = (x: number[]) => 1 / (total(x) * naturalSquare(x[0], x[1], x[2]));
+  const plain = (x: number[]) => 1 / (total(x) * naturalSquare(x[0], x[1], x[2]));
+  if (
+    series &&
+    2 * ring.decay_per_s > (series.value + 2 * series.u) / plain(inputs.map(({ value }) => value))
+  )
+    inputs[inputs.length - 1] = { source: "ramp resistance", ...series, distribution: "normal" };
+  // ω0² = (1 + Rs/Rp)/(L·C) with 1/Rp = (2α − Rs/L)·C: at most 1/(4Q²) (methods.md 1).
+  const inductance = (x: number[]) => {
+    const [, decay, , , , rs] = x;
+    const l = plain(x);
+    return l * (1 + rs * total(x) * (2 * decay - rs / l));
+  };
   return tankOf(ring, inputs, inductance, total);
 }
 

@@ -9,15 +9,22 @@ import { addedCapacitorLine, type RingAtCapacitor } from "./added-capacitor.ts";
 import { smallestCapacitor_F } from "./capacitor-choice.ts";
 import type { AddedCapacitorLine, CoilReading, DriveStart, DwellTable } from "./coil-format.ts";
 import { combinePulses, weightedMean } from "./combine.ts";
-import { dwellTable } from "./dwell.ts";
+import { currentForEnergy_A, dwellTable } from "./dwell.ts";
 import { stresses } from "./stress.ts";
 
 /** Supplies about the stated one and winding temperatures the dwell table is made for. */
 const SUPPLY_SHARES = [0.5, 0.75, 1, 1.2];
 const TEMPERATURES_C = [-20, 20, 60, 100];
 
+/** What the dwell table is made for; without one, the current at which the captures switched off. */
+export type DwellGoal = { current_A: number } | { energy_J: number };
+
 /** readings[k] was taken with setups[k]; all of one coil. Sparking pulses are left out of ring figures. */
-export function coilFromCaptures(readings: CaptureReading[], setups: Setup[]): CoilReading {
+export function coilFromCaptures(
+  readings: CaptureReading[],
+  setups: Setup[],
+  goal: DwellGoal | null = null,
+): CoilReading {
   const setup: Setup = setups.at(-1) ?? {};
   const pulses = readings.flatMap((reading) => reading.pulses);
   const line = lineOf(readings, setups);
@@ -28,7 +35,7 @@ export function coilFromCaptures(readings: CaptureReading[], setups: Setup[]): C
   // Peaks and the capacitor in use are those of the last capture; its setup is the one in force.
   const last = readings.slice(-1);
   const drive = driveOf(quietOf(last), pulses, setup, inductance_H);
-  const dwell = dwellOf(pulses, setup, inductance_H, notes);
+  const dwell = dwellOf(pulses, setup, inductance_H, goal, notes);
   if (line.reason)
     notes.push({ code: "no-capacitor-line", text: `No added-capacitor line: ${line.reason}.` });
   if (!ramp) notes.push({ code: "no-ramp", text: "No current channel in these captures: no ramp." });
@@ -121,6 +128,7 @@ function dwellOf(
   pulses: PulseReading[],
   setup: Setup,
   inductance_H: Figure,
+  goal: DwellGoal | null,
   notes: Note[],
 ): DwellTable | null {
   const ramp = combineRamps(pulses);
@@ -150,7 +158,7 @@ function dwellOf(
   };
   return dwellTable(
     winding,
-    current.value,
+    goal ? ("energy_J" in goal ? currentForEnergy_A(l.value, goal.energy_J) : goal.current_A) : current.value,
     SUPPLY_SHARES.map((share) => share * supply),
     TEMPERATURES_C,
   );

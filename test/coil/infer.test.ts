@@ -116,6 +116,22 @@ describe("L, C and R", () => {
     expect(of("ring fit")).toBeCloseTo((2 * 0.1) / 3424.5, 6);
   });
 
+  it("with the winding's resistance from the ramp, series and parallel loss are told apart (methods.md 1)", () => {
+    const [l, c, rs, rp] = [7.5e-3, 288e-9, 12, 4000];
+    // s² + (Rs/L + 1/(Rp·C))·s + (1 + Rs/Rp)/(L·C) = 0
+    const decay_per_s = (rs / l + 1 / (rp * c)) / 2;
+    const frequency_Hz = Math.sqrt((1 + rs / rp) / (l * c) - decay_per_s ** 2) / (2 * Math.PI);
+    const lossy = {
+      frequency_Hz,
+      decay_per_s,
+      covariance: [1e-4, 0, 1e-2] as [number, number, number],
+      timeRelative: 0,
+    };
+    expect(inferTank(lossy, { capacitor_F: c }).inductance_H!.value / l).toBeCloseTo(1 / (1 + rs / rp), 6);
+    const told = inferTank(lossy, { capacitor_F: c }, { value: rs, u: 0.01 });
+    expect(told.inductance_H!.value / l).toBeCloseTo(1, 5);
+  });
+
   it("from a known inductance the capacitance, from nothing nothing", () => {
     expect(inferTank(ring, { knownInductance_H: 7.5e-3 }).capacitance_F!.value).toBeCloseTo(
       1 / (7.5e-3 * square),

@@ -1,6 +1,6 @@
 import { describe, expect, it } from "vitest";
 import { addedCapacitorLine, weightedLine } from "../../analysis/coil/added-capacitor.ts";
-import { dwellTable, timeToCurrent } from "../../analysis/coil/dwell.ts";
+import { currentForEnergy_A, dwellTable, timeToCurrent } from "../../analysis/coil/dwell.ts";
 import { coilFromCaptures } from "../../analysis/coil/line.ts";
 import { readCapture } from "../../analysis/reading.ts";
 import { captureOf, scoped } from "../reference/captures.ts";
@@ -141,6 +141,15 @@ describe("dwell", () => {
 
   it("99 % of V/R after 4.6 L/R (exactly ln 100)", () => {
     expect(timeToCurrent(winding, 0.99 * 3, 12, 20)!.value).toBeCloseTo((L / 4) * Math.log(100), 9);
+  });
+
+  it("time to a stored energy: at the current that holds it", () => {
+    const current = currentForEnergy_A(30e-3, L);
+    expect(0.5 * L * current ** 2).toBeCloseTo(30e-3, 12);
+    expect(timeToCurrent(winding, current, 24, 20)!.value).toBeCloseTo(
+      (-L / 4) * Math.log(1 - (current * 4) / 24),
+      9,
+    );
   });
 
   it("a current the supply never drives is null, not infinite", () => {
