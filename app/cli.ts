@@ -5,7 +5,8 @@ import type { Command } from "./commands/usage.ts";
 const usage = `ringbook – reads oscilloscope captures of switched coils
 
   ringbook read PATH… [--setup FILE] [--json] [--book FILE]   read captures: a line each, one per pulse
-  ringbook coil PATH… | --coil NAME [--json]                  added-capacitor line, ramp, drive design
+  ringbook coil PATH… | --coil NAME [--json]                  added-capacitor line, ramp, drive design;
+                [--current A | --energy J]                    … with the dwell table for that
   ringbook log [--run NAME] [--coil NAME] [--json]            what the bench book holds
   ringbook export --run NAME [--kind csv|jsonl] [-o FILE]     a run's pulses for other programs
   ringbook report --run NAME [-o FILE]                        a run as one HTML page to hand over

@@ -1,5 +1,5 @@
 import { formatFigure, formatNumber } from "../../analysis/format/figure.ts";
-import { coilFromCaptures } from "../../analysis/coil/line.ts";
+import { coilFromCaptures, type DwellGoal } from "../../analysis/coil/line.ts";
 import type { CaptureReading } from "../../analysis/reading-format.ts";
 import type { Setup } from "../../analysis/setup/schema.ts";
 import { capturesOf } from "../host/handlers/coil.ts";
@@ -16,19 +16,22 @@ interface Measured {
   setups: Setup[];
 }
 
-/** ringbook coil PATH… | --coil NAME [--setup FILE] [--json] [--book FILE] */
+/** ringbook coil PATH… | --coil NAME [--current A | --energy J] [--setup FILE] [--json] [--book FILE] */
 export const run = (args: string[]) =>
   withUsage(async () => {
     const { values, positionals } = readArguments(args, {
       coil: { type: "string" },
       setup: { type: "string" },
+      current: { type: "string" },
+      energy: { type: "string" },
       json: { type: "boolean" },
       book: { type: "string" },
     });
     if ((positionals.length === 0) === (values.coil === undefined))
       throw new UsageError("coil wants the paths of its captures, or --coil NAME for one of the book");
+    const goal = goalOf(values);
     const print = (measured: Measured) => {
-      const coil = coilFromCaptures(measured.readings, measured.setups);
+      const coil = coilFromCaptures(measured.readings, measured.setups, goal);
       say(values.json ? JSON.stringify(coil) : coilText(coil, measured.files));
     };
     if (values.coil !== undefined) return fromBook(values.coil, values.book, print);
@@ -43,6 +46,20 @@ export const run = (args: string[]) =>
       });
     return problems.length > 0 ? 1 : 0;
   });
+
+/** The dwell table is for a current in ampere or an energy in joule. */
+function goalOf({ current, energy }: { current?: string; energy?: string }): DwellGoal | null {
+  if (current !== undefined && energy !== undefined)
+    throw new UsageError("the dwell table is for --current or for --energy, not for both");
+  const positive = (name: string, text: string) => {
+    const value = Number(text);
+    if (!(value > 0) || !Number.isFinite(value))
+      throw new UsageError(`--${name} wants a positive number, not "${text}"`);
+    return value;
+  };
+  if (current !== undefined) return { current_A: positive("current", current) };
+  return energy === undefined ? null : { energy_J: positive("energy", energy) };
+}
 
 const fromBook = (coil: string, path: string | undefined, print: (measured: Measured) => void) =>
   withBook(path, async (book) => {
@@ -78,7 +95,7 @@ const shareText = (share: number | null) =>
   share === null ? "" : `, ${Math.round(share * 100)} % of its rating${share >= 0.8 ? " (WARNING)" : ""}`;
 
 function lineText({ addedCapacitor: line }: Coil, files: string[]): string[] {
-  if (!line) return [];
+  if (!line || line.inductance_H === null) return [];
   return [
     `  added-capacitor line over ${line.points.length} captures: L ${formatFigure(line.inductance_H, "H")}` +
       `  self-capacitance ${formatFigure(line.selfCapacitance_F, "F")}` +
