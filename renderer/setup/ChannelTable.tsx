@@ -1,9 +1,10 @@
 /** The file's columns as they were read: role, unit, scale, resolution; role and scale can be put right. */
 import { channelRoles } from "../../analysis/capture.ts";
 import type { CaptureReading, ChannelReading } from "../../analysis/reading-format.ts";
-import type { Setup } from "../../analysis/setup/schema.ts";
+import type { Setup, SetupChannel } from "../../analysis/setup/schema.ts";
 import { parseEntry } from "../format/entry.ts";
 import { plain, stated } from "../format/figure.ts";
+import { withChannel } from "./channels.ts";
 import { roleName } from "../pulse/panels.ts";
 import type { Change } from "./SetupCard.tsx";
 
@@ -14,15 +15,8 @@ interface Props {
 }
 
 export function ChannelTable({ setup, reading, onChange }: Props) {
-  const put = (position: number, channel: ChannelReading, part: object) => {
-    const channels = setup.channels ?? [];
-    const known = channels.findIndex((other) => other.name === channel.name || other.position === position);
-    const changed =
-      known < 0
-        ? [...channels, { name: channel.name, ...part }]
-        : channels.map((other, at) => (at === known ? { ...other, ...part } : other));
-    onChange({ channels: changed });
-  };
+  const put = (position: number, channel: ChannelReading, part: Partial<SetupChannel>) =>
+    onChange({ channels: withChannel(setup, channel.name, position, part) });
   return (
     <div className="wide-table">
       <table className="channels">
@@ -46,7 +40,9 @@ export function ChannelTable({ setup, reading, onChange }: Props) {
                 <select
                   aria-label={`role of ${channel.name}`}
                   value={channel.role}
-                  onChange={(event) => put(position, channel, { role: event.target.value })}
+                  onChange={(event) =>
+                    put(position, channel, { role: event.target.value as SetupChannel["role"] })
+                  }
                 >
                   {channelRoles.map((role) => (
                     <option key={role} value={role}>

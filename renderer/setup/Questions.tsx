@@ -3,7 +3,11 @@ import { useState } from "react";
 import type { RunDetail } from "../../app/bridge.ts";
 import type { Note } from "../../analysis/capture.ts";
 import type { CaptureReading } from "../../analysis/reading-format.ts";
+import type { Setup, SetupChannel } from "../../analysis/setup/schema.ts";
 import { parseEntry } from "../format/entry.ts";
+import { stated } from "../format/figure.ts";
+import { unitPart, withChannel } from "./channels.ts";
+import { CountsAnswer } from "./CountsAnswer.tsx";
 import { allFields } from "./fields.ts";
 import { Preview } from "./Preview.tsx";
 import type { Change } from "./SetupCard.tsx";
@@ -24,21 +28,20 @@ export function Questions({ run, capture, reading, onChange }: Props) {
   return (
     <div className="questions">
       {once.map((note) => (
-        <Question key={note.code + note.question} note={note} onChange={onChange} />
+        <Question key={note.code + note.question} note={note} setup={run.setup} onChange={onChange} />
       ))}
       {capture !== null && <Preview capture={capture} />}
     </div>
   );
 }
 
-function Question({ note, onChange }: { note: Note; onChange: Change }) {
-  const [text, setText] = useState("");
-  const field = allFields.find((field) => field.key === note.answers);
-  const answer = (words: string) => {
-    if (!note.answers) return;
-    const number = parseEntry(words, field?.unit ?? "");
-    onChange({ [note.answers]: field?.kind === "choice" || number === null ? words : number });
-  };
+interface QuestionProps {
+  note: Note;
+  setup: Setup;
+  onChange: Change;
+}
+
+function Question({ note, setup, onChange }: QuestionProps) {
   return (
     <div className="question" role="group" aria-label={note.question}>
       <p>
@@ -47,34 +50,64 @@ function Question({ note, onChange }: { note: Note; onChange: Change }) {
         </span>{" "}
         <strong>{note.question}</strong> {note.text}
       </p>
-      <p>
-        {note.answers &&
-          note.choices?.map((choice) => (
-            <button key={choice} type="button" onClick={() => answer(choice)}>
-              {choice}
-            </button>
-          ))}
-        {!note.answers && note.choices && (
-          <span className="quiet">
-            Possible: {note.choices.join(", ")}. Put it right on the back of the card.
-          </span>
-        )}
-        {note.answers && (!note.choices || note.choices.length === 0) && (
-          <form
-            onSubmit={(event) => {
-              event.preventDefault();
-              answer(text);
-            }}
-          >
-            <input
-              aria-label={note.question}
-              value={text}
-              onChange={(event) => setText(event.target.value)}
-            />{" "}
-            {field?.unit} <button type="submit">answer</button>
-          </form>
-        )}
-      </p>
+      {note.answers === "channels" ? (
+        <ChannelAnswer note={note} setup={setup} onChange={onChange} />
+      ) : (
+        <FieldAnswer note={note} onChange={onChange} />
+      )}
     </div>
+  );
+}
+
+/** About one column: its unit is chosen, its counts are stated; joining files is left to the setup file. */
+function ChannelAnswer({ note: { channel, choices }, setup, onChange }: QuestionProps) {
+  if (channel === undefined)
+    return <p className="quiet">Answer it in the folder’s setup.json, under channels.</p>;
+  const put = (part: Partial<SetupChannel>) =>
+    onChange({ channels: withChannel(setup, channel, null, part) });
+  if (!choices) return <CountsAnswer onAnswer={put} />;
+  return (
+    <p>
+      {choices.map((choice) => (
+        <button key={choice} type="button" onClick={() => put(unitPart(choice))}>
+          {choice}
+        </button>
+      ))}
+    </p>
+  );
+}
+
+function FieldAnswer({ note, onChange }: Omit<QuestionProps, "setup">) {
+  const [text, setText] = useState("");
+  const field = allFields.find((field) => field.key === note.answers);
+  if (!field) return <p className="quiet">{note.choices?.join(", ")}</p>;
+  const answer = (words: string) => {
+    const number = parseEntry(words, field.unit);
+    if (field.kind === "choice") onChange({ [field.key]: words });
+    else if (number !== null) onChange({ [field.key]: number });
+  };
+  const worded = (choice: string) =>
+    field.choices?.find(({ value }) => value === choice)?.words ??
+    (field.kind === "number" ? stated(Number(choice), field.unit) : choice);
+  if (note.choices && note.choices.length > 0)
+    return (
+      <p>
+        {note.choices.map((choice) => (
+          <button key={choice} type="button" onClick={() => answer(choice)}>
+            {worded(choice)}
+          </button>
+        ))}
+      </p>
+    );
+  return (
+    <form
+      onSubmit={(event) => {
+        event.preventDefault();
+        answer(text);
+      }}
+    >
+      <input aria-label={note.question} value={text} onChange={(event) => setText(event.target.value)} />{" "}
+      {field.unit} <button type="submit">answer</button>
+    </form>
   );
 }

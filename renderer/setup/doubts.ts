@@ -2,6 +2,7 @@
 import type { CaptureReading } from "../../analysis/reading-format.ts";
 import type { Setup } from "../../analysis/setup/schema.ts";
 import { plain, stated } from "../format/figure.ts";
+import { withChannel } from "./channels.ts";
 import { allFields, type Field } from "./fields.ts";
 
 export interface Doubt {
@@ -63,19 +64,12 @@ function probeDoubts(setup: Setup, reading: CaptureReading): Doubt[] {
         offers: [
           {
             words: "Yes, it is in the file already",
-            change: { channels: withScale(setup, name, position, 1) },
+            change: { channels: withChannel(setup, name, position, { scale: 1 }) },
           },
         ],
       },
     ];
   });
-}
-
-export function withScale(setup: Setup, name: string, position: number, scale: number): Setup["channels"] {
-  const channels = setup.channels ?? [];
-  const known = channels.findIndex((channel) => channel.name === name || channel.position === position);
-  if (known < 0) return [...channels, { position, name, scale }];
-  return channels.map((channel, at) => (at === known ? { ...channel, scale } : channel));
 }
 
 const capital = (text: string) => text[0].toUpperCase() + text.slice(1);

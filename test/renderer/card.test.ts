@@ -3,6 +3,7 @@ import { describe, expect, it } from "vitest";
 import type { CaptureReading, ChannelReading } from "../../analysis/reading-format.ts";
 import { parseSetup } from "../../analysis/setup/parse.ts";
 import { setupSchema } from "../../analysis/setup/schema.ts";
+import { unitPart, withChannel } from "../../renderer/setup/channels.ts";
 import { doubts } from "../../renderer/setup/doubts.ts";
 import { allFields } from "../../renderer/setup/fields.ts";
 import { draftOf, readDraft, shownValue } from "../../renderer/setup/value.ts";
@@ -82,5 +83,28 @@ describe("fields", () => {
     expect(readDraft(field("capacitor_F"), { text: "340n", tolerance: "2" }, before)).toEqual({
       value: { value: 3.4e-7, tolerance: 0.02, k: 2 },
     });
+  });
+});
+
+describe("a statement about one column", () => {
+  it("joins what is stated of it, and leaves the others alone", () => {
+    const setup = {
+      channels: [
+        { name: "A", role: "gate" as const },
+        { position: 1, scale: 10 },
+      ],
+    };
+    expect(withChannel(setup, "B", 1, { unit: "V" })).toEqual([
+      { name: "A", role: "gate" },
+      { position: 1, scale: 10, unit: "V" },
+    ]);
+    expect(withChannel(setup, "C", 2, { unit: "A" })).toHaveLength(3);
+    expect(withChannel({}, "C", null, { unit: "A" })).toEqual([{ name: "C", unit: "A" }]);
+  });
+
+  it("takes a prefixed unit as the plain unit and a factor", () => {
+    expect(unitPart("V")).toEqual({ unit: "V" });
+    expect(unitPart("mV")).toEqual({ unit: "V", scale: 1e-3 });
+    expect(unitPart("mA")).toEqual({ unit: "A", scale: 1e-3 });
   });
 });
