@@ -76,8 +76,10 @@ function fromCapacitor(ring: RingInput, setup: Setup, capacitor: Toleranced, ser
   // ω0² = (1 + Rs/Rp)/(L·C) with 1/Rp = (2α − Rs/L)·C: at most 1/(4Q²) (methods.md 1).
   const inductance = (x: number[]) => {
     const [, decay, , , , rs] = x;
-    const l = plain(x);
-    return l * (1 + rs * total(x) * (2 * decay - rs / l));
+    const lossless = plain(x);
+    let l = lossless;
+    for (let round = 0; round < 3; round++) l = lossless * (1 + rs * total(x) * (2 * decay - rs / l));
+    return l;
   };
   return tankOf(ring, inputs, inductance, total);
 }
