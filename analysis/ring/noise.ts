@@ -12,9 +12,23 @@ export interface Colour {
   mean: number;
 }
 
-/** Null where there are too few values to tell a colour. */
+/** Lags at which coloured residuals resemble themselves; spread so that no period escapes all of them. */
+const LAGS = [1, 2, 3, 5, 8, 13, 21, 34];
+
+/** No correlation at any of the lags beyond what chance gives once in some hundred records. */
+function isWhite(residual: Float64Array, count: number): boolean {
+  let power = 0;
+  for (let i = 0; i < count; i++) power += residual[i] * residual[i];
+  return LAGS.every((lag) => {
+    let sum = 0;
+    for (let i = lag; i < count; i++) sum += residual[i] * residual[i - lag];
+    return Math.abs(sum) < (3 / Math.sqrt(count)) * power;
+  });
+}
+
+/** Null where the residuals are white, or too few values to tell a colour. */
 export function colourOf(residual: Float64Array, count: number): Colour | null {
-  if (count < 64) return null;
+  if (count < 64 || isWhite(residual, count)) return null;
   const n = powerOfTwo(count);
   powerSpectrum(residual, count, n, spectrum);
   const half = n / 2;
