@@ -27,19 +27,23 @@ export function doubts(setup: Setup, reading: CaptureReading | null): Doubt[] {
 /** Slips of a prefix: a step of a thousand that leads back to what is usual. */
 const slips = [1e-3, 1e-6, 1e-9, 1e3, 1e6];
 
+/** Usual sizes that a slip of the prefix could have turned into this one; none where it is usual itself. */
+export function meantSizes({ usual }: Field, size: number): number[] {
+  if (!usual || size === 0 || (size >= usual[0] && size <= usual[1])) return [];
+  const meant = slips.map((slip) => Number((size * slip).toPrecision(12)));
+  return meant.filter((guess) => guess >= usual[0] && guess <= usual[1]).slice(0, 3);
+}
+
 function sizeDoubt(field: Field, setup: Setup): Doubt | null {
   const value = setup[field.key] as unknown;
   const size = sizeOf(value);
   if (!field.usual || size === null || size === 0) return null;
   const [low, high] = field.usual;
   if (size >= low && size <= high) return null;
-  const meant = slips
-    .map((slip) => Number((size * slip).toPrecision(12)))
-    .filter((guess) => guess >= low && guess <= high);
   return {
     key: field.key,
     text: `${capital(field.words)} ${stated(size, field.unit)}: ${stated(low, field.unit)} to ${stated(high, field.unit)} is usual. Is it meant?`,
-    offers: meant.slice(0, 3).map((guess) => ({
+    offers: meantSizes(field, size).map((guess) => ({
       words: `I meant ${stated(guess, field.unit)}`,
       change: { [field.key]: typeof value === "object" ? { ...(value as object), value: guess } : guess },
     })),

@@ -1,7 +1,9 @@
 /** A setup value as the card writes it, and as the user types it back. */
-import type { Setup, Toleranced } from "../../analysis/setup/schema.ts";
+import * as v from "valibot";
+import { setupSchema, type Setup, type Toleranced } from "../../analysis/setup/schema.ts";
 import { parseEntry, parsePercent } from "../format/entry.ts";
 import { percent, stated } from "../format/figure.ts";
+import { meantSizes } from "./doubts.ts";
 import type { Field } from "./fields.ts";
 
 export function shownValue(field: Field, setup: Setup): string | null {
@@ -51,6 +53,8 @@ export function readDraft(
     return {
       problem: `Write a number${field.unit ? ` with or without prefix, as 4.7 or 330n (in ${field.unit})` : ""}.`,
     };
+  const absurd = absurdity(field, number);
+  if (absurd) return { problem: absurd };
   if (field.kind === "number") return { value: number };
   if (draft.tolerance.trim() === "") return { value: number };
   const tolerance = parsePercent(draft.tolerance);
@@ -58,4 +62,12 @@ export function readDraft(
   const old = before[field.key] as Toleranced | null | undefined;
   const k = typeof old === "object" && old?.k ? { k: old.k } : {};
   return { value: { value: number, tolerance, ...k } };
+}
+
+/** What the schema would refuse is said here already, with what may have been meant. */
+function absurdity(field: Field, number: number): string | null {
+  if (v.safeParse(setupSchema.entries[field.key], number).success) return null;
+  const meant = meantSizes(field, number).map((size) => stated(size, field.unit));
+  const ask = meant.length > 0 ? ` Did you mean ${meant.join(" or ")}?` : "";
+  return `${stated(number, field.unit)} can’t be meant.${ask}`;
 }

@@ -78,6 +78,11 @@ describe("fields", () => {
     expect(readDraft(field("capacitor_F"), { text: "330n", tolerance: "500" }, {})).toHaveProperty("problem");
   });
 
+  it("question an absurd size with what may have been meant: 330 mF", () => {
+    const read = readDraft(field("capacitor_F"), { text: "330 mF", tolerance: "" }, {});
+    expect(read).toEqual({ problem: "330\u00a0mF can’t be meant. Did you mean 330\u00a0nF or 330\u00a0pF?" });
+  });
+
   it("keep a stated coverage factor when the value changes", () => {
     const before = { capacitor_F: { value: 3.3e-7, tolerance: 0.02, k: 2 } };
     expect(readDraft(field("capacitor_F"), { text: "340n", tolerance: "2" }, before)).toEqual({
