@@ -9,7 +9,7 @@ import { afterAll, beforeAll, expect, it } from "vitest";
 import type { PulseRow } from "../../app/bridge.ts";
 import { describeWindow, launch } from "./chromium.ts";
 import { openDoor, type TestDoor } from "./door.ts";
-import { closeSilent, openContents, openSheet, type Sheet } from "./sheet.ts";
+import { closeSilent, goTo, openContents, openSheet, type Sheet } from "./sheet.ts";
 
 const folder = join(import.meta.dirname, "../../docs/pictures");
 const keep = process.env.PICTURES === "1";
@@ -94,28 +94,30 @@ describeWindow("pictures of the demo run", () => {
   let browser: Browser;
   let door: TestDoor;
   let rows: PulseRow[];
+  let sheet: Sheet;
   beforeAll(async () => {
     [browser, door] = await Promise.all([launch(), openDoor({ demo: true })]);
     ({ rows } = await door.ask("pulses", { run: 1, limit: 1000 }));
+    sheet = await openSheet(browser, door);
+    await sheet.page.locator(".sheet-head").waitFor();
     if (keep) mkdirSync(folder, { recursive: true });
   });
   afterAll(async () => {
+    await closeSilent(sheet);
     await browser?.close();
     await door?.end();
   });
 
   it.each(pictures)("$name", async ({ name, path, width, height, dark, shows, before }) => {
-    const options = {
-      viewport: { width, height },
-      colorScheme: dark ? ("dark" as const) : ("light" as const),
-    };
-    const sheet = await openSheet(browser, door, path(rows), options);
-    await sheet.page.locator(shows).first().waitFor({ state: "attached", timeout: 15_000 });
+    const { page } = sheet;
+    await page.setViewportSize({ width, height });
+    await page.emulateMedia({ colorScheme: dark ? "dark" : "light" });
+    await goTo(page, path(rows));
+    await page.locator(shows).first().waitFor({ state: "attached" });
     await before?.(sheet);
-    await sheet.page.waitForTimeout(400);
-    const bytes = await sheet.page.screenshot(keep ? { path: join(folder, `${name}.png`) } : {});
+    await page.waitForTimeout(300);
+    const bytes = await page.screenshot(keep ? { path: join(folder, `${name}.png`) } : {});
     // A blank page of this size compresses to a few kilobytes.
     expect(bytes.length).toBeGreaterThan(15_000);
-    await closeSilent(sheet);
   });
 });

@@ -5,7 +5,7 @@ import { afterAll, afterEach, beforeAll, expect, it } from "vitest";
 import type { PulseRow } from "../../app/bridge.ts";
 import { describeWindow, launch } from "./chromium.ts";
 import { openDoor, type TestDoor } from "./door.ts";
-import { closeSilent, expectAccessible, openSheet, type Sheet } from "./sheet.ts";
+import { closeSilent, expectAccessible, goTo, openSheet, type Sheet } from "./sheet.ts";
 
 const pathOf = (row: PulseRow) => `/pulse/1/${row.capture}/${row.pulse}`;
 
@@ -49,13 +49,13 @@ describeWindow("a pulse", () => {
   });
 
   it("has leaders that neither cross the trace nor each other, as drawn", async () => {
+    const page = await open(rows[0]);
     for (const row of [rows[0], first((row) => row.verdict === "no-spark"), rows.at(-1)!]) {
-      const page = await open(row);
-      const crossings = await page.evaluate(countCrossings);
-      expect(crossings, `pulse ${row.number}`).toEqual({ trace: 0, leaders: 0 });
-      await closeSilent(sheet);
+      await goTo(page, pathOf(row));
+      await page.getByText(`pulse ${row.number} of ${rows.length}`).waitFor();
+      await page.locator(".pulse-figure .leader").first().waitFor({ state: "attached" });
+      expect(await page.evaluate(countCrossings), `pulse ${row.number}`).toEqual({ trace: 0, leaders: 0 });
     }
-    sheet = undefined;
   });
 
   it("takes the user's verdict with one key and a remark, shows both, counts it, and undoes it", async () => {
