@@ -65,15 +65,34 @@ function collapses(
   const least = Math.max(LEAST * largest, 10 * noise);
   const stays = Math.max(2, Math.round(0.01 * period));
   const strikes: SecondaryEvidence["strikes"] = [];
-  for (let i = from + 2; i + FALLS_WITHIN + stays < to; i++) {
+  for (let i = from + 3; i + FALLS_WITHIN + stays < to; i++) {
     const before = samples[i];
-    if (Math.abs(before) < least || !fallsAway(samples, i, stays)) continue;
+    if (Math.abs(before) < least || !breaksOff(samples, i, from) || !fallsAway(samples, i, stays)) continue;
     const onset = lastHigh(samples, i);
     const extinction = comesBack(samples, onset + 2, to, before, noise);
     strikes.push({ onset: onset + 0.5, extinction, breakdown_V: extrapolated(samples, onset) });
     i = Math.max(i + FALLS_WITHIN + stays, Math.floor(extinction ?? to));
   }
   return strikes;
+}
+
+/** A breakdown's bend against the voltage itself, and against the bends of the samples that lead to it. */
+const BEND = { ofVoltage: 0.45, ofBefore: 3 };
+const LEADS = 10;
+
+const bendAt = (samples: Float64Array, k: number) =>
+  Math.abs(samples[k + 1] - 3 * samples[k] + 3 * samples[k - 1] - samples[k - 2]);
+
+/**
+ * No ring leads into a breakdown: the samples before say nothing of it, so the third difference there is about
+ * the voltage itself and unlike those before. That of a ring with n samples a cycle is (2·sin(π/n))³ of its
+ * amplitude, a seventh at 12, and returns every half cycle.
+ */
+function breaksOff(samples: Float64Array, i: number, from: number): boolean {
+  let [most, before] = [0, 0];
+  for (let k = i - 1; k < i + FALLS_WITHIN; k++) most = Math.max(most, bendAt(samples, k));
+  for (let k = Math.max(from + 2, i - LEADS); k < i - 2; k++) before = Math.max(before, bendAt(samples, k));
+  return most > BEND.ofVoltage * Math.abs(samples[i]) && most > BEND.ofBefore * before;
 }
 
 function fallsAway(samples: Float64Array, i: number, stays: number): boolean {
