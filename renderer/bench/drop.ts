@@ -50,8 +50,9 @@ export async function sourcesOf(
   const sources: Source[] = [];
   const ordered = files.toSorted((a, b) => Number(isSidecar(b.name)) - Number(isSidecar(a.name)));
   for (const [at, { name, file }] of ordered.entries()) {
-    if (pathOf) sources.push({ path: pathOf(file) });
-    else {
+    if (pathOf) {
+      if (!isSidecar(name)) sources.push({ path: pathOf(file) });
+    } else {
       const bytes = new Uint8Array(await file.arrayBuffer());
       const kept = await bench.call("addFile", { name: inFolder(name), bytes });
       if (!isSidecar(name)) sources.push(kept);
