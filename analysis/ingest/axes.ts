@@ -60,7 +60,9 @@ function isCounter({ head, name }: HeadColumn): boolean {
 
 function isNamedTime({ name, head, column }: HeadColumn): boolean {
   const named = timeName.test(name.name) || (name.name === "" && name.unit?.symbol === "s");
-  if (name.unit && name.unit.symbol !== "s" && name.unit.symbol !== "Hz") return false;
+  if (/^(V|A|W|ohm|dB|%|°C?)$/.test(name.unit?.symbol ?? "")) return false;
+  // Rounded until nothing is left of the steps: the header may still know the interval.
+  if (named && name.unit?.symbol === "s" && head.every((value) => value === head[0])) return true;
   // Packets of two rows go up and down as often: a time all the same, refused later by name.
   if (named || name.unit?.symbol === "Hz") return isMonotonic(head, 0.45);
   return name.unit?.symbol === "s" && (column === 0 ? isMonotonic(head, 0.7) : isEven(head));

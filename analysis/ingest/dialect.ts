@@ -18,8 +18,10 @@ export interface Run {
   from: number;
   to: number;
   width: number;
-  /** Number cells less text cells: what makes one reading of the file better than another. */
+  /** Number cells less a part of the text cells: what makes one reading of the file better than another. */
   score: number;
+  numbers: number;
+  texts: number;
 }
 
 export interface DialectChoice {
@@ -34,21 +36,23 @@ const separators = ["\t", ";", ",", " "];
 const judged = 40_000;
 /** Lines with as many words as numbers ("Event 7") are prose unless there are many. */
 const fewestMixed = 10;
+/** A wrong separator makes texts of numbers; a column of dates is no fault. */
+const textWeight = 0.4;
 
 /** null when no line holds a number in any dialect. */
 export function chooseDialect(lines: string[], decimalMark: "." | "," | null): DialectChoice | null {
   const sample = lastLines(lines);
   let chosen: { dialect: Dialect; score: number } | null = null;
   for (const dialect of candidates(sample, decimalMark)) {
-    const score = bestRun(sample.map((line) => readRow(line, dialect)))?.score ?? -Infinity;
+    const score = totalScore(sample.map((line) => readRow(line, dialect)));
     if (score > (chosen?.score ?? -Infinity)) chosen = { dialect, score };
   }
   if (!chosen) return null;
   const { dialect } = chosen;
   const rows = lines.map((line) => readRow(line, dialect));
   const best = bestRun(rows);
-  const words = best !== null && (best.score < 0 || (best.score === 0 && best.to - best.from < fewestMixed));
-  return best === null || words ? null : { dialect, rows, best };
+  const prose = best !== null && best.numbers <= best.texts && best.to - best.from < fewestMixed;
+  return best === null || prose ? null : { dialect, rows, best };
 }
 
 function lastLines(lines: string[]): string[] {
@@ -82,20 +86,42 @@ export function readRow(line: string, { separator, format }: Dialect): Row {
   return { cells, kinds: cells.map((cell) => readCell(cell, format).kind) };
 }
 
+/** Over all lines of one width, so that a damaged line among them settles nothing. */
+function totalScore(rows: Row[]): number {
+  const byWidth = new Map<number, number>();
+  for (const { kinds } of rows) {
+    const { numbers, texts } = count(kinds);
+    if (numbers > 0)
+      byWidth.set(kinds.length, (byWidth.get(kinds.length) ?? 0) + numbers - textWeight * texts);
+  }
+  return Math.max(-Infinity, ...byWidth.values());
+}
+
+function count(kinds: CellKind[]): { numbers: number; texts: number } {
+  let [numbers, texts] = [0, 0];
+  for (const kind of kinds) {
+    if (kind === "number" || kind === "over") numbers++;
+    else if (kind === "text") texts++;
+  }
+  return { numbers, texts };
+}
+
 function bestRun(rows: Row[]): Run | null {
   let best: Run | null = null;
   let run: Run | null = null;
   for (const [i, { kinds }] of rows.entries()) {
-    const numbers = kinds.filter((kind) => kind === "number" || kind === "over").length;
-    const texts = kinds.filter((kind) => kind === "text").length;
+    const { numbers, texts } = count(kinds);
     if (numbers === 0) {
       if (kinds.every((kind) => kind === "blank")) continue;
       run = null;
       continue;
     }
-    if (!run || run.width !== kinds.length) run = { from: i, to: i, width: kinds.length, score: 0 };
+    if (!run || run.width !== kinds.length)
+      run = { from: i, to: i, width: kinds.length, score: 0, numbers: 0, texts: 0 };
     run.to = i + 1;
-    run.score += numbers - texts;
+    run.numbers += numbers;
+    run.texts += texts;
+    run.score = run.numbers - textWeight * run.texts;
     if (!best || run.score > best.score) best = run;
   }
   return best;

@@ -105,7 +105,9 @@ function isUnitsRow(cells: string[]): boolean {
   const known = words.filter(
     (cell) => readUnit(cell, true) || /^(count|counts|pts|\(\)|\[\]|-)$/i.test(cell),
   );
-  return words.length > 0 && known.length === words.length && numbersTrail;
+  // S3 and S4: two numbers behind prove the row, whatever word stands for the running number.
+  const proven = known.length === words.length || (known.length > 0 && words.length < filled.length);
+  return words.length > 0 && proven && numbersTrail;
 }
 
 const isNumeric = (cell: string) => cell !== "" && Number.isFinite(Number(cell.replace(",", ".")));
@@ -149,6 +151,8 @@ function cellsOf(line: HeaderLine, block: Block): string[] {
 }
 
 function settingOf(line: HeaderLine): Setting[] {
+  const spoken = /^\s*([^:=,;\t]+?)\s*[:=]\s+([^,;\t]+)$/.exec(line.text.replace(/[\s,;]+$/, ""));
+  if (spoken && !line.comment) return [oneValue(spoken[1], spoken[2], line.line)];
   const values = line.cells
     .map((text, column) => ({ text: text.trim(), column }))
     .filter(({ text }) => text !== "");
@@ -167,6 +171,12 @@ function settingOf(line: HeaderLine): Setting[] {
     { key: match[1], values: [{ text: match[2].replace(/:$/, "").trim(), column: 1 }], line: line.line },
   ];
 }
+
+const oneValue = (key: string, text: string, line: number): Setting => ({
+  key,
+  values: [{ text, column: 1 }],
+  line,
+});
 
 /** Settings in the columns left or right of the data: in each stretch of cells, a key and its value. */
 function settingsBeside(lines: Line[], rows: Row[], block: Block): Setting[] {

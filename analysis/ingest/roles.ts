@@ -69,6 +69,9 @@ function byName({ name, unit }: Channel): ChannelRole | null {
 const kick = (shape: Shape | null | undefined) =>
   shape ? Math.max(shape.above, shape.below) * (1 - shape.busy) : 0;
 
+/** A shape is seen in no fewer samples. */
+const fewestSamples = 16;
+
 interface Shaped {
   channel: Channel;
   shape: Shape | null;
@@ -92,6 +95,7 @@ function byShape(
   taken: Set<ChannelRole>,
 ): { role: ChannelRole; why: string } | null {
   if (!shape || (channel.unit !== "V" && channel.unit !== "" && channel.unit !== "counts")) return null;
+  if (channel.samples.length < fewestSamples) return null;
   if (shape.atExtremes > 0.9 && shape.high - shape.low < 60)
     return taken.has("gate") ? null : { role: "gate", why: "its two levels" };
   if (

@@ -45,11 +45,20 @@ export function timeBaseOf(layout: Layout, time: RecordTime, samples: number, se
     return { timebase: { start_s, step_s: setup.sampleInterval_s, stepUncertainty_s: 0, samples }, notes };
   }
   if (!time.axis || !time.measured) return withoutColumn(layout, time, samples);
-  if (Number.isNaN(time.measured.step)) return { timebase: unknown, notes: [...notes, unevenNote()] };
+  if (Number.isNaN(time.measured.step)) return fromHeader(layout, time, unknown, notes);
   const unit = axisUnit(layout, time, setup);
   notes.push(...unit.notes);
   if (unit.factor === null) return { timebase: unknown, notes };
   return { timebase: fromColumn(layout, time, unit.factor, samples, notes), notes };
+}
+
+/** The column gives no step: it never moves, or moves unevenly. */
+function fromHeader(layout: Layout, time: RecordTime, unknown: TimeBase, notes: Note[]): Timed {
+  const [stated] = layout.timing.intervals;
+  const still = time.first === time.last;
+  if (!stated || !still) return { timebase: unknown, notes: [...notes, unevenNote()] };
+  const start_s = scaleBy(time.first, time.name?.unit?.factor ?? 1);
+  return { timebase: { ...unknown, start_s, step_s: stated.step_s }, notes };
 }
 
 function fromColumn(

@@ -6,6 +6,19 @@ export interface Unit {
   factor: number;
 }
 
+const cyrillic: Record<string, string> = {
+  с: "s",
+  мс: "ms",
+  мкс: "us",
+  нс: "ns",
+  В: "V",
+  мВ: "mV",
+  кВ: "kV",
+  А: "A",
+  мА: "mA",
+  Гц: "Hz",
+};
+
 const prefixes: Record<string, number> = {
   T: 1e12,
   G: 1e9,
@@ -51,7 +64,8 @@ export const scaleBy = (value: number, factor: number) =>
 
 /** null where the text is no unit. `time` settles S, mS and MS in favour of seconds. */
 export function readUnit(text: string, time = false): Unit | null {
-  const word = text.trim().replace(/^[([{<]\s*(.*?)\s*[)\]}>]$/, "$1");
+  const bare = text.trim().replace(/^[([{<]\s*(.*?)\s*[)\]}>]$/, "$1");
+  const word = cyrillic[bare] ?? bare;
   if (word === "" || word.length > 16) return null;
   return bySymbol(word) ?? byWord(word, 1) ?? bySpelledPrefix(word) ?? (time ? timeLike(word) : null);
 }
