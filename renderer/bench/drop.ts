@@ -1,5 +1,6 @@
 /** Dropped or chosen files and folders → sources the host can open, folders kept together. */
 import type { Argument, Bench } from "../../app/bridge.ts";
+import type { DesktopBench } from "./desktop.ts";
 
 type Source = Argument<"open">["sources"][number];
 
@@ -46,7 +47,8 @@ export async function sourcesOf(
   files: Named[],
   onSent: (sent: number) => void,
 ): Promise<Source[]> {
-  const pathOf = window.ringbook?.pathOf;
+  const shell: DesktopBench | undefined = window.ringbook;
+  const pathOf = shell?.pathOf;
   const sources: Source[] = [];
   const ordered = files.toSorted((a, b) => Number(isSidecar(b.name)) - Number(isSidecar(a.name)));
   for (const [at, { name, file }] of ordered.entries()) {

@@ -1,17 +1,7 @@
 /** One Bench for the page, whatever door it stands behind. */
 import type { Bench } from "../../app/bridge.ts";
+import type { DesktopBench } from "./desktop.ts";
 import { localBench } from "./local.ts";
-
-/** What the desktop door adds: the path of a dropped file. */
-export interface DesktopBench extends Bench {
-  pathOf(file: File): string;
-}
-
-declare global {
-  interface Window {
-    ringbook?: DesktopBench;
-  }
-}
 
 const tokenKey = "ringbook-token";
 
@@ -27,7 +17,8 @@ function takeToken(): string | null {
 
 /** null: the page was opened without the address the program printed. */
 export function findBench(): Bench | null {
-  if (window.ringbook) return window.ringbook;
+  const shell: DesktopBench | undefined = window.ringbook;
+  if (shell) return shell;
   const token = takeToken();
   return token ? localBench(token) : null;
 }
