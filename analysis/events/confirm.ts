@@ -27,7 +27,7 @@ export function confirm(channel: Channel, candidates: Candidate[], noise: number
     if (sure[k] || witnessed === false) return sure[k];
     if (evidence.levelOn === null || evidence.switchOff === null) return false;
     const alike = Math.abs(evidence.levelOn - level) < Math.max(6 * noise, 0.1 * swing);
-    return alike && swingOf(evidence) > 0.3 * swing && isSmooth(channel, evidence);
+    return alike && swingOf(evidence) > 0.5 * swing && isSmooth(channel, evidence);
   });
 }
 

@@ -6,6 +6,7 @@ import type { RingFit } from "./fit-format.ts";
 import type { Mode } from "./gram.ts";
 import { colourOf, differenceNoise, excessAt } from "./noise.ts";
 import { residualBuffer, searchModes, variance } from "./search.ts";
+import { residualProfile } from "./residuals.ts";
 import { solve, type Solution } from "./solve.ts";
 import { scaled } from "./start.ts";
 
@@ -138,7 +139,7 @@ function describe(
   const covariance = unit.map(
     (value, k) => value * perBlock * colours[Math.floor(k / size) >> 2] * colours[(k % size) >> 2],
   );
-  return {
+  const fit: RingFit = {
     from,
     to,
     step_s,
@@ -152,6 +153,10 @@ function describe(
     iterations: solution.iterations,
     stopped: solution.stopped,
   };
+  // Errors alike within a block (quantisation, slow noise) are smaller per sample than white ones would be.
+  if (blocks.decimation > 1 && fit.residual > 1.2 * noise)
+    [fit.residual] = residualProfile(samples, fit, from, to, to - from, options.unusable ?? none).rms;
+  return fit;
 }
 
 function excessOf(residual: Float64Array, blocks: Blocks, solution: Solution): number[] {

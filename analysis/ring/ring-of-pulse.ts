@@ -82,7 +82,7 @@ function extended(place: Omit<Place, "from">, off: SwitchOff, ring: WindowedRing
     return { ...ring, switchOff: at === null ? null : { at, u: 0.01 * period }, nonlinear: null };
   }
   const unrest = noise / Math.max(...fit.modes.map(amplitude));
-  const reach = Math.max(LEAST_REACH, Math.min(MOST_REACH, 2.5 * unrest));
+  const reach = Math.max(LEAST_REACH, Math.min(MOST_REACH, 4 * unrest));
   const crossing = modelCrossing(fit, off.at, Math.max(2, reach * period), off.levelOn, off.polarity);
   if (!crossing) return { ...ring, switchOff: null, nonlinear: null };
   const u = Math.hypot(0.02, noise / crossing.slope / Math.sqrt(Math.max(1, period / 12)));

@@ -55,16 +55,19 @@ export function disturbedRing(place: Place): WindowedRing | null {
   if (patched) return patched;
   const late = lateStart(place);
   const early = earlyEnd(place);
-  if (late && informative(late) >= (early ? informative(early) : 0))
+  if (whole && LAST_RESORT * informative(whole) > Math.max(informative(late), informative(early)))
+    return { fit: whole, clean: false, courseChanges: false, masked: [] };
+  if (late && informative(late) >= informative(early))
     return { fit: late, clean: true, courseChanges: false, masked: [] };
-  if (early)
-    return { fit: early, clean: true, courseChanges: early.to < place.to - place.period, masked: [] };
-  return whole ? { fit: whole, clean: false, courseChanges: false, masked: [] } : null;
+  return early && { fit: early, clean: true, courseChanges: early.to < place.to - place.period, masked: [] };
 }
 
 /** Samples in the window, weighed by what the fit is worth. */
+/** An unclean whole counts only where neither end holds a ring. */
+const LAST_RESORT = 0.02;
 const WORTH = { good: 1, poor: 0.2, refused: 0.001 };
-const informative = (fit: RingFit) => (fit.to - fit.from) * WORTH[judgeFit(fit, fit.noise).quality];
+const informative = (fit: RingFit | null) =>
+  fit ? (fit.to - fit.from) * WORTH[judgeFit(fit, fit.noise).quality] : 0;
 
 const options = (place: Place, extra: FitOptions = {}): FitOptions => ({
   unusable: place.unusable,
@@ -88,7 +91,8 @@ function isClean(place: Place, fit: RingFit, unusable = place.unusable): boolean
   if (!(fit.residual <= CLEAN * noiseOf(place))) return false;
   const length = stretch(place, fit);
   const { rms } = residualProfile(place.samples, fit, fit.from, fit.to, length, unusable);
-  const limit = CLEAN * noiseLimit(noiseOf(place), length);
+  // With little noise the quantisation's error stands still for whole stretches: half an LSB and some.
+  const limit = Math.max(CLEAN * noiseLimit(noiseOf(place), length), 0.75 * (place.lsb ?? 0));
   return rms.every((value) => !(value > limit));
 }
 
