@@ -162,11 +162,11 @@ describe("the separable fit", () => {
 describe("what is no ring", () => {
   const random = seeded(9);
   it.each([
-    ["noise", (_: number) => random.normal()],
-    ["a level", (_: number) => 5],
-    ["nothing but blanks", (_: number) => NaN],
+    ["noise", () => random.normal()],
+    ["a level", () => 5],
+    ["nothing but blanks", () => NaN],
   ])("%s gives no fit", (_, f) => {
-    const y = Float64Array.from({ length: 2000 }, (__, i) => f(i));
+    const y = Float64Array.from({ length: 2000 }, f);
     const unusable = Number.isNaN(y[0]) ? [0, 2000] : [];
     expect(fitRing(y, 0, y.length, 1e-6, { unusable })).toBeNull();
   });
