@@ -28,7 +28,13 @@ export function readCapture(capture: Capture, setup: Setup): CaptureEvidence {
     map,
   };
   const { step_s, stepUncertainty_s } = capture.timebase;
-  if (step_s === null || (map.ring === null && map.gate === null)) return evidence;
+  if (step_s === null) return evidence;
+  if (map.ring === null && map.gate === null) {
+    const text =
+      "No channel that shows switching: state which one is the switch node, the coil current or the gate.";
+    notes.push({ code: "nothing-to-read", text });
+    return evidence;
+  }
   const channel = map.ring === null ? null : capture.channels[map.ring];
   const events = findSwitchOffs(capture, map);
   const context: PulseContext = {

@@ -51,11 +51,14 @@ export function transitionsOf(samples: Float64Array, { low, high }: States): Tra
   const found: Transition[] = [];
   let state: boolean | null = null;
   let crossed = 0;
+  let last = -1;
   for (let i = 0; i < samples.length; i++) {
     const y = samples[i];
-    const before = samples[i - 1];
-    if (i > 0 && y >= middle !== before >= middle && y !== before)
-      crossed = i - 1 + (middle - before) / (y - before);
+    if (!Number.isFinite(y)) continue;
+    const before = samples[last];
+    if (last >= 0 && y >= middle !== before >= middle)
+      crossed = last + ((middle - before) / (y - before)) * (i - last);
+    last = i;
     if (y > low + 0.7 * span && state !== true) {
       if (state === false) found.push({ at: crossed, u: 0.29, rising: true });
       state = true;

@@ -159,6 +159,7 @@ function outOfConduction(
   const calm = onsets.map((onset) => onset.scatter).toSorted((a, b) => a - b)[onsets.length >> 2];
   const unrest = Math.max(noise, Math.min(calm, 3 * noise));
   const flat = onsets.filter((onset) => onset.scatter < FLAT * unrest + 0.02 * Math.abs(onset.swing));
+  if (flat.length === 0) return [];
   const anchor = flat.reduce((a, b) => (sharpness(b) > sharpness(a) ? b : a));
   const reach = Math.max(...flat.map((onset) => Math.abs(onset.swing)));
   const tolerance = Math.max(6 * unrest, 2 * (lsb ?? 0));

@@ -26,16 +26,17 @@ export function channelOf(
 ): Channel {
   const unusable: number[] = [];
   let overrange = 0;
-  if (pinned !== undefined)
-    for (let i = 0, begin = -1; i <= samples.length; i++) {
-      const out = i < samples.length && Math.abs(samples[i]) >= pinned - 1e-9;
-      if (out && begin < 0) begin = i;
-      if (out) overrange++;
-      if (!out && begin >= 0) {
-        unusable.push(begin, i);
-        begin = -1;
-      }
+  const out = (i: number) =>
+    i < samples.length &&
+    (!Number.isFinite(samples[i]) || Math.abs(samples[i]) >= (pinned ?? Infinity) - 1e-9);
+  for (let i = 0, begin = -1; i <= samples.length; i++) {
+    if (out(i) && begin < 0) begin = i;
+    if (out(i) && !Number.isNaN(samples[i])) overrange++;
+    if (!out(i) && begin >= 0) {
+      unusable.push(begin, i);
+      begin = -1;
     }
+  }
   return {
     position: 0,
     name: role,
