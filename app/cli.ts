@@ -7,7 +7,8 @@ const usage = `ringbook – reads oscilloscope captures of switched coils
   ringbook read PATH… [--setup FILE] [--json] [--book FILE]   read captures: a line each, one per pulse
   ringbook coil PATH… | --coil NAME [--json]                  added-capacitor line, ramp, drive design;
                 [--current A | --energy J]                    … with the dwell table for that
-  ringbook log [--run NAME] [--coil NAME] [--json]            what the bench book holds
+  ringbook log [--run NAME] [--coil NAME] [--json]            what the bench book holds;
+               [--against NAME]                               … the run side by side with another
   ringbook export --run NAME [--kind csv|jsonl] [-o FILE]     a run's pulses for other programs
   ringbook report --run NAME [-o FILE]                        a run as one HTML page to hand over
   ringbook backup FILE                                        a copy of the book, safe while it is in use

@@ -125,6 +125,26 @@ describe("the book's commands", () => {
     expect(ringbook("log", "--book", join(folder, "copy.db")).stdout).toContain("1 captures");
   });
 
+  it("put two runs side by side with an interval for the difference", () => {
+    const book = join(folder, "bench.db");
+    for (const [run, name] of [
+      ["one", "pulse-03.csv"],
+      ["two", "pulse-06.csv"],
+    ]) {
+      mkdirSync(join(folder, run));
+      copyFileSync(join(samples, name), join(folder, run, name));
+      ringbook("read", join(folder, run), "--book", book);
+    }
+    const { lines } = ringbook("log", "--run", "two", "--against", "one", "--json", "--book", book);
+    const { format, q, quietRate } = JSON.parse(lines[0]);
+    expect(format).toBe("ringbook.comparison/1");
+    expect(Math.abs(q.value)).toBeLessThan(4 * q.u);
+    // Newcombe 1998: one of one against one of one says nothing, and the interval shows it.
+    expect(quietRate).toMatchObject({ value: 0, level: 0.95 });
+    expect(quietRate.low).toBeLessThan(-0.5);
+    expect(quietRate.high).toBeGreaterThan(0.5);
+  });
+
   it("give the coil's line, ramp and drive", () => {
     const { status, lines } = ringbook("coil", samples, "--json");
     expect(status).toBe(0);
