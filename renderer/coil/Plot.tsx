@@ -1,6 +1,6 @@
 /** A curve to look into closely: the plotting library is fetched only here, after the page is drawn. */
 import type { Config, Data, Layout, PlotlyHTMLElement } from "plotly.js-dist-min";
-import { useEffect, useRef, useState } from "react";
+import { memo, useEffect, useRef, useState } from "react";
 
 interface Props {
   data: (ink: Ink) => Data[];
@@ -41,7 +41,10 @@ const config: Partial<Config> = {
   scrollZoom: false,
 };
 
-function layoutOf({ x, y, xLog, height = 260 }: Props, { ink, faint, rule }: Ink): Partial<Layout> {
+function layoutOf(
+  { x, y, xLog, height = 260 }: Pick<Props, "x" | "y" | "xLog" | "height">,
+  { ink, faint, rule }: Ink,
+): Partial<Layout> {
   const axis = {
     color: faint,
     gridcolor: rule,
@@ -70,47 +73,56 @@ function layoutOf({ x, y, xLog, height = 260 }: Props, { ink, faint, rule }: Ink
   };
 }
 
-export function Plot(props: Props) {
+type Library = typeof import("plotly.js-dist-min");
+
+const load = async (): Promise<Library> => {
+  const module = await import("plotly.js-dist-min");
+  return "default" in module ? (module.default as unknown as Library) : module;
+};
+
+export const Plot = memo(function Plot(props: Props) {
+  const { data, x, y, xLog, height, label } = props;
   const box = useRef<HTMLDivElement>(null);
+  const [library, setLibrary] = useState<Library | null>(null);
   const [problem, setProblem] = useState<string | null>(null);
+
   useEffect(() => {
     const element = box.current;
-    if (!element) return undefined;
-    let plotly: typeof import("plotly.js-dist-min") | null = null;
-    let wanted = true;
-    const draw = () => {
-      const ink = inkOfPage();
-      return plotly?.react(
-        element as unknown as PlotlyHTMLElement,
-        props.data(ink),
-        layoutOf(props, ink),
-        config,
-      );
-    };
-    import("plotly.js-dist-min").then(
-      (module) => {
-        if (!wanted) return;
-        plotly = "default" in module ? (module.default as unknown as typeof module) : module;
-        void draw();
+    let wanted: Library | null | false = null;
+    load().then(
+      (loaded) => {
+        if (wanted === false) return;
+        wanted = loaded;
+        setLibrary(() => loaded);
       },
       () => setProblem("The curve could not be drawn; the table holds its figures."),
     );
-    const paper = new MutationObserver(() => void draw());
-    paper.observe(document.documentElement, { attributeFilter: ["data-paper"] });
     return () => {
+      if (wanted && element) wanted.purge(element);
       wanted = false;
-      paper.disconnect();
-      plotly?.purge(element);
     };
-  }, [props]);
+  }, []);
+
+  useEffect(() => {
+    const element = box.current;
+    if (!library || !element) return undefined;
+    const draw = () => {
+      const ink = inkOfPage();
+      void library.react(
+        element as unknown as PlotlyHTMLElement,
+        data(ink),
+        layoutOf({ x, y, xLog, height }, ink),
+        config,
+      );
+    };
+    draw();
+    const paper = new MutationObserver(draw);
+    paper.observe(document.documentElement, { attributeFilter: ["data-paper"] });
+    return () => paper.disconnect();
+  }, [library, data, x, y, xLog, height]);
+
   if (problem) return <p className="quiet">{problem}</p>;
   return (
-    <div
-      ref={box}
-      className="plot"
-      role="img"
-      aria-label={props.label}
-      style={{ minHeight: props.height ?? 260 }}
-    />
+    <div ref={box} className="plot" role="img" aria-label={label} style={{ minHeight: height ?? 260 }} />
   );
-}
+});

@@ -35,7 +35,7 @@ describeWindow("a coil", () => {
     expect(await rows.count()).toBe(told.history.length);
     const dwell = page.locator("section", { has: page.getByRole("heading", { name: "Dwell" }) });
     expect(await dwell.locator("tbody tr").count()).toBe(told.dwell!.supplies_V.length);
-    await dwell.locator(".plot .scatterlayer .trace").first().waitFor({ timeout: 15_000 });
+    await dwell.locator(".plot .scatterlayer .trace").first().waitFor({ timeout: 30_000 });
     expect(await dwell.locator(".plot .trace").count()).toBe(told.dwell!.temperatures_C.length);
     const stress = page.locator("section", {
       has: page.getByRole("heading", { name: "What the parts bear" }),
@@ -56,7 +56,7 @@ describeWindow("a coil", () => {
     await page.getByRole("slider").focus();
     for (let step = 0; step < 20; step++) await page.keyboard.press("ArrowRight");
     await expect.poll(kick).toBeLessThan(fitted);
-    await page.locator(".capacitor-choice .plot .scatterlayer").waitFor({ timeout: 15_000 });
+    await page.locator(".capacitor-choice .plot .scatterlayer").waitFor({ timeout: 30_000 });
   });
 
   it("is reached from its run, fits a narrow window, and says what is missing", async () => {
@@ -67,7 +67,7 @@ describeWindow("a coil", () => {
     await page.getByRole("heading", { name: "Added-capacitor line" }).waitFor();
     expect(await page.getByText(/different capacitors/).count()).toBeGreaterThan(0);
     expect(await sidewaysOverflow(page)).toBeLessThanOrEqual(0);
-    await page.locator(".plot .scatterlayer").first().waitFor({ timeout: 15_000 });
+    await page.locator(".plot .scatterlayer").first().waitFor({ timeout: 30_000 });
     expect(await sidewaysOverflow(page)).toBeLessThanOrEqual(0);
   });
 });

@@ -113,7 +113,7 @@ describeWindow("pictures of the demo run", () => {
     await page.setViewportSize({ width, height });
     await page.emulateMedia({ colorScheme: dark ? "dark" : "light" });
     await goTo(page, path(rows));
-    await page.locator(shows).first().waitFor({ state: "attached" });
+    await page.locator(shows).first().waitFor({ state: "attached", timeout: 30_000 });
     await before?.(sheet);
     await page.waitForTimeout(300);
     const bytes = await page.screenshot(keep ? { path: join(folder, `${name}.png`) } : {});
