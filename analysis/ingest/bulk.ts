@@ -166,7 +166,9 @@ class ChunkBuilder {
     private readonly plan: BulkPlan,
     reuse: ArrayBuffer[],
   ) {
-    this.capacity = Math.ceil(bytes.length / Math.max(2, 6 * plan.width)) + 16;
+    // Rounded up, so that the memory of one piece does for the next.
+    const likely = Math.ceil(bytes.length / Math.max(2, 6 * plan.width)) + 16;
+    this.capacity = bytes.length > 1e6 ? Math.ceil(likely / 16_384) * 16_384 : likely;
     this.values = plan.columns.map((_, slot) => {
       const used = reuse[slot];
       return used?.byteLength >= 8 * this.capacity ? new Float64Array(used) : new Float64Array(this.capacity);

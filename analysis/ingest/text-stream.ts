@@ -39,10 +39,14 @@ export class TextStream {
   }
 }
 
+/** Pieces differ by a line: rounded up, the memory of one does for the next. */
+const roundUp = (bytes: number) => Math.ceil(bytes / 65_536) * 65_536;
+
 /** `into`: memory to be used again, if it is large enough. */
 export function concatenate(a: Uint8Array, b: Uint8Array, into?: ArrayBuffer): Uint8Array<ArrayBuffer> {
   const length = a.length + b.length;
-  const whole = into && into.byteLength >= length ? new Uint8Array(into, 0, length) : new Uint8Array(length);
+  const reused = into && into.byteLength >= length ? into : new ArrayBuffer(roundUp(length));
+  const whole = new Uint8Array(reused, 0, length);
   whole.set(a);
   whole.set(b, a.length);
   return whole;

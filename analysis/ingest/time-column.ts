@@ -4,7 +4,7 @@
  */
 
 /** Rows up to which the values themselves are kept for a closer look. */
-const keptRows = 2_000_000;
+const keptRows = 1_000_000;
 export const anchorEvery = 4096;
 const mostJoints = 100_000;
 

@@ -1,7 +1,7 @@
-/** A process of its own: reads one file and prints what that took in memory. */
+/** A process of its own: reads one file and prints what that took in memory. Arguments: the file, the parse worker's URL. */
 import { readFile, useParseWorker } from "../../app/host/reading/index.ts";
 
-useParseWorker(new URL("../../dist/app/parse-worker.js", import.meta.url));
+useParseWorker(new URL(process.argv[3]));
 const idle = process.memoryUsage().rss;
 let pauses = 0;
 let last = performance.now();
