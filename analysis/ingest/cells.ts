@@ -1,28 +1,26 @@
-/** Splits one line into cells; quoted cells as in RFC 4180, section 2. Checked against csv-spectrum. */
+import Papa from "papaparse";
+
+/**
+ * Splits one line into cells. Lines with quotes go through PapaParse (RFC 4180, section 2); exporters also
+ * write blanks about a quoted cell, which the standard does not know: then they are taken off.
+ */
 export function splitCells(line: string, separator: string): string[] {
   if (separator === " ") return line.trim().split(/[ \t]+/);
   if (!line.includes('"')) return line.split(separator);
-  const cells: string[] = [];
-  let at = 0;
-  for (;;) {
-    quotedCell.lastIndex = at;
-    const quoted = quotedCell.exec(line);
-    const next = quoted ? at + quoted[0].length : line.indexOf(separator, at);
-    const closed = quoted && (next >= line.length || line.startsWith(separator, next));
-    if (quoted && closed) {
-      cells.push(quoted[1].replaceAll('""', '"'));
-      if (next >= line.length) return cells;
-      at = next + separator.length;
-      continue;
-    }
-    const end = line.indexOf(separator, at);
-    cells.push(end < 0 ? line.slice(at) : line.slice(at, end));
-    if (end < 0) return cells;
-    at = end + separator.length;
-  }
+  const cells = parsed(line, separator);
+  return cells.some((cell) => /^ +"/.test(cell)) ? parsed(withoutBlanks(line, separator), separator) : cells;
 }
 
-const quotedCell = / *"((?:[^"]|"")*)" */y;
+const parsed = (line: string, separator: string) =>
+  Papa.parse<string[]>(line, { delimiter: separator }).data[0] ?? [""];
+
+/** Blanks between a separator, or the line's edge, and a quote. */
+function withoutBlanks(line: string, separator: string): string {
+  const edge = separator.replace(/[|\\^$.*+?()[\]{}]/g, "\\$&");
+  return line
+    .replace(new RegExp(`(^|${edge}) +(?=")`, "g"), "$1")
+    .replace(new RegExp(`" +(?=${edge}|$)`, "g"), '"');
+}
 
 /** How many cells stand before the trailing empty ones. */
 export function filledWidth(cells: string[]): number {
