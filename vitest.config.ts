@@ -18,7 +18,7 @@ export default defineConfig({
           name: "fast",
           include: ["test/**/*.test.ts"],
           exclude: ["test/**/*.slow.test.ts", "test/window/**"],
-          testTimeout: 30_000,
+          testTimeout: 90_000,
         },
       },
       {
@@ -28,8 +28,8 @@ export default defineConfig({
           include: ["test/window/**/*.test.ts"],
           globalSetup: ["test/window/demo-book.ts"],
           fileParallelism: false,
-          testTimeout: 60_000,
-          hookTimeout: 60_000,
+          testTimeout: 120_000,
+          hookTimeout: 120_000,
         },
       },
       {
