@@ -141,9 +141,10 @@ function lastClosed(
   lsb: number,
 ): number | null {
   if (pulse.levelOn === null || pulse.switchOff === null) return null;
-  const tolerance = 3 * (pulse.fit?.noise ?? 0) + lsb / 2;
+  const tolerance = 3 * Math.max(pulse.fit?.noise ?? 0, conductionNoise(pulse, samples, 1)) + lsb / 2;
   const height = (i: number) => pulse.polarity * (samples[i] - pulse.levelOn!);
-  let [highest, closed, last] = [0, false, null as number | null];
+  // It may still conduct where the stated instant comes a little early.
+  let [highest, closed, last] = [0, true, null as number | null];
   for (let i = from; i < Math.min(samples.length, Math.floor(to)); i++) {
     const down = Math.abs(height(i)) < tolerance;
     // Fallen from above half of the highest within two samples.
