@@ -66,7 +66,8 @@ function cutShort(traits: Traits, disturbed: number): Likelihood {
   const nothing = { away: null, loss: traits.loss };
   if (disturbed <= NOISE) return { probability: 0.005, because: "one-ring", ...nothing };
   // The window's very end may hold the next edge: no spark is read from it, nor from a ring that is spent.
-  if (traits.tail || traits.spent) return { probability: 0.03, because: "one-ring", ...nothing };
+  if (traits.spent) return { probability: 0.03, because: "one-ring", ...nothing };
+  if (traits.tail) return { probability: disturbed > 2 * NOISE ? 0.3 : 0.03, because: "doubt", ...nothing };
   if (traits.ringBefore && disturbed > 20) return { probability: 0.97, because: "course", ...nothing };
   return {
     probability: disturbed > 5 * NOISE && traits.loss === 1 ? 0.95 : disturbed > 20 ? 0.8 : 0.4,

@@ -14,8 +14,21 @@ export function ringModes(fitted: FittedMode[]): FittedMode[] {
     null,
   );
   if (!strongest) return [];
+  return apart(
+    modes.filter((mode) => mode.frequency_Hz >= strongest.frequency_Hz || size(mode) > 0.3 * size(strongest)),
+  );
+}
+
+/** Modes closer than this are one that a fit has bent around something else: no coil's modes lie so close. */
+const APART = 1.15;
+
+/** Of two modes too close the longer lasting one is the coil's. */
+function apart(modes: FittedMode[]): FittedMode[] {
+  const close = (a: FittedMode, b: FittedMode) =>
+    Math.max(a.frequency_Hz / b.frequency_Hz, b.frequency_Hz / a.frequency_Hz) < APART;
   return modes.filter(
-    (mode) => mode.frequency_Hz >= strongest.frequency_Hz || size(mode) > 0.3 * size(strongest),
+    (mode) =>
+      !modes.some((other) => other !== mode && close(mode, other) && other.decay_per_s < mode.decay_per_s),
   );
 }
 
