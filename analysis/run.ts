@@ -11,6 +11,7 @@ import { breakdownOf, sparkEnergy_J, type Breakdown } from "./spark/account.ts";
 import { judgePulses, type Judged } from "./spark/judge.ts";
 import { timesOf } from "./spark/onset.ts";
 import { ringModes, ringPeriods } from "./spark/ring-modes.ts";
+import { runTrends, trendNotes, type RunTrends } from "./spark/run-trends.ts";
 import { noEvidence, sparkReading } from "./spark/spark-reading.ts";
 import { gatherWindow, type SparkWindow } from "./spark/window.ts";
 
@@ -18,6 +19,8 @@ import { gatherWindow, type SparkWindow } from "./spark/window.ts";
 export interface RunReading extends RunCounts {
   combined: CaptureReading["combined"];
   notes: Note[];
+  /** Absent in readings kept by an older version. */
+  trends?: RunTrends;
 }
 
 export interface RunJudgement {
@@ -51,9 +54,18 @@ export function judgeRun(evidence: CaptureEvidence[], setup: Setup): RunJudgemen
     return judgedCapture(capture.reading, pulses, setup);
   });
   const pulses = readings.flatMap((reading) => reading.pulses);
+  const held_V = run.map(({ pulse, window }) =>
+    found.get(pulse)!.spark.verdict === "no-spark" ? (window.secondary?.peak_V ?? null) : null,
+  );
+  const trends = runTrends(pulses, held_V, setup);
   return {
     readings,
-    run: { ...countPulses(pulses, setup), combined: combinePulses(quietOf(pulses)), notes: [] },
+    run: {
+      ...countPulses(pulses, setup),
+      combined: combinePulses(quietOf(pulses)),
+      notes: trendNotes(trends),
+      trends,
+    },
   };
 }
 

@@ -2,6 +2,7 @@
 import type { PulseEvidence } from "../evidence.ts";
 import type { Measured } from "../reading-format.ts";
 import type { Setup } from "../setup/schema.ts";
+import { standard } from "../setup/toleranced.ts";
 import type { Expected } from "./expected.ts";
 import type { Judged } from "./judge.ts";
 import { sizeAt } from "./split.ts";
@@ -20,7 +21,7 @@ export function sparkEnergy_J(
   window: SparkWindow,
 ): Measured | null {
   const { traits, reference } = judged;
-  const capacitance = pulse.capacitance_F;
+  const capacitance = pulse.capacitance_F ?? stated(setup);
   if (!capacitance || !traits.ringAfter) return null;
   const reflected = (setup.secondaryCapacitance_F ?? 0) * (setup.turnsRatio ?? 0) ** 2;
   const decay = traits.modes[0].decay_per_s;
@@ -38,6 +39,14 @@ export function sparkEnergy_J(
   const stray = reference?.stray ?? 0.03;
   const u = Math.hypot((value * capacitance.u) / c, c * quiet * quiet * stray);
   return { value, u };
+}
+
+/** A refused ring has no capacitance of its own; the stated one holds for it as well. */
+function stated(setup: Setup): Measured | null {
+  const capacitor = standard(setup.capacitor_F);
+  if (!capacitor) return null;
+  const stray = standard(setup.strayCapacitance_F) ?? { value: 0, u: 0 };
+  return { value: capacitor.value + stray.value, u: Math.hypot(capacitor.u, stray.u) };
 }
 
 export interface Breakdown {
