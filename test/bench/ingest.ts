@@ -98,6 +98,7 @@ async function memory(folder: string): Promise<void> {
   await build({
     configFile: false,
     logLevel: "error",
+    ssr: { noExternal: true },
     build: { ssr: true, outDir: folder, emptyOutDir: false, rollupOptions },
   });
   const path = join(folder, "large.csv");
