@@ -19,7 +19,7 @@ export function sparkReading(
   times: SparkTimes,
   breakdown: Breakdown | null,
 ): SparkReading {
-  const seen = withSecondary(judged.likelihood.probability, window);
+  const seen = withSecondary(judged.likelihood.probability, window, judged.quietRest !== null);
   const verdict = verdictFor(seen.probability);
   const sparked = verdict !== "no-spark";
   const strikes = sparked ? strikesOf(window, times) : [];
@@ -48,11 +48,14 @@ const agree = (probability: number, { likelihood }: Judged) =>
   probability > 0.5 === likelihood.probability > 0.5 || verdictFor(likelihood.probability) === "unclear";
 
 /** The secondary's own trace decides: a collapse is a spark; without one only the primary's clear word stands. */
-function withSecondary(probability: number, { secondary, zero_s, raw }: SparkWindow) {
-  if (!secondary) return { probability, reasons: [] as Reason[] };
+function withSecondary(primary: number, window: SparkWindow, againstRun: boolean) {
+  const { secondary, zero_s, raw } = window;
+  const { probability, reasons } = againstRun
+    ? { probability: primary, reasons: [] as Reason[] }
+    : freeEnough(primary, window);
+  if (!secondary) return { probability, reasons };
   const first = secondary.strikes[0];
-  if (!first)
-    return { probability: probability > SURE ? probability : probability * 0.3, reasons: [] as Reason[] };
+  if (!first) return { probability: probability > SURE ? probability : probability * 0.3, reasons };
   const at = raw.start_s + first.onset * raw.step_s;
   const what =
     first.breakdown_V === null
@@ -60,6 +63,16 @@ function withSecondary(probability: number, { secondary, zero_s, raw }: SparkWin
       : `the secondary's voltage collapses from ${formatNumber(Math.abs(first.breakdown_V), "V", 3)}`;
   const text = `${what} ${formatNumber(at - zero_s, "s", 3)} after switch-off`;
   return { probability: 0.999, reasons: [{ text, place_s: at }] };
+}
+
+/**
+ * A ring cut at ground loses a part of every cycle, with or without a spark: its losses say nothing
+ * certain, unless other pulses of the run show what they are without one. */
+function freeEnough(probability: number, { cutBelow, zero_s }: SparkWindow) {
+  if (!cutBelow) return { probability, reasons: [] as Reason[] };
+  const text =
+    "the ring's half-waves are cut flat at one level: it is no free ring, and a spark cannot be told";
+  return { probability: Math.min(0.6, Math.max(0.4, probability)), reasons: [{ text, place_s: zero_s }] };
 }
 
 /** From the secondary where it is on screen, else the one stretch the node shows. */

@@ -22,6 +22,8 @@ export interface SparkWindow {
   /** Blocks in one period of the ring. */
   period: number;
   secondary: SecondaryEvidence | null;
+  /** Half-waves end flat at one level: a diode takes part of every cycle, and the ring is not free. */
+  cutBelow: boolean;
   /** The capture's own time axis, for positions in samples. */
   raw: { start_s: number; step_s: number };
 }
@@ -72,6 +74,7 @@ export function gatherWindow(
     levelOn,
     period: period / decimation,
     secondary: gatherSecondary(evidence, pulse, from, to),
+    cutBelow: flatBottom(blocks, 3 * noise + (lsb ?? 0) / 3, period / decimation),
     raw: { start_s: evidence.timebase.start_s, step_s },
   };
 }
@@ -83,8 +86,8 @@ function turn(blocks: Blocks): void {
 }
 
 /**
- * The next conduction may begin inside the window: from where the trace lies still for half a period (at
- * the window's end: for a third of one), nearer to the level of conduction than to what the ring settles to,
+ * The next conduction may begin inside the window: from where the trace lies still for three quarters of a
+ * period, longer than a diode holds a half-wave (at the window's end: for a third of one), nearer to the level of conduction than to what the ring settles to,
  * all goes. Judged by means over stretches, for the two levels may be closer than the noise.
  */
 function leaveOutConduction(blocks: Blocks, levelOn: number, noise: number, period: number): void {
@@ -106,7 +109,7 @@ function leaveOutConduction(blocks: Blocks, levelOn: number, noise: number, peri
       i >= length - 1 && square / length - mean * mean < (2 * noise) ** 2 && Math.abs(mean) < near;
     if (!still) since = -1;
     else if (since < 0) since = i + 1 - length;
-    if (since >= 0 && (i - since > 0.5 * period || i === count - 1))
+    if (since >= 0 && (i - since > 0.75 * period || i === count - 1))
       return cut(blocks, Math.max(0, since - 2));
   }
 }
@@ -176,4 +179,24 @@ function conductionNoise(pulse: PulseEvidence, samples: Float64Array, decimation
     spread += (i - middle) ** 2;
   }
   return Math.sqrt(Math.max(0, square - (lean * lean) / spread) / (count - 2));
+}
+
+/**
+ * Whether an early half-wave ends flat at the lowest level for longer than a sine's trough would stay so near
+ * its lowest point.
+ */
+function flatBottom({ values, count }: Blocks, tolerance: number, period: number): boolean {
+  const end = Math.min(count, Math.round(4 * period));
+  let [lowest, highest] = [Number.POSITIVE_INFINITY, Number.NEGATIVE_INFINITY];
+  for (let i = 0; i < end; i++) {
+    lowest = Math.min(lowest, values[i]);
+    highest = Math.max(highest, values[i]);
+  }
+  if (highest - lowest < 20 * tolerance) return false;
+  let flat = 0;
+  for (let i = 0; i < end; i++) {
+    flat = values[i] - lowest < 2 * tolerance ? flat + 1 : 0;
+    if (flat > 0.25 * period) return true;
+  }
+  return false;
 }
