@@ -41,6 +41,7 @@ export function judgePulses(candidates: Candidate[]): (Judged | null)[] {
   return judged;
 }
 
+const alike = (a: KnownMode, b: KnownMode) => Math.abs(a.frequency_Hz / b.frequency_Hz - 1) < 0.03;
 const near = (a: KnownMode, b: KnownMode) => Math.abs(a.frequency_Hz / b.frequency_Hz - 1) < 0.12;
 
 interface Own {
@@ -80,11 +81,11 @@ function lowestShared(candidates: Candidate[]): number {
   return shared.length > 0 ? Math.min(...shared) : Number.POSITIVE_INFINITY;
 }
 
-/** A spark leaves less of the ring: of clean pulses near one frequency those with the most left are the quiet ones. */
+/** A spark leaves less of the ring: of clean pulses with one frequency those with the most left are the quiet ones. */
 function strongest(clean: Own[]): Own[] {
   const size = ({ traits }: Own) => Math.hypot(...traits.rest!);
   return clean.filter((each) =>
-    clean.every((other) => !near(each.modes[0], other.modes[0]) || size(each) > 0.8 * size(other)),
+    clean.every((other) => !alike(each.modes[0], other.modes[0]) || size(each) > 0.8 * size(other)),
   );
 }
 
@@ -99,6 +100,7 @@ function judgeGroup(group: Traits[]): Judged[] {
     const held = reference;
     const quiet = group.flatMap((traits, i) => (likelihoodOf(traits, held, i).probability < 0.05 ? [i] : []));
     reference = referenceOf(group, quiet) ?? held;
+    reference = stronger(group, reference) ?? reference;
   }
   const most = reference ? null : mostLeft(group);
   return group.map((traits, i) => ({
@@ -107,6 +109,24 @@ function judgeGroup(group: Traits[]): Judged[] {
     reference,
     quietRest: reference?.rest[i] ?? null,
   }));
+}
+
+/**
+ * A spark only takes: pulses that have clearly more ring left than the reference, and no loss of their own, show
+ * that the reference itself had sparked. Theirs, or null where there are none.
+ */
+function stronger(group: Traits[], reference: Reference): Reference | null {
+  const more = group.flatMap((traits, i) => {
+    const rest = reference.rest[i];
+    if (!rest || !traits.rest || Math.hypot(...traits.rest) < 1.25 * Math.hypot(...rest)) return [];
+    return likelihoodOf(traits, null, i).probability < 0.75 ? [i] : [];
+  });
+  if (more.length === 0) return null;
+  const centre = median(more.map((i) => Math.hypot(...group[i].rest!)));
+  return referenceOf(
+    group,
+    more.filter((i) => Math.abs(Math.hypot(...group[i].rest!) / centre - 1) < 0.12),
+  );
 }
 
 /** The strongest ring left in a group that has no reference: whatever has clearly less of it has lost some. */

@@ -47,6 +47,8 @@ function againstRun(traits: Traits, reference: Reference, rest: [number, number]
     if (loss > 0.05 && sure > 6) return answer(0.6, "missing");
     return answer(sure > 5 ? 0.03 : 0.001, "one-ring");
   }
+  // All of the ring is there and only its beginning is displaced: a contact's bounce does that as well.
+  if (away > 0.03 && Math.abs(loss) < 0.04 && !traits.ringBefore && !traits.late) return answer(0.5, "doubt");
   const plain = disturbed > 3 * NOISE;
   if (away > 0.08 && sure > (plain ? 2 : 4)) return answer(away > 0.15 ? 0.999 : 0.98, "loss");
   if (away > 0.03 && sure > (plain ? 2 : 4)) return answer(plain && !traits.ringBefore ? 0.93 : 0.7, "loss");

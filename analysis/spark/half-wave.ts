@@ -1,0 +1,89 @@
+/**
+ * The first half-wave's volt-seconds: what tells a spark where a diode cuts the half-waves below ground and
+ * no ring is free. By Faraday's law ∫(v − V_supply)·dt over the half-wave is L·(I0 + I1), I1 the current that
+ * swings back: nearly 2·L·I0 in a quiet pulse, whatever the secondary's own ringing; a spark keeps the current
+ * from swinging back.
+ */
+import type { CaptureEvidence, PulseEvidence } from "../evidence.ts";
+import { median } from "../numeric/median.ts";
+
+export interface HalfWave {
+  /** From switch-off to the return to the level of conduction, over the ring's period. */
+  length: number;
+  /** Over the ring's settling level and the current at switch-off, if that is known; in any one unit. */
+  voltSeconds: number;
+  /** The same over L·I0·(1 + e^(−π/2Q)): 1 in a quiet pulse; null without L, current or Q. */
+  share: number | null;
+  /** The trace then lies flat at that level: a diode conducts. */
+  cut: boolean;
+}
+
+/** A quiet half-wave lasts half a period, a little more with the supply below it. */
+const WHOLE = { from: 0.44, to: 0.65 };
+/** The diode holds for at least this part of a period. */
+const HELD = 0.15;
+/** Lost volt-seconds that noise, the supply's sag and the level's doubt explain, and that only a spark does. */
+const LOSS = { none: 0.05, sure: 0.1 };
+
+/** Null where the half-wave is not seen from its start to its end, or its edge stays off screen. */
+export function gatherHalfWave(evidence: CaptureEvidence, pulse: PulseEvidence): HalfWave | null {
+  const { map, channels, timebase } = evidence;
+  const { switchOff, levelOn, period, fit, polarity, freeTo, current_A, inductance_H } = pulse;
+  if (map.ring === null || map.ring !== map.switchNode || timebase.step_s === null) return null;
+  if (switchOff === null || levelOn === null || period === null || fit === null) return null;
+  const { samples, unusable, lsb } = channels[map.ring];
+  const tolerance = 4 * fit.noise + (lsb ?? 0);
+  const level = polarity * fit.baseline[0];
+  const start = Math.ceil(switchOff) + 1;
+  const last = Math.min(freeTo, start + Math.ceil(0.75 * period));
+  let [sum, end] = [0, -1];
+  for (let i = start; i < last; i++) {
+    if (i > start + 0.05 * period && polarity * (samples[i] - levelOn) < tolerance) {
+      end = i;
+      break;
+    }
+    sum += polarity * samples[i] - level;
+  }
+  if (end < 0) return null;
+  for (let u = 0; u < unusable.length; u += 2)
+    if (unusable[u] < end && unusable[u + 1] > start) return null;
+  const current = current_A && current_A.value !== 0 ? Math.abs(current_A.value) : null;
+  const voltSeconds = (sum * timebase.step_s) / (current ?? 1);
+  const q = fit.modes.length > 0 ? Math.PI / (fit.modes[0].decay_per_s / fit.modes[0].frequency_Hz) : null;
+  const share =
+    current && inductance_H && q
+      ? voltSeconds / (inductance_H.value * (1 + Math.exp(-Math.PI / (2 * q))))
+      : null;
+  const held = Math.floor(end + 2 + HELD * period);
+  return { length: (end - switchOff) / period, voltSeconds, share, cut: liesFlat(end + 2, held) };
+
+  function liesFlat(from: number, to: number): boolean {
+    if (to >= samples.length || to >= freeTo) return false;
+    const values = samples.subarray(from, to);
+    const middle = median(values);
+    const below = polarity * (levelOn! - middle);
+    return (
+      values.every((value) => Math.abs(value - middle) < tolerance) && below > -tolerance && below < 0.25 * Math.abs(level - polarity * levelOn!) + tolerance
+    );
+  }
+}
+
+/**
+ * Probability of a spark per pulse, null where half-waves say nothing. They speak in runs whose whole
+ * half-waves end in a diode; the whole ones are then the run's quiet pulses, or L·I0 says what one would be.
+ */
+export function judgeHalfWaves(waves: (HalfWave | null)[]): ({ probability: number; loss: number } | null)[] {
+  const isWhole = ({ length }: HalfWave) => length > WHOLE.from && length < WHOLE.to;
+  const whole = waves.flatMap((wave) => (wave && wave.cut && isWhole(wave) ? [wave] : []));
+  const quiet = whole.filter(({ share }) => share === null || share > 1 - LOSS.sure);
+  if (whole.length === 0 && !waves.some((wave) => wave?.cut)) return waves.map(() => null);
+  const usual = quiet.length > 0 ? median(quiet.map(({ voltSeconds }) => voltSeconds)) : null;
+  return waves.map((wave) => {
+    if (!wave) return null;
+    const kept = usual === null ? wave.share : wave.voltSeconds / usual;
+    if (kept === null) return null;
+    const loss = 1 - kept;
+    if (loss < LOSS.none && isWhole(wave)) return { probability: 0.003, loss };
+    return { probability: loss > LOSS.sure ? 0.99 : 0.4, loss };
+  });
+}
