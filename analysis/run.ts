@@ -8,6 +8,7 @@ import type { Setup } from "./setup/schema.ts";
 import { countPulses, verdictOf } from "./spark/counts.ts";
 import { expectedOf } from "./spark/expected.ts";
 import { breakdownOf, sparkEnergy_J, type Breakdown } from "./spark/account.ts";
+import { gatherHalfWave, judgeHalfWaves, type HalfWave } from "./spark/half-wave.ts";
 import { judgePulses, type Judged } from "./spark/judge.ts";
 import { timesOf } from "./spark/onset.ts";
 import { ringModes, ringPeriods } from "./spark/ring-modes.ts";
@@ -32,6 +33,8 @@ export interface RunJudgement {
 /** Windows are gathered once, unless the run shows another period: a growing run is judged again and again. */
 const windows = new WeakMap<PulseEvidence, { window: SparkWindow | null; asked: number }>();
 
+const halfWaves = new WeakMap<PulseEvidence, HalfWave | null>();
+
 /**
  * Verdicts of a run; can be called again when the run grows or the setup changes. The evidence is not
  * changed. Captures in the order they were taken: a sagging supply is followed along it.
@@ -43,9 +46,11 @@ export function judgeRun(evidence: CaptureEvidence[], setup: Setup): RunJudgemen
   const periods = ringPeriods(places);
   const judgeable = places.flatMap((place, i) => {
     const window = windowOf(place.capture, place.pulse, periods[i]);
-    return window ? [{ ...place, window, modes: ringModes(place.pulse.fit?.modes ?? []) }] : [];
+    const wave = gatherOnce(place.capture, place.pulse);
+    return window ? [{ ...place, window, wave, modes: ringModes(place.pulse.fit?.modes ?? []) }] : [];
   });
-  const verdicts = judgePulses(judgeable);
+  const waves = judgeHalfWaves(judgeable.map(({ wave }) => wave));
+  const verdicts = judgePulses(judgeable).map((judged, i) => byHalfWave(judged, waves[i]));
   const run = judgeable.flatMap((place, i) => (verdicts[i] ? [{ ...place, judged: verdicts[i] }] : []));
   const quiet = run.flatMap(({ judged }, i) => (judged.likelihood.probability < 0.1 ? [i] : []));
   const found = new Map(run.map((place, i) => [place.pulse, findings(place, run, quiet, i, setup)]));
@@ -99,6 +104,21 @@ function findings(
   return { spark, energy_J, breakdown, onsetUncertainty_s: times.onsetUncertainty_s };
 }
 
+/** Where a diode cuts the half-waves their volt-seconds decide: no ring is free there. */
+function byHalfWave(
+  judged: Judged | null,
+  wave: { probability: number; loss: number } | null,
+): Judged | null {
+  if (!judged || !wave) return judged;
+  const likelihood = {
+    probability: wave.probability,
+    because: "volt-seconds" as const,
+    away: null,
+    loss: wave.loss,
+  };
+  return { ...judged, likelihood };
+}
+
 function judgedPulse(pulse: PulseReading, found: Findings | undefined): PulseReading {
   if (!found) return { ...pulse, spark: noEvidence("no ring was found to judge by", pulse.switchOffTime_s) };
   const { spark, energy_J, breakdown, onsetUncertainty_s } = found;
@@ -107,6 +127,14 @@ function judgedPulse(pulse: PulseReading, found: Findings | undefined): PulseRea
   if (spark.breakdown_V !== null && breakdown) u["spark.breakdown_V"] = breakdown.u;
   if (energy_J) u["energy_J.spark"] = energy_J.u;
   return { ...pulse, spark, u, energy_J: { ...pulse.energy_J, spark: energy_J?.value ?? null } };
+}
+
+function gatherOnce(capture: CaptureEvidence, pulse: PulseEvidence): HalfWave | null {
+  const held = halfWaves.get(pulse);
+  if (held !== undefined) return held;
+  const wave = gatherHalfWave(capture, pulse);
+  halfWaves.set(pulse, wave);
+  return wave;
 }
 
 function windowOf(capture: CaptureEvidence, pulse: PulseEvidence, period: number | null): SparkWindow | null {

@@ -45,8 +45,7 @@ export function gatherHalfWave(evidence: CaptureEvidence, pulse: PulseEvidence):
     sum += polarity * samples[i] - level;
   }
   if (end < 0) return null;
-  for (let u = 0; u < unusable.length; u += 2)
-    if (unusable[u] < end && unusable[u + 1] > start) return null;
+  for (let u = 0; u < unusable.length; u += 2) if (unusable[u] < end && unusable[u + 1] > start) return null;
   const current = current_A && current_A.value !== 0 ? Math.abs(current_A.value) : null;
   const voltSeconds = (sum * timebase.step_s) / (current ?? 1);
   const q = fit.modes.length > 0 ? Math.PI / (fit.modes[0].decay_per_s / fit.modes[0].frequency_Hz) : null;
@@ -54,29 +53,44 @@ export function gatherHalfWave(evidence: CaptureEvidence, pulse: PulseEvidence):
     current && inductance_H && q
       ? voltSeconds / (inductance_H.value * (1 + Math.exp(-Math.PI / (2 * q))))
       : null;
-  const held = Math.floor(end + 2 + HELD * period);
-  return { length: (end - switchOff) / period, voltSeconds, share, cut: liesFlat(end + 2, held) };
-
-  function liesFlat(from: number, to: number): boolean {
-    if (to >= samples.length || to >= freeTo) return false;
-    const values = samples.subarray(from, to);
-    const middle = median(values);
-    const below = polarity * (levelOn! - middle);
-    return (
-      values.every((value) => Math.abs(value - middle) < tolerance) && below > -tolerance && below < 0.25 * Math.abs(level - polarity * levelOn!) + tolerance
-    );
-  }
+  const rest = {
+    from: end + 2,
+    to: Math.floor(end + 2 + HELD * period),
+    below: 0.25 * Math.abs(level - polarity * levelOn),
+  };
+  const cut =
+    rest.to < Math.min(freeTo, samples.length) && liesFlat(samples, rest, polarity, levelOn, tolerance);
+  return { length: (end - switchOff) / period, voltSeconds, share, cut };
 }
+
+/** Flat at the level of conduction or a diode's drop below it, and no farther than `below`. */
+function liesFlat(
+  samples: Float64Array,
+  rest: { from: number; to: number; below: number },
+  polarity: number,
+  levelOn: number,
+  tolerance: number,
+): boolean {
+  const values = samples.subarray(rest.from, rest.to);
+  const middle = median(values);
+  const drop = polarity * (levelOn - middle);
+  const flat = values.every((value) => Math.abs(value - middle) < tolerance);
+  return flat && drop > -tolerance && drop < rest.below + tolerance;
+}
+
+const isWhole = ({ length }: HalfWave) => length > WHOLE.from && length < WHOLE.to;
 
 /**
  * Probability of a spark per pulse, null where half-waves say nothing. They speak in runs whose whole
  * half-waves end in a diode; the whole ones are then the run's quiet pulses, or L·I0 says what one would be.
  */
 export function judgeHalfWaves(waves: (HalfWave | null)[]): ({ probability: number; loss: number } | null)[] {
-  const isWhole = ({ length }: HalfWave) => length > WHOLE.from && length < WHOLE.to;
-  const whole = waves.flatMap((wave) => (wave && wave.cut && isWhole(wave) ? [wave] : []));
+  const seen = waves.filter((wave) => wave !== null);
+  const whole = seen.filter(isWhole);
+  // A diode cuts every half-wave of the bench: an edge that falls into one pulse does not.
+  const telling = whole.length > 0 ? whole : seen;
+  if (telling.filter(({ cut }) => cut).length < Math.max(1, telling.length / 2)) return waves.map(() => null);
   const quiet = whole.filter(({ share }) => share === null || share > 1 - LOSS.sure);
-  if (whole.length === 0 && !waves.some((wave) => wave?.cut)) return waves.map(() => null);
   const usual = quiet.length > 0 ? median(quiet.map(({ voltSeconds }) => voltSeconds)) : null;
   return waves.map((wave) => {
     if (!wave) return null;

@@ -5,7 +5,7 @@ import { NOISE, type Traits } from "./traits.ts";
 export interface Likelihood {
   probability: number;
   /** What the probability rests on most. */
-  because: "one-ring" | "ring-goes-on" | "loss" | "course" | "turned" | "missing" | "doubt";
+  because: "one-ring" | "ring-goes-on" | "loss" | "course" | "turned" | "missing" | "doubt" | "volt-seconds";
   /** Distance of the ring after from the run's quiet ring, as a share; null without reference. */
   away: number | null;
   /** Share of the quiet amplitude that is missing after; null where it is not known. */

@@ -50,6 +50,13 @@ export function reasonsOf(
     case "missing":
       say("the ring is weaker than the quiet ones from its start", at(traits.kickBlock));
       break;
+    case "volt-seconds":
+      say(
+        `a diode cuts the half-waves; the first one holds ${percent(Math.max(0, 1 - (likelihood.loss ?? 0)))} of a quiet one's volt-seconds`,
+        at(0),
+      );
+      if (spark && after) say(`the ring leaves its course ${after} after switch-off`, times.onset_s);
+      return reasons;
     case "doubt":
       say(`a disturbance of strength ${strength} that could be a spark or something else`, at(traits.a));
       break;

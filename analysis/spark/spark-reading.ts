@@ -19,7 +19,7 @@ export function sparkReading(
   times: SparkTimes,
   breakdown: Breakdown | null,
 ): SparkReading {
-  const seen = withSecondary(judged.likelihood.probability, window, judged.quietRest !== null);
+  const seen = withSecondary(judged.likelihood.probability, window, comparable(judged));
   const verdict = verdictFor(seen.probability);
   const sparked = verdict !== "no-spark";
   const strikes = sparked ? strikesOf(window, times) : [];
@@ -42,6 +42,10 @@ export function sparkReading(
     places_s: reasons.map(({ place_s }) => place_s),
   };
 }
+
+/** Whether something of the run or of the circuit says what this pulse would be without a spark. */
+const comparable = ({ quietRest, likelihood }: Judged) =>
+  quietRest !== null || likelihood.because === "volt-seconds";
 
 /** The primary's reasons are given where they speak for the same word. */
 const agree = (probability: number, { likelihood }: Judged) =>
