@@ -5,7 +5,16 @@ import { NOISE, type Traits } from "./traits.ts";
 export interface Likelihood {
   probability: number;
   /** What the probability rests on most. */
-  because: "one-ring" | "ring-goes-on" | "loss" | "course" | "turned" | "missing" | "doubt" | "volt-seconds";
+  because:
+    | "one-ring"
+    | "spent"
+    | "ring-goes-on"
+    | "loss"
+    | "course"
+    | "turned"
+    | "missing"
+    | "doubt"
+    | "volt-seconds";
   /** Distance of the ring after from the run's quiet ring, as a share; null without reference. */
   away: number | null;
   /** Share of the quiet amplitude that is missing after; null where it is not known. */
@@ -30,7 +39,7 @@ function againstRun(traits: Traits, reference: Reference, rest: [number, number]
     excess,
     reference.misfit > NOISE ? 0 : Math.sqrt(Math.max(0, traits.split.gain)),
   );
-  if (!traits.rest || traits.spent) return cutShort(traits, disturbed);
+  if (!traits.rest || traits.spent) return cutShort(traits, disturbed, reference.misfit < NOISE);
   const calm = disturbed <= NOISE;
   const scale = currentScale(traits.kick / reference.kick, calm);
   const away = Math.min(distance(traits.rest, rest), distance(traits.rest, scaled(rest, scale)));
@@ -64,15 +73,21 @@ function currentScale(ratio: number, calm: boolean): number {
 }
 
 /** Nothing free is left after the disturbance: the arc burns until the next edge, or there is none. */
-function cutShort(traits: Traits, disturbed: number): Likelihood {
+function cutShort(traits: Traits, disturbed: number, othersRing = false): Likelihood {
   const nothing = { away: null, loss: traits.loss };
   if (disturbed <= NOISE) return { probability: 0.005, because: "one-ring", ...nothing };
   // The window's very end may hold the next edge: no spark is read from it, nor from a ring that is spent.
-  if (traits.spent) return { probability: 0.03, because: "one-ring", ...nothing };
+  if (traits.spent) return { probability: 0.03, because: "spent", ...nothing };
   if (traits.tail) return { probability: disturbed > 2 * NOISE ? 0.3 : 0.03, because: "doubt", ...nothing };
   if (traits.ringBefore && disturbed > 20) return { probability: 0.97, because: "course", ...nothing };
   return {
-    probability: disturbed > 5 * NOISE && traits.loss === 1 ? 0.95 : disturbed > 20 ? 0.8 : 0.4,
+    // Where the run's quiet pulses are free rings to their end, none here is an arc's work.
+    probability:
+      (othersRing && disturbed > 2 * NOISE) || (disturbed > 5 * NOISE && traits.loss === 1)
+        ? 0.95
+        : disturbed > 20
+          ? 0.8
+          : 0.4,
     because: "doubt",
     ...nothing,
   };

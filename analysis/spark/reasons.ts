@@ -29,6 +29,12 @@ export function reasonsOf(
         at(0),
       );
       break;
+    case "spent":
+      say(
+        "a disturbance where the ring had already sunk into the noise: too little is left for a spark",
+        at(traits.a),
+      );
+      break;
     case "ring-goes-on":
       say(
         `a disturbance of strength ${Math.round(Math.sqrt(Math.max(0, traits.split.gain)))}, but the same ring goes on after it`,
