@@ -48,15 +48,25 @@ function meanFrom(samples: Float64Array, i: number, width: number): number {
   return sum / width;
 }
 
+/** A glitch of a sample or two is no excursion: the third lowest and third highest count. */
+const GLITCH = 2;
+
 function extremes(samples: Float64Array, width: number): [number, number] {
-  let low = Infinity;
-  let high = -Infinity;
+  const lows = new Float64Array(GLITCH + 1).fill(Infinity);
+  const highs = new Float64Array(GLITCH + 1).fill(-Infinity);
   for (let i = 0; i + width <= samples.length; i += width) {
     const y = meanFrom(samples, i, width);
-    if (y < low && y > -Infinity) low = y;
-    if (y > high && y < Infinity) high = y;
+    if (y < lows[0] && y > -Infinity) insert(lows, y, -1);
+    if (y > highs[0] && y < Infinity) insert(highs, y, 1);
   }
-  return [low, high];
+  return [lows[0], highs[0]];
+}
+
+/** Replaces the least extreme of the kept values and leaves the next such one in front. */
+function insert(kept: Float64Array, value: number, sign: 1 | -1): void {
+  kept[0] = value;
+  for (let k = 1; k < kept.length && sign * kept[k - 1] > sign * kept[k]; k++)
+    [kept[k - 1], kept[k]] = [kept[k], kept[k - 1]];
 }
 
 /** Median distance between the beginnings of neighbouring half-waves of one sign, in blocks of `width`. */

@@ -146,6 +146,15 @@ function isStep(samples: Float64Array, onset: Onset, period: number): boolean {
   return Math.abs(onset.swing) < STEP_OVERSHOOT * Math.abs(settled - onset.level);
 }
 
+/** Swings so far above what the others of a train reach are disturbances, and set no measure. */
+const GIANT = 4;
+
+function withoutGiants(onsets: Onset[]): Onset[] {
+  if (onsets.length < 5) return onsets;
+  const usual = medianOf(onsets.map((onset) => Math.abs(onset.swing)));
+  return onsets.filter((onset) => Math.abs(onset.swing) < GIANT * usual);
+}
+
 /** Onsets out of a flat level, in the kick's direction, all from the same level. */
 function outOfConduction(
   samples: Float64Array,
@@ -158,7 +167,9 @@ function outOfConduction(
   // Hum and coloured noise show in the quiet stretches only: the calmer of them set the measure.
   const calm = onsets.map((onset) => onset.scatter).toSorted((a, b) => a - b)[onsets.length >> 2];
   const unrest = Math.max(noise, Math.min(calm, 3 * noise));
-  const flat = onsets.filter((onset) => onset.scatter < FLAT * unrest + 0.02 * Math.abs(onset.swing));
+  const flat = withoutGiants(
+    onsets.filter((onset) => onset.scatter < FLAT * unrest + 0.02 * Math.abs(onset.swing)),
+  );
   if (flat.length === 0) return [];
   const anchor = flat.reduce((a, b) => (sharpness(b) > sharpness(a) ? b : a));
   const reach = Math.max(...flat.map((onset) => Math.abs(onset.swing)));
