@@ -80,6 +80,13 @@ function liesFlat(
 
 const isWhole = ({ length }: HalfWave) => length > WHOLE.from && length < WHOLE.to;
 
+/** A clamp takes its part of every whole half-wave: those that agree with the largest are the quiet ones. */
+function alike(whole: HalfWave[]): HalfWave[] {
+  const most = Math.max(...whole.map(({ voltSeconds }) => voltSeconds));
+  const agreeing = whole.filter(({ voltSeconds }) => voltSeconds > (1 - LOSS.none) * most);
+  return agreeing.length > 1 ? agreeing : [];
+}
+
 /**
  * Probability of a spark per pulse, null where half-waves say nothing. They speak in runs whose whole
  * half-waves end in a diode; the whole ones are then the run's quiet pulses, or L·I0 says what one would be.
@@ -90,7 +97,8 @@ export function judgeHalfWaves(waves: (HalfWave | null)[]): ({ probability: numb
   // A diode cuts every half-wave of the bench: an edge that falls into one pulse does not.
   const telling = whole.length > 0 ? whole : seen;
   if (telling.filter(({ cut }) => cut).length < Math.max(1, telling.length / 2)) return waves.map(() => null);
-  const quiet = whole.filter(({ share }) => share === null || share > 1 - LOSS.sure);
+  const free = whole.filter(({ share }) => share === null || share > 1 - LOSS.sure);
+  const quiet = free.length > 0 ? free : alike(whole);
   const usual = quiet.length > 0 ? median(quiet.map(({ voltSeconds }) => voltSeconds)) : null;
   return waves.map((wave) => {
     if (!wave) return null;
@@ -98,6 +106,6 @@ export function judgeHalfWaves(waves: (HalfWave | null)[]): ({ probability: numb
     if (kept === null) return null;
     const loss = 1 - kept;
     if (loss < LOSS.none && isWhole(wave)) return { probability: 0.003, loss };
-    return { probability: loss > LOSS.sure ? 0.99 : 0.4, loss };
+    return { probability: loss > LOSS.sure && !isWhole(wave) ? 0.99 : 0.4, loss };
   });
 }
