@@ -46,9 +46,13 @@ export function findAxes(numeric: HeadColumn[], symbolic: number[], timingStated
 
 const countName = /^(#|n|no|nr|nummer|sample|samples|index|point|count|number)\b/i;
 
-/** 0, 1, 2 … (or from 1), starting anew where a record does; a stated unit of time makes it a time. */
+/**
+ * 0, 1, 2 … (or from 1; from anywhere where the file's beginning is lost and no name says time), starting anew
+ * where a record does; a stated unit of time makes it a time.
+ */
 function isCounter({ head, name }: HeadColumn): boolean {
-  if (name.unit || head.length < 2 || (head[0] !== 0 && head[0] !== 1)) return false;
+  const late = head[0] > 1 && Number.isInteger(head[0]) && !timeName.test(name.name);
+  if (name.unit || head.length < 2 || !(head[0] === 0 || head[0] === 1 || late)) return false;
   let restarts = 0;
   for (let i = 1; i < head.length; i++) {
     if (head[i] === head[i - 1] + 1) continue;

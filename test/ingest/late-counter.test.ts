@@ -1,0 +1,18 @@
+import { expect, it } from "vitest";
+import { ingestBytes } from "../../analysis/ingest/index.ts";
+
+const rows = (of: (k: number) => string) =>
+  new TextEncoder().encode(Array.from({ length: 400 }, (_, k) => of(k + 123)).join("\n"));
+const value = (k: number) => (50 * Math.sin(k / 7)).toFixed(2);
+
+it("takes a running number for one although the file's beginning is lost, and the time beside it for the time", () => {
+  const [capture] = ingestBytes(rows((k) => `${k},${(k * 2e-6).toExponential(6)},${value(k)}`), {});
+  expect(capture.timebase.step_s).toBeCloseTo(2e-6, 15);
+  expect(capture.channels).toHaveLength(1);
+});
+
+it("never turns a running number into seconds, wherever it begins", () => {
+  const [capture] = ingestBytes(rows((k) => `${k},${value(k)}`), {});
+  expect(capture.timebase.step_s).toBeNull();
+  expect(capture.notes.some(({ question }) => question)).toBe(true);
+});
