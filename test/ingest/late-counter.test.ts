@@ -6,13 +6,19 @@ const rows = (of: (k: number) => string) =>
 const value = (k: number) => (50 * Math.sin(k / 7)).toFixed(2);
 
 it("takes a running number for one although the file's beginning is lost, and the time beside it for the time", () => {
-  const [capture] = ingestBytes(rows((k) => `${k},${(k * 2e-6).toExponential(6)},${value(k)}`), {});
+  const [capture] = ingestBytes(
+    rows((k) => `${k},${(k * 2e-6).toExponential(6)},${value(k)}`),
+    {},
+  );
   expect(capture.timebase.step_s).toBeCloseTo(2e-6, 15);
   expect(capture.channels).toHaveLength(1);
 });
 
 it("never turns a running number into seconds, wherever it begins", () => {
-  const [capture] = ingestBytes(rows((k) => `${k},${value(k)}`), {});
+  const [capture] = ingestBytes(
+    rows((k) => `${k},${value(k)}`),
+    {},
+  );
   expect(capture.timebase.step_s).toBeNull();
   expect(capture.notes.some(({ question }) => question)).toBe(true);
 });
