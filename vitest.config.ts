@@ -28,6 +28,8 @@ export default defineConfig({
           include: ["test/window/**/*.test.ts"],
           globalSetup: ["test/window/demo-book.ts"],
           fileParallelism: false,
+          // A browser on a busy machine may miss a moment once; what fails twice is a defect.
+          retry: 1,
           testTimeout: 120_000,
           hookTimeout: 120_000,
         },

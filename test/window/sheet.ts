@@ -2,7 +2,7 @@
 import { readdirSync, readFileSync } from "node:fs";
 import { basename, join } from "node:path";
 import type { Browser, BrowserContextOptions, Page } from "playwright-core";
-import { expect } from "vitest";
+import { expect, vi } from "vitest";
 import type { TestDoor } from "./door.ts";
 
 const axe = readFileSync(join(import.meta.dirname, "../../node_modules/axe-core/axe.min.js"), "utf8");
@@ -46,8 +46,13 @@ export const goTo = (page: Page, path: string) => page.evaluate((path) => (locat
 /** To the book's contents by key, once the place where the book was closed is restored. */
 export async function openContents(page: Page): Promise<void> {
   await page.locator(".sheet-head").waitFor();
-  await page.keyboard.press("b");
-  await page.getByRole("heading", { name: "Contents" }).waitFor();
+  // A key pressed before the page listens is lost, for a person too, who presses it once more.
+  const contents = page.getByRole("heading", { name: "Contents" });
+  const pressed = async () => {
+    await page.keyboard.press("b");
+    await contents.waitFor({ timeout: 3000 });
+  };
+  await vi.waitFor(pressed, { timeout: 30_000, interval: 200 });
 }
 
 /** Closes the page and asserts that it was silent. */
