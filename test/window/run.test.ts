@@ -1,5 +1,5 @@
 /** Files dropped anywhere, their progress and problems, the run at a glance, the way to each pulse. */
-import { mkdirSync, writeFileSync } from "node:fs";
+import { mkdtempSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 import type { Browser } from "playwright-core";
 import { afterAll, afterEach, beforeAll, expect, it } from "vitest";
@@ -120,8 +120,7 @@ describeWindow("a run", () => {
   });
 
   it("grows from a watched folder while one looks on", async () => {
-    const folder = join(door.folder, "scope");
-    mkdirSync(folder);
+    const folder = mkdtempSync(join(door.folder, "scope-"));
     sheet = await openSheet(browser, door, "/");
     const { page } = sheet;
     await openContents(page);
