@@ -104,7 +104,7 @@ function calmBefore(
   lsb: number | null,
 ): { level: (i: number) => number; scatter: number } | null {
   const to = Math.max(2, about - width);
-  let from = Math.max(0, to - quiet * width);
+  let from = calmStart(samples, to, quiet * width, width, noise);
   const near = meanAndDeviation(samples, from, to);
   if (near.count === 0) return null;
   const scatter = Math.max(near.deviation || 0, noise);
@@ -121,6 +121,29 @@ function calmBefore(
   const sure = Math.abs(line.slope) > 4 * line.deviation * Math.sqrt(12 / whole.count ** 3);
   const level = sure ? (i: number) => line.level + line.slope * (i - from) : () => whole.mean;
   return { level, scatter: Math.max(sure ? line.deviation : whole.deviation || 0, noise) };
+}
+
+/** Standard deviations by which a few samples before the conduction's end stand apart from its later half. */
+const APART = 6;
+
+/** Scatter of a conduction, in units of the noise of differences. */
+const CALM = 2;
+
+/** A conduction may be shorter than the quiet that is looked for: its later half tells where it began. */
+function calmStart(samples: Float64Array, to: number, length: number, width: number, noise: number): number {
+  const earliest = Math.max(0, to - length);
+  let from = Math.max(earliest, to - Math.ceil(length / 2));
+  const { mean, deviation, count } = meanAndDeviation(samples, from, to);
+  // A ring's trough is no conduction, however short a stretch of it is looked at.
+  if (count < 4 || deviation > CALM * noise) return earliest;
+  const limit = APART * Math.max(deviation, noise);
+  while (from > earliest) {
+    const before = Math.max(earliest, from - width);
+    const piece = meanAndDeviation(samples, before, from);
+    if (piece.count > 0 && !(Math.abs(piece.mean - mean) < limit / Math.sqrt(piece.count))) break;
+    from = before;
+  }
+  return from;
 }
 
 /** The edge on the raw samples: leaves the quiet level for good, extrapolated back to it. */
