@@ -74,7 +74,7 @@ function placeOf(context: PulseContext, off: SwitchOff): Omit<Place, "from"> | n
   // Coloured noise shows in the quiet before; a trace that was not quiet must not pass for noise.
   const noise = Math.max(context.noise, Math.min(off.scatter ?? 0, 3 * context.noise));
   const period = context.period || (off.freeTo - off.freeFrom) / 8;
-  return { samples, step_s, to: off.freeTo, period, noise, lsb, unusable };
+  return { samples, step_s, to: off.freeTo, period, noise, colour: noise / context.noise, lsb, unusable };
 }
 
 function outcomeOf(context: PulseContext, found: PulseRing | null, known: KnownCoil): RingOutcome {

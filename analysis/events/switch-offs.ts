@@ -73,7 +73,7 @@ function withCurrent(capture: Capture, seen: SwitchOff[], pulses: Conduction[], 
     const pulse = off.at === null ? null : pulses.find((other) => Math.abs(other.off! - off.at!) < reach);
     return {
       ...off,
-      on: off.on ?? pulse?.on ?? null,
+      on: off.at === null ? off.on : startOf(off.on, pulse?.on ?? null, off.at),
       witnessed: off.at === null ? null : pulse !== undefined,
     };
   });
@@ -99,6 +99,15 @@ function withCurrent(capture: Capture, seen: SwitchOff[], pulses: Conduction[], 
     if (next) off.freeTo = Math.min(off.freeTo, Math.floor(next.on ?? next.at!));
   });
   return offs;
+}
+
+/** Share of the dwell by which voltage and current may place its start apart. */
+const STARTS_AGREE = 0.1;
+
+/** The voltage's edge is the sharper one; where noise interrupts its conduction the current tells better. */
+function startOf(voltage: number | null, current: number | null, off: number): number | null {
+  if (voltage === null || current === null) return voltage ?? current;
+  return Math.abs(voltage - current) > STARTS_AGREE * (off - current) ? current : voltage;
 }
 
 /** A gate may be inverted: whichever polarity ends where the kicks begin; high conducts if neither tells. */

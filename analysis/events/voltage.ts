@@ -42,7 +42,7 @@ export function voltageSwitchOffs(
   const offs: SwitchOff[] = onsets.map((onset, k) => {
     const previous = k > 0 ? onsets[k - 1].at : 0;
     const back = k > 0 ? Math.ceil(previous + scale.period / 4) : 0;
-    const tolerance = toleranceOf(onset, lsb, width);
+    const tolerance = toleranceOf(onset, lsb, width, noise);
     const start = conductionStart(samples, onset.at, back, onset.level, tolerance, width);
     return {
       at: onset.at,
@@ -56,13 +56,21 @@ export function voltageSwitchOffs(
       witnessed: null,
     };
   });
-  for (let k = 0; k < offs.length; k++) offs[k].freeTo = freeEnd(samples, offs, onsets, k, lsb, width);
+  for (let k = 0; k < offs.length; k++) offs[k].freeTo = freeEnd(samples, offs, onsets, k, lsb, width, noise);
   const early = beginsInRing(samples, offs[0] ?? null, scale.period, noise);
   return { offs: early ? [early, ...offs] : offs, period: scale.period, noise };
 }
 
-const toleranceOf = (onset: Onset, lsb: number | null, width: number) =>
-  Math.max((5 * onset.scatter) / Math.sqrt(width), 1.1 * (lsb ?? 0), 2e-3 * Math.abs(onset.swing));
+/** Of means over `width` samples; neighbours in coloured noise resemble each other, and its means scatter more. */
+function toleranceOf(onset: Onset, lsb: number | null, width: number, noise: number): number {
+  const colour = Math.max(1, onset.scatter / noise);
+  const independent = Math.max(1, width / colour ** 4);
+  return Math.max(
+    (5 * onset.scatter) / Math.sqrt(independent),
+    1.1 * (lsb ?? 0),
+    2e-3 * Math.abs(onset.swing),
+  );
+}
 
 /** A record that starts inside a ring: swinging from its first period on, and less so later. */
 function beginsInRing(
@@ -99,6 +107,7 @@ function freeEnd(
   k: number,
   lsb: number | null,
   width: number,
+  noise: number,
 ): number {
   const next = offs[k + 1];
   if (next) return Math.floor(next.on ?? next.at!);
@@ -109,13 +118,13 @@ function freeEnd(
     samples.length,
     off,
     onset.level,
-    toleranceOf(onset, lsb, width),
+    toleranceOf(onset, lsb, width, noise),
     width,
   );
   if (start === null || start <= off || samples.length - start < 2 * width) return samples.length;
   // Without a step there, the ring has merely settled to where it was before.
   const before = medianOf(samples, Math.max(off, Math.floor(start) - 3 * width), Math.floor(start) - 1);
-  const stepped = Math.abs(before - onset.level) > 3 * toleranceOf(onset, lsb, width);
+  const stepped = Math.abs(before - onset.level) > 3 * toleranceOf(onset, lsb, width, noise);
   return stepped ? Math.floor(start) : samples.length;
 }
 

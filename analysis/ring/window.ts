@@ -26,6 +26,8 @@ export interface Place {
   /** Rough period in samples. */
   period: number;
   noise: number;
+  /** How far the noise exceeds that of differences: 1 white, more where neighbouring samples resemble each other. */
+  colour?: number;
   lsb: number | null;
   unusable: ArrayLike<number>;
 }
@@ -92,11 +94,14 @@ function isClean(place: Place, fit: RingFit, unusable = place.unusable): boolean
   const length = stretch(place, fit);
   const { rms } = residualProfile(place.samples, fit, fit.from, fit.to, length, unusable);
   // With little noise the quantisation's error stands still for whole stretches: half an LSB and some.
-  const limit = Math.max(CLEAN * noiseLimit(noiseOf(place), length), 0.75 * (place.lsb ?? 0));
+  const limit = Math.max(limitOf(place, noiseOf(place), length), 0.75 * (place.lsb ?? 0));
   return rms.every((value) => !(value > limit));
 }
 
 const noiseOf = (place: Place) => Math.max(place.noise, (place.lsb ?? 0) / Math.sqrt(12));
+/** What a stretch of plain noise stays below; coloured noise holds fewer independent values than samples. */
+const limitOf = (place: Place, noise: number, length: number) =>
+  CLEAN * noiseLimit(noise, length / (place.colour ?? 1) ** 4);
 const stretch = (place: Place, fit: RingFit) =>
   Math.max(4, Math.round(Math.min(place.period, (fit.to - fit.from) / 8) / 4));
 
@@ -109,7 +114,7 @@ function withoutBursts(place: Place, whole: RingFit | null): WindowedRing | null
     const unusable = merged(place.unusable, masked);
     const { rms } = residualProfile(place.samples, fit, fit.from, fit.to, length, unusable);
     const typical = Math.max(noiseOf(place), rms.toSorted()[rms.length >> 1] || 0);
-    const limit = CLEAN * noiseLimit(typical, length);
+    const limit = limitOf(place, typical, length);
     let share = 0;
     rms.forEach((value, s) => {
       if (!(value > limit)) return;
