@@ -8,7 +8,7 @@ import type { Setup } from "./setup/schema.ts";
 import { countPulses, verdictOf } from "./spark/counts.ts";
 import { expectedOf } from "./spark/expected.ts";
 import { breakdownOf, sparkEnergy_J, type Breakdown } from "./spark/account.ts";
-import { gatherHalfWave, judgeHalfWaves, type HalfWave } from "./spark/half-wave.ts";
+import { endedEarly, gatherHalfWave, judgeHalfWaves, type HalfWave } from "./spark/half-wave.ts";
 import { judgePulses, type Judged } from "./spark/judge.ts";
 import { timesOf } from "./spark/onset.ts";
 import { ringModes, ringPeriods } from "./spark/ring-modes.ts";
@@ -50,7 +50,9 @@ export function judgeRun(evidence: CaptureEvidence[], setup: Setup): RunJudgemen
     return window ? [{ ...place, window, wave, modes: ringModes(place.pulse.fit?.modes ?? []) }] : [];
   });
   const waves = judgeHalfWaves(judgeable.map(({ wave }) => wave));
-  const verdicts = judgePulses(judgeable).map((judged, i) => byHalfWave(judged, waves[i]));
+  const verdicts = judgePulses(judgeable).map((judged, i) =>
+    byHalfWave(judged, waves[i] ?? (unsure(judged) ? endedEarly(judgeable[i].wave) : null)),
+  );
   const run = judgeable.flatMap((place, i) => (verdicts[i] ? [{ ...place, judged: verdicts[i] }] : []));
   const quiet = run.flatMap(({ judged }, i) => (judged.likelihood.probability < 0.1 ? [i] : []));
   const found = new Map(run.map((place, i) => [place.pulse, findings(place, run, quiet, i, setup)]));
@@ -103,6 +105,10 @@ function findings(
   const energy_J = sparked ? sparkEnergy_J(judged, pulse, setup, window) : null;
   return { spark, energy_J, breakdown, onsetUncertainty_s: times.onsetUncertainty_s };
 }
+
+/** No clear word, or none that a ring cut at ground would bear out. */
+const unsure = (judged: Judged | null) =>
+  judged !== null && judged.quietRest === null && judged.likelihood.probability > 0.1;
 
 /** Where a diode cuts the half-waves their volt-seconds decide: no ring is free there. */
 function byHalfWave(

@@ -6,6 +6,7 @@ import type { SwitchOff } from "./event-format.ts";
 import { gateConductions, type Conduction } from "./gate.ts";
 import { linePeriod } from "./line-period.ts";
 import { isVoltage } from "./channels.ts";
+import { meanAndDeviation } from "../numeric/robust.ts";
 import { voltageSwitchOffs } from "./voltage.ts";
 
 export interface Events {
@@ -28,7 +29,7 @@ export function findSwitchOffs(capture: Capture, map: ChannelMap): Events {
     const conductions = bestGate(capture.channels[map.gate].samples, seen.offs, period);
     if (conductions.some(({ off }) => off !== null))
       return {
-        offs: fromConductions(capture, conductions, seen.offs, period),
+        offs: fromConductions(capture, map, conductions, seen.offs, period),
         period,
         noise,
         source: "gate",
@@ -38,7 +39,7 @@ export function findSwitchOffs(capture: Capture, map: ChannelMap): Events {
     const current = capture.channels[map.current];
     const pulses = currentConductions(current.samples, current.lsb);
     if (seen.offs.length === 0 && pulses.length > 0) {
-      const offs = fromConductions(capture, pulses, [], period);
+      const offs = fromConductions(capture, map, pulses, [], period);
       offs.forEach(
         (off, k) => (off.polarity = map.ring === map.current ? (-pulses[k].polarity as 1 | -1) : 1),
       );
@@ -126,6 +127,7 @@ const kickAfter = (seen: SwitchOff[], off: number, period: number) =>
 
 function fromConductions(
   capture: Capture,
+  map: ChannelMap,
   conductions: Conduction[],
   seen: SwitchOff[],
   period: number,
@@ -143,10 +145,18 @@ function fromConductions(
       freeFrom: Math.ceil(at),
       freeTo: Math.floor(next),
       polarity: kick?.polarity ?? 1,
-      levelOn: kick?.levelOn ?? null,
-      scatter: kick?.scatter ?? null,
+      levelOn: kick?.levelOn ?? quietLevel(capture, map, on, off)?.mean ?? null,
+      scatter: kick?.scatter ?? quietLevel(capture, map, on, off)?.deviation ?? null,
       witnessed: true,
     });
   });
   return offs;
+}
+
+/** Level and scatter of a voltage over the later half of a conduction that gate or current tell of. */
+function quietLevel({ channels }: Capture, map: ChannelMap, on: number | null, off: number) {
+  if (map.ring === null || !isVoltage(map, map.ring) || on === null) return null;
+  const to = Math.floor(off) - 1;
+  const level = meanAndDeviation(channels[map.ring].samples, Math.ceil((on + off) / 2), to);
+  return level.count >= 4 ? level : null;
 }

@@ -12,7 +12,7 @@ export interface HalfWave {
   length: number;
   /** Over the ring's settling level and the current at switch-off, if that is known; in any one unit. */
   voltSeconds: number;
-  /** The same over L·I0·(1 + e^(−π/2Q)): 1 in a quiet pulse; null without L, current or Q. */
+  /** The same over L·I0·(1 + e^(−π/2Q)): 1 in a quiet pulse; null without L or current. */
   share: number | null;
   /** The trace then lies flat at that level: a diode conducts. */
   cut: boolean;
@@ -22,6 +22,10 @@ export interface HalfWave {
 const WHOLE = { from: 0.44, to: 0.65 };
 /** The diode holds for at least this part of a period. */
 const HELD = 0.15;
+/** Of quiet rings; between 8 and 100 the current that swings back differs by a tenth of the whole. */
+const USUAL_Q = 20;
+/** A half-wave so short, with so little of L·I0, has been ended by an arc, whatever the core and the clamp. */
+const ENDED = { length: 0.38, share: 0.75 };
 /** Lost volt-seconds that noise, the supply's sag and the level's doubt explain, and that only a spark does. */
 const LOSS = { none: 0.05, sure: 0.1 };
 
@@ -30,10 +34,10 @@ export function gatherHalfWave(evidence: CaptureEvidence, pulse: PulseEvidence):
   const { map, channels, timebase } = evidence;
   const { switchOff, levelOn, period, fit, polarity, freeTo, current_A, inductance_H } = pulse;
   if (map.ring === null || map.ring !== map.switchNode || timebase.step_s === null) return null;
-  if (switchOff === null || levelOn === null || period === null || fit === null) return null;
+  if (switchOff === null || levelOn === null || period === null) return null;
   const { samples, unusable, lsb } = channels[map.ring];
-  const tolerance = 4 * fit.noise + (lsb ?? 0);
-  const level = polarity * fit.baseline[0];
+  const tolerance = 4 * (fit?.noise ?? 0) + (lsb ?? 0);
+  const level = polarity * (fit?.baseline[0] ?? median(samples.subarray(Math.ceil(switchOff), freeTo)));
   const start = Math.ceil(switchOff) + 1;
   const last = Math.min(freeTo, start + Math.ceil(0.75 * period));
   let [sum, end] = [0, -1];
@@ -48,11 +52,10 @@ export function gatherHalfWave(evidence: CaptureEvidence, pulse: PulseEvidence):
   for (let u = 0; u < unusable.length; u += 2) if (unusable[u] < end && unusable[u + 1] > start) return null;
   const current = current_A && current_A.value !== 0 ? Math.abs(current_A.value) : null;
   const voltSeconds = (sum * timebase.step_s) / (current ?? 1);
-  const q = fit.modes.length > 0 ? Math.PI / (fit.modes[0].decay_per_s / fit.modes[0].frequency_Hz) : null;
+  // A spark spoils the ring's inductance, never the ramp's.
+  const inductance = (evidence.reading.pulses[pulse.index]?.ramp?.inductance_H ?? inductance_H)?.value;
   const share =
-    current && inductance_H && q
-      ? voltSeconds / (inductance_H.value * (1 + Math.exp(-Math.PI / (2 * q))))
-      : null;
+    current && inductance ? voltSeconds / (inductance * (1 + Math.exp(-Math.PI / (2 * USUAL_Q)))) : null;
   const rest = {
     from: end + 2,
     to: Math.floor(end + 2 + HELD * period),
@@ -76,6 +79,12 @@ function liesFlat(
   const drop = polarity * (levelOn - middle);
   const flat = values.every((value) => Math.abs(value - middle) < tolerance);
   return flat && drop > -tolerance && drop < rest.below + tolerance;
+}
+
+/** A pulse by itself, where its first half-wave is cut short beyond doubt; null else. */
+export function endedEarly(wave: HalfWave | null): { probability: number; loss: number } | null {
+  if (!wave || wave.share === null || wave.length > ENDED.length || wave.share > ENDED.share) return null;
+  return { probability: 0.97, loss: 1 - wave.share };
 }
 
 const isWhole = ({ length }: HalfWave) => length > WHOLE.from && length < WHOLE.to;

@@ -58,7 +58,7 @@ export function reasonsOf(
       break;
     case "volt-seconds":
       say(
-        `a diode cuts the half-waves; the first one holds ${percent(Math.max(0, 1 - (likelihood.loss ?? 0)))} of a quiet one's volt-seconds`,
+        `the first half-wave holds ${percent(Math.max(0, 1 - (likelihood.loss ?? 0)))} of a quiet one's volt-seconds; a ring that a diode cuts shows no more`,
         at(0),
       );
       if (spark && after) say(`the ring leaves its course ${after} after switch-off`, times.onset_s);
