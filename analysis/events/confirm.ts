@@ -51,7 +51,8 @@ function kicks(channel: Channel, { evidence }: Candidate, noise: number): boolea
   const tail = medianOf(channel.samples, Math.floor(freeTo - (freeTo - freeFrom) / 3), freeTo);
   const change = Math.abs(tail - levelOn);
   return (
-    change > Math.max(4 * noise, 1.5 * (channel.lsb ?? 0)) &&
+    // Both levels are means of many samples: coarse steps and hum, not the samples' noise, blur their difference.
+    change > Math.max(2 * noise, 1.5 * (channel.lsb ?? 0)) &&
     Math.abs(kick.value - levelOn) > 2 * change &&
     isSmooth(channel, evidence)
   );

@@ -18,6 +18,9 @@ export interface Onset {
   polarity: 1 | -1;
 }
 
+/** Standing out most from the quiet before it. */
+export const sharpness = (onset: Onset) => Math.abs(onset.swing) / onset.scatter;
+
 /** Values a period in the search. */
 const PER_PERIOD = 16;
 /** Quiet needed before, and swing looked for after, in periods: a ring is never quiet for that long. */

@@ -3,14 +3,13 @@ import { meanAndDeviation, medianOf } from "../numeric/robust.ts";
 import { differenceNoise } from "../ring/noise.ts";
 import { conductionStart } from "./conduction.ts";
 import type { SwitchOff } from "./event-format.ts";
-import { linePeriod } from "./line-period.ts";
-import { findOnsets, type Onset } from "./onsets.ts";
+import { findOnsets, sharpness, type Onset } from "./onsets.ts";
+import { ringPeriod } from "./ring-period.ts";
+import { toleranceOf } from "./tolerance.ts";
 import { scaleOf } from "./scale.ts";
 
 /** Onsets against the kick's direction must be this large against it to be pulses of their own. */
 const OPPOSITE_SHARE = 0.6;
-/** Rough periods the ring's own is looked for in. */
-const LOOKED_PERIODS = 200;
 /** Conduction levels of one record agree (hum, AC coupling) within this share of the swing that follows. */
 const LEVEL_SHARE = 0.12;
 /** Scatter of a conduction, in units of the noise. */
@@ -28,7 +27,7 @@ export function voltageSwitchOffs(
   if (!rough) return { offs: [], period: 0, noise };
   const first = findOnsets(samples, rough, noise, lsb);
   // Arcs and a fast second mode make the spacing of half-waves too short: the ring itself tells better.
-  const period = ringPeriod(samples, first, rough.period, noise);
+  const period = ringPeriod(samples, first, rough.period, noise, lsb);
   const scale = { ...rough, period };
   const moved = Math.abs(period / rough.period - 1) > 0.15;
   const onsets = outOfConduction(
@@ -59,17 +58,6 @@ export function voltageSwitchOffs(
   for (let k = 0; k < offs.length; k++) offs[k].freeTo = freeEnd(samples, offs, onsets, k, lsb, width, noise);
   const early = beginsInRing(samples, offs[0] ?? null, scale.period, noise);
   return { offs: early ? [early, ...offs] : offs, period: scale.period, noise };
-}
-
-/** Of means over `width` samples; neighbours in coloured noise resemble each other, and its means scatter more. */
-function toleranceOf(onset: Onset, lsb: number | null, width: number, noise: number): number {
-  const colour = Math.max(1, onset.scatter / noise);
-  const independent = Math.max(1, width / colour ** 4);
-  return Math.max(
-    (5 * onset.scatter) / Math.sqrt(independent),
-    1.1 * (lsb ?? 0),
-    2e-3 * Math.abs(onset.swing),
-  );
 }
 
 /** A record that starts inside a ring: swinging from its first period on, and less so later. */
@@ -128,26 +116,6 @@ function freeEnd(
   return stepped ? Math.floor(start) : samples.length;
 }
 
-/** Standing out most from the quiet before it. */
-const sharpness = (onset: Onset) => Math.abs(onset.swing) / onset.scatter;
-
-/**
- * Period of the strongest oscillation after the sharpest onset; `rough` without one. While an arc burns
- * the fast modes are stronger: where the later part rings more slowly, that is the ring.
- */
-function ringPeriod(samples: Float64Array, onsets: Onset[], rough: number, noise: number): number {
-  if (onsets.length === 0) return rough;
-  const anchor = onsets.reduce((a, b) => (sharpness(b) > sharpness(a) ? b : a));
-  const next = onsets.find((onset) => onset.at > anchor.at && sharpness(onset) > 0.4 * sharpness(anchor));
-  const from = Math.ceil(anchor.at);
-  const to = Math.floor(Math.min(next?.at ?? samples.length, samples.length, from + LOOKED_PERIODS * rough));
-  if (to - from < 3 * rough) return rough;
-  const width = Math.max(1, Math.floor(rough / 16));
-  const early = linePeriod(samples, from, to, width, 1.5, 0) ?? rough;
-  const late = linePeriod(samples, Math.round(from + 0.4 * (to - from)), to, width, 4, 40 * noise * noise);
-  return late !== null && late > 1.2 * early && late < 6 * early ? late : early;
-}
-
 /** A body diode lets go, or the switch closes: the swing is little more than the change of level behind it. */
 function isStep(samples: Float64Array, onset: Onset, period: number): boolean {
   const from = Math.ceil(onset.at + period);
@@ -155,12 +123,13 @@ function isStep(samples: Float64Array, onset: Onset, period: number): boolean {
   return Math.abs(onset.swing) < STEP_OVERSHOOT * Math.abs(settled - onset.level);
 }
 
-/** Swings so far above what the others of a train reach are disturbances, and set no measure. */
+/** Swings so far above what the other kicks of a train reach are disturbances, and set no measure. */
 const GIANT = 4;
 
-function withoutGiants(onsets: Onset[]): Onset[] {
-  if (onsets.length < 5) return onsets;
-  const usual = medianOf(onsets.map((onset) => Math.abs(onset.swing)));
+function withoutGiants(onsets: Onset[], samples: Float64Array, period: number): Onset[] {
+  const kicks = onsets.filter((onset) => !isStep(samples, onset, period));
+  if (kicks.length < 5) return onsets;
+  const usual = medianOf(kicks.map((onset) => Math.abs(onset.swing)));
   return onsets.filter((onset) => Math.abs(onset.swing) < GIANT * usual);
 }
 
@@ -178,6 +147,8 @@ function outOfConduction(
   const unrest = Math.max(noise, Math.min(calm, 3 * noise));
   const flat = withoutGiants(
     onsets.filter((onset) => onset.scatter < FLAT * unrest + 0.02 * Math.abs(onset.swing)),
+    samples,
+    period,
   );
   if (flat.length === 0) return [];
   const anchor = flat.reduce((a, b) => (sharpness(b) > sharpness(a) ? b : a));

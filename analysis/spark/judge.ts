@@ -62,7 +62,9 @@ function modeSets(candidates: Candidate[]): { sets: KnownMode[][]; ceiling?: num
   const quietest = Math.min(...own.map(({ excess }) => excess));
   const calm = own.filter(({ excess }) => excess < 4 * Math.max(1, quietest));
   const ceiling =
-    candidates.length > 2 ? 3 * median(calm.map(({ traits }) => traits.split.variance)) : undefined;
+    candidates.length > 2 && calm.length > 0
+      ? 3 * median(calm.map(({ traits }) => traits.split.variance))
+      : undefined;
   const clean = strongest(calm.filter(({ traits }) => isClean(traits)));
   if (clean.length > 0) return { sets: agreedModes(clean.map(({ modes }) => modes)), ceiling };
   const step = Math.max(1, Math.floor(candidates.length / SEARCHED));

@@ -22,7 +22,7 @@ export function gatherSecondary(
   const current = map.secondaryCurrent === null ? null : channels[map.secondaryCurrent];
   const period = pulse.period ?? to - from;
   if (voltage) {
-    const strikes = collapses(voltage, from, to, period);
+    const strikes = strikesOf(voltage, from, to, period);
     return { strikes, peak_V: peakOf(voltage, from, to) };
   }
   return current ? { strikes: currentPulses(current, from, to), peak_V: null } : null;
@@ -49,12 +49,47 @@ const LEFT = 0.4;
 /** Breakdowns are looked for above this share of the pulse's largest voltage. */
 const LEAST = 0.12;
 
+/** Values a ring period breakdowns are looked for in: arcs take a few thousandths of it to pull the voltage down. */
+const PER_PERIOD = 128;
+
+/** Sampled far finer than the arc is fast, the fall spreads over many samples: looked for in means of a few. */
+function strikesOf(
+  { samples, lsb }: Channel,
+  from: number,
+  to: number,
+  period: number,
+): SecondaryEvidence["strikes"] {
+  const width = Math.max(1, Math.floor(period / PER_PERIOD));
+  if (width === 1) return collapses(samples, lsb, from, to, period);
+  const means = Float64Array.from({ length: Math.floor((to - from) / width) }, (_, k) => {
+    let sum = 0;
+    for (let i = from + k * width; i < from + (k + 1) * width; i++) sum += samples[i];
+    return sum / width;
+  });
+  return collapses(means, lsb, 0, means.length, period / width).map(({ onset, extinction }) => {
+    const about = from + Math.floor(onset) * width;
+    const last = highest(samples, Math.max(from, about - width), Math.min(to, about + 2 * width));
+    return {
+      onset: last + 0.5,
+      extinction: extinction === null ? null : from + (extinction + 0.5) * width,
+      breakdown_V: samples[last],
+    };
+  });
+}
+
+function highest(samples: Float64Array, from: number, to: number): number {
+  let best = from;
+  for (let i = from; i < to; i++) if (Math.abs(samples[i]) > Math.abs(samples[best])) best = i;
+  return best;
+}
+
 /**
- * A breakdown: the voltage falls to a small part of itself within two samples and stays there for a few more,
+ * A breakdown: the voltage falls to a small part of itself within two values and stays there for a few more,
  * where the secondary's own ring would swing through.
  */
 function collapses(
-  { samples, lsb }: Channel,
+  samples: Float64Array,
+  lsb: number | null,
   from: number,
   to: number,
   period: number,

@@ -30,6 +30,8 @@ export interface SparkWindow {
 
 /** Enough to place an onset to a hundredth of a period, few enough to judge fast. */
 const BLOCKS_PER_PERIOD = 64;
+/** Of the trace's own size: no record is more exact. */
+const LEAST_NOISE = 1e-6;
 /** A ring is judged over this many periods at most: later there is nothing left of any. */
 const MOST_PERIODS = 60;
 
@@ -61,6 +63,9 @@ export function gatherWindow(
   const noise = Math.max(
     (pulse.fit?.noise ?? 0) / Math.sqrt(decimation),
     conductionNoise(pulse, samples, decimation),
+    // A level may lie still within one step of the converter: its own error is there all the same.
+    (lsb ?? 0) / Math.sqrt(12 * decimation),
+    LEAST_NOISE * Math.sqrt(blocks.power / blocks.used),
   );
   if (levelOn !== null) leaveOutConduction(blocks, levelOn, noise + (lsb ?? 0) / 3, period / decimation);
   return {
@@ -193,9 +198,11 @@ function flatBottom({ values, count }: Blocks, tolerance: number, period: number
     highest = Math.max(highest, values[i]);
   }
   if (highest - lowest < 20 * tolerance) return false;
+  // A diode's drop changes with its current; a sine's trough leaves this band within a tenth of its period.
+  const band = Math.max(2 * tolerance, 0.02 * (highest - lowest));
   let flat = 0;
   for (let i = 0; i < end; i++) {
-    flat = values[i] - lowest < 2 * tolerance ? flat + 1 : 0;
+    flat = values[i] - lowest < band ? flat + 1 : 0;
     if (flat > 0.25 * period) return true;
   }
   return false;

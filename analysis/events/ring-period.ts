@@ -1,0 +1,104 @@
+/** One period of the coil's ring, where the spacing of the record's large half-waves may tell another story. */
+import { conductionStart } from "./conduction.ts";
+import { linePeriod } from "./line-period.ts";
+import { sharpness, type Onset } from "./onsets.ts";
+import { toleranceOf } from "./tolerance.ts";
+
+/** Rough periods the ring's own is looked for in. */
+const LOOKED_PERIODS = 200;
+/** Share of the free interval after which an arc has usually gone out. */
+const LATE = 0.4;
+
+/**
+ * Period of the strongest oscillation after the sharpest onset; `rough` without one. While an arc burns
+ * the fast modes are stronger: where the later part rings more slowly, that is the ring.
+ */
+export function ringPeriod(
+  samples: Float64Array,
+  onsets: Onset[],
+  rough: number,
+  noise: number,
+  lsb: number | null,
+): number {
+  if (onsets.length === 0) return rough;
+  const anchor = onsets.reduce((a, b) => (sharpness(b) > sharpness(a) ? b : a));
+  const next = onsets.find((onset) => onset.at > anchor.at && sharpness(onset) > 0.4 * sharpness(anchor));
+  const from = Math.ceil(anchor.at);
+  const to = Math.floor(Math.min(next?.at ?? samples.length, samples.length, from + LOOKED_PERIODS * rough));
+  const slow = slowRing(samples, onsets, rough, noise, lsb);
+  if (to - from < 3 * rough) return slow ?? rough;
+  const width = Math.max(1, Math.floor(rough / 16));
+  const early = linePeriod(samples, from, to, width, 1.5, 0) ?? rough;
+  const start = Math.round(from + LATE * (to - from));
+  const late = linePeriod(samples, start, to, width, 4, 40 * noise * noise);
+  if (late !== null && late > 1.2 * early && late < MUCH_SLOWER * early) return late;
+  return slow !== null && slow > MUCH_SLOWER * early ? slow : early;
+}
+
+const MUCH_SLOWER = 6;
+/** Cycles a slow ring shows at least, values it is looked for in at most. */
+const CYCLES = 4;
+const VALUES = 4096;
+
+/**
+ * A clamp or an arc leaves so little of the coil's ring that the strays' fast one is all that stands out: the
+ * coil's own is what dies away slowly after it, until the next conduction. Null without one.
+ */
+function slowRing(
+  samples: Float64Array,
+  onsets: Onset[],
+  rough: number,
+  noise: number,
+  lsb: number | null,
+): number | null {
+  const anchor = onsets.reduce((a, b) => (sharpness(b) > sharpness(a) ? b : a));
+  const kicks = onsets.filter((onset) => onset === anchor || alike(onset, anchor));
+  const k = Math.max(0, Math.min(kicks.indexOf(anchor), kicks.length - 2));
+  const from = Math.ceil(kicks[k].at);
+  const to = kicks[k + 1] ? conductionBefore(samples, kicks[k + 1], from, rough, noise, lsb) : samples.length;
+  const start = Math.round(from + LATE * (to - from));
+  const width = Math.max(1, Math.ceil((to - start) / VALUES));
+  if (rough < 2 * width || to - start < 64) return null;
+  const energy = 400 * noise * noise + 40 * (lsb ?? 0) ** 2;
+  const period = linePeriod(samples, start, to, width, CYCLES, energy);
+  // At the least number of cycles it is the foot of something slower still.
+  if (period === null || (to - start) / period < 1.15 * CYCLES) return null;
+  return diesAway(samples, start, to, period) ? period : null;
+}
+
+const alike = (onset: Onset, anchor: Onset) =>
+  onset.polarity === anchor.polarity &&
+  Math.abs(onset.level - anchor.level) < 0.1 * Math.abs(anchor.swing) &&
+  Math.abs(onset.swing) > 0.5 * Math.abs(anchor.swing);
+
+function conductionBefore(
+  samples: Float64Array,
+  kick: Onset,
+  back: number,
+  rough: number,
+  noise: number,
+  lsb: number | null,
+): number {
+  const width = Math.max(2, Math.round(rough / 8));
+  const tolerance = toleranceOf(kick, lsb, width, noise);
+  return Math.floor(conductionStart(samples, kick.at, back, kick.level, tolerance, width) ?? kick.at);
+}
+
+/** Hum and a supply's ripple go on as they are; a ring loses most of its energy on the way. */
+function diesAway(samples: Float64Array, from: number, to: number, period: number): boolean {
+  const middle = Math.round((from + to) / 2);
+  return energyAt(samples, from, middle, period) > 2.5 * energyAt(samples, middle, to, period);
+}
+
+/** Energy at one frequency (one term of the discrete Fourier transform), level removed. */
+function energyAt(samples: Float64Array, from: number, to: number, period: number): number {
+  let mean = 0;
+  for (let i = from; i < to; i++) mean += (samples[i] || 0) / (to - from);
+  let [re, im] = [0, 0];
+  for (let i = from; i < to; i++) {
+    const turn = (2 * Math.PI * (i - from)) / period;
+    re += ((samples[i] || mean) - mean) * Math.cos(turn);
+    im += ((samples[i] || mean) - mean) * Math.sin(turn);
+  }
+  return (re * re + im * im) / (to - from);
+}
