@@ -59,8 +59,9 @@ function strikesOf(
   to: number,
   period: number,
 ): SecondaryEvidence["strikes"] {
-  const width = Math.max(1, Math.floor(period / PER_PERIOD));
-  if (width === 1) return collapses(samples, lsb, from, to, period);
+  const sharp = collapses(samples, lsb, from, to, period);
+  const width = Math.floor(period / PER_PERIOD);
+  if (sharp.length > 0 || width < 2) return sharp;
   const means = Float64Array.from({ length: Math.floor((to - from) / width) }, (_, k) => {
     let sum = 0;
     for (let i = from + k * width; i < from + (k + 1) * width; i++) sum += samples[i];
