@@ -8,6 +8,7 @@ import type { Setup } from "./setup/schema.ts";
 import { countPulses, verdictOf } from "./spark/counts.ts";
 import { expectedOf } from "./spark/expected.ts";
 import { breakdownOf, sparkEnergy_J, type Breakdown } from "./spark/account.ts";
+import { burnLine } from "./spark/burn-line.ts";
 import { endedEarly, gatherHalfWave, judgeHalfWaves, type HalfWave } from "./spark/half-wave.ts";
 import { judgePulses, type Judged } from "./spark/judge.ts";
 import { timesOf } from "./spark/onset.ts";
@@ -51,7 +52,7 @@ export function judgeRun(evidence: CaptureEvidence[], setup: Setup): RunJudgemen
   });
   const waves = judgeHalfWaves(judgeable.map(({ wave }) => wave));
   const verdicts = judgePulses(judgeable).map((judged, i) =>
-    byHalfWave(judged, waves[i] ?? (unsure(judged) ? endedEarly(judgeable[i].wave) : null)),
+    unsure(judged) && !waves[i] ? byItself(judged!, judgeable[i]) : byHalfWave(judged, waves[i]),
   );
   const run = judgeable.flatMap((place, i) => (verdicts[i] ? [{ ...place, judged: verdicts[i] }] : []));
   const quiet = run.flatMap(({ judged }, i) => (judged.likelihood.probability < 0.1 ? [i] : []));
@@ -109,6 +110,16 @@ function findings(
 /** No clear word, or none that a ring cut at ground would bear out. */
 const unsure = (judged: Judged | null) =>
   judged !== null && judged.quietRest === null && judged.likelihood.probability > 0.1;
+
+/** What only an arc leaves behind, whatever the ring would have been. */
+function byItself(judged: Judged, { wave, window }: { wave: HalfWave | null; window: SparkWindow }): Judged {
+  const early = endedEarly(wave);
+  if (early) return byHalfWave(judged, early)!;
+  const burn = burnLine(window);
+  if (!burn) return judged;
+  const likelihood = { probability: 0.98, because: "burn-line" as const, away: null, loss: null };
+  return { ...judged, likelihood, burn };
+}
 
 /** Where a diode cuts the half-waves their volt-seconds decide: no ring is free there. */
 function byHalfWave(

@@ -1,4 +1,5 @@
 /** All pulses of a run judged together: first what they agree on, then each against it. */
+import type { BurnLine } from "./burn-line.ts";
 import { median } from "../numeric/median.ts";
 import { likelihoodOf, type Likelihood } from "./likelihood.ts";
 import { agreedModes, bestTraits, ownModes } from "./modes.ts";
@@ -19,6 +20,8 @@ export interface Judged {
   reference: Reference | null;
   /** What the low mode would be at this pulse's switch-off by the quiet pulses near it; null without reference. */
   quietRest: [cosine: number, sine: number] | null;
+  /** Where the verdict rests on it. */
+  burn?: BurnLine;
 }
 
 /** Pulses searched for modes of their own when no pulse is clean. */

@@ -14,7 +14,8 @@ export interface Likelihood {
     | "turned"
     | "missing"
     | "doubt"
-    | "volt-seconds";
+    | "volt-seconds"
+    | "burn-line";
   /** Distance of the ring after from the run's quiet ring, as a share; null without reference. */
   away: number | null;
   /** Share of the quiet amplitude that is missing after; null where it is not known. */

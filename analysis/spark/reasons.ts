@@ -12,7 +12,7 @@ export interface Reason {
 const percent = (share: number) => `${Math.round(100 * share)} %`;
 
 export function reasonsOf(
-  { traits, likelihood, reference }: Judged,
+  { traits, likelihood, reference, burn }: Judged,
   window: SparkWindow,
   times: SparkTimes,
 ): Reason[] {
@@ -62,6 +62,12 @@ export function reasonsOf(
         at(0),
       );
       if (spark && after) say(`the ring leaves its course ${after} after switch-off`, times.onset_s);
+      return reasons;
+    case "burn-line":
+      say(
+        `the kick breaks down to a plateau ${formatNumber(burn!.height, "V", 2)} above where the ring settles and stays on it for ${formatNumber(burn!.length_s, "s", 3)}: the arc's own voltage, through the ratio`,
+        at(burn!.from),
+      );
       return reasons;
     case "doubt":
       say(`a disturbance of strength ${strength} that could be a spark or something else`, at(traits.a));

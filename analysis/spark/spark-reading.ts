@@ -45,7 +45,7 @@ export function sparkReading(
 
 /** Whether something of the run or of the circuit says what this pulse would be without a spark. */
 const comparable = ({ quietRest, likelihood }: Judged) =>
-  quietRest !== null || likelihood.because === "volt-seconds";
+  quietRest !== null || likelihood.because === "volt-seconds" || likelihood.because === "burn-line";
 
 /** The primary's reasons are given where they speak for the same word. */
 const agree = (probability: number, { likelihood }: Judged) =>

@@ -91,9 +91,10 @@ function turn(blocks: Blocks): void {
 }
 
 /**
- * The next conduction may begin inside the window: from where the trace lies still for three quarters of a
- * period, longer than a diode holds a half-wave (at the window's end: for a third of one), nearer to the level of conduction than to what the ring settles to,
- * all goes. Judged by means over stretches, for the two levels may be closer than the noise.
+ * The next conduction may begin inside the window: a stretch of a third of a period or more that lies still, nearer
+ * to the level of conduction than to what the ring settles to, and lasts to the window's end, all goes. A diode
+ * can hold as still and for longer, but the ring goes on after it. Judged by means over stretches, for the two
+ * levels may be closer than the noise.
  */
 function leaveOutConduction(blocks: Blocks, levelOn: number, noise: number, period: number): void {
   const { values, count } = blocks;
@@ -112,11 +113,10 @@ function leaveOutConduction(blocks: Blocks, levelOn: number, noise: number, peri
     const mean = sum / length;
     const still =
       i >= length - 1 && square / length - mean * mean < (2 * noise) ** 2 && Math.abs(mean) < near;
-    if (!still) since = -1;
-    else if (since < 0) since = i + 1 - length;
-    if (since >= 0 && (i - since > 0.75 * period || i === count - 1))
-      return cut(blocks, Math.max(0, since - 2));
+    if (still && since < 0) since = i + 1 - length;
+    if (!still && i < count - length) since = -1;
   }
+  if (since >= 0) cut(blocks, Math.max(0, since - 2));
 }
 
 /** Mean over whole periods, after the first: what the ring swings about. */
