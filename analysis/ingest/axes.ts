@@ -62,6 +62,13 @@ function isCounter({ head, name }: HeadColumn): boolean {
   return restarts <= head.length / 8;
 }
 
+/** Whether the first column merely counts rows and a time runs beside it, whatever the names row says. */
+export function countsBesideTime([count, time, ...values]: Float64Array[]): boolean {
+  if (!count || !time || values.length === 0) return false;
+  const name = { name: "", spelled: null, unit: null };
+  return isCounter({ column: 0, head: count, name }) && !time.every(Number.isInteger) && isEven(time);
+}
+
 function isNamedTime({ name, head, column }: HeadColumn): boolean {
   const named = timeName.test(name.name) || (name.name === "" && name.unit?.symbol === "s");
   if (/^(V|A|W|ohm|dB|%|°C?)$/.test(name.unit?.symbol ?? "")) return false;

@@ -2,7 +2,7 @@
 import { ReadingError } from "../errors.ts";
 import type { Note } from "../capture.ts";
 import type { Setup } from "../setup/schema.ts";
-import { findAxes, type Axes, type HeadColumn } from "./axes.ts";
+import { countsBesideTime, findAxes, type Axes, type HeadColumn } from "./axes.ts";
 import { findBlock, type Block } from "./block.ts";
 import { parseBulk, type BulkPlan } from "./bulk.ts";
 import type { RawChannel } from "./channel.ts";
@@ -92,11 +92,13 @@ function describeLayout(sniffed: Sniffed, ambiguous: boolean): Layout {
   const dataEnd = lines[block.to]?.start ?? head.length;
   const first = parseBulk(head.subarray(dataStart, dataEnd), plan);
   if (first.rows < 2) throw tooFewRows(lines[block.from].number);
-  const names = nameColumns(header, block);
-  const columns = block.numeric.map((column): HeadColumn => {
-    const values = first.values[plan.columns.indexOf(column)];
-    return { column, head: values, name: names.get(column) ?? { name: "", spelled: null, unit: null } };
-  });
+  const heads = block.numeric.map((column) => first.values[plan.columns.indexOf(column)]);
+  const names = nameColumns(header, block, countsBesideTime(heads));
+  const columns = block.numeric.map((column, i): HeadColumn => ({
+    column,
+    head: heads[i],
+    name: names.get(column) ?? { name: "", spelled: null, unit: null },
+  }));
   const transposed = isTransposed(block, block.to - block.from);
   if (!transposed) refuseTooWide(block, lines[block.from].number);
   const axes =

@@ -8,10 +8,11 @@ const unitKey = /unit|einheit/i;
 const horizontalKey = /horiz|^x\b|time|zeit/i;
 const nameKey = /^(source|input|channel|trace|signal|waveform|ch|label|name|kanal|quelle)( name)?$/i;
 
-export function nameColumns(header: Header, block: Block): Map<number, NamedUnit> {
+/** `uncounted`: the first column merely counts rows, which a names row may leave out. */
+export function nameColumns(header: Header, block: Block, uncounted: boolean): Map<number, NamedUnit> {
   const columns = [...block.numeric, ...block.symbolic].toSorted((a, b) => a - b);
   const named = new Map<number, NamedUnit>();
-  const shift = columnShift(header, columns);
+  const shift = columnShift(header, columns, uncounted);
   for (const column of columns) {
     const { name, spelled, unit } = splitName(header.names?.[column + shift] ?? "");
     const below = header.units?.[column + shift]?.trim() ?? "";
@@ -31,8 +32,9 @@ export function nameColumns(header: Header, block: Block): Map<number, NamedUnit
  * The names row has as many cells as the data, or one to three more. Values only with start and step
  * behind (S4), or a running number that the names row does not count, move the names by a column.
  */
-function columnShift({ names, units }: Header, columns: number[]): number {
+function columnShift({ names, units }: Header, columns: number[], uncounted: boolean): number {
   if (!names) return 0;
+  if (uncounted && names.length === columns.length - 1) return -1;
   const channels = names.filter(
     (name, i) => name.trim() !== "" && !timingColumns({ names, units } as Header).includes(i),
   );

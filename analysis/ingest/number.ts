@@ -30,10 +30,10 @@ export function readCell(cell: string, format: NumberFormat): { kind: CellKind; 
   return { kind: "text", value: NaN };
 }
 
-/** A number in the file's spelling, else null: signs, either decimal mark, grouped digits, D exponents. */
+/** A number in the file's spelling, else null: signs, either decimal mark, grouped digits, exponents after E or D. */
 export function readNumber(text: string, format: NumberFormat): number | null {
   if (format.decimal === "." && plain.test(text)) return Number(text);
-  let spelled = text.replace(/^−/, "-").replace(/(?<=[.,]\d*)d(?=[+-]?\d+$)/i, "e");
+  let spelled = text.replace(/^−/, "-").replace(/(?<=[.,]\d*)d(?=[+-]\d{2,3}$)/i, "e");
   if (format.thousands !== null && spelled.includes(format.thousands)) {
     if (!grouped(spelled, format)) return null;
     spelled = spelled.replaceAll(format.thousands, "");

@@ -65,7 +65,11 @@ function wrongInterval(shape: ShapeFile, captures: Capture[]): string | null {
 }
 
 function disagreement(shape: ShapeFile, bytes: Uint8Array, captures: Capture[]): string | null {
-  const columns = numericColumns(shape, bytes);
+  const text = textOf(bytes);
+  // A stray quote makes two files of one: cells may be quoted, or the quotes are what was added.
+  const columns = /quoted/.test(shape.file)
+    ? [...numericColumns(shape, text, '"'), ...numericColumns(shape, text.replaceAll('"', ""), "\0")]
+    : numericColumns(shape, text, "\0");
   const noted = captures.some(({ notes }) => notes.some(({ code }) => owned.test(code)));
   for (const position of new Set(
     captures.flatMap(({ channels }) => channels.map((channel) => channel.position)),
@@ -98,18 +102,20 @@ function compare(parts: Channel[], column: number[], noted: boolean): string | n
   return invented.length > 0 ? `${invented.join()} is not in the file` : null;
 }
 
-/** Every column of the file as PapaParse sees it, numbers alone, the header's rows left out. */
-function numericColumns(shape: ShapeFile, bytes: Uint8Array): number[][] {
-  const text = Buffer.from(bytes)
+const textOf = (bytes: Uint8Array) =>
+  Buffer.from(bytes)
     .toString("latin1")
     .replaceAll("\r\r\n", "\n")
     .replaceAll("\r\n", "\n")
     .replaceAll("\r", "\n");
+
+/** Every column of the file as PapaParse sees it, numbers alone, the header's rows left out. */
+function numericColumns(shape: ShapeFile, text: string, quoteChar: string): number[][] {
   const comma = /decimal-comma/.test(shape.file);
   const { data } = Papa.parse<string[]>(text, {
     delimiter: shape.file.endsWith(".txt") ? "\t" : comma || /s12|single-byte/.test(shape.file) ? ";" : ",",
     skipEmptyLines: "greedy",
-    quoteChar: /quoted/.test(shape.file) ? '"' : "\0",
+    quoteChar,
   });
   const width = Math.max(...data.map((cells) => cells.length));
   const number = (cell: string | undefined) => {

@@ -22,3 +22,13 @@ it("never turns a running number into seconds, wherever it begins", () => {
   expect(capture.timebase.step_s).toBeNull();
   expect(capture.notes.some(({ question }) => question)).toBe(true);
 });
+
+it("takes an exponent after D only as Fortran writes it, signed: a stray letter among digits is no power of ten", () => {
+  const [capture] = ingestBytes(
+    rows((k) => `${(k * 2e-6).toExponential(6)},${k === 300 ? "14.2D1" : value(k).replace(/$/, "D+00")}`),
+    {},
+  );
+  const [{ samples }] = capture.channels;
+  expect(samples[0]).toBeCloseTo(Number(value(123)), 10);
+  expect(samples[300 - 123]).toBeNaN();
+});

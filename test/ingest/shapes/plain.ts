@@ -49,6 +49,14 @@ export const plain: ShapeFile[] = [
   {
     ...base,
     shape: "S1",
+    file: "s01-number-unnamed.csv",
+    what: "a running number that the names row leaves out",
+    bytes: utf8(lines(["Time(S),Node(V)", ...rows((t, i) => `${i},${exponent(t)},${a.text[i]}`)])),
+    records: [{ names: ["Node"], units: ["V"], ...two, ...ends(a.value) }],
+  },
+  {
+    ...base,
+    shape: "S1",
     file: "s01-no-units.csv",
     what: "names without units",
     bytes: utf8(lines(["Time,A,B", ...rows((t, i) => `${exponent(t)},${a.text[i]},${b.text[i]}`)])),
