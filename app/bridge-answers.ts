@@ -9,6 +9,8 @@ import type {
   Verdict,
 } from "../analysis/reading-format.ts";
 import type { Setup } from "../analysis/setup/schema.ts";
+import type { Drift } from "../analysis/statistics/drift.ts";
+import type { RunTrends } from "../analysis/spark/run-trends.ts";
 
 export interface Page<Row> {
   rows: Row[];
@@ -35,8 +37,18 @@ export interface CaptureRow {
 
 /** What needs the user's eye first; `pulse` null where it is about the capture or the run. */
 export interface Attention {
-  kind: "unclear" | "near-rating" | "over-rating" | "poor-fit" | "setup-missing" | "question" | "error";
+  kind:
+    | "unclear"
+    | "near-rating"
+    | "over-rating"
+    | "moved"
+    | "poor-fit"
+    | "setup-missing"
+    | "question"
+    | "error";
   text: string;
+  /** Of the rating, where it is about one. */
+  share?: number;
   capture: number | null;
   pulse: number | null;
 }
@@ -72,6 +84,30 @@ export interface PulseRow {
   sketch: number[];
   /** Where in the sketch (0…1) the spark struck. */
   sketchOnset: number | null;
+}
+
+/** From pulse `number` on the level is another. */
+export interface CourseChange {
+  number: number;
+  before: number;
+  after: number;
+}
+
+/** What the run's chart and distributions are drawn from; lists in the order of the run's pulses. */
+export interface RunCourse {
+  /** Of each switch-off since the first, by the records' own clock; null where the files do not tell it. */
+  time_s: number[] | null;
+  /** Of the spark, after the switch-off. */
+  onset_s: (number | null)[];
+  /** From one source alone, `breakdownFrom`. */
+  breakdown_V: (number | null)[];
+  breakdownFrom: "secondary" | "ratio" | null;
+  /** The line through the breakdowns; x counts the run's pulses from 0. */
+  breakdownDrift: Drift | null;
+  breakdownChange: CourseChange | null;
+  qChange: CourseChange | null;
+  /** Null in a run judged by a version that did not tell them. */
+  trends: RunTrends | null;
 }
 
 export interface CaptureDetail {

@@ -15,6 +15,7 @@ import type {
   Page,
   PulseRow,
   RingPicture,
+  RunCourse,
   RunDetail,
   RunRow,
   TraceWindow,
@@ -57,6 +58,8 @@ export const commands = {
   }),
   run: v.strictObject({ run: id }),
   pulses: v.strictObject({ run: id, ...page }),
+  /** When and at what voltage the run's pulses sparked, over their number and over time. */
+  course: v.strictObject({ run: id }),
   capture: v.strictObject({ capture: id }),
   trace: v.strictObject({
     capture: id,
@@ -107,6 +110,7 @@ export interface Answers {
   runs: Page<RunRow>;
   run: RunDetail;
   pulses: Page<PulseRow>;
+  course: RunCourse;
   capture: CaptureDetail;
   trace: TraceWindow;
   ringPicture: RingPicture | null;

@@ -11,6 +11,7 @@ const words: Record<Item["kind"], string> = {
   error: "could not be read",
   "setup-missing": "missing in the setup",
   unclear: "unclear",
+  moved: "moved along the run",
   "poor-fit": "poor fit",
 };
 const order = Object.keys(words) as Item["kind"][];

@@ -18,11 +18,13 @@ import { Captures } from "./Captures.tsx";
 import { Exports } from "./Exports.tsx";
 import { Line } from "./Line.tsx";
 import { RunChart } from "./RunChart.tsx";
+import { Sparks } from "./Sparks.tsx";
 import { usePulses } from "./usePulses.ts";
 
 export function RunSheet({ run }: { run: number }) {
   const desk = useDesk();
   const asked = useAnswer("run", { run }, desk.runs[run] ?? 0);
+  const course = useAnswer("course", { run }, desk.runs[run] ?? 0);
   const pulses = usePulses(run);
   const [marked, setMarked] = useState(-1);
   const { rows } = pulses;
@@ -100,13 +102,14 @@ export function RunSheet({ run }: { run: number }) {
       <Attention detail={detail} rows={rows} />
       <RunChart
         rows={rows}
-        expected={expected}
+        course={course.answer}
         marked={marked}
         rating_V={detail.setup.switchRating_V ?? null}
         onOpen={open}
       />
       <PictureButtons of=".run-chart svg" name={detail.name} />
-      <Remarks title="Of this run" notes={detail.notes} />
+      {course.answer && <Sparks course={course.answer} />}
+      <Remarks title="Of this run" notes={notAbove(detail)} />
       <SetupCard run={detail} capture={captureOfCard(detail)} reading={null} />
       <Captures detail={detail} rows={rows} />
       <Exports run={run} />
@@ -119,6 +122,10 @@ function captureOfCard({ attention, captureRows }: RunDetail): number | null {
   const asking = attention.find((item) => item.kind === "question")?.capture;
   return asking ?? captureRows.find((row) => row.error === null)?.capture ?? null;
 }
+
+/** What moved along the run stands among what to look at first. */
+const notAbove = ({ notes, attention }: RunDetail) =>
+  notes.filter((note) => !attention.some((item) => item.text === note.text));
 
 type Combined = RunDetail["combined"];
 
