@@ -133,6 +133,20 @@ export interface TraceWindow {
   high: (number | null)[];
 }
 
+/** How a capture's file would be read with a changed setup; nothing of it is kept. */
+export interface TriedSetup {
+  records: number;
+  /** Of the first record, as the rest. */
+  samples: number;
+  step_s: number | null;
+  switchOffs: number;
+  /** Of its first good ring. */
+  frequency_Hz: Figure;
+  inductance_H: Figure;
+  /** The channel that rings, else the first. */
+  trace: TraceWindow;
+}
+
 export interface RingPicture {
   /** The fitted ring over its window, and its continuation after the window as `expected`. */
   fitted: { time_s: number[]; value: number[] };

@@ -19,6 +19,7 @@ import type {
   RunDetail,
   RunRow,
   TraceWindow,
+  TriedSetup,
   WatchState,
 } from "./bridge-answers.ts";
 
@@ -70,6 +71,13 @@ export const commands = {
   }),
   ringPicture: v.strictObject({ capture: id, pulse: index, pixels: count(8000) }),
   changeSetup: v.strictObject({ run: id, change: v.record(v.string(), v.unknown()) }),
+  /** How a capture's file would be read with this change of its setup: a question's choices side by side. */
+  trySetup: v.strictObject({
+    capture: id,
+    change: v.record(v.string(), v.unknown()),
+    channel: v.optional(v.nullable(shortText)),
+    pixels: count(8000),
+  }),
   undo: v.strictObject({ run: id }),
   rule: v.strictObject({ capture: id, pulse: index, verdict: v.nullable(verdict), remark: longText }),
   exportRun: v.strictObject({ run: id, kind: v.picklist(["csv", "jsonl", "html"]) }),
@@ -115,6 +123,7 @@ export interface Answers {
   trace: TraceWindow;
   ringPicture: RingPicture | null;
   changeSetup: { job: string };
+  trySetup: TriedSetup;
   undo: { job: string | null; text: string };
   rule: { ruled: { verdict: Verdict; at: string; remark: string } | null };
   exportRun: { name: string; mime: string; text: string };

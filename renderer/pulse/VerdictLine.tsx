@@ -10,11 +10,9 @@ import { useSay } from "../shell/say.tsx";
 import { Mark } from "../shell/Mark.tsx";
 
 interface Props {
-  run: number;
   capture: number;
   pulse: PulseReading;
   setup: Setup;
-  onNext(): void;
 }
 
 const choices: { verdict: Verdict; key: string; does: string }[] = [

@@ -2,7 +2,7 @@
 import { useMemo } from "react";
 import { linear, ticks, type Scale } from "../draw/scale.ts";
 import { useWidth } from "../draw/useWidth.ts";
-import { plain } from "../format/figure.ts";
+import { plain, stated } from "../format/figure.ts";
 import { aired } from "../pulse/curves.ts";
 
 export interface FittedMark {
@@ -62,7 +62,7 @@ export function Distribution({ label, values, unit, marks }: Props) {
         })}
         {ticks(x.from, x.to, 4).map((tick) => (
           <text key={tick} className="label" x={x(tick)} y={foot + 14} textAnchor={anchorAt(x(tick), width)}>
-            {plain(tick, unit)}
+            {stated(tick, unit)}
           </text>
         ))}
       </svg>

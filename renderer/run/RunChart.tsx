@@ -4,7 +4,7 @@ import type { PulseRow, RunCourse } from "../../app/bridge.ts";
 import { circlePath, finalVerdict, lozengePath, questionPath } from "../draw/glyph.ts";
 import { linear, ticks, type Scale } from "../draw/scale.ts";
 import { useWidth } from "../draw/useWidth.ts";
-import { plain, stated } from "../format/figure.ts";
+import { stated } from "../format/figure.ts";
 import { aired } from "../pulse/curves.ts";
 import { chartFigures, movesAlong, valuesAlong, type FigureName } from "./course-figures.ts";
 import { CourseMarks } from "./CourseMarks.tsx";
@@ -81,7 +81,7 @@ export function RunChart({ rows, course, marked, rating_V, onOpen }: Props) {
           <g key={level}>
             <line className="level" x1={left} x2={width} y1={y(level)} y2={y(level)} />
             <text className="label" x={left - 8} y={y(level) + 4} textAnchor="end">
-              {plain(level, unit)}
+              {stated(level, unit)}
             </text>
           </g>
         ))}
@@ -90,7 +90,7 @@ export function RunChart({ rows, course, marked, rating_V, onOpen }: Props) {
           .filter((tick) => time !== null || (Number.isInteger(tick) && tick >= 1))
           .map((tick) => (
             <text key={tick} className="label" x={x(tick)} y={height - 6} textAnchor="middle">
-              {time ? plain(tick, "s", 2) : tick}
+              {time ? stated(tick, "s") : tick}
             </text>
           ))}
         <line className="axis" x1={left} x2={width} y1={bottom} y2={bottom} />
