@@ -101,6 +101,20 @@ function ticksFollow(library: Library, plot: PlotlyHTMLElement, x: Axis, y: Axis
   });
 }
 
+/** A printed page is narrower than the window: with a view box the drawing shrinks to it (see print styles). */
+function scalesInPrint(plot: PlotlyHTMLElement): void {
+  const setBoxes = () => {
+    for (const layer of plot.querySelectorAll(".main-svg"))
+      layer.setAttribute(
+        "viewBox",
+        `0 0 ${layer.getAttribute("width") ?? 0} ${layer.getAttribute("height") ?? 0}`,
+      );
+  };
+  setBoxes();
+  plot.removeAllListeners("plotly_afterplot");
+  plot.on("plotly_afterplot", setBoxes);
+}
+
 type Library = typeof import("plotly.js-dist-min");
 
 const load = async (): Promise<Library> => {
@@ -140,6 +154,7 @@ export const Plot = memo(function Plot(props: Props) {
       const curves = data(ink);
       await library.react(plot, curves, layoutOf({ x, y, height }, curves, ink), config);
       ticksFollow(library, plot, x, y);
+      scalesInPrint(plot);
     };
     void draw();
     const paper = new MutationObserver(() => void draw());

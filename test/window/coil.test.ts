@@ -59,6 +59,11 @@ describeWindow("a coil", () => {
     // 280 V on a switch of 300 V: above 80 %, said in words.
     expect(await stress.locator("tr.warned", { hasText: "! near" }).count()).toBeGreaterThan(0);
     await expectAccessible(page);
+    // A printed page is narrower: the curves shrink to it and stand in its flow.
+    await page.emulateMedia({ media: "print" });
+    const layer = dwell.locator(".plot .main-svg").first();
+    expect(await layer.getAttribute("viewBox")).toMatch(/^0 0 [1-9][\d.]* [1-9][\d.]*$/);
+    expect(await layer.evaluate((drawing) => getComputedStyle(drawing).position)).toBe("static");
   });
 
   it("answers what another capacitor would do: a larger one, a lower kick and a slower ring", async () => {

@@ -143,6 +143,12 @@ describeWindow("a pulse", () => {
     const png = readFileSync(await download(page, "p"));
     expect(png.subarray(1, 4).toString()).toBe("PNG");
     expect(png.readUInt32BE(16)).toBeGreaterThan(2000);
+    await page
+      .getByRole("button", { name: /^[\d.]+ ± [\d.]+\s+mH$/ })
+      .first()
+      .click();
+    await page.getByText(/^Copied [\d.]+ ± [\d.]+\s+mH\.$/).waitFor();
+    expect(await page.evaluate(() => navigator.clipboard.readText())).toMatch(/^[\d.]+ ± [\d.]+ mH$/);
     await page.keyboard.press("t");
     await page.getByText("Copied.").waitFor();
     expect(await page.evaluate(() => navigator.clipboard.readText())).toMatch(/inductance L\t.* mH\t/);
