@@ -104,7 +104,7 @@ export function RunSheet({ run }: { run: number }) {
         </p>
       )}
       <Attention detail={detail} rows={rows} />
-      {rows.length > 0 && (
+      {rows.length > 1 && (
         <>
           <RunChart
             rows={rows}
