@@ -9,6 +9,8 @@ import type {
   Verdict,
 } from "../analysis/reading-format.ts";
 import type { Setup } from "../analysis/setup/schema.ts";
+import type { Drift } from "../analysis/statistics/drift.ts";
+import type { RunTrends } from "../analysis/spark/run-trends.ts";
 
 export interface Page<Row> {
   rows: Row[];
@@ -35,8 +37,18 @@ export interface CaptureRow {
 
 /** What needs the user's eye first; `pulse` null where it is about the capture or the run. */
 export interface Attention {
-  kind: "unclear" | "near-rating" | "over-rating" | "poor-fit" | "setup-missing" | "question" | "error";
+  kind:
+    | "unclear"
+    | "near-rating"
+    | "over-rating"
+    | "moved"
+    | "poor-fit"
+    | "setup-missing"
+    | "question"
+    | "error";
   text: string;
+  /** Of the rating, where it is about one. */
+  share?: number;
   capture: number | null;
   pulse: number | null;
 }
@@ -74,6 +86,30 @@ export interface PulseRow {
   sketchOnset: number | null;
 }
 
+/** From pulse `number` on the level is another. */
+export interface CourseChange {
+  number: number;
+  before: number;
+  after: number;
+}
+
+/** What the run's chart and distributions are drawn from; lists in the order of the run's pulses. */
+export interface RunCourse {
+  /** Of each switch-off since the first, by the records' own clock; null where the files do not tell it. */
+  time_s: number[] | null;
+  /** Of the spark, after the switch-off. */
+  onset_s: (number | null)[];
+  /** From one source alone, `breakdownFrom`. */
+  breakdown_V: (number | null)[];
+  breakdownFrom: "secondary" | "ratio" | null;
+  /** The line through the breakdowns; x counts the run's pulses from 0. */
+  breakdownDrift: Drift | null;
+  breakdownChange: CourseChange | null;
+  qChange: CourseChange | null;
+  /** Null in a run judged by a version that did not tell them. */
+  trends: RunTrends | null;
+}
+
 export interface CaptureDetail {
   capture: number;
   run: number;
@@ -95,6 +131,20 @@ export interface TraceWindow {
   time_s: number[];
   low: (number | null)[];
   high: (number | null)[];
+}
+
+/** How a capture's file would be read with a changed setup; nothing of it is kept. */
+export interface TriedSetup {
+  records: number;
+  /** Of the first record, as the rest. */
+  samples: number;
+  step_s: number | null;
+  switchOffs: number;
+  /** Of its first good ring. */
+  frequency_Hz: Figure;
+  inductance_H: Figure;
+  /** The channel that rings, else the first. */
+  trace: TraceWindow;
 }
 
 export interface RingPicture {

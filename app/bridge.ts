@@ -15,9 +15,11 @@ import type {
   Page,
   PulseRow,
   RingPicture,
+  RunCourse,
   RunDetail,
   RunRow,
   TraceWindow,
+  TriedSetup,
   WatchState,
 } from "./bridge-answers.ts";
 
@@ -57,6 +59,8 @@ export const commands = {
   }),
   run: v.strictObject({ run: id }),
   pulses: v.strictObject({ run: id, ...page }),
+  /** When and at what voltage the run's pulses sparked, over their number and over time. */
+  course: v.strictObject({ run: id }),
   capture: v.strictObject({ capture: id }),
   trace: v.strictObject({
     capture: id,
@@ -67,6 +71,13 @@ export const commands = {
   }),
   ringPicture: v.strictObject({ capture: id, pulse: index, pixels: count(8000) }),
   changeSetup: v.strictObject({ run: id, change: v.record(v.string(), v.unknown()) }),
+  /** How a capture's file would be read with this change of its setup: a question's choices side by side. */
+  trySetup: v.strictObject({
+    capture: id,
+    change: v.record(v.string(), v.unknown()),
+    channel: v.optional(v.nullable(shortText)),
+    pixels: count(8000),
+  }),
   undo: v.strictObject({ run: id }),
   rule: v.strictObject({ capture: id, pulse: index, verdict: v.nullable(verdict), remark: longText }),
   exportRun: v.strictObject({ run: id, kind: v.picklist(["csv", "jsonl", "html"]) }),
@@ -107,10 +118,12 @@ export interface Answers {
   runs: Page<RunRow>;
   run: RunDetail;
   pulses: Page<PulseRow>;
+  course: RunCourse;
   capture: CaptureDetail;
   trace: TraceWindow;
   ringPicture: RingPicture | null;
   changeSetup: { job: string };
+  trySetup: TriedSetup;
   undo: { job: string | null; text: string };
   rule: { ruled: { verdict: Verdict; at: string; remark: string } | null };
   exportRun: { name: string; mime: string; text: string };

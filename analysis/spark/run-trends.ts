@@ -36,21 +36,25 @@ export interface RunTrends {
 
 /** `held_V`: largest secondary voltage of each pulse that held, null where it is not on screen. */
 export function runTrends(pulses: PulseReading[], held_V: (number | null)[], setup: Setup): RunTrends {
-  const sparks = pulses.flatMap((pulse, number) => (verdictOf(pulse) === "spark" ? [{ pulse, number }] : []));
-  const broke = breakdownsOf(sparks);
+  const broke = breakdownsOf(pulses);
   const values = broke.points.map(({ value }) => value);
-  const q = pulses.flatMap((pulse) =>
-    verdictOf(pulse) === "no-spark" && pulse.ring?.modes[0] ? [pulse.ring.modes[0].q.value] : [],
-  );
   return {
-    onset_s: onsetsOf(sparks.map(({ pulse }) => pulse)),
+    onset_s: onsetsOf(pulses.filter((pulse) => verdictOf(pulse) === "spark")),
     breakdown_V: broke.from ? weibullOf(values, broke.from === "secondary" ? held_V : [], broke.from) : null,
     breakdownDrift: driftOf(broke.points),
     breakdownChange: changePoint(values),
-    qChange: changePoint(q),
+    qChange: changePoint(quietQ(pulses).map(({ value }) => value)),
     gapLine: gapLine(setup),
   };
 }
+
+/** Quality of the quiet pulses' rings; `x` counts the run's pulses from 0. */
+export const quietQ = (pulses: PulseReading[]): { x: number; value: number }[] =>
+  pulses.flatMap((pulse, x) =>
+    verdictOf(pulse) === "no-spark" && pulse.ring?.modes[0]
+      ? [{ x, value: pulse.ring.modes[0].q.value }]
+      : [],
+  );
 
 function onsetsOf(sparks: PulseReading[]): RunTrends["onset_s"] {
   const onsets = sparks.flatMap(({ spark, switchOffTime_s }) =>
@@ -60,17 +64,24 @@ function onsetsOf(sparks: PulseReading[]): RunTrends["onset_s"] {
   return { median: median(onsets), spread: robustSpread(onsets), sparks: onsets.length };
 }
 
-/** Measured voltages where there are any; voltages referred through the ratio are not mixed with them. */
-function breakdownsOf(sparks: { pulse: PulseReading; number: number }[]) {
+const fewestForAFit = 3;
+
+/**
+ * Breakdown voltages of a run's sparks, from one source alone: those measured at the secondary where they
+ * are enough for a fit or the others are not, else those referred through the turns ratio. `x` counts the
+ * run's pulses from 0.
+ */
+export function breakdownsOf(pulses: PulseReading[]) {
   const of = (from: "secondary" | "ratio") =>
-    sparks.flatMap(({ pulse: { spark, u }, number }) =>
-      spark?.breakdown_V != null && spark.breakdownFrom === from
-        ? [{ x: number, value: spark.breakdown_V, u: u["spark.breakdown_V"] ?? 0 }]
-        : [],
-    );
-  const measured = of("secondary");
-  if (measured.length > 0) return { points: measured, from: "secondary" as const };
-  const referred = of("ratio");
+    pulses.flatMap((pulse, x) => {
+      const { spark, u } = pulse;
+      if (verdictOf(pulse) !== "spark" || spark?.breakdown_V == null || spark.breakdownFrom !== from)
+        return [];
+      return [{ x, value: spark.breakdown_V, u: u["spark.breakdown_V"] ?? 0 }];
+    });
+  const [measured, referred] = [of("secondary"), of("ratio")];
+  if (measured.length >= fewestForAFit || (measured.length > 0 && referred.length < fewestForAFit))
+    return { points: measured, from: "secondary" as const };
   return { points: referred, from: referred.length > 0 ? ("ratio" as const) : null };
 }
 

@@ -16,6 +16,9 @@ export async function answerCall(handlers: Handlers, name: unknown, argument: un
   try {
     if (typeof name !== "string" || !isCommand(name))
       throw new CallError("unknown-command", `there is no command ${JSON.stringify(name)}`);
+    // The schema library takes a list for an object without keys.
+    if (Array.isArray(argument))
+      throw new CallError("wrong-argument", `wrong argument of ${name}: a list is none`);
     const checked = v.safeParse(commands[name], argument);
     if (!checked.success) throw new CallError("wrong-argument", describeIssues(name, checked.issues));
     const handler = handlers[name] as (argument: unknown) => unknown;

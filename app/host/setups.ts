@@ -30,6 +30,12 @@ export async function readSetups(captureFile: string, stated: Setup | null): Pro
   return { setup: mergeSetups(layers.flatMap(([, setup]) => setup ?? [])), origins };
 }
 
+/** What is stated from now on; a key changed to null is stated no more. Throws SetupError. */
+export function changedSetup(stated: Setup | null, change: Record<string, unknown>): Setup {
+  const merged = Object.entries({ ...stated, ...change });
+  return parseSetup(Object.fromEntries(merged.filter(([, value]) => value !== null && value !== undefined)));
+}
+
 /** A setup file that must be there (`--setup FILE`). */
 export async function readSetupFile(path: string): Promise<Setup> {
   const text = await readFile(path, "utf8");

@@ -70,8 +70,8 @@ export function WatchFolder() {
       ))}
       {log.length > 0 && (
         <ol className="watch-log" aria-live="polite">
-          {log.slice(-logged).map((line) => (
-            <li key={line}>{line}</li>
+          {log.map(({ number, text }) => (
+            <li key={number}>{text}</li>
           ))}
         </ol>
       )}
@@ -79,10 +79,20 @@ export function WatchFolder() {
   );
 }
 
+interface LogLine {
+  number: number;
+  text: string;
+}
+
+const logLine = (before: number, { at, text }: NonNullable<WatchState["last"]>): LogLine => ({
+  number: before + 1,
+  text: `${new Date(at).toLocaleTimeString("en-GB")} ${text}`,
+});
+
 function useWatched() {
   const bench = useBench();
   const [watched, setWatched] = useState<WatchState[]>([]);
-  const [log, setLog] = useState<string[]>([]);
+  const [log, setLog] = useState<LogLine[]>([]);
   const replace = useCallback((state: WatchState, gone = false) => {
     setWatched((old) => [...old.filter((other) => other.path !== state.path), ...(gone ? [] : [state])]);
   }, []);
@@ -97,10 +107,7 @@ function useWatched() {
           : old,
       );
       if (watch.last)
-        setLog((old) => [
-          ...old,
-          `${new Date(watch.last!.at).toLocaleTimeString("en-GB")} ${watch.last!.text}`,
-        ]);
+        setLog((old) => [...old.slice(1 - logged), logLine(old.at(-1)?.number ?? 0, watch.last!)]);
     });
   }, [bench]);
   return { watched, log, replace };

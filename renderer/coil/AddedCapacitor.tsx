@@ -6,14 +6,17 @@ import { Plot, type Ink } from "./Plot.tsx";
 
 type Line = NonNullable<CoilSheet["addedCapacitor"]>;
 
+const addedAxis = { words: "added capacitor", unit: "F" };
+const squareAxis = { words: "1/ω₀² in µs²", unit: "" };
+
 export function AddedCapacitor({ line }: { line: CoilSheet["addedCapacitor"] }) {
   const plot = useMemo(
     () =>
       line &&
       line.inductance_H !== null && {
         data: (ink: Ink) => curves(line, ink),
-        x: "added capacitor, F",
-        y: "1/ω₀², s²",
+        x: addedAxis,
+        y: squareAxis,
         label: "Added-capacitor line",
       },
     [line],
@@ -58,12 +61,15 @@ export function AddedCapacitor({ line }: { line: CoilSheet["addedCapacitor"] }) 
   );
 }
 
+/** µs² in a s²: a prefix on a square would be read twice. */
+const perSquare_us2 = 1e12;
+
 function curves({ points, inductance_H, selfCapacitance_F }: Line, ink: Ink) {
   const x = points.map((point) => point.capacitance_F);
   const low = Math.min(0, ...x);
   const high = Math.max(...x) * 1.05;
   const at = (capacitance: number) =>
-    (inductance_H?.value ?? 0) * (capacitance + (selfCapacitance_F?.value ?? 0));
+    (inductance_H?.value ?? 0) * (capacitance + (selfCapacitance_F?.value ?? 0)) * perSquare_us2;
   return [
     ...(inductance_H
       ? [
@@ -78,16 +84,16 @@ function curves({ points, inductance_H, selfCapacitance_F }: Line, ink: Ink) {
       : []),
     {
       x,
-      y: points.map((point) => point.inverseSquare_s2.value),
+      y: points.map((point) => point.inverseSquare_s2.value * perSquare_us2),
       error_y: {
         type: "data" as const,
-        array: points.map((point) => point.inverseSquare_s2.u),
+        array: points.map((point) => point.inverseSquare_s2.u * perSquare_us2),
         color: ink.faint,
       },
       mode: "markers" as const,
       marker: { size: 8, color: ink.ink, symbol: points.map((point) => (point.flagged ? "x" : "circle")) },
-      text: points.map((point) => point.file),
-      hovertemplate: "%{text}: %{x:.3s}F<extra></extra>",
+      text: points.map((point) => `${point.file}: ${stated(point.capacitance_F, "F")}`),
+      hovertemplate: "%{text}<extra></extra>",
     },
   ];
 }

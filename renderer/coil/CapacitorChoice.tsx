@@ -6,6 +6,8 @@ import { useAnswer, useDesk } from "../state/bench.tsx";
 import { Plot, type Ink } from "./Plot.tsx";
 
 const points = 121;
+const capacitorAxis = { words: "capacitor", unit: "F", log: true };
+const peakAxis = { words: "peak at the switch", unit: "V" };
 /** Decades to either side of the fitted capacitor. */
 const reach = 1.5;
 
@@ -24,10 +26,9 @@ export function CapacitorChoice({ sheet }: { sheet: CoilSheet }) {
     () =>
       options && {
         data: (ink: Ink) => curves(options, at, drive.rating_V, ink),
-        x: "capacitor, nF",
-        y: "peak at the switch, V",
+        x: capacitorAxis,
+        y: peakAxis,
         label: "Peak against capacitor",
-        xLog: true,
       },
     [options, at, drive.rating_V],
   );
@@ -86,7 +87,7 @@ const grid = (centre: number) =>
   );
 
 function curves(options: CapacitorOption[], at: number, rating: number | null, ink: Ink) {
-  const x = options.map((option) => option.capacitance_F * 1e9);
+  const x = options.map((option) => option.capacitance_F);
   const peaks = options.map((option) => option.peak_V?.value ?? null);
   return [
     {
@@ -94,7 +95,10 @@ function curves(options: CapacitorOption[], at: number, rating: number | null, i
       y: peaks,
       mode: "lines" as const,
       line: { color: ink.fit, width: 2 },
-      hovertemplate: "%{x:.3r} nF: %{y:.3r} V<extra></extra>",
+      text: options.map(
+        (option) => `${plain(option.capacitance_F, "F")}: ${plain(option.peak_V?.value, "V")}`,
+      ),
+      hovertemplate: "%{text}<extra></extra>",
     },
     {
       x: [x[at]],
@@ -111,7 +115,7 @@ function curves(options: CapacitorOption[], at: number, rating: number | null, i
             y: [rating, rating],
             mode: "lines" as const,
             line: { color: ink.warning, width: 1.5, dash: "dash" as const },
-            hovertemplate: `the switch’s ${rating} V<extra></extra>`,
+            hovertemplate: `the switch’s ${stated(rating, "V")}<extra></extra>`,
           },
         ]),
   ];

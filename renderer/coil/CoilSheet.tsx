@@ -22,6 +22,8 @@ export default function CoilSheet({ coil }: { coil: string }) {
   if (asked.error) return <Failure text={asked.error} />;
   if (!asked.answer) return <Waiting />;
   const sheet = asked.answer;
+  // Why there is no added-capacitor line stands where the line would.
+  const notes = sheet.notes.filter((note) => note.code !== "no-capacitor-line");
   return (
     <article className="coil-sheet">
       <SheetHead
@@ -30,9 +32,9 @@ export default function CoilSheet({ coil }: { coil: string }) {
         beside={plural(sheet.history.length, "run")}
         page="coil"
       />
-      {sheet.notes.length > 0 && (
+      {notes.length > 0 && (
         <ul className="coil-notes">
-          {sheet.notes.map((note) => (
+          {notes.map((note) => (
             <li key={note.code + note.text}>{note.text}</li>
           ))}
         </ul>
@@ -67,7 +69,7 @@ function History({ sheet }: { sheet: Coil }) {
         History <CopyButton keyName="t" does="copy the history as a table" text={asText} />
       </h2>
       <div className="wide-table">
-        <table>
+        <table className="history">
           <thead>
             <tr>
               <th scope="col">run</th>
@@ -86,12 +88,22 @@ function History({ sheet }: { sheet: Coil }) {
                   <a href={hrefOf({ view: "run", run: row.run })}>{row.name}</a>
                   {row.flag && <div className="problem">! {row.flag}</div>}
                 </th>
-                <td>{dayText(row.taken)}</td>
-                <td className="tabular">{figureText(row.inductance_H, "H")}</td>
-                <td className="tabular">{figureText(row.capacitance_F, "F")}</td>
-                <td className="tabular">{figureText(row.resistance_ohm, "Ω")}</td>
-                <td className="tabular">{figureText(row.q, "")}</td>
-                <td className="tabular">{plain(row.peak_V, "V")}</td>
+                <td data-name="taken">{dayText(row.taken)}</td>
+                <td className="tabular" data-name="L">
+                  {figureText(row.inductance_H, "H")}
+                </td>
+                <td className="tabular" data-name="C">
+                  {figureText(row.capacitance_F, "F")}
+                </td>
+                <td className="tabular" data-name="R">
+                  {figureText(row.resistance_ohm, "Ω")}
+                </td>
+                <td className="tabular" data-name="Q">
+                  {figureText(row.q, "")}
+                </td>
+                <td className="tabular" data-name="highest kick">
+                  {plain(row.peak_V, "V")}
+                </td>
               </tr>
             ))}
           </tbody>

@@ -4,13 +4,16 @@ import type { CoilSheet } from "../../app/bridge.ts";
 import { figureText, plain, stated } from "../format/figure.ts";
 import { Plot, type Ink } from "./Plot.tsx";
 
+const supplyAxis = { words: "supply", unit: "V" };
+const dwellAxis = { words: "dwell", unit: "s" };
+
 export function DwellTable({ dwell }: { dwell: CoilSheet["dwell"] }) {
   const plot = useMemo(
     () =>
       dwell && {
         data: (ink: Ink) => curves(dwell, ink),
-        x: "supply, V",
-        y: "dwell, ms",
+        x: supplyAxis,
+        y: dwellAxis,
         label: "Dwell against supply voltage, a curve for each temperature",
       },
     [dwell],
@@ -64,7 +67,7 @@ const dashes = ["solid", "dash", "dot", "dashdot", "longdash"] as const;
 function curves(dwell: NonNullable<CoilSheet["dwell"]>, ink: Ink) {
   return dwell.temperatures_C.map((temperature, column) => ({
     x: dwell.supplies_V,
-    y: dwell.time_s.map((row) => (row[column] ? row[column].value * 1e3 : null)),
+    y: dwell.time_s.map((row) => row[column]?.value ?? null),
     mode: "text+lines+markers" as const,
     // The outer curves are named where they start, the ones between by pointing at them.
     text: [column === 0 || column === dwell.temperatures_C.length - 1 ? stated(temperature, "°C") : ""],
@@ -72,6 +75,9 @@ function curves(dwell: NonNullable<CoilSheet["dwell"]>, ink: Ink) {
     cliponaxis: false,
     line: { color: ink.ink, width: 1.5, dash: dashes[column % dashes.length] },
     marker: { size: 5, color: ink.ink },
-    hovertemplate: `${stated(temperature, "°C")}, %{x} V: %{y:.3r} ms<extra></extra>`,
+    customdata: dwell.supplies_V.map(
+      (supply, row) => `${stated(supply, "V")}: ${plain(dwell.time_s[row][column]?.value, "s")}`,
+    ),
+    hovertemplate: `${stated(temperature, "°C")}, %{customdata}<extra></extra>`,
   }));
 }

@@ -1,13 +1,20 @@
 /** A curve to look into closely: the plotting library is fetched only here, after the page is drawn. */
 import type { Config, Data, Layout, PlotlyHTMLElement } from "plotly.js-dist-min";
 import { memo, useEffect, useRef, useState } from "react";
+import { axisTicks, extentOf, type Range } from "./axis.ts";
+
+/** What an axis is of; its numbers are SI and get the unit with a fitting prefix. */
+interface Axis {
+  words: string;
+  unit: string;
+  log?: boolean;
+}
 
 interface Props {
   data: (ink: Ink) => Data[];
-  x: string;
-  y: string;
+  x: Axis;
+  y: Axis;
   label: string;
-  xLog?: boolean;
   height?: number;
 }
 
@@ -42,35 +49,70 @@ const config: Partial<Config> = {
 };
 
 function layoutOf(
-  { x, y, xLog, height = 260 }: Pick<Props, "x" | "y" | "xLog" | "height">,
+  { x, y, height = 260 }: Pick<Props, "x" | "y" | "height">,
+  data: Data[],
   { ink, faint, rule }: Ink,
 ): Partial<Layout> {
-  const axis = {
-    color: faint,
-    gridcolor: rule,
-    griddash: "dot" as const,
-    zeroline: false,
-    exponentformat: "SI" as const,
-    automargin: true,
-    linecolor: rule,
+  const axis = (of: Axis, name: "x" | "y") => {
+    const range = extentOf(data, name, of.log ?? false);
+    return {
+      color: faint,
+      gridcolor: rule,
+      griddash: "dot" as const,
+      zeroline: false,
+      automargin: true,
+      linecolor: rule,
+      title: { text: of.words },
+      type: of.log ? ("log" as const) : ("linear" as const),
+      range,
+      ...ticksOf(range, of),
+    };
   };
   return {
     height,
-    margin: { l: 70, r: 10, t: 8, b: 46 },
+    margin: { l: 70, r: 14, t: 12, b: 46 },
     paper_bgcolor: "rgba(0,0,0,0)",
     plot_bgcolor: "rgba(0,0,0,0)",
     font: { family: getComputedStyle(document.body).fontFamily, size: 13, color: ink },
     showlegend: false,
     hovermode: "closest",
     dragmode: "zoom",
-    xaxis: {
-      ...axis,
-      title: { text: x },
-      type: xLog ? "log" : "linear",
-      ...(xLog && { dtick: 1, exponentformat: "none" as const }),
-    },
-    yaxis: { ...axis, title: { text: y } },
+    xaxis: axis(x, "x"),
+    yaxis: axis(y, "y"),
   };
+}
+
+const ticksOf = (range: Range, { unit, log }: Axis) => axisTicks(range, unit, log ?? false);
+
+/** The library's own ticks know another format: after every zoom the sheet's are laid on the new stretch. */
+function ticksFollow(library: Library, plot: PlotlyHTMLElement, x: Axis, y: Axis): void {
+  plot.removeAllListeners("plotly_relayout");
+  plot.on("plotly_relayout", (change) => {
+    if (!Object.keys(change).some((key) => /range/.test(key))) return;
+    const { xaxis, yaxis } = plot.layout;
+    if (!xaxis?.range || !yaxis?.range) return;
+    const [onX, onY] = [ticksOf(xaxis.range as Range, x), ticksOf(yaxis.range as Range, y)];
+    void library.relayout(plot, {
+      "xaxis.tickvals": onX.tickvals,
+      "xaxis.ticktext": onX.ticktext,
+      "yaxis.tickvals": onY.tickvals,
+      "yaxis.ticktext": onY.ticktext,
+    } as Partial<Layout>);
+  });
+}
+
+/** A printed page is narrower than the window: with a view box the drawing shrinks to it (see print styles). */
+function scalesInPrint(plot: PlotlyHTMLElement): void {
+  const setBoxes = () => {
+    for (const layer of plot.querySelectorAll(".main-svg"))
+      layer.setAttribute(
+        "viewBox",
+        `0 0 ${layer.getAttribute("width") ?? 0} ${layer.getAttribute("height") ?? 0}`,
+      );
+  };
+  setBoxes();
+  plot.removeAllListeners("plotly_afterplot");
+  plot.on("plotly_afterplot", setBoxes);
 }
 
 type Library = typeof import("plotly.js-dist-min");
@@ -81,7 +123,7 @@ const load = async (): Promise<Library> => {
 };
 
 export const Plot = memo(function Plot(props: Props) {
-  const { data, x, y, xLog, height, label } = props;
+  const { data, x, y, height, label } = props;
   const box = useRef<HTMLDivElement>(null);
   const [library, setLibrary] = useState<Library | null>(null);
   const [problem, setProblem] = useState<string | null>(null);
@@ -106,20 +148,19 @@ export const Plot = memo(function Plot(props: Props) {
   useEffect(() => {
     const element = box.current;
     if (!library || !element) return undefined;
-    const draw = () => {
+    const plot = element as unknown as PlotlyHTMLElement;
+    const draw = async () => {
       const ink = inkOfPage();
-      void library.react(
-        element as unknown as PlotlyHTMLElement,
-        data(ink),
-        layoutOf({ x, y, xLog, height }, ink),
-        config,
-      );
+      const curves = data(ink);
+      await library.react(plot, curves, layoutOf({ x, y, height }, curves, ink), config);
+      ticksFollow(library, plot, x, y);
+      scalesInPrint(plot);
     };
-    draw();
-    const paper = new MutationObserver(draw);
+    void draw();
+    const paper = new MutationObserver(() => void draw());
     paper.observe(document.documentElement, { attributeFilter: ["data-paper"] });
     return () => paper.disconnect();
-  }, [library, data, x, y, xLog, height]);
+  }, [library, data, x, y, height]);
 
   if (problem) return <p className="quiet">{problem}</p>;
   return (

@@ -1,8 +1,11 @@
 /** The ramp's figures and the saturation curve. */
 import { useMemo } from "react";
 import type { CoilSheet } from "../../app/bridge.ts";
-import { figureText } from "../format/figure.ts";
+import { figureText, plain } from "../format/figure.ts";
 import { Plot, type Ink } from "./Plot.tsx";
+
+const currentAxis = { words: "current", unit: "A" };
+const inductanceAxis = { words: "incremental inductance", unit: "H" };
 
 export function Ramp({ sheet: { ramp, saturation } }: { sheet: CoilSheet }) {
   const plot = useMemo(
@@ -11,13 +14,17 @@ export function Ramp({ sheet: { ramp, saturation } }: { sheet: CoilSheet }) {
         data: (ink: Ink) => [
           {
             x: saturation.x,
-            y: saturation.y.map((inductance) => inductance * 1e3),
+            y: saturation.y,
             mode: "lines" as const,
+            text: saturation.x.map(
+              (current, at) => `${plain(current, "A")}: ${plain(saturation.y[at], "H")}`,
+            ),
+            hovertemplate: "%{text}<extra></extra>",
             line: { color: ink.ink, width: 1.5 },
           },
         ],
-        x: "current, A",
-        y: "incremental inductance, mH",
+        x: currentAxis,
+        y: inductanceAxis,
         label: "Incremental inductance against current",
       },
     [saturation],

@@ -71,7 +71,7 @@ export function EnvelopePanel({
       </g>
       <OnsetLine panel={panel} x={x} pulse={pulse} />
       {onset !== null && onset > span.from && onset < span.to && (
-        <text className="label" x={x(onset) + 5} y={panel.top + 10}>
+        <text className="label" x={x(onset) + 5} y={panel.top + panel.height - 4}>
           breaks here
         </text>
       )}

@@ -3,6 +3,7 @@ import type { BudgetLine, CaptureReading, Figure, PulseReading } from "../../ana
 import type { Setup } from "../../analysis/setup/schema.ts";
 import { dash, figureText, percent, plain, stated } from "../format/figure.ts";
 import { CopyButton } from "../shell/CopyButton.tsx";
+import { useCopy } from "../shell/useCopy.ts";
 import { Caution } from "../help/Caution.tsx";
 
 interface Row {
@@ -43,10 +44,24 @@ export function Figures(source: Source) {
 }
 
 function FigureRow({ row }: { row: Row }) {
+  const copy = useCopy();
   return (
     <tr className={row.text === dash ? "missing" : undefined}>
       <th scope="row">{row.name}</th>
-      <td className="tabular">{row.text}</td>
+      <td className="tabular">
+        {row.text === dash ? (
+          dash
+        ) : (
+          <button
+            type="button"
+            className="value"
+            title={`copy ${row.name}`}
+            onClick={() => copy(row.text, `Copied ${row.text}.`)}
+          >
+            {row.text}
+          </button>
+        )}
+      </td>
       <td>
         {row.rests}
         {row.budget && row.budget.length > 0 && <Budget lines={row.budget} unit={row.unit} />}

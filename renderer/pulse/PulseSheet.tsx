@@ -1,5 +1,6 @@
 /** One pulse: the run's line above, the trace with its notes, figures, verdict. */
 import { useCallback, useMemo, useState } from "react";
+import type { PulseRow } from "../../app/bridge.ts";
 import type { Verdict } from "../../analysis/reading-format.ts";
 import { useWidth } from "../draw/useWidth.ts";
 import { Line } from "../run/Line.tsx";
@@ -17,6 +18,7 @@ import { Figures } from "./Figures.tsx";
 import { marginNotes } from "./notes.ts";
 import { mainChannel, panelsFor } from "./panels.ts";
 import { PulseFigure } from "./PulseFigure.tsx";
+import { PulseSteps } from "./PulseSteps.tsx";
 import { RecordLine } from "./RecordLine.tsx";
 import { useTraces } from "./useTraces.ts";
 import { VerdictLine } from "./VerdictLine.tsx";
@@ -75,17 +77,12 @@ export function PulseSheet({ run, capture, pulse: index }: Props) {
   const showSpan = useCallback((span: Span) => setMoves({ key, span }), [key]);
 
   const at = pulses.rows.findIndex((row) => row.capture === capture && row.pulse === index);
-  const step = useCallback(
-    (by: number) => {
-      const next = pulses.rows[at + by];
-      if (next) go({ view: "pulse", run, capture: next.capture, pulse: next.pulse }, true);
-    },
-    [pulses.rows, at, run],
+  const openPulse = useCallback(
+    (row: PulseRow) => go({ view: "pulse", run, capture: row.capture, pulse: row.pulse }, true),
+    [run],
   );
   const width_s = span ? span.to - span.from : 0;
   useKeys("pulse", [
-    { key: "arrowright", does: "next pulse", act: () => step(1) },
-    { key: "arrowleft", does: "pulse before", act: () => step(-1) },
     { key: "arrowup", does: "back to the run", act: () => go({ view: "run", run }) },
     { key: "+", does: "look closer", act: () => onMove({ factor: 0.6 }) },
     { key: "-", does: "see more", act: () => onMove({ factor: 1 / 0.6 }) },
@@ -115,14 +112,9 @@ export function PulseSheet({ run, capture, pulse: index }: Props) {
         beside={[detail.answer.coil, fileName(asked.answer!.file)].filter(Boolean).join(" · ")}
         page={`page ${run} · ${label.toLowerCase()}`}
       />
-      <Line
-        rows={pulses.rows}
-        expected={setup.expected ?? null}
-        current={at}
-        excerpt
-        onOpen={(row) => go({ view: "pulse", run, capture: row.capture, pulse: row.pulse }, true)}
-      />
-      <VerdictLine run={run} capture={capture} pulse={pulse} setup={setup} onNext={() => step(1)} />
+      <Line rows={pulses.rows} expected={setup.expected ?? null} current={at} excerpt onOpen={openPulse} />
+      <PulseSteps rows={pulses.rows} at={at} onOpen={openPulse} />
+      <VerdictLine capture={capture} pulse={pulse} setup={setup} />
       <div ref={box} className="figure-box">
         <PulseFigure
           {...{ width, reading, pulse, setup, notes, traces, span, onMove }}

@@ -10,11 +10,9 @@ import { useSay } from "../shell/say.tsx";
 import { Mark } from "../shell/Mark.tsx";
 
 interface Props {
-  run: number;
   capture: number;
   pulse: PulseReading;
   setup: Setup;
-  onNext(): void;
 }
 
 const choices: { verdict: Verdict; key: string; does: string }[] = [
@@ -64,8 +62,9 @@ export function VerdictLine({ capture, pulse, setup }: Props) {
           ? `${capital(verdictWord(spark.verdict, setup.expected))}, ${percent(spark.confidence, spark.confidence > 0.99 ? 1 : 0)} sure, judged ${against[spark.judgedAgainst]}.`
           : "Not judged: there is no ring to judge by."}
         {ruled && <strong> You say: {verdictWord(ruled.verdict, setup.expected)}.</strong>}
+        {ruled?.remark && <span className="print-only"> “{ruled.remark}”</span>}
       </p>
-      <div className="verdict-choice" role="group" aria-label="Your own verdict">
+      <div className="verdict-choice no-print" role="group" aria-label="Your own verdict">
         {choices.map(({ verdict, key, does }) => (
           <button
             key={key}

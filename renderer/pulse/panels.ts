@@ -1,5 +1,5 @@
 /** Which panels stand under the trace, and how high each is. */
-import type { CaptureReading, PulseReading } from "../../analysis/reading-format.ts";
+import type { CaptureReading, ChannelReading, PulseReading } from "../../analysis/reading-format.ts";
 import type { RingPicture } from "../../app/bridge.ts";
 
 export interface Panel {
@@ -38,6 +38,12 @@ export function mainChannel(reading: CaptureReading, pulse: PulseReading): numbe
   return 0;
 }
 
+/** A column named for what it is needs no second name. */
+function titleOf({ name, role }: ChannelReading): string {
+  const words = roleName(role);
+  return name.toLowerCase() === words ? name : `${name}: ${words}`;
+}
+
 const above = 34;
 const between = 26;
 
@@ -54,7 +60,7 @@ export function panelsFor(reading: CaptureReading, pulse: PulseReading, picture:
       id: `channel-${index}`,
       kind: "channel" as const,
       channel: index,
-      title: `${channel.name}: ${roleName(channel.role)}`,
+      title: titleOf(channel),
       height: 76,
     })),
   ];

@@ -27,6 +27,7 @@ export function useTraces(
   const bench = useBench();
   const [traces, setTraces] = useState(none);
   const order = useRef(0);
+  const taken = useRef(0);
   const current = useRef(capture);
   current.current = capture;
   const key = channels.join();
@@ -48,9 +49,11 @@ export function useTraces(
     if (!span) return;
     const mine = ++order.current;
     ask(bench, capture, channels, around(span), pixels * 2).then(
-      // An answer that the gesture before asked for is still better than a coarser one.
+      // What an earlier gesture asked for is better than a coarser trace, and never than a later answer.
       (shown) => {
-        if (mine >= order.current - 1 && capture === current.current) setTraces((old) => ({ ...old, shown }));
+        if (mine < taken.current || capture !== current.current) return;
+        taken.current = mine;
+        setTraces((old) => ({ ...old, shown }));
       },
       () => undefined,
     );

@@ -9,9 +9,10 @@ const words: Record<Item["kind"], string> = {
   "near-rating": "near a rating",
   question: "a question",
   error: "could not be read",
-  "setup-missing": "missing in the setup",
   unclear: "unclear",
+  moved: "moved along the run",
   "poor-fit": "poor fit",
+  "setup-missing": "missing in the setup",
 };
 const order = Object.keys(words) as Item["kind"][];
 const shownOfAKind = 4;

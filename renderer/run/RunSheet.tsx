@@ -4,10 +4,12 @@ import type { PulseRow, RunDetail } from "../../app/bridge.ts";
 import { finalVerdict } from "../draw/glyph.ts";
 import { figureText, percent, plain } from "../format/figure.ts";
 import { countsSentence, dayText, verdictWord } from "../format/words.ts";
+import { Caution } from "../help/Caution.tsx";
 import { CopyButton } from "../shell/CopyButton.tsx";
 import { SheetHead } from "../shell/SheetHead.tsx";
 import { Remarks } from "../shell/Remarks.tsx";
 import { Failure, Waiting } from "../shell/States.tsx";
+import { useSay } from "../shell/say.tsx";
 import { PictureButtons } from "../shell/PictureButtons.tsx";
 import { SetupCard } from "../setup/SetupCard.tsx";
 import { useAnswer, useDesk } from "../state/bench.tsx";
@@ -17,14 +19,18 @@ import { Attention } from "./Attention.tsx";
 import { Captures } from "./Captures.tsx";
 import { Exports } from "./Exports.tsx";
 import { Line } from "./Line.tsx";
+import { nextKeys, nextPulse, type Wanted } from "./next-pulse.ts";
 import { RunChart } from "./RunChart.tsx";
+import { Sparks } from "./Sparks.tsx";
 import { usePulses } from "./usePulses.ts";
 
 export function RunSheet({ run }: { run: number }) {
   const desk = useDesk();
   const asked = useAnswer("run", { run }, desk.runs[run] ?? 0);
+  const course = useAnswer("course", { run }, desk.runs[run] ?? 0);
   const pulses = usePulses(run);
   const [marked, setMarked] = useState(-1);
+  const say = useSay();
   const { rows } = pulses;
 
   const open = useCallback(
@@ -32,9 +38,10 @@ export function RunSheet({ run }: { run: number }) {
     [run],
   );
   const step = (by: number) => setMarked((old) => Math.min(Math.max(old + by, 0), rows.length - 1));
-  const toNext = (wanted: (row: PulseRow) => boolean) => {
-    const next = rows.findIndex((row, at) => at > marked && wanted(row));
-    if (next >= 0) setMarked(next);
+  const toNext = (wanted: Wanted, none: string) => {
+    const next = nextPulse(rows, marked, wanted);
+    if (next === null) say(none);
+    else setMarked(next);
   };
   useKeys("run", [
     { key: "arrowright", does: "mark the next pulse", act: () => step(1) },
@@ -44,16 +51,11 @@ export function RunSheet({ run }: { run: number }) {
       does: "open the marked pulse",
       act: () => rows[Math.max(marked, 0)] && open(rows[Math.max(marked, 0)]),
     },
-    {
-      key: "u",
-      does: "mark the next unclear pulse",
-      act: () => toNext((row) => finalVerdict(row) === "unclear"),
-    },
-    {
-      key: "m",
-      does: "mark the next pulse without a spark",
-      act: () => toNext((row) => finalVerdict(row) === "no-spark"),
-    },
+    ...nextKeys.map(({ key, does, wanted, none }) => ({
+      key,
+      does: `mark ${does}`,
+      act: () => toNext(wanted, none),
+    })),
     { key: "arrowup", does: "to the book’s contents", act: () => go({ view: "book" }) },
   ]);
 
@@ -77,11 +79,13 @@ export function RunSheet({ run }: { run: number }) {
         page={`page ${run}`}
       />
       <Line {...{ rows, expected, current: marked }} onOpen={open} onMark={setMarked} />
-      <p className="legend quiet" aria-hidden="true">
-        {rows[marked]
-          ? marginOf(rows[marked], expected)
-          : "lozenge: spark · circle: none · question mark: unclear · underlined: your own verdict"}
-      </p>
+      {rows.length > 0 && (
+        <p className="legend quiet" aria-hidden="true">
+          {rows[marked]
+            ? marginOf(rows[marked], expected)
+            : "lozenge: spark · circle: none · question mark: unclear · underlined: your own verdict"}
+        </p>
+      )}
       <p className="sentence">
         {sentence}{" "}
         <CopyButton
@@ -90,26 +94,34 @@ export function RunSheet({ run }: { run: number }) {
           text={() => summary(detail.name, sentence, combined)}
         />
       </p>
-      <p className="combined">
-        {combinedParts(combined).map(([name, text]) => (
-          <span key={name}>
-            {name} <span className="tabular">{text}</span>
-          </span>
-        ))}
-      </p>
+      {detail.counts.pulses > 0 && (
+        <p className="combined">
+          {combinedParts(combined).map(([name, text]) => (
+            <span key={name}>
+              {name} <span className="tabular">{text}</span>
+            </span>
+          ))}
+        </p>
+      )}
       <Attention detail={detail} rows={rows} />
-      <RunChart
-        rows={rows}
-        expected={expected}
-        marked={marked}
-        rating_V={detail.setup.switchRating_V ?? null}
-        onOpen={open}
-      />
-      <PictureButtons of=".run-chart svg" name={detail.name} />
-      <Remarks title="Of this run" notes={detail.notes} />
+      {rows.length > 1 && (
+        <>
+          <RunChart
+            rows={rows}
+            course={course.answer}
+            marked={marked}
+            rating_V={detail.setup.switchRating_V ?? null}
+            onOpen={open}
+          />
+          <PictureButtons of=".run-chart svg" name={detail.name} />
+        </>
+      )}
+      {course.answer && <Sparks course={course.answer} />}
+      <Remarks title="Of this run" notes={notAbove(detail)} />
       <SetupCard run={detail} capture={captureOfCard(detail)} reading={null} />
       <Captures detail={detail} rows={rows} />
       <Exports run={run} />
+      <Caution />
     </article>
   );
 }
@@ -119,6 +131,10 @@ function captureOfCard({ attention, captureRows }: RunDetail): number | null {
   const asking = attention.find((item) => item.kind === "question")?.capture;
   return asking ?? captureRows.find((row) => row.error === null)?.capture ?? null;
 }
+
+/** What moved along the run stands among what to look at first. */
+const notAbove = ({ notes, attention }: RunDetail) =>
+  notes.filter((note) => !attention.some((item) => item.text === note.text));
 
 type Combined = RunDetail["combined"];
 

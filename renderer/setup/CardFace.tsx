@@ -2,6 +2,7 @@
 import type { RunDetail, SetupOrigin } from "../../app/bridge.ts";
 import type { CaptureReading } from "../../analysis/reading-format.ts";
 import { plain, stated } from "../format/figure.ts";
+import { plural } from "../format/words.ts";
 import { roleName } from "../pulse/panels.ts";
 import { allFields } from "./fields.ts";
 import { shownValue } from "./value.ts";
@@ -12,6 +13,9 @@ const wanted = ["capacitor_F", "supply_V", "switchRating_V"];
 export function CardFace({ run, reading }: { run: RunDetail; reading: CaptureReading | null }) {
   const { setup, origins } = run;
   const lines = allFields.filter((field) => field.key !== "coil" && field.key !== "taken");
+  const channels = reading?.channels ?? [];
+  const named = channels.filter((channel) => channel.role !== "other");
+  const further = channels.length - named.length;
   return (
     <dl className="card-face">
       {lines.map((field) => {
@@ -19,7 +23,7 @@ export function CardFace({ run, reading }: { run: RunDetail; reading: CaptureRea
         if (text === null && !wanted.includes(field.key)) return null;
         return <Item key={field.key} words={field.words} text={text} origin={origins[field.key]} />;
       })}
-      {reading?.channels.map((channel) => (
+      {named.map((channel) => (
         <Item
           key={channel.name}
           words={`column ${channel.name}`}
@@ -27,6 +31,9 @@ export function CardFace({ run, reading }: { run: RunDetail; reading: CaptureRea
           origin={channel.roleGuessed ? "guessed" : undefined}
         />
       ))}
+      {further > 0 && (
+        <Item words={plural(further, "further column")} text="no stated role" origin={undefined} />
+      )}
       {reading && (
         <Item
           words="interval"

@@ -57,7 +57,7 @@ export function ChannelTable({ setup, reading, onChange }: Props) {
                   key={channel.scale}
                   className="short"
                   aria-label={`probe factor of ${channel.name}`}
-                  title="1 where the scope had the probe’s attenuation in its own scale already; else 10 for a 10× probe, 10 for a clamp of 100 mV/A"
+                  aria-describedby="probe-help"
                   defaultValue={stated(channel.scale, "")}
                   onBlur={(event) => {
                     const scale = parseEntry(event.target.value, "");
@@ -77,6 +77,11 @@ export function ChannelTable({ setup, reading, onChange }: Props) {
           ))}
         </tbody>
       </table>
+      <p id="probe-help" className="quiet">
+        Probe ×: 1 where the scope was told of the probe and multiplied already, as most do. Else 10 for a 10×
+        probe, 1k for a 1000× divider, 10 for a clamp of 100 mV/A. The reach beside it is after
+        multiplication: the resting level of the switch node is the supply.
+      </p>
     </div>
   );
 }

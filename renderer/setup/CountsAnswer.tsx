@@ -1,17 +1,26 @@
 /** What one count of a column of bare integers is worth: scale, offset and unit, asked once. */
-import { useState } from "react";
+import { useMemo, useState } from "react";
 import type { SetupChannel } from "../../analysis/setup/schema.ts";
 import { parseEntry } from "../format/entry.ts";
+import { useSettled } from "../state/useSettled.ts";
+import { Outcome } from "./Outcome.tsx";
 
-export function CountsAnswer({ onAnswer }: { onAnswer(part: Partial<SetupChannel>): void }) {
+interface Props {
+  capture: number;
+  channel: string;
+  changeOf(part: Partial<SetupChannel>): Record<string, unknown>;
+  onAnswer(part: Partial<SetupChannel>): void;
+}
+
+export function CountsAnswer({ capture, channel, changeOf, onAnswer }: Props) {
   const [draft, setDraft] = useState({ scale: "", offset: "", unit: "V" });
-  const scale = parseEntry(draft.scale, draft.unit);
-  const offset = draft.offset.trim() === "" ? 0 : parseEntry(draft.offset, draft.unit);
+  const part = useMemo(() => partOf(draft), [draft]);
+  const settled = useSettled(part);
   return (
     <form
       onSubmit={(event) => {
         event.preventDefault();
-        if (scale !== null && offset !== null) onAnswer({ scale, offset, unit: draft.unit });
+        if (part) onAnswer(part);
       }}
     >
       <label>
@@ -34,9 +43,16 @@ export function CountsAnswer({ onAnswer }: { onAnswer(part: Partial<SetupChannel
           onChange={(event) => setDraft({ ...draft, offset: event.target.value })}
         />
       </label>{" "}
-      <button type="submit" disabled={scale === null || scale === 0 || offset === null}>
+      <button type="submit" disabled={part === null}>
         answer
       </button>
+      <Outcome capture={capture} channel={channel} change={settled && changeOf(settled)} />
     </form>
   );
+}
+
+function partOf({ scale, offset, unit }: { scale: string; offset: string; unit: string }) {
+  const factor = parseEntry(scale, unit);
+  const zero = offset.trim() === "" ? 0 : parseEntry(offset, unit);
+  return factor === null || factor === 0 || zero === null ? null : { scale: factor, offset: zero, unit };
 }

@@ -1,4 +1,7 @@
-/** What the file does not tell, asked beside its first lines; an answer goes into the setup at once. */
+/**
+ * What the file does not tell, asked beside its first lines and beside what each answer would make of it;
+ * an answer goes into the setup at once.
+ */
 import { useState } from "react";
 import type { RunDetail } from "../../app/bridge.ts";
 import type { Note } from "../../analysis/capture.ts";
@@ -8,8 +11,10 @@ import { parseEntry } from "../format/entry.ts";
 import { stated } from "../format/figure.ts";
 import { unitPart, withChannel } from "./channels.ts";
 import { CountsAnswer } from "./CountsAnswer.tsx";
-import { allFields } from "./fields.ts";
+import { allFields, type Field } from "./fields.ts";
+import { Outcome } from "./Outcome.tsx";
 import { Preview } from "./Preview.tsx";
+import { useSettled } from "../state/useSettled.ts";
 import type { Change } from "./SetupCard.tsx";
 
 interface Props {
@@ -24,24 +29,26 @@ export function Questions({ run, capture, reading, onChange }: Props) {
   const once = asked.filter(
     (note, at) => asked.findIndex((other) => other.question === note.question) === at,
   );
-  if (once.length === 0) return null;
+  if (once.length === 0 || capture === null) return null;
   return (
     <div className="questions">
       {once.map((note) => (
-        <Question key={note.code + note.question} note={note} setup={run.setup} onChange={onChange} />
+        <Question key={note.code + note.question} {...{ note, capture, onChange }} setup={run.setup} />
       ))}
-      {capture !== null && <Preview capture={capture} />}
+      <Preview capture={capture} />
     </div>
   );
 }
 
 interface QuestionProps {
   note: Note;
+  capture: number;
   setup: Setup;
   onChange: Change;
 }
 
-function Question({ note, setup, onChange }: QuestionProps) {
+function Question(props: QuestionProps) {
+  const { note } = props;
   return (
     <div className="question" role="group" aria-label={note.question}>
       <p>
@@ -50,64 +57,84 @@ function Question({ note, setup, onChange }: QuestionProps) {
         </span>{" "}
         <strong>{note.question}</strong> {note.text}
       </p>
-      {note.answers === "channels" ? (
-        <ChannelAnswer note={note} setup={setup} onChange={onChange} />
-      ) : (
-        <FieldAnswer note={note} onChange={onChange} />
-      )}
+      {note.answers === "channels" ? <ChannelAnswer {...props} /> : <FieldAnswer {...props} />}
     </div>
   );
 }
 
 /** About one column: its unit is chosen, its counts are stated; joining files is left to the setup file. */
-function ChannelAnswer({ note: { channel, choices }, setup, onChange }: QuestionProps) {
+function ChannelAnswer({ note: { channel, choices }, capture, setup, onChange }: QuestionProps) {
   if (channel === undefined)
     return <p className="quiet">Answer it in the folder’s setup.json, under channels.</p>;
-  const put = (part: Partial<SetupChannel>) =>
-    onChange({ channels: withChannel(setup, channel, null, part) });
-  if (!choices) return <CountsAnswer onAnswer={put} />;
-  return (
-    <p>
-      {choices.map((choice) => (
-        <button key={choice} type="button" onClick={() => put(unitPart(choice))}>
-          {choice}
-        </button>
-      ))}
-    </p>
-  );
+  const changeOf = (part: Partial<SetupChannel>) => ({ channels: withChannel(setup, channel, null, part) });
+  if (!choices)
+    return <CountsAnswer {...{ capture, channel, changeOf }} onAnswer={(part) => onChange(changeOf(part))} />;
+  const offers = choices.map((choice) => ({ words: choice, change: changeOf(unitPart(choice)) }));
+  return <Choices {...{ capture, channel, offers, onChange }} />;
 }
 
-function FieldAnswer({ note, onChange }: Omit<QuestionProps, "setup">) {
+function FieldAnswer({ note, capture, onChange }: QuestionProps) {
   const [text, setText] = useState("");
+  const settled = useSettled(text);
   const field = allFields.find((field) => field.key === note.answers);
   if (!field) return <p className="quiet">{note.choices?.join(", ")}</p>;
-  const answer = (words: string) => {
+  if (note.choices && note.choices.length > 0) {
+    const offers = note.choices.map((choice) => offerOf(field, choice));
+    return <Choices {...{ capture, offers, onChange }} />;
+  }
+  const changeOf = (words: string) => {
     const number = parseEntry(words, field.unit);
-    if (field.kind === "choice") onChange({ [field.key]: words });
-    else if (number !== null) onChange({ [field.key]: number });
+    return number === null ? null : { [field.key]: number };
   };
-  const worded = (choice: string) =>
-    field.choices?.find(({ value }) => value === choice)?.words ??
-    (field.kind === "number" ? stated(Number(choice), field.unit) : choice);
-  if (note.choices && note.choices.length > 0)
-    return (
-      <p>
-        {note.choices.map((choice) => (
-          <button key={choice} type="button" onClick={() => answer(choice)}>
-            {worded(choice)}
-          </button>
-        ))}
-      </p>
-    );
+  const change = changeOf(text);
   return (
     <form
       onSubmit={(event) => {
         event.preventDefault();
-        answer(text);
+        if (change) onChange(change);
       }}
     >
       <input aria-label={note.question} value={text} onChange={(event) => setText(event.target.value)} />{" "}
-      {field.unit} <button type="submit">answer</button>
+      {field.unit}{" "}
+      <button type="submit" disabled={change === null}>
+        answer
+      </button>
+      <Outcome capture={capture} change={changeOf(settled)} />
     </form>
+  );
+}
+
+interface Offer {
+  words: string;
+  change: Record<string, unknown>;
+}
+
+function offerOf(field: Field, choice: string): Offer {
+  if (field.kind === "number")
+    return { words: stated(Number(choice), field.unit), change: { [field.key]: Number(choice) } };
+  const words = field.choices?.find(({ value }) => value === choice)?.words ?? choice;
+  return { words, change: { [field.key]: choice } };
+}
+
+interface ChoicesProps {
+  capture: number;
+  channel?: string;
+  offers: Offer[];
+  onChange: Change;
+}
+
+/** Every choice with what it would make of the file. */
+function Choices({ capture, channel, offers, onChange }: ChoicesProps) {
+  return (
+    <ul className="choices">
+      {offers.map(({ words, change }) => (
+        <li key={words}>
+          <button type="button" onClick={() => onChange(change)}>
+            {words}
+          </button>
+          <Outcome {...{ capture, channel, change }} />
+        </li>
+      ))}
+    </ul>
   );
 }

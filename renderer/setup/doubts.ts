@@ -1,5 +1,5 @@
 /** Entries that can be right but rarely are: asked about, never refused. */
-import type { CaptureReading } from "../../analysis/reading-format.ts";
+import type { CaptureReading, ChannelReading } from "../../analysis/reading-format.ts";
 import type { Setup } from "../../analysis/setup/schema.ts";
 import { plain, stated } from "../format/figure.ts";
 import { withChannel } from "./channels.ts";
@@ -51,29 +51,57 @@ function sizeDoubt(field: Field, setup: Setup): Doubt | null {
 }
 
 /**
- * A probe's attenuation stated on the card although the scope had it in the file already: the scaled
- * trace passes a stated rating (or far exceeds what the drive suggests), the unscaled does not.
+ * A probe's attenuation counted twice (by the scope and on the card), or not at all. The level that the ring
+ * settles to is the supply: where it is that times the factor, the factor is one too many; where it is a
+ * tenth or a hundredth of it, one is missing. Without a stated supply a passed rating tells.
  */
 function probeDoubts(setup: Setup, reading: CaptureReading): Doubt[] {
-  const limit = setup.switchRating_V ?? null;
   return reading.channels.flatMap((channel, position) => {
-    const { scale, maximum, minimum, role, name } = channel;
-    if (role !== "switch-node" || Math.abs(scale) < 5 || maximum === null || minimum === null) return [];
-    const reach = Math.max(maximum, -minimum);
-    if (limit === null || reach <= limit) return [];
+    if (channel.role !== "switch-node") return [];
+    const put = (scale: number) => ({ channels: withChannel(setup, channel.name, position, { scale }) });
+    const level = restingLevel(reading, channel.name);
+    const text =
+      countedTwice(channel, level, setup.supply_V ?? null) ??
+      passesRating(channel, setup.switchRating_V ?? null);
+    const key = `channel-${position}`;
+    if (text) return [{ key, text, offers: [{ words: "Yes, it is in the file already", change: put(1) }] }];
+    const missing = missingFactor(channel, level, setup.supply_V ?? null);
+    if (missing === null) return [];
     return [
       {
-        key: `channel-${position}`,
-        text: `With the probe’s ${stated(scale, "")}× “${name}” reaches ${plain(reach, "V")}, above the switch’s ${stated(limit, "V")}; without it ${plain(reach / Math.abs(scale), "V")}. Had the scope multiplied already?`,
-        offers: [
-          {
-            words: "Yes, it is in the file already",
-            change: { channels: withChannel(setup, name, position, { scale: 1 }) },
-          },
-        ],
+        key,
+        text: `“${channel.name}” rests at ${plain(level, "V")}, about a ${missing === 10 ? "tenth" : "hundredth"} of the stated supply of ${stated(setup.supply_V, "V")}. Is a ${missing}× probe’s factor missing?`,
+        offers: [{ words: `Yes, ${missing}×`, change: put(channel.scale * missing) }],
       },
     ];
   });
+}
+
+/** What the fitted ring of the column settles to; null where none was fitted. */
+function restingLevel({ pulses }: CaptureReading, channel: string): number | null {
+  const ring = pulses.find((pulse) => pulse.ring?.channel === channel && pulse.ring.quality === "good")?.ring;
+  return ring?.offset ?? null;
+}
+
+/** Near enough to tell factors of ten apart: a supply sags, a switch drops a volt. */
+const near = (ratio: number, wanted: number) => Math.abs(ratio / wanted - 1) < 0.3;
+
+function countedTwice({ scale, name }: ChannelReading, level: number | null, supply: number | null) {
+  const factor = Math.abs(scale);
+  if (level === null || !supply || factor < 5 || !near(Math.abs(level) / supply, factor)) return null;
+  return `With the probe’s ${stated(scale, "")}× “${name}” rests at ${plain(level, "V")}, where the stated supply is ${stated(supply, "V")}; without it at ${plain(level / scale, "V")}. Had the scope multiplied already?`;
+}
+
+function passesRating({ scale, maximum, minimum, name }: ChannelReading, limit: number | null) {
+  if (Math.abs(scale) < 5 || maximum === null || minimum === null || limit === null) return null;
+  const reach = Math.max(maximum, -minimum);
+  if (reach <= limit) return null;
+  return `With the probe’s ${stated(scale, "")}× “${name}” reaches ${plain(reach, "V")}, above the switch’s ${stated(limit, "V")}; without it ${plain(reach / Math.abs(scale), "V")}. Had the scope multiplied already?`;
+}
+
+function missingFactor({ scale }: ChannelReading, level: number | null, supply: number | null) {
+  if (level === null || !supply || scale !== 1) return null;
+  return [10, 100].find((factor) => near((Math.abs(level) * factor) / supply, 1)) ?? null;
 }
 
 const capital = (text: string) => text[0].toUpperCase() + text.slice(1);

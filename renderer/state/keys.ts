@@ -35,7 +35,12 @@ function writes(target: EventTarget | null): boolean {
 function take(event: KeyboardEvent): void {
   if (event.defaultPrevented || event.altKey) return;
   const name = nameOf(event);
-  if (writes(event.target) && name !== "escape") return;
+  if (event.target instanceof Element && event.target.closest("dialog")) return;
+  if (writes(event.target)) {
+    // Escape leaves a field, and does nothing else.
+    if (name === "escape") (event.target as HTMLElement).blur();
+    return;
+  }
   const pressesControl = event.target instanceof Element && event.target.closest("button, a, summary");
   if (pressesControl && (name === "enter" || name === " ")) return;
   for (const layer of layers.toReversed()) {

@@ -1,5 +1,5 @@
 import { expect, it } from "vitest";
-import type { Bench, BenchEvent, JobState } from "../../app/bridge.ts";
+import { commands, type Bench, type BenchEvent, type JobState } from "../../app/bridge.ts";
 import { samples } from "../cli/ringbook.ts";
 import { join } from "node:path";
 
@@ -54,6 +54,22 @@ export function keepsTheContract(bench: () => Bench): void {
     const picture = await bench().call("ringPicture", { capture, pulse, pixels: 200 });
     expect(picture?.fitted.time_s.length).toBeGreaterThan(20);
     expect((await bench().call("fileHead", { capture, lines: 3 })).lines).toHaveLength(3);
+    const course = await bench().call("course", { run: 1 });
+    expect(course.onset_s.map((onset) => onset === null)).toEqual(rows.map((row) => row.verdict !== "spark"));
+    // Two captures without a clock in their files: no common time.
+    expect(course.time_s).toBeNull();
+  });
+
+  it("tries a changed setup on a capture's file and keeps nothing of it", async () => {
+    const [{ capture }] = (await bench().call("pulses", { run: 1 })).rows;
+    const before = await bench().call("capture", { capture });
+    const asked = { capture, change: { channels: [{ position: 0, scale: 10 }] }, pixels: 100 };
+    const tried = await bench().call("trySetup", asked);
+    expect(Math.max(...tried.trace.high.map((value) => value ?? 0))).toBeCloseTo(
+      10 * before.reading.channels[0].maximum!,
+    );
+    expect(tried).toMatchObject({ records: 1, switchOffs: 1, samples: before.reading.timebase.samples });
+    expect(await bench().call("capture", { capture })).toEqual(before);
   });
 
   it("keeps the user's verdict, takes it back, and computes a run again after a change of the setup", async () => {
@@ -87,8 +103,12 @@ export function keepsTheContract(bench: () => Bench): void {
     expect(await bench().call("preferences", {})).toMatchObject({ sheet: "dark" });
   });
 
+  it.each(Object.keys(commands))("refuses %s with what is no argument of it", async (name) => {
+    for (const argument of [null, "text", 7, [], { surplus: 1 }])
+      await expect(bench().call(name as never, argument as never)).rejects.toThrow(/wrong argument/);
+  });
+
   it.each([
-    ["hello", { surplus: 1 }],
     ["addFile", { name: "a.csv", bytes: "text" }],
     ["open", { sources: [] }],
     ["open", { sources: [{ path: 5 }] }],
@@ -101,6 +121,9 @@ export function keepsTheContract(bench: () => Bench): void {
     ["ringPicture", { capture: 1, pulse: -1, pixels: 10 }],
     ["changeSetup", { run: 1, change: { capacitor_F: "big" } }],
     ["changeSetup", { run: 1, change: { nonsense: 1 } }],
+    ["trySetup", { capture: 1, change: { nonsense: 1 }, pixels: 100 }],
+    ["trySetup", { capture: 1, change: {}, pixels: 0 }],
+    ["course", { run: 999 }],
     ["rule", { capture: 1, pulse: 0, verdict: "maybe", remark: "" }],
     ["exportRun", { run: 1, kind: "exe" }],
     ["fileHead", { capture: 1, lines: 1e6 }],

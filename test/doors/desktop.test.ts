@@ -1,5 +1,5 @@
-import { afterAll, beforeAll, describe, vi } from "vitest";
-import type { Bench } from "../../app/bridge.ts";
+import { afterAll, beforeAll, describe, expect, it, vi } from "vitest";
+import { commands, type Bench } from "../../app/bridge.ts";
 import { exposed, ipcHandlers, ipcRenderer, StandInWindow } from "../desktop/electron-stand-in.ts";
 import { keepsTheContract } from "./contract.ts";
 import { temporaryHost } from "./host.ts";
@@ -33,3 +33,22 @@ afterAll(async () => {
 });
 
 describe("the desktop door", () => keepsTheContract(() => exposed.ringbook as Bench));
+
+describe("the desktop door, called from elsewhere", () => {
+  it.each(Object.keys(commands))(
+    "refuses %s to a foreign page and to a frame inside its own",
+    async (name) => {
+      const { callChannel } = await import("../../app/desktop/channels.ts");
+      const { pageAddress } = await import("../../app/desktop/guard.ts");
+      const frames = [
+        { url: "https://example.org/", parent: null },
+        { url: pageAddress, parent: { url: pageAddress } },
+        null,
+      ];
+      for (const senderFrame of frames)
+        expect(await ipcHandlers.get(callChannel)!({ senderFrame }, name, {})).toMatchObject({
+          error: { code: "foreign-sender" },
+        });
+    },
+  );
+});

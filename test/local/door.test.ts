@@ -5,7 +5,7 @@ import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { afterEach, beforeEach, describe, expect, it } from "vitest";
 import { WebSocket } from "ws";
-import type { BenchEvent } from "../../app/bridge.ts";
+import { commands, type BenchEvent } from "../../app/bridge.ts";
 import type { Host } from "../../app/host/host.ts";
 import { openLocalDoor, type LocalDoor } from "../../app/local/door.ts";
 
@@ -132,6 +132,23 @@ describe("calls", () => {
       "application/json",
     ]);
   });
+
+  it.each([...Object.keys(commands).map((name) => `/call/${name}`), "/file?name=a.csv"])(
+    "to %s are refused with a stale token, a foreign or no Origin, and to a foreign Host",
+    async (path) => {
+      const refused: [Record<string, string>, number, string][] = [
+        [{ ...own(), "x-ringbook-token": "A".repeat(43) }, 401, "stale-token"],
+        [{ ...own(), origin: "http://example.org" }, 403, "wrong-origin"],
+        [{ "x-ringbook-token": door.token }, 403, "wrong-origin"],
+        [{ ...own(), host: "ringbook.example" }, 403, "wrong-host"],
+      ];
+      for (const [headers, wanted, code] of refused) {
+        const { status, text } = await send({ method: "POST", path, headers, body: "{}" });
+        expect([status, codeOf(text)]).toEqual([wanted, code]);
+      }
+      expect(echo.asked).toEqual([]);
+    },
+  );
 
   it("never reached the host when they were refused", async () => {
     await call({ "x-ringbook-token": door.token });

@@ -19,7 +19,7 @@ const channel = (part: Partial<ChannelReading>) =>
     minimum: -290,
     ...part,
   }) as ChannelReading;
-const reading = (...channels: ChannelReading[]) => ({ channels }) as CaptureReading;
+const reading = (...channels: ChannelReading[]) => ({ channels, pulses: [] as unknown }) as CaptureReading;
 
 describe("implausible entries", () => {
   it("a capacitor of 330 mF is questioned, with the prefixes that may have been meant", () => {
@@ -41,6 +41,35 @@ describe("implausible entries", () => {
     expect(doubt.text).toContain("310\u00a0V");
     expect(doubt.offers[0].change).toEqual({ channels: [{ name: "CH1", scale: 1 }] });
     expect(doubts(setup, reading(channel({ scale: 10 })))).toEqual([]);
+  });
+});
+
+describe("a probe's factor", () => {
+  /** A ring that settles to this level: at the switch node that is the supply. */
+  const resting = (offset: number, part: Partial<ChannelReading>) =>
+    ({
+      channels: [channel(part)],
+      pulses: [{ ring: { channel: "CH1", quality: "good", offset } }],
+    }) as CaptureReading;
+
+  it("counted twice is questioned by the level the ring settles to, without any rating", () => {
+    const [doubt] = doubts({ supply_V: 12 }, resting(121, { scale: 10, maximum: 3100 }));
+    expect(doubt.text).toContain("121\u00a0V");
+    expect(doubt.offers[0].change).toEqual({ channels: [{ name: "CH1", scale: 1 }] });
+    expect(doubts({ supply_V: 12 }, resting(11.6, { scale: 10 }))).toEqual([]);
+  });
+
+  it.each([
+    [1.21, 10],
+    [0.118, 100],
+  ])("that is missing (%d V at rest) is offered", (level, factor) => {
+    const [doubt] = doubts({ supply_V: 12 }, resting(level, { maximum: 31 }));
+    expect(doubt.offers[0].change).toEqual({ channels: [{ name: "CH1", scale: factor }] });
+  });
+
+  it("is not doubted where the supply is at rest, or nothing is known of it", () => {
+    expect(doubts({ supply_V: 12 }, resting(12.2, {}))).toEqual([]);
+    expect(doubts({}, resting(1.2, {}))).toEqual([]);
   });
 });
 

@@ -1,10 +1,13 @@
 /** Routes, spans of a record and drawn pulses. */
 import { describe, expect, it } from "vitest";
 import type { CaptureReading, PulseReading } from "../../analysis/reading-format.ts";
+import type { PulseRow } from "../../app/bridge.ts";
+import { axisTicks, extentOf } from "../../renderer/coil/axis.ts";
 import { glyphPath } from "../../renderer/draw/glyph.ts";
 import { inkPath } from "../../renderer/draw/ink.ts";
 import { linear, ticks } from "../../renderer/draw/scale.ts";
 import { moved, pulseSpan, recordSpan, zoomed } from "../../renderer/pulse/window.ts";
+import { nextPulse } from "../../renderer/run/next-pulse.ts";
 import { keyText } from "../../renderer/state/keys.ts";
 import { parseRoute, pathOf, type Route } from "../../renderer/state/route.ts";
 
@@ -86,5 +89,36 @@ describe("drawing", () => {
     expect(keyText("shift+arrowleft")).toBe("Shift ←");
     expect(keyText("ctrl+z")).toBe("Ctrl Z");
     expect(keyText("+")).toBe("+");
+  });
+});
+
+describe("the next pulse to look at", () => {
+  const rows = ["spark", "unclear", "spark", "no-spark", "unclear"].map(
+    (verdict) => ({ verdict, ruled: null }) as PulseRow,
+  );
+  it("is the nearest of its kind after the marked one, then round from the beginning", () => {
+    expect(nextPulse(rows, -1, "unclear")).toBe(1);
+    expect(nextPulse(rows, 1, "unclear")).toBe(4);
+    expect(nextPulse(rows, 4, "unclear")).toBe(1);
+  });
+  it("is none where the marked one is the only one, and where there are no pulses", () => {
+    expect(nextPulse(rows, 3, "no-spark")).toBeNull();
+    expect(nextPulse([], -1, "unclear")).toBeNull();
+  });
+});
+
+describe("a curve's axis", () => {
+  const curve = { x: [1e-8, 2e-6, null], y: [12, null, 480] } as never;
+  it("covers all curves with some air, in powers of ten where it is logarithmic", () => {
+    expect(extentOf([curve], "y", false)[0]).toBeLessThan(12);
+    expect(extentOf([curve], "y", false)[1]).toBeGreaterThan(480);
+    expect(extentOf([curve], "x", true)[0]).toBeCloseTo(-8, 1);
+  });
+  it("has ticks in the format of all numbers", () => {
+    expect(axisTicks([0, 1100], "V", false).ticktext).toContain("1\u00a0kV");
+    expect(axisTicks([-8.1, -5.7], "F", true).ticktext).toEqual(["10\u00a0nF", "100\u00a0nF", "1\u00a0µF"]);
+    expect(axisTicks([-8.1, -6.9], "F", true).ticktext).toEqual(
+      ["10", "20", "50", "100"].map((number) => `${number}\u00a0nF`),
+    );
   });
 });

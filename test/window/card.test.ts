@@ -3,6 +3,7 @@ import { copyFileSync, mkdirSync } from "node:fs";
 import { join } from "node:path";
 import type { Browser } from "playwright-core";
 import { afterAll, afterEach, beforeAll, expect, it } from "vitest";
+import { seeded } from "../reference/random.ts";
 import { describeWindow, launch } from "./chromium.ts";
 import { demo, openDoor, type TestDoor } from "./door.ts";
 import {
@@ -121,15 +122,45 @@ describeWindow("the setup card", () => {
     await page.getByLabel("First lines of the file").waitFor();
     await expectAccessible(page);
     await question.locator("input").fill("2u");
+    // What the answer would make of it stands beside it before it is given: 3000 samples, ring of 4 kHz.
+    await question.getByText(/^3000 samples 2\.00\u00a0µs apart, .* ring of (4\.00|3\.99)\d*/).waitFor();
+    expect((await question.locator("svg path.ink").getAttribute("d"))!.length).toBeGreaterThan(1000);
     await question.getByRole("button", { name: "answer" }).click();
     await page.getByText(/^1 pulse: /).waitFor({ timeout: 20_000 });
     await page.locator(".card-face", { hasText: "2.000" }).waitFor();
   });
+
+  it("shows what each choice would make of a file beside the question, and takes the one that is clicked", async () => {
+    const lines = ["t,node [V]"];
+    for (let at = 0; at < 3000; at++)
+      lines.push(`${(at * 0.002 - 1).toFixed(3)},${ring(at * 2e-6 - 1e-3).toFixed(2)}`);
+    const run = await door.readIn("no unit", { "one.csv": lines.join("\n") });
+    sheet = await openSheet(browser, door, `/run/${run}`);
+    const { page } = sheet;
+    const choice = (unit: string) =>
+      page.locator(".choices li").filter({ has: page.getByRole("button", { name: unit, exact: true }) });
+    await choice("s")
+      .getByText(/^3000 samples 2\.00\u00a0ms apart/)
+      .waitFor({ timeout: 20_000 });
+    await choice("µs")
+      .getByText(/^3000 samples 2\.00\u00a0ns apart/)
+      .waitFor();
+    await choice("ms")
+      .getByText(/^3000 samples 2\.00\u00a0µs apart, .* ring of (4\.00|3\.99)\d*.*kHz/)
+      .waitFor();
+    await expectAccessible(page);
+    await choice("ms").getByRole("button").click();
+    await page.locator(".choices").waitFor({ state: "hidden", timeout: 20_000 });
+    await page.locator(".card-face", { hasText: "2.000\u00a0µs" }).waitFor();
+  });
 });
+
+const { uniform } = seeded(5);
 
 /** An invented switch-off at t = 0 that rings at 4 kHz with Q 20. */
 function ring(time_s: number): number {
-  if (time_s < 0) return 1 + 0.3 * Math.sin(time_s * 1e7);
+  const noise = uniform() - 0.5;
+  if (time_s < 0) return 1 + noise;
   const decay = Math.exp(-630 * time_s);
-  return 12 + 150 * decay * Math.sin(2 * Math.PI * 4000 * time_s) + 0.3 * Math.sin(time_s * 1e7);
+  return 12 + 150 * decay * Math.sin(2 * Math.PI * 4000 * time_s) + noise;
 }

@@ -1,5 +1,5 @@
 /** The real host with a new book behind the real local door, as `npm start` serves it. */
-import { copyFileSync, existsSync, mkdtempSync, rmSync } from "node:fs";
+import { copyFileSync, existsSync, mkdirSync, mkdtempSync, rmSync, writeFileSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { pathToFileURL } from "node:url";
@@ -16,6 +16,8 @@ export interface TestDoor extends LocalDoor {
   host: Host;
   folder: string;
   ask<Name extends CommandName>(name: Name, argument: Argument<Name>): Promise<Answer<Name>>;
+  /** Writes files into a folder of their own, reads them, and answers their run. */
+  readIn(name: string, files: Record<string, string>): Promise<number>;
   /** Shut and remove everything. */
   end(): Promise<void>;
 }
@@ -45,6 +47,16 @@ export async function openDoor(options: { demo?: boolean } = {}): Promise<TestDo
     host,
     folder,
     ask,
+    async readIn(name, files) {
+      const place = join(folder, name);
+      mkdirSync(place);
+      for (const [file, text] of Object.entries(files)) writeFileSync(join(place, file), text);
+      const { job } = await ask("open", { sources: [{ path: place }] });
+      await host.idle();
+      const state = (await ask("jobs", {})).find((each) => each.job === job);
+      if (!state || state.run === null) throw new Error(`${name}: ${JSON.stringify(state)}`);
+      return state.run;
+    },
     async end() {
       await door.close();
       await host.close();

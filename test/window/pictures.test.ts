@@ -7,6 +7,7 @@ import { join } from "node:path";
 import type { Browser } from "playwright-core";
 import { afterAll, beforeAll, expect, it } from "vitest";
 import type { PulseRow } from "../../app/bridge.ts";
+import { seeded } from "../reference/random.ts";
 import { describeWindow, launch } from "./chromium.ts";
 import { openDoor, type TestDoor } from "./door.ts";
 import { closeSilent, goTo, openContents, openSheet, type Sheet } from "./sheet.ts";
@@ -34,7 +35,16 @@ const quiet = (rows: PulseRow[]) => rows.find((row) => row.verdict === "no-spark
 const pathOf = (row: PulseRow) => `/pulse/1/${row.capture}/${row.pulse}`;
 
 const pictures: Picture[] = [
-  { name: "run", path: () => "/run/1", width: 1280, height: 900, shows: ".run-chart .lozenge" },
+  { name: "run", path: () => "/run/1", width: 1280, height: 1130, shows: ".distribution .interval" },
+  {
+    name: "run-dark",
+    path: () => "/run/1",
+    width: 1280,
+    height: 1130,
+    dark: true,
+    shows: ".distribution .interval",
+  },
+  { name: "run-narrow", path: () => "/run/1", width: 420, height: 1100, shows: ".distribution .interval" },
   {
     name: "pulse",
     path: (rows) => pathOf(sparking(rows)),
@@ -74,6 +84,21 @@ const pictures: Picture[] = [
     before: ({ page }) => turnCard(page),
   },
   {
+    name: "coil-dark",
+    path: () => "/coil/Igniter%20coil%20A",
+    width: 1280,
+    height: 1100,
+    dark: true,
+    shows: ".plot .scatterlayer",
+  },
+  {
+    name: "question",
+    path: () => "/run/2",
+    width: 1280,
+    height: 860,
+    shows: ".choices li:nth-child(4) .outcome svg",
+  },
+  {
     name: "book",
     path: () => "/",
     width: 1280,
@@ -90,6 +115,19 @@ async function turnCard(page: Sheet["page"]) {
   await page.evaluate(() => document.querySelector("#setup-card")!.scrollIntoView());
 }
 
+/** An invented capture whose time column has no unit: it counts milliseconds and does not say so. */
+function unnamedTimes(): string {
+  const { uniform } = seeded(2);
+  const lines = ["t,switch node [V]"];
+  for (let at = 0; at < 3000; at++) {
+    const time_s = at * 2e-6 - 1e-3;
+    const ring = 150 * Math.exp(-630 * time_s) * Math.sin(2 * Math.PI * 4000 * time_s);
+    const value = (time_s < 0 ? 1 : 12 + ring) + uniform() - 0.5;
+    lines.push(`${(time_s * 1e3).toFixed(3)},${value.toFixed(2)}`);
+  }
+  return lines.join("\n");
+}
+
 describeWindow("pictures of the demo run", () => {
   let browser: Browser;
   let door: TestDoor;
@@ -97,6 +135,7 @@ describeWindow("pictures of the demo run", () => {
   let sheet: Sheet;
   beforeAll(async () => {
     [browser, door] = await Promise.all([launch(), openDoor({ demo: true })]);
+    await door.readIn("saved without a unit", { "capture.csv": unnamedTimes() });
     ({ rows } = await door.ask("pulses", { run: 1, limit: 1000 }));
     sheet = await openSheet(browser, door);
     await sheet.page.locator(".sheet-head").waitFor();

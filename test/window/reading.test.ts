@@ -43,6 +43,12 @@ describeWindow("while reading", () => {
     await page.locator(".sheet-head").waitFor();
     await door.ask("open", { sources: [{ path: folder }] });
     await page.getByText(new RegExp(`: \\d+ of ${files}`)).waitFor();
+    // Escape that closes the overview of keys stops no reading.
+    await page.keyboard.press("k");
+    await page.getByRole("dialog").waitFor();
+    await page.keyboard.press("Escape");
+    await page.getByRole("dialog").waitFor({ state: "hidden" });
+    expect((await door.ask("jobs", {})).at(-1)!.state).not.toBe("cancelled");
     await page.reload();
     await page.getByText(new RegExp(`: \\d+ of ${files}`)).waitFor();
     await page.getByText(/: [1-9]\d* of /).waitFor();

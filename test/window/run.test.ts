@@ -3,6 +3,7 @@ import { mkdtempSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 import type { Browser } from "playwright-core";
 import { afterAll, afterEach, beforeAll, expect, it } from "vitest";
+import { seeded } from "../reference/random.ts";
 import { describeWindow, launch } from "./chromium.ts";
 import { demo, openDoor, type TestDoor } from "./door.ts";
 import {
@@ -15,6 +16,20 @@ import {
   openSheet,
   type Sheet,
 } from "./sheet.ts";
+
+/** Two dozen invented rings of 4 kHz, 2 ms apart at 2 µs a sample; from the thirteenth on Q is 20 instead of 21. */
+function dampedTrain(): string {
+  const { uniform } = seeded(11);
+  const lines = ["t [s],node [V]"];
+  for (let at = 0; at < 24 * 2000; at++) {
+    const since_s = ((at % 2000) - 400) * 2e-6;
+    const decay_per_s = at < 12 * 2000 ? 600 : 630;
+    const ring = 150 * Math.exp(-decay_per_s * since_s) * Math.sin(2 * Math.PI * 4000 * since_s);
+    const value = (since_s < 0 ? 1 : 12 + ring) + (uniform() - 0.5) * 1.5;
+    lines.push(`${(at * 2e-6).toFixed(6)},${value.toFixed(2)}`);
+  }
+  return lines.join("\n");
+}
 
 const sum = (numbers: number[]) => numbers.reduce((all, one) => all + one, 0);
 
@@ -75,9 +90,52 @@ describeWindow("a run", () => {
     expect(sum(drawn.circles)).toBe(rows.filter((row) => row.verdict === "no-spark").length);
     await page.getByRole("heading", { name: "Look at this first" }).waitFor();
     expect(await page.locator(".attention a").count()).toBeGreaterThan(0);
+    const near = page.locator(".attention-near-rating li");
+    const shares = (await near.allTextContents()).map((text) => Number(/is (\d+) %/.exec(text)![1]));
+    expect(shares[0]).toBeGreaterThanOrEqual(80);
+    expect(shares).toEqual(shares.toSorted((a, b) => b - a));
     await page.getByLabel("Figure of the chart").selectOption("q");
     await page.getByRole("img", { name: /^Q over 54 pulses/ }).waitFor();
     await expectAccessible(page);
+  });
+
+  it("tells when its sparks struck and at what voltage, as distributions with their fit", async () => {
+    sheet = await openSheet(browser, door, `/run/${run}`);
+    const { page } = sheet;
+    const sparks = page.locator("section", { has: page.getByRole("heading", { name: "How it sparked" }) });
+    const course = await door.ask("course", { run });
+    const fit = course.trends!.breakdown_V!;
+    const broke = course.breakdown_V.filter((value) => value !== null);
+    expect(fit).toMatchObject({ broke: broke.length, held: 0, from: "ratio" });
+    await sparks.getByText(/Weibull fit: 63 % lie below [\d.]+\u00a0kV \([\d.]+\u00a0kV to/).waitFor();
+    // A stroke a spark; what lies far beside the others is named instead.
+    const onsets = course.onset_s.filter((onset) => onset !== null);
+    const drawn = await sparks.locator(".strokes").first().getAttribute("d");
+    const beside = (await sparks
+      .getByText(/^Far beside the others: /)
+      .first()
+      .textContent())!;
+    expect(drawn!.split("M").length - 1 + beside.split(", ").length).toBe(onsets.length);
+    expect(await sparks.locator(".interval").count()).toBe(2);
+    await page.getByLabel("Figure of the chart").selectOption("breakdown");
+    await page.getByText(`${54 - broke.length} without this figure`).waitFor();
+  });
+
+  it("runs over time where one record tells it, with a change of level drawn and named first", async () => {
+    const damped = await door.readIn("damped", { "train.csv": dampedTrain() });
+    sheet = await openSheet(browser, door, `/run/${damped}`);
+    const { page } = sheet;
+    await page.getByText(/^24 pulses: 0 sparked, 24 stayed quiet/).waitFor();
+    await page.locator(".attention-moved", { hasText: "Q changed at quiet pulse 13" }).waitFor();
+    await page.getByLabel("Figure of the chart").selectOption("q");
+    await page.locator(".course-mark", { hasText: "changes at pulse 13" }).waitFor();
+    await page.getByLabel("Along").selectOption("time");
+    await page.getByRole("img", { name: "Q over the time of 24 pulses" }).waitFor();
+    const chart = (await page.locator(".run-chart svg").boundingBox())!;
+    await page.mouse.click(chart.x + chart.width - 10, chart.y + 80);
+    await page.getByText("pulse 24 of 24").waitFor();
+    await page.keyboard.press("q");
+    await page.getByText("No other pulse is unclear.").waitFor();
   });
 
   it("leads to a pulse by click, by keys and from the attention list", async () => {

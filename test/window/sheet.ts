@@ -62,17 +62,26 @@ export async function closeSilent(sheet: Sheet | undefined): Promise<void> {
   expect(sheet.noise).toEqual([]);
 }
 
-/** Rules of WCAG 2 A and AA, by axe-core: nothing serious or critical. */
+/** Rules of WCAG 2 A and AA, by axe-core, on light and on dark paper: nothing serious or critical. */
 export async function expectAccessible(page: Page): Promise<void> {
   // The page's policy forbids inline scripts; the test's own is not the page's.
   await page.evaluate(axe);
   const found = await page.evaluate(async () => {
-    const { violations } = await (window as never as { axe: typeof import("axe-core") }).axe.run();
-    return violations
-      .filter(({ impact }) => impact === "serious" || impact === "critical")
-      .map(
-        ({ id, nodes }) => `${id}: ${nodes.map((node) => `${node.html} ${node.failureSummary}`).join("\n")}`,
-      );
+    const { axe } = window as never as { axe: typeof import("axe-core") };
+    const { dataset } = document.documentElement;
+    const before = dataset.paper;
+    const serious: string[] = [];
+    for (const paper of ["light", "dark"]) {
+      dataset.paper = paper;
+      for (const { id, impact, nodes } of (await axe.run()).violations)
+        if (impact === "serious" || impact === "critical")
+          serious.push(
+            `${paper}, ${id}: ${nodes.map((node) => `${node.html} ${node.failureSummary}`).join("\n")}`,
+          );
+    }
+    if (before === undefined) delete dataset.paper;
+    else dataset.paper = before;
+    return serious;
   });
   expect(found).toEqual([]);
 }

@@ -1,3 +1,5 @@
+import type { Note } from "../../../analysis/capture.ts";
+import { formatNumber } from "../../../analysis/format/figure.ts";
 import type { CaptureReading, PulseReading } from "../../../analysis/reading-format.ts";
 import type { Setup } from "../../../analysis/setup/schema.ts";
 import type { Attention } from "../../bridge.ts";
@@ -14,10 +16,10 @@ interface Kept {
 /** What needs the user's eye first in one capture: ratings, then doubts, then questions. */
 export function attentionOf({ capture, setup, reading }: Kept): Attention[] {
   const found: Attention[] = [];
-  const add = (kind: Attention["kind"], text: string, pulse: number | null) =>
-    found.push({ kind, text, capture, pulse });
+  const add = (kind: Attention["kind"], text: string, pulse: number | null, share?: number) =>
+    found.push({ kind, text, capture, pulse, ...(share && { share }) });
   for (const pulse of reading.pulses) {
-    for (const [kind, text] of ratings(pulse, setup)) add(kind, text, pulse.index);
+    for (const [kind, text, share] of ratings(pulse, setup)) add(kind, text, pulse.index, share);
     if ((pulse.ruled?.verdict ?? pulse.spark?.verdict) === "unclear")
       add("unclear", pulse.spark?.reasons[0] ?? "no verdict could be given", pulse.index);
     if (pulse.ring && pulse.ring.quality !== "good")
@@ -28,7 +30,19 @@ export function attentionOf({ capture, setup, reading }: Kept): Attention[] {
   return found;
 }
 
-function ratings(pulse: PulseReading, setup: Setup): [Attention["kind"], string][] {
+const moved = new Set(["breakdown-changed", "breakdown-drifts", "q-changed"]);
+
+/** What changed or drifted along the run. */
+export const trendAttention = (notes: Note[]): Attention[] =>
+  notes.flatMap(({ code, text }) =>
+    moved.has(code) ? [{ kind: "moved" as const, text, capture: null, pulse: null }] : [],
+  );
+
+/** The nearer to its rating, the earlier; everything else keeps its order. */
+export const worstFirst = (attention: Attention[]) =>
+  attention.toSorted((a, b) => (b.share ?? 0) - (a.share ?? 0));
+
+function ratings(pulse: PulseReading, setup: Setup): [Attention["kind"], string, number][] {
   const peak = pulse.peak_V ?? pulse.peakAtLeast_V ?? null;
   const secondary = pulse.spark?.breakdown_V ?? null;
   const stated: [string, number | null, number | null | undefined][] = [
@@ -37,11 +51,12 @@ function ratings(pulse: PulseReading, setup: Setup): [Attention["kind"], string]
     ["the capacitor's rating", peak, setup.capacitorRating_V],
     ["the coil's rating", secondary, setup.coilRating_V],
   ];
-  return stated.flatMap(([part, volts, rating]): [Attention["kind"], string][] => {
+  return stated.flatMap(([part, volts, rating]): ReturnType<typeof ratings> => {
     if (volts === null || !rating || Math.abs(volts) < nearRating * rating) return [];
-    const share = Math.round((Math.abs(volts) / rating) * 100);
-    const kind = Math.abs(volts) > rating ? "over-rating" : "near-rating";
-    return [[kind, `${Math.round(Math.abs(volts))} V is ${share} % of ${part}, ${rating} V`]];
+    const share = Math.abs(volts) / rating;
+    const kind = share > 1 ? "over-rating" : "near-rating";
+    const said = `${formatNumber(Math.abs(volts), "V", 3)} is ${Math.round(share * 100)} % of ${part}, ${formatNumber(rating, "V", 3)}`;
+    return [[kind, said, share]];
   });
 }
 

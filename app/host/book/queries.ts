@@ -2,10 +2,11 @@ import type { DatabaseSyncInstance } from "@photostructure/sqlite";
 import type { CaptureReading } from "../../../analysis/reading-format.ts";
 import type { RunReading } from "../../../analysis/run.ts";
 import { countPulses } from "../../../analysis/spark/counts.ts";
+import type { RunTrends } from "../../../analysis/spark/run-trends.ts";
 import type { Setup } from "../../../analysis/setup/schema.ts";
 import type { Argument, CaptureDetail, CaptureRow, Page, PulseRow, RunDetail, RunRow } from "../../bridge.ts";
 import { CallError } from "../failure.ts";
-import { attentionOf, missingStatements } from "./attention.ts";
+import { attentionOf, missingStatements, trendAttention, worstFirst } from "./attention.ts";
 import { figure, parse, unpack } from "./rows.ts";
 import type { Trail } from "./trail.ts";
 
@@ -93,11 +94,18 @@ export function queries(db: DatabaseSyncInstance, trail: Trail) {
             text: `${path}: ${text}`,
             ...nowhere,
           })),
-          ...kept.flatMap(attentionOf),
+          ...worstFirst(kept.flatMap(attentionOf)),
+          ...trendAttention(reading?.notes ?? []),
           ...missingStatements(setup),
         ],
         canUndo: trail.canUndo(run),
       };
+    },
+
+    /** As judged last; null where an older version judged the run. */
+    trends(run: number): RunTrends | null {
+      const { reading } = runRow(run);
+      return reading === null ? null : (parse<RunReading>(reading).trends ?? null);
     },
 
     pulses(

@@ -1,5 +1,6 @@
 import { version } from "../../../package.json";
 import type { Handlers } from "../call.ts";
+import { courseOf } from "../view/course.ts";
 import { exportRun } from "../handover/index.ts";
 import type { BenchParts } from "./bench-parts.ts";
 
@@ -8,6 +9,7 @@ type FromBook =
   | "runs"
   | "run"
   | "pulses"
+  | "course"
   | "capture"
   | "rule"
   | "exportRun"
@@ -26,6 +28,7 @@ export function bookHandlers({ book, emit, views }: BenchParts): Pick<Handlers, 
     runs: (query) => book.runs(query),
     run: ({ run }) => book.run(run),
     pulses: ({ run, cursor, limit }) => book.pulses(run, { cursor, limit }),
+    course: ({ run }) => courseOf(book.captures(run), book.trends(run)),
     capture: ({ capture }) => book.capture(capture),
     rule({ capture, pulse, verdict, remark }) {
       const ruled = book.rule(capture, pulse, verdict, remark);

@@ -1,9 +1,9 @@
 import { basename, resolve } from "node:path";
-import { parseSetup } from "../../../analysis/setup/parse.ts";
 import type { Setup } from "../../../analysis/setup/schema.ts";
 import type { Handlers } from "../call.ts";
 import type { JobHandle } from "../jobs/jobs.ts";
 import { readAgain, readSources, type Readout } from "../jobs/read-sources.ts";
+import { changedSetup } from "../setups.ts";
 import type { BenchParts } from "./bench-parts.ts";
 
 type Reading = "addFile" | "open" | "openDemo" | "jobs" | "cancel" | "changeSetup" | "undo";
@@ -27,7 +27,7 @@ export function readingHandlers(bench: BenchParts): Pick<Handlers, Reading> {
     jobs: () => jobs.list(),
     cancel: ({ job }) => ({ cancelled: jobs.cancel(job) }),
     changeSetup({ run, change }) {
-      book.stateSetup(run, parseSetup(withChange(book.stated(run), change)));
+      book.stateSetup(run, changedSetup(book.stated(run), change));
       return { job: judgeAgain(run) };
     },
     undo({ run }) {
@@ -36,12 +36,6 @@ export function readingHandlers(bench: BenchParts): Pick<Handlers, Reading> {
       return { job: rejudge ? judgeAgain(run) : null, text };
     },
   };
-}
-
-/** What is stated from now on; a key changed to null is stated no more. */
-function withChange(stated: Setup | null, change: Record<string, unknown>): Record<string, unknown> {
-  const merged = Object.entries({ ...stated, ...change });
-  return Object.fromEntries(merged.filter(([, value]) => value !== null && value !== undefined));
 }
 
 /** A job that reads files and folders into the book, run by run. */

@@ -4,6 +4,7 @@ import type { Handlers } from "../call.ts";
 import { fileHead } from "../file-head.ts";
 import type { Views } from "../handover/index.ts";
 import type { Thread } from "../threads/thread.ts";
+import { changedSetup } from "../setups.ts";
 import type { BenchParts } from "./bench-parts.ts";
 
 /** Windows onto raw samples, answered by a thread that holds them. */
@@ -23,7 +24,16 @@ export function createViews(book: Book, viewer: Thread): Views {
 export const viewHandlers = ({
   book,
   views,
-}: BenchParts): Pick<Handlers, "trace" | "ringPicture" | "fileHead"> => ({
+  viewer,
+}: BenchParts): Pick<Handlers, "trace" | "ringPicture" | "fileHead" | "trySetup"> => ({
   ...views,
+  trySetup({ capture, change, channel, pixels }) {
+    const { path, setup } = book.captureFile(capture);
+    return viewer.ask("trySetup", {
+      file: { path, setup: changedSetup(setup, change) },
+      channel: channel ?? null,
+      pixels,
+    });
+  },
   fileHead: ({ capture, lines }) => fileHead(book.captureFile(capture).path, lines),
 });

@@ -1,6 +1,6 @@
 import type { CaptureReading } from "../../../analysis/reading-format.ts";
 import type { Setup } from "../../../analysis/setup/schema.ts";
-import type { RingPicture, TraceWindow } from "../../bridge.ts";
+import type { RingPicture, TraceWindow, TriedSetup } from "../../bridge.ts";
 import type { Failure } from "../failure.ts";
 import type { RunReading } from "../../../analysis/run.ts";
 import type { Sketch } from "../view/sketch.ts";
@@ -35,6 +35,7 @@ export interface Tasks {
     argument: { file: FileToRead; record: number; reading: CaptureReading; pulse: number; pixels: number };
     answer: RingPicture | null;
   };
+  trySetup: { argument: { file: FileToRead; channel: string | null; pixels: number }; answer: TriedSetup };
 }
 export type TaskName = keyof Tasks;
 

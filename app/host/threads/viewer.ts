@@ -1,6 +1,7 @@
 import { CallError } from "../failure.ts";
 import { createCaptureHolder, type HeldCaptures } from "../view/captures.ts";
 import { ringPicture } from "../view/ring-picture.ts";
+import { trySetup } from "../view/try-setup.ts";
 import { traceWindow } from "../view/trace.ts";
 import type { Tasks } from "./tasks.ts";
 
@@ -17,6 +18,9 @@ export function createViewer() {
     async ringPicture({ file, record, reading, pulse, pixels }: Tasks["ringPicture"]["argument"]) {
       const held = await hold(file);
       return ringPicture(recordOf(held, record), reading, pulse, pixels);
+    },
+    async trySetup({ file, channel, pixels }: Tasks["trySetup"]["argument"]) {
+      return trySetup(await hold(file), file.setup, channel, pixels);
     },
   };
 }
