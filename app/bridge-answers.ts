@@ -54,7 +54,7 @@ export interface Attention {
 }
 
 /** Where a setup value came from. */
-export type SetupOrigin = "stated" | "file setup" | "folder setup" | "guessed";
+export type SetupOrigin = "stated" | "file setup" | "folder setup" | "answered before" | "guessed";
 
 export interface RunDetail extends RunRow {
   setup: Setup;

@@ -2,12 +2,15 @@ import { readdir, stat } from "node:fs/promises";
 import { basename, dirname, join, resolve } from "node:path";
 import type { Setup } from "../../analysis/setup/schema.ts";
 import { CallError, describeFailure, type Failure } from "./failure.ts";
+import type { Remembered } from "./remembered.ts";
 import { isCaptureFile, isFurtherChannel, isSidecar } from "./reading/index.ts";
 import { readSetups, type MergedSetup } from "./setups.ts";
 
 export interface CaptureSource extends MergedSetup {
   /** As it was given, or the given folder with the file's name. */
   path: string;
+  /** Answers given earlier for files of its layout that its setup holds. */
+  remembered?: Remembered[];
 }
 
 /** Captures of one setup in one go: `setup.run`, else the folder. */

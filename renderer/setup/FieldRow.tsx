@@ -17,6 +17,7 @@ const origins: Record<SetupOrigin, string> = {
   stated: "stated here",
   "file setup": "from the file’s setup",
   "folder setup": "from the folder’s setup",
+  "answered before": "as answered before for files of this layout",
   guessed: "guessed",
 };
 

@@ -10,7 +10,11 @@ parentPort.on("message", ({ number, name, argument }) => {
     if (argument.path.includes("endless")) return;
     read.add(argument.path);
     parentPort.postMessage({ number, kind: "progress", fraction: 0.5 });
-    parentPort.postMessage({ number, kind: "answer", answer: { sha256: "", bytes: 1, records: 1 } });
+    parentPort.postMessage({
+      number,
+      kind: "answer",
+      answer: { sha256: "", bytes: 1, records: 1, layout: "", asked: [] },
+    });
     return;
   }
   const missing = argument.files.map(({ path }) => path).filter((path) => !read.has(path));
@@ -18,6 +22,7 @@ parentPort.on("message", ({ number, name, argument }) => {
     path,
     sha256: "",
     bytes: 1,
+    layout: "",
     readings: [],
     sketches: [],
   }));

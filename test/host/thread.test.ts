@@ -43,6 +43,7 @@ function keeping() {
   const kept: string[][] = [];
   const problems: Record<string, unknown> = {};
   const keeper: RunKeeper = {
+    remembered: () => [],
     keep: (files: JudgedSource[]) => kept.push(files.map(({ path }) => path)),
     problem: (file, error) => (problems[file.path] = (error as { code: string }).code),
   };

@@ -4,6 +4,7 @@ import { countsOf } from "../../../analysis/spark/counts.ts";
 import type { Setup } from "../../../analysis/setup/schema.ts";
 import type { Failure } from "../failure.ts";
 import type { RunOfSources } from "../sources.ts";
+import { answersOf } from "./answers.ts";
 import { coilQueries } from "./coils.ts";
 import { keeper, type JudgedRun } from "./keep.ts";
 import { openDatabase } from "./open.ts";
@@ -20,10 +21,17 @@ export async function openBook(path: string): Promise<Book> {
   return bookOn(db, path, readOnly, note);
 }
 
+function once<T>(make: () => T): () => T {
+  let made: T | undefined;
+  return () => (made ??= make());
+}
+
 function bookOn(db: DatabaseSyncInstance, path: string, readOnly: boolean, note: string | null) {
   const trail = trailOf(db);
   const ask = queries(db, trail);
-  const keep = keeper(db, trail);
+  // Made when first needed: a book of an older format that is open for reading only lacks their columns.
+  const keep = once(() => keeper(db, trail));
+  const answers = once(() => answersOf(db));
 
   /** The run's own columns after a judging or a ruling. */
   function recount(run: number): void {
@@ -50,7 +58,7 @@ function bookOn(db: DatabaseSyncInstance, path: string, readOnly: boolean, note:
       null,
     );
     transaction(db, () => {
-      keep(run, judged);
+      keep()(run, judged);
       db.prepare(
         `UPDATE runs SET setup = ?, origins = ?, coil = ?, taken = ?, reading = ?,
            captures = (SELECT count(*) FROM captures WHERE run = runs.id AND position >= 0),
@@ -137,7 +145,11 @@ function bookOn(db: DatabaseSyncInstance, path: string, readOnly: boolean, note:
     },
 
     stated: trail.stated,
-    stateSetup: (run: number, stated: Setup) => transaction(db, () => trail.addSetup(run, stated)),
+    /** `change`: the part that is new; answers to the reader's questions in it serve files of the same layout. */
+    stateSetup: (run: number, stated: Setup, change: Record<string, unknown> = {}) =>
+      transaction(db, () => answers().keep(run, trail.addSetup(run, stated), change)),
+    /** Answers that stand for files of this layout. */
+    remembered: (layout: string) => answers().remembered(layout),
 
     /** The user's verdict beside the program's; a null verdict takes no side and leaves only the remark. */
     rule(capture: number, pulse: number, verdict: Verdict | null, remark: string): Ruling | null {

@@ -17,11 +17,11 @@ export interface JudgedRun {
 export function keeper(db: DatabaseSyncInstance, trail: Trail) {
   const find = db.prepare("SELECT id FROM captures WHERE run = ? AND sha256 = ? AND record = ?");
   const add = db.prepare(
-    `INSERT INTO captures (run, position, path, sha256, bytes, record, records, setup, pulses, added)
-     VALUES (?, ?, ?, ?, ?, ?, ?, ?, ?, ?) RETURNING id`,
+    `INSERT INTO captures (run, position, path, sha256, bytes, record, records, setup, pulses, added, layout)
+     VALUES (?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?) RETURNING id`,
   );
   const place = db.prepare(
-    "UPDATE captures SET position = ?, path = ?, setup = ?, pulses = ?, reading = ? WHERE id = ?",
+    "UPDATE captures SET position = ?, path = ?, setup = ?, pulses = ?, reading = ?, layout = ? WHERE id = ?",
   );
   const latest = db.prepare(
     "SELECT id, version, setup, json FROM readings WHERE capture = ? ORDER BY id DESC LIMIT 1",
@@ -102,9 +102,21 @@ export function keeper(db: DatabaseSyncInstance, trail: Trail) {
         const pulses = reading.pulses.length;
         const known = find.get(run, file.sha256, index) as { id: number } | undefined;
         const added = () =>
-          add.get(run, position, file.path, file.sha256, file.bytes, index, count, setup, pulses, isoNow());
+          add.get(
+            run,
+            position,
+            file.path,
+            file.sha256,
+            file.bytes,
+            index,
+            count,
+            setup,
+            pulses,
+            isoNow(),
+            file.layout,
+          );
         const { id } = known ?? (added() as { id: number });
-        place.run(position++, file.path, setup, pulses, keepReading(id, setup, reading), id);
+        place.run(position++, file.path, setup, pulses, keepReading(id, setup, reading), file.layout, id);
         forget.run(id);
         for (const [p, pulse] of reading.pulses.entries())
           keepPulse(run, id, ++number, pulse, file.sketches[r]?.[p] ?? null);

@@ -50,7 +50,16 @@ function prepare(db: DatabaseSyncInstance, isNew: boolean): OpenedBook {
 
 /** A damaged page is better met now than in the middle of a run; a full check would take minutes. */
 function touchTables(db: DatabaseSyncInstance) {
-  for (const table of ["runs", "captures", "readings", "pulses", "trail", "problems", "preferences"])
+  for (const table of [
+    "runs",
+    "captures",
+    "readings",
+    "pulses",
+    "trail",
+    "problems",
+    "preferences",
+    "answers",
+  ])
     db.prepare(`SELECT * FROM ${table} LIMIT 1`).get();
 }
 

@@ -107,4 +107,15 @@ export const migrations: readonly string[] = [
 
   CREATE TABLE preferences (key TEXT PRIMARY KEY, value TEXT NOT NULL) STRICT, WITHOUT ROWID;
   `,
+  `
+  -- Files of one layout are built alike: what was answered of one holds for the next.
+  ALTER TABLE captures ADD COLUMN layout TEXT;
+  CREATE TABLE answers (
+    trail INTEGER NOT NULL REFERENCES trail (id),
+    layout TEXT NOT NULL,
+    answers TEXT NOT NULL,
+    PRIMARY KEY (trail, layout)
+  ) STRICT, WITHOUT ROWID;
+  CREATE INDEX answers_by_layout ON answers (layout, trail);
+  `,
 ];

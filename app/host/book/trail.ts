@@ -5,14 +5,15 @@ import { CallError } from "../failure.ts";
 import { parse } from "./rows.ts";
 
 /** A row of the append-only trail that no later row takes back. */
-const standing = "NOT EXISTS (SELECT 1 FROM trail AS later WHERE later.undoes = trail.id)";
+export const standing = "NOT EXISTS (SELECT 1 FROM trail AS later WHERE later.undoes = trail.id)";
 
 const now = () => new Date().toISOString();
 
 export interface Trail {
   /** What the user stated for a run, as it stands; null when nothing. */
   stated(run: number): Setup | null;
-  addSetup(run: number, stated: Setup): void;
+  /** Answers the row's id. */
+  addSetup(run: number, stated: Setup): number;
   ruling(capture: number, pulse: number): Ruling | null;
   addRuling(
     run: number,
@@ -54,7 +55,8 @@ export function trailOf(db: DatabaseSyncInstance): Trail {
       return row ? parse<Setup>(row.stated) : null;
     },
     addSetup(run, stated) {
-      add.run(run, "setup", now(), null, null, null, null, JSON.stringify(stated), null);
+      const row = add.run(run, "setup", now(), null, null, null, null, JSON.stringify(stated), null);
+      return Number(row.lastInsertRowid);
     },
     ruling,
     addRuling(run, capture, pulse, verdict, remark) {

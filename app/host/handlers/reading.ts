@@ -27,7 +27,7 @@ export function readingHandlers(bench: BenchParts): Pick<Handlers, Reading> {
     jobs: () => jobs.list(),
     cancel: ({ job }) => ({ cancelled: jobs.cancel(job) }),
     changeSetup({ run, change }) {
-      book.stateSetup(run, changedSetup(book.stated(run), change));
+      book.stateSetup(run, changedSetup(book.stated(run), change), change);
       return { job: judgeAgain(run) };
     },
     undo({ run }) {

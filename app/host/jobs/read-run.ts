@@ -1,5 +1,6 @@
 import type { RunReading } from "../../../analysis/run.ts";
 import { CallError } from "../failure.ts";
+import { rememberedNote, withRemembered, type Remembered } from "../remembered.ts";
 import type { CaptureSource } from "../sources.ts";
 import type { JudgedFile, Tasks } from "../threads/tasks.ts";
 
@@ -17,6 +18,8 @@ export type JudgedSource = JudgedFile & CaptureSource;
 /** What is done with a run each time it has been judged. */
 export interface RunKeeper {
   keep(files: JudgedSource[], reading: RunReading): void;
+  /** What was answered before for files of this layout. */
+  remembered(layout: string): Remembered[];
   /** A file that could not be read. */
   problem(file: CaptureSource, error: unknown): void;
 }
@@ -49,7 +52,7 @@ export async function readRun(
     const read = await readOne(reader, keeper, progress, file, (fraction) => progress.progress(i + fraction));
     progress.progress(i + 1);
     if (!read) continue;
-    members.push(file);
+    members.push(read);
     unkept++;
     if (Date.now() - keptLast < keptApart_ms) continue;
     await judge(reader, keeper, progress, members);
@@ -58,19 +61,25 @@ export async function readRun(
   if (unkept > 0 && !progress.cancelled) await judge(reader, keeper, progress, members);
 }
 
+/** The file as it was read, with what earlier answers added to its setup; null where it could not be read. */
 async function readOne(
   reader: Reader,
   keeper: RunKeeper,
   progress: RunProgress,
   file: CaptureSource,
   onProgress?: (fraction: number) => void,
-): Promise<boolean> {
+): Promise<CaptureSource | null> {
   try {
-    await reader.ask("read", { path: file.path, setup: file.setup }, onProgress);
-    return true;
+    // An answer may bring up the next question: every key is answered once at most.
+    for (let now = file; ;) {
+      const { layout, asked } = await reader.ask("read", { path: now.path, setup: now.setup }, onProgress);
+      const answered = withRemembered(now, asked, keeper.remembered(layout));
+      if (!answered || progress.cancelled) return now;
+      now = answered;
+    }
   } catch (error) {
     if (!progress.cancelled) keeper.problem(file, error);
-    return false;
+    return null;
   }
 }
 
@@ -82,7 +91,7 @@ async function judge(reader: Reader, keeper: RunKeeper, progress: RunProgress, m
       const answer = await reader.ask("judge", { files, setup: members[0].setup });
       if (!("missing" in answer)) {
         keeper.keep(
-          answer.files.map((file, i) => ({ ...members[i], ...file })),
+          answer.files.map((file, i) => withNote({ ...members[i], ...file })),
           answer.run,
         );
         return;
@@ -92,6 +101,13 @@ async function judge(reader: Reader, keeper: RunKeeper, progress: RunProgress, m
       if (!(error instanceof CallError && error.code === "worker-died") || ++deaths > 2) throw error;
     }
   }
+}
+
+function withNote(file: JudgedSource): JudgedSource {
+  const { remembered, readings } = file;
+  if (!remembered) return file;
+  const note = rememberedNote(remembered);
+  return { ...file, readings: readings.map((reading) => ({ ...reading, notes: [note, ...reading.notes] })) };
 }
 
 async function readMissing(
@@ -104,6 +120,7 @@ async function readMissing(
   for (const path of missing) {
     if (progress.cancelled) return;
     const at = members.findIndex((member) => member.path === path);
-    if (!(await readOne(reader, keeper, progress, members[at]))) members.splice(at, 1);
+    const read = await readOne(reader, keeper, progress, members[at]);
+    members.splice(at, 1, ...(read ? [read] : []));
   }
 }

@@ -81,6 +81,7 @@ const countFrom = (readout: Readout, start: number): RunProgress => ({
 
 const keeperWithoutBook = (readout: Readout) => ({
   keep: (files: JudgedSource[], reading: RunReading) => readout.kept(null, files, reading),
+  remembered: () => [],
   problem: (file: CaptureSource, error: unknown) => readout.problem(file.path, error),
 });
 
@@ -93,6 +94,7 @@ const keeperInto = (book: Book, run: number, readout: Readout, fresh: CaptureSou
       reading,
     );
   },
+  remembered: book.remembered,
   problem(file: CaptureSource, error: unknown) {
     book.keepProblem(run, file.path, describeFailure(error));
     readout.problem(file.path, error);

@@ -8,6 +8,7 @@ import type { FileToRead, JudgedFile, Tasks } from "./tasks.ts";
 interface Kept {
   sha256: string;
   bytes: number;
+  layout: string;
   evidence: CaptureEvidence[];
   /** Drawn when the file was first judged, while its samples were at hand. */
   sketches: JudgedFile["sketches"] | null;
@@ -19,10 +20,14 @@ export function createReader() {
 
   return {
     async read(file: FileToRead, onProgress: (fraction: number) => void) {
-      const { sha256, bytes, captures } = await readFile(file.path, file.setup, { onProgress });
+      const { sha256, bytes, layout, captures } = await readFile(file.path, file.setup, { onProgress });
       const evidence = captures.map((capture) => readCapture(capture, file.setup));
-      kept.set(keyOf(file), { sha256, bytes, evidence, sketches: null });
-      return { sha256, bytes, records: captures.length };
+      kept.set(keyOf(file), { sha256, bytes, layout, evidence, sketches: null });
+      const notes = captures.flatMap((capture) => capture.notes);
+      const asked = [
+        ...new Set(notes.flatMap(({ question, answers }) => (question && answers ? [answers] : []))),
+      ];
+      return { sha256, bytes, records: captures.length, layout, asked };
     },
 
     judge({ files, setup }: Tasks["judge"]["argument"]): Tasks["judge"]["answer"] {
@@ -33,10 +38,10 @@ export function createReader() {
       const { readings, run } = judgeRun(all, setup);
       let end = 0;
       const judged = held.map((file, i): JudgedFile => {
-        const { sha256, bytes, evidence } = file;
+        const { sha256, bytes, layout, evidence } = file;
         const of = readings.slice(end, (end += evidence.length));
         file.sketches ??= sketchPulses(evidence, readings);
-        return { path: files[i].path, sha256, bytes, readings: of, sketches: file.sketches };
+        return { path: files[i].path, sha256, bytes, layout, readings: of, sketches: file.sketches };
       });
       forgetSamples(all);
       return { files: judged, run };

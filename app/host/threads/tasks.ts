@@ -14,7 +14,11 @@ export interface FileToRead {
 /** What a thread is asked and answers; plain data only, no samples of a capture among it. */
 export interface Tasks {
   /** Reads a file and keeps its evidence in the thread. */
-  read: { argument: FileToRead; answer: { sha256: string; bytes: number; records: number } };
+  read: {
+    argument: FileToRead;
+    /** `asked`: setup keys that answer what the file left open. */
+    answer: { sha256: string; bytes: number; records: number; layout: string; asked: string[] };
+  };
   /** Judges files of one run together; those whose evidence the thread no longer has are named instead. */
   judge: {
     argument: { files: FileToRead[]; setup: Setup };
@@ -43,6 +47,7 @@ export interface JudgedFile {
   path: string;
   sha256: string;
   bytes: number;
+  layout: string;
   /** One a record, in the file's order. */
   readings: CaptureReading[];
   /** Per record, per pulse. */
