@@ -5,6 +5,7 @@ import type { Command } from "./commands/usage.ts";
 const usage = `ringbook – reads oscilloscope captures of switched coils
 
   ringbook read PATH… [--setup FILE] [--json] [--book FILE]   read captures: a line each, one per pulse
+                [--keep-files]                                … the files copied into the book as well
   ringbook coil PATH… | --coil NAME [--json]                  added-capacitor line, ramp, drive design;
                 [--current A | --energy J]                    … with the dwell table for that
   ringbook log [--run NAME] [--coil NAME] [--json]            what the bench book holds;

@@ -1,6 +1,7 @@
 import { writeFile } from "node:fs/promises";
 import type { Argument } from "../bridge.ts";
 import { exportRun } from "../host/handover/index.ts";
+import { placeOfCapture } from "../host/originals.ts";
 import { createCaptureHolder } from "../host/view/captures.ts";
 import { ringPicture } from "../host/view/ring-picture.ts";
 import { traceWindow } from "../host/view/trace.ts";
@@ -30,7 +31,8 @@ export const handOver = (
 function viewsOf(book: Book) {
   const hold = createCaptureHolder();
   const held = async (capture: number) => {
-    const { path, record, setup, reading } = book.captureFile(capture);
+    const { record, setup, reading } = book.captureFile(capture);
+    const path = await placeOfCapture(book, capture);
     const { captures, pyramid } = await hold({ path, setup });
     return { capture: captures[record], pyramid: (channel: number) => pyramid(record, channel), reading };
   };

@@ -5,6 +5,7 @@ import { openBook } from "../host/book/index.ts";
 import { describeFailure } from "../host/failure.ts";
 import type { JudgedSource } from "../host/jobs/read-run.ts";
 import { readSources, type Readout } from "../host/jobs/read-sources.ts";
+import { keepFiles } from "../host/originals.ts";
 import { readSetupFile } from "../host/setups.ts";
 import { createReader } from "../host/threads/reader.ts";
 import { UsageError } from "./usage.ts";
@@ -15,13 +16,18 @@ export interface ReadAll {
   problems: { file: string; text: string }[];
 }
 
-/** Reads files and folders run by run, into the book of that path if one is named. */
+/**
+ * Reads files and folders run by run, into the book of that path if one is named; with `copies` that book
+ * keeps the files themselves from now on.
+ */
 export async function readAll(
   paths: string[],
   setup: Setup | null,
   bookPath: string | null,
+  copies = false,
 ): Promise<ReadAll> {
   const book = bookPath === null ? null : await openBook(bookPath);
+  if (copies) book?.setPreference(keepFiles, "yes");
   const { readout, result } = collect();
   try {
     await readSources(inProcess(), book, readout, paths, null, setup);

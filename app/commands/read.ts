@@ -4,19 +4,23 @@ import { captureText } from "./capture-text.ts";
 import { readAll, statedSetup } from "./read-all.ts";
 import { complain, readArguments, say, UsageError, withUsage } from "./usage.ts";
 
-/** ringbook read PATH… [--setup FILE] [--json] [--book FILE] */
+/** ringbook read PATH… [--setup FILE] [--json] [--book FILE [--keep-files]] */
 export const run = (args: string[]) =>
   withUsage(async () => {
     const { values, positionals } = readArguments(args, {
       setup: { type: "string" },
       json: { type: "boolean" },
       book: { type: "string" },
+      "keep-files": { type: "boolean" },
     });
     if (positionals.length === 0) throw new UsageError("read wants the path of a capture or of a folder");
+    if (values["keep-files"] && !values.book)
+      throw new UsageError("--keep-files copies files into a book: name it with --book");
     const { files, problems } = await readAll(
       positionals,
       await statedSetup(values.setup),
       values.book ?? null,
+      values["keep-files"] ?? false,
     );
     for (const { file, text } of problems) complain(`${file}: ${text}`);
     const print = values.json ? printLines : printText;

@@ -9,6 +9,8 @@ import { readSetups, type MergedSetup } from "./setups.ts";
 export interface CaptureSource extends MergedSetup {
   /** As it was given, or the given folder with the file's name. */
   path: string;
+  /** Where it is read from, its own place gone. */
+  copy?: string;
   /** Answers given earlier for files of its layout that its setup holds. */
   remembered?: Remembered[];
 }

@@ -10,6 +10,7 @@ import { messageOf, useAnswer, useBench, useDesk } from "../state/bench.tsx";
 import { useKeys } from "../state/keys.ts";
 import { go, hrefOf } from "../state/route.ts";
 import { Greeting } from "./Greeting.tsx";
+import { KeepFiles } from "./KeepFiles.tsx";
 import { WatchFolder } from "./WatchFolder.tsx";
 
 const pageSize = 50;
@@ -88,6 +89,7 @@ export function Contents() {
       )}
       <Coils />
       <WatchFolder />
+      <KeepFiles />
     </article>
   );
 }

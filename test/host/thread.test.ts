@@ -44,6 +44,7 @@ function keeping() {
   const problems: Record<string, unknown> = {};
   const keeper: RunKeeper = {
     remembered: () => [],
+    copy: async () => {},
     keep: (files: JudgedSource[]) => kept.push(files.map(({ path }) => path)),
     problem: (file, error) => (problems[file.path] = (error as { code: string }).code),
   };

@@ -2,6 +2,7 @@ import { backup, type DatabaseSyncInstance } from "@photostructure/sqlite";
 import type { Ruling, Verdict } from "../../../analysis/reading-format.ts";
 import { countsOf } from "../../../analysis/spark/counts.ts";
 import type { Setup } from "../../../analysis/setup/schema.ts";
+import type { SetupOrigin } from "../../bridge.ts";
 import type { Failure } from "../failure.ts";
 import type { RunOfSources } from "../sources.ts";
 import { answersOf } from "./answers.ts";
@@ -9,9 +10,17 @@ import { coilQueries } from "./coils.ts";
 import { keeper, type JudgedRun } from "./keep.ts";
 import { openDatabase } from "./open.ts";
 import { queries } from "./queries.ts";
+import { originalsOf } from "./originals.ts";
 import { parse, uOf, valueOf } from "./rows.ts";
 import { trailOf } from "./trail.ts";
 import { transaction } from "./transaction.ts";
+
+/** A file of a run, as it was read last. */
+interface KeptFile {
+  path: string;
+  sha256: string;
+  setup: Setup;
+}
 
 export type Book = ReturnType<typeof bookOn>;
 
@@ -32,6 +41,7 @@ function bookOn(db: DatabaseSyncInstance, path: string, readOnly: boolean, note:
   // Made when first needed: a book of an older format that is open for reading only lacks their columns.
   const keep = once(() => keeper(db, trail));
   const answers = once(() => answersOf(db));
+  const originals = once(() => originalsOf(db));
 
   /** The run's own columns after a judging or a ruling. */
   function recount(run: number): void {
@@ -122,14 +132,25 @@ function bookOn(db: DatabaseSyncInstance, path: string, readOnly: boolean, note:
       );
     },
 
-    /** Files of the run, each once, in its order. */
-    runFiles(run: number): { path: string }[] {
-      return db
+    /** Files of the run, each once, in its order, with what their own setup files said when they were read. */
+    runFiles(run: number): KeptFile[] {
+      const { origins } = db.prepare("SELECT origins FROM runs WHERE id = ?").get(run) as { origins: string };
+      const ofFiles = Object.entries(parse<Record<string, SetupOrigin>>(origins)).filter(
+        ([, origin]) => origin !== "stated",
+      );
+      const rows = db
         .prepare(
-          "SELECT path FROM captures WHERE run = ? AND position >= 0 GROUP BY path ORDER BY min(position)",
+          `SELECT path, sha256, setup FROM captures WHERE run = ? AND position >= 0
+           GROUP BY path ORDER BY min(position)`,
         )
-        .all(run) as { path: string }[];
+        .all(run) as { path: string; sha256: string; setup: string }[];
+      return rows.map(({ path, sha256, setup }) => {
+        const kept = parse<Record<string, unknown>>(setup);
+        return { path, sha256, setup: Object.fromEntries(ofFiles.map(([key]) => [key, kept[key]])) };
+      });
     },
+    /** Copies of the files themselves, where the user wants them. */
+    originals,
 
     /** Whether the file was kept as it is: same size, and not changed since. */
     knows(file: string, bytes: number, changed_ms: number): boolean {
@@ -140,8 +161,8 @@ function bookOn(db: DatabaseSyncInstance, path: string, readOnly: boolean, note:
     },
 
     captureFile(capture: number) {
-      const { run, file, setup, reading } = ask.capture(capture);
-      return { run, path: file, record: reading.record.index, setup, reading };
+      const { run, file, sha256, setup, reading } = ask.capture(capture);
+      return { run, path: file, sha256, record: reading.record.index, setup, reading };
     },
 
     stated: trail.stated,

@@ -59,6 +59,7 @@ function touchTables(db: DatabaseSyncInstance) {
     "problems",
     "preferences",
     "answers",
+    "originals",
   ])
     db.prepare(`SELECT * FROM ${table} LIMIT 1`).get();
 }

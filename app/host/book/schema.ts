@@ -117,5 +117,8 @@ export const migrations: readonly string[] = [
     PRIMARY KEY (trail, layout)
   ) STRICT, WITHOUT ROWID;
   CREATE INDEX answers_by_layout ON answers (layout, trail);
+
+  -- Files copied in, gzip-compressed, where the user wants that.
+  CREATE TABLE originals (sha256 TEXT PRIMARY KEY, bytes INTEGER NOT NULL, gz BLOB NOT NULL) STRICT;
   `,
 ];

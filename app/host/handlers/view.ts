@@ -3,6 +3,7 @@ import type { Book } from "../book/index.ts";
 import type { Handlers } from "../call.ts";
 import { fileHead } from "../file-head.ts";
 import type { Views } from "../handover/index.ts";
+import { placeOfCapture } from "../originals.ts";
 import type { Thread } from "../threads/thread.ts";
 import { changedSetup } from "../setups.ts";
 import type { BenchParts } from "./bench-parts.ts";
@@ -11,11 +12,13 @@ import type { BenchParts } from "./bench-parts.ts";
 export function createViews(book: Book, viewer: Thread): Views {
   return {
     async trace({ capture, ...request }: Argument<"trace">) {
-      const { path, record, setup } = book.captureFile(capture);
+      const { record, setup } = book.captureFile(capture);
+      const path = await placeOfCapture(book, capture);
       return viewer.ask("trace", { file: { path, setup }, record, ...request });
     },
     async ringPicture({ capture, ...request }: Argument<"ringPicture">) {
-      const { path, record, setup, reading } = book.captureFile(capture);
+      const { record, setup, reading } = book.captureFile(capture);
+      const path = await placeOfCapture(book, capture);
       return viewer.ask("ringPicture", { file: { path, setup }, record, reading, ...request });
     },
   };
@@ -27,13 +30,14 @@ export const viewHandlers = ({
   viewer,
 }: BenchParts): Pick<Handlers, "trace" | "ringPicture" | "fileHead" | "trySetup"> => ({
   ...views,
-  trySetup({ capture, change, channel, pixels }) {
-    const { path, setup } = book.captureFile(capture);
+  async trySetup({ capture, change, channel, pixels }) {
+    const { setup } = book.captureFile(capture);
+    const path = await placeOfCapture(book, capture);
     return viewer.ask("trySetup", {
       file: { path, setup: changedSetup(setup, change) },
       channel: channel ?? null,
       pixels,
     });
   },
-  fileHead: ({ capture, lines }) => fileHead(book.captureFile(capture).path, lines),
+  fileHead: async ({ capture, lines }) => fileHead(await placeOfCapture(book, capture), lines),
 });

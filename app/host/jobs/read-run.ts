@@ -20,6 +20,8 @@ export interface RunKeeper {
   keep(files: JudgedSource[], reading: RunReading): void;
   /** What was answered before for files of this layout. */
   remembered(layout: string): Remembered[];
+  /** A file has been read: the book may want a copy of it. */
+  copy(file: CaptureSource, sha256: string): Promise<void>;
   /** A file that could not be read. */
   problem(file: CaptureSource, error: unknown): void;
 }
@@ -72,9 +74,13 @@ async function readOne(
   try {
     // An answer may bring up the next question: every key is answered once at most.
     for (let now = file; ;) {
-      const { layout, asked } = await reader.ask("read", { path: now.path, setup: now.setup }, onProgress);
+      const { path, setup, copy } = now;
+      const { layout, asked, sha256 } = await reader.ask("read", { path, setup, copy }, onProgress);
       const answered = withRemembered(now, asked, keeper.remembered(layout));
-      if (!answered || progress.cancelled) return now;
+      if (!answered || progress.cancelled) {
+        await keeper.copy(now, sha256);
+        return now;
+      }
       now = answered;
     }
   } catch (error) {

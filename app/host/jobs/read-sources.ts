@@ -4,6 +4,7 @@ import { mergeSetups } from "../../../analysis/setup/merge.ts";
 import type { Setup } from "../../../analysis/setup/schema.ts";
 import type { Book } from "../book/index.ts";
 import { describeFailure } from "../failure.ts";
+import { keepCopy, placeOf } from "../originals.ts";
 import { readSetups } from "../setups.ts";
 import { findSources, groupIntoRuns, type CaptureSource } from "../sources.ts";
 import { readRun, type JudgedSource, type Reader, type RunProgress } from "./read-run.ts";
@@ -47,16 +48,29 @@ export async function readSources(
     const id = book.ensureRun(run);
     if (setup) book.stateSetup(id, mergeSetups([setup, book.stated(id) ?? {}]));
     const fresh = await withStated(run.files, book.stated(id), readout);
-    const known = await withStated(book.runFiles(id), book.stated(id), readout);
+    const known = await keptFiles(book, id, readout);
     await readRun(reader, keeperInto(book, id, readout, fresh), progress, known, fresh);
   }
 }
 
 /** A run of the book again from its files, with what is stated now. */
 export async function readAgain(reader: Reader, book: Book, readout: Readout, run: number): Promise<void> {
-  const files = await withStated(book.runFiles(run), book.stated(run), readout);
+  const files = await keptFiles(book, run, readout);
   readout.begin(files);
   await readRun(reader, keeperInto(book, run, readout, files), readout, [], files);
+}
+
+/** The run's files where they lie, else from their copies in the book, with the setup they had there. */
+async function keptFiles(book: Book, run: number, readout: Readout): Promise<CaptureSource[]> {
+  const kept = book.runFiles(run);
+  const files = await withStated(kept, book.stated(run), readout);
+  return Promise.all(
+    files.map(async (file) => {
+      const { sha256, setup } = kept.find(({ path }) => resolve(path) === file.path)!;
+      const copy = await placeOf(book, file.path, sha256);
+      return copy === file.path ? file : { ...file, copy, setup: mergeSetups([file.setup, setup]) };
+    }),
+  );
 }
 
 async function withStated(files: { path: string }[], stated: Setup | null, readout: Readout) {
@@ -82,6 +96,7 @@ const countFrom = (readout: Readout, start: number): RunProgress => ({
 const keeperWithoutBook = (readout: Readout) => ({
   keep: (files: JudgedSource[], reading: RunReading) => readout.kept(null, files, reading),
   remembered: () => [],
+  copy: async () => {},
   problem: (file: CaptureSource, error: unknown) => readout.problem(file.path, error),
 });
 
@@ -95,6 +110,7 @@ const keeperInto = (book: Book, run: number, readout: Readout, fresh: CaptureSou
     );
   },
   remembered: book.remembered,
+  copy: ({ path }: CaptureSource, sha256: string) => keepCopy(book, path, sha256),
   problem(file: CaptureSource, error: unknown) {
     book.keepProblem(run, file.path, describeFailure(error));
     readout.problem(file.path, error);

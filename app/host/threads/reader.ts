@@ -20,7 +20,9 @@ export function createReader() {
 
   return {
     async read(file: FileToRead, onProgress: (fraction: number) => void) {
-      const { sha256, bytes, layout, captures } = await readFile(file.path, file.setup, { onProgress });
+      const { sha256, bytes, layout, captures } = await readFile(file.copy ?? file.path, file.setup, {
+        onProgress,
+      });
       const evidence = captures.map((capture) => readCapture(capture, file.setup));
       kept.set(keyOf(file), { sha256, bytes, layout, evidence, sketches: null });
       const notes = captures.flatMap((capture) => capture.notes);
@@ -58,4 +60,4 @@ function forgetSamples(evidence: CaptureEvidence[]): void {
     capture.channels = capture.channels.map((channel) => ({ ...channel, samples: new Float64Array(0) }));
 }
 
-const keyOf = (file: FileToRead) => JSON.stringify([file.path, file.setup]);
+const keyOf = ({ path, setup }: FileToRead) => JSON.stringify([path, setup]);

@@ -9,6 +9,8 @@ import type { Sketch } from "../view/sketch.ts";
 export interface FileToRead {
   path: string;
   setup: Setup;
+  /** Where it is read from, its own place gone. */
+  copy?: string;
 }
 
 /** What a thread is asked and answers; plain data only, no samples of a capture among it. */

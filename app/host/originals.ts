@@ -1,0 +1,60 @@
+/** A capture file's copy in the book: made where the user wants it, read where the file itself is gone. */
+import { createHash } from "node:crypto";
+import { existsSync, mkdirSync, mkdtempSync, rmSync } from "node:fs";
+import { readFile, stat, writeFile } from "node:fs/promises";
+import { tmpdir } from "node:os";
+import { basename, join } from "node:path";
+import { promisify } from "node:util";
+import { gunzip, gzip } from "node:zlib";
+import type { Book } from "./book/index.ts";
+
+/** A preference of the book: "yes" copies every file that is read into it. */
+export const keepFiles = "keepFiles";
+
+/** SQLite holds no blobs much larger, and a book is to be carried about. */
+const mostKept_bytes = 500e6;
+
+const squeeze = promisify(gzip);
+const unsqueeze = promisify(gunzip);
+const hashOf = (bytes: Uint8Array) => createHash("sha256").update(bytes).digest("hex");
+
+/** Copies the file in, if the book is to hold files; not when it has changed since it was read. */
+export async function keepCopy(book: Book, path: string, sha256: string): Promise<void> {
+  if (book.preferences()[keepFiles] !== "yes" || book.originals().has(sha256)) return;
+  if (!existsSync(path) || (await stat(path)).size > mostKept_bytes) return;
+  const bytes = await readFile(path);
+  if (hashOf(bytes) === sha256) book.originals().add(sha256, bytes.length, await squeeze(bytes));
+}
+
+const unpacked = new Map<string, string>();
+
+/** Where the file can be read: its own place, else its copy, unpacked until the program ends. */
+export async function placeOf(book: Book, path: string, sha256: string): Promise<string> {
+  if (existsSync(path)) return path;
+  const before = unpacked.get(sha256);
+  if (before) return before;
+  const kept = book.originals().get(sha256);
+  if (!kept) return path;
+  const bytes = await unsqueeze(kept);
+  if (hashOf(bytes) !== sha256) return path;
+  const folder = join(copiesFolder(), sha256);
+  mkdirSync(folder, { recursive: true });
+  const copy = join(folder, basename(path));
+  await writeFile(copy, bytes);
+  unpacked.set(sha256, copy);
+  return copy;
+}
+
+export function placeOfCapture(book: Book, capture: number): Promise<string> {
+  const { path, sha256 } = book.captureFile(capture);
+  return placeOf(book, path, sha256);
+}
+
+let copies: string | null = null;
+
+function copiesFolder(): string {
+  if (copies) return copies;
+  const folder = mkdtempSync(join(tmpdir(), "ringbook-copies-"));
+  process.once("exit", () => rmSync(folder, { recursive: true, force: true }));
+  return (copies = folder);
+}
