@@ -4,7 +4,11 @@ import { activeLayers, keyText } from "../state/keys.ts";
 
 export function KeyOverview({ onClose }: { onClose(): void }) {
   const dialog = useRef<HTMLDialogElement>(null);
-  useEffect(() => dialog.current?.showModal(), []);
+  useEffect(() => {
+    dialog.current?.showModal();
+    // The way out has the focus and stands last; what is asked for stands first.
+    dialog.current?.scrollTo(0, 0);
+  }, []);
   const groups = new Map<string, Map<string, string>>();
   for (const { where, actions } of activeLayers()) {
     if (actions.length === 0) continue;

@@ -1,5 +1,5 @@
 /** One pulse: the run's line above, the trace with its notes, figures, verdict. */
-import { useCallback, useMemo, useState } from "react";
+import { useCallback, useEffect, useMemo, useState } from "react";
 import type { PulseRow } from "../../app/bridge.ts";
 import type { Verdict } from "../../analysis/reading-format.ts";
 import { useWidth } from "../draw/useWidth.ts";
@@ -8,6 +8,7 @@ import { usePulses } from "../run/usePulses.ts";
 import { SetupCard } from "../setup/SetupCard.tsx";
 import { useAnswer, useDesk } from "../state/bench.tsx";
 import { useKeys } from "../state/keys.ts";
+import { rememberPulse } from "../state/last-pulse.ts";
 import { go, hrefOf } from "../state/route.ts";
 import { fileName } from "../format/words.ts";
 import { SheetHead } from "../shell/SheetHead.tsx";
@@ -39,6 +40,8 @@ export function PulseSheet({ run, capture, pulse: index }: Props) {
   const pulses = usePulses(run);
   const [box, width] = useWidth<HTMLDivElement>();
   const [moves, setMoves] = useState<{ key: string; span: Span } | null>(null);
+
+  useEffect(() => rememberPulse({ run, capture, pulse: index }), [run, capture, index]);
 
   const reading = asked.answer?.reading ?? null;
   const pulse = reading?.pulses[index] ?? null;

@@ -14,6 +14,7 @@ import { PictureButtons } from "../shell/PictureButtons.tsx";
 import { SetupCard } from "../setup/SetupCard.tsx";
 import { useAnswer, useDesk } from "../state/bench.tsx";
 import { useKeys } from "../state/keys.ts";
+import { lastPulseOf } from "../state/last-pulse.ts";
 import { go, hrefOf } from "../state/route.ts";
 import { Attention } from "./Attention.tsx";
 import { Captures } from "./Captures.tsx";
@@ -29,15 +30,17 @@ export function RunSheet({ run }: { run: number }) {
   const asked = useAnswer("run", { run }, desk.runs[run] ?? 0);
   const course = useAnswer("course", { run }, desk.runs[run] ?? 0);
   const pulses = usePulses(run);
-  const [marked, setMarked] = useState(-1);
+  const [last] = useState(() => lastPulseOf(run));
+  const [mark, setMarked] = useState<number | null>(null);
   const say = useSay();
   const { rows } = pulses;
+  const marked = mark ?? rows.findIndex((row) => row.capture === last?.capture && row.pulse === last.pulse);
 
   const open = useCallback(
     (row: PulseRow) => go({ view: "pulse", run, capture: row.capture, pulse: row.pulse }),
     [run],
   );
-  const step = (by: number) => setMarked((old) => Math.min(Math.max(old + by, 0), rows.length - 1));
+  const step = (by: number) => setMarked(Math.min(Math.max(marked + by, 0), rows.length - 1));
   const toNext = (wanted: Wanted, none: string) => {
     const next = nextPulse(rows, marked, wanted);
     if (next === null) say(none);

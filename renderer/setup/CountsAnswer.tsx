@@ -3,16 +3,16 @@ import { useMemo, useState } from "react";
 import type { SetupChannel } from "../../analysis/setup/schema.ts";
 import { parseEntry } from "../format/entry.ts";
 import { useSettled } from "../state/useSettled.ts";
-import { Outcome } from "./Outcome.tsx";
+import { Outcome, type Tried } from "./Outcome.tsx";
 
 interface Props {
-  capture: number;
+  tried: Tried;
   channel: string;
   changeOf(part: Partial<SetupChannel>): Record<string, unknown>;
   onAnswer(part: Partial<SetupChannel>): void;
 }
 
-export function CountsAnswer({ capture, channel, changeOf, onAnswer }: Props) {
+export function CountsAnswer({ tried, channel, changeOf, onAnswer }: Props) {
   const [draft, setDraft] = useState({ scale: "", offset: "", unit: "V" });
   const part = useMemo(() => partOf(draft), [draft]);
   const settled = useSettled(part);
@@ -46,7 +46,7 @@ export function CountsAnswer({ capture, channel, changeOf, onAnswer }: Props) {
       <button type="submit" disabled={part === null}>
         answer
       </button>
-      <Outcome capture={capture} channel={channel} change={settled && changeOf(settled)} />
+      <Outcome {...{ tried, channel }} change={settled && changeOf(settled)} />
     </form>
   );
 }

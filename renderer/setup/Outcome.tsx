@@ -10,26 +10,32 @@ import { useAnswer, useDesk } from "../state/bench.tsx";
 const width = 300;
 const height = 54;
 
-interface Props {
+/** Whose file is tried: a capture of a run. */
+export interface Tried {
+  run: number;
   capture: number;
+}
+
+interface Props {
+  tried: Tried;
   change: Record<string, unknown> | null;
   /** The column whose trace is shown; else the one that rings. */
   channel?: string;
 }
 
-export function Outcome({ capture, change, channel }: Props) {
-  const { book } = useDesk();
-  const tried = useAnswer(
+export function Outcome({ tried: { run, capture }, change, channel }: Props) {
+  const { runs } = useDesk();
+  const asked = useAnswer(
     "trySetup",
     change && { capture, change, channel: channel ?? null, pixels: width },
-    book,
+    runs[run] ?? 0,
   );
-  if (tried.error) return <p className="outcome quiet">So it can’t be read: {tried.error}</p>;
-  if (!tried.answer) return <p className="outcome quiet">{change ? "Reading it so …" : ""}</p>;
+  if (asked.error) return <p className="outcome quiet">So it can’t be read: {asked.error}</p>;
+  if (!asked.answer) return <p className="outcome quiet">{change ? "Reading it so …" : ""}</p>;
   return (
     <div className="outcome">
-      <Sketch trace={tried.answer.trace} />
-      <p className="tabular">{outcomeSentence(tried.answer)}</p>
+      <Sketch trace={asked.answer.trace} />
+      <p className="tabular">{outcomeSentence(asked.answer)}</p>
     </div>
   );
 }
@@ -52,7 +58,7 @@ function Sketch({ trace }: Pick<TriedSetup, "trace">) {
 }
 
 /** 3000 samples, 2.00 µs apart, 6.00 ms in all. “node” −138 V to 162 V. 1 switch-off, ring 4.000 kHz. */
-export function outcomeSentence(tried: TriedSetup): string {
+function outcomeSentence(tried: TriedSetup): string {
   const { records, samples, step_s, switchOffs, frequency_Hz, inductance_H, trace } = tried;
   const reach = range([trace], { from: trace.from_s, to: trace.to_s });
   const parts = [

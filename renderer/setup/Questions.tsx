@@ -12,7 +12,7 @@ import { stated } from "../format/figure.ts";
 import { unitPart, withChannel } from "./channels.ts";
 import { CountsAnswer } from "./CountsAnswer.tsx";
 import { allFields, type Field } from "./fields.ts";
-import { Outcome } from "./Outcome.tsx";
+import { Outcome, type Tried } from "./Outcome.tsx";
 import { Preview } from "./Preview.tsx";
 import { useSettled } from "../state/useSettled.ts";
 import type { Change } from "./SetupCard.tsx";
@@ -30,10 +30,11 @@ export function Questions({ run, capture, reading, onChange }: Props) {
     (note, at) => asked.findIndex((other) => other.question === note.question) === at,
   );
   if (once.length === 0 || capture === null) return null;
+  const tried = { run: run.run, capture };
   return (
     <div className="questions">
       {once.map((note) => (
-        <Question key={note.code + note.question} {...{ note, capture, onChange }} setup={run.setup} />
+        <Question key={note.code + note.question} {...{ note, tried, onChange }} setup={run.setup} />
       ))}
       <Preview capture={capture} />
     </div>
@@ -42,7 +43,7 @@ export function Questions({ run, capture, reading, onChange }: Props) {
 
 interface QuestionProps {
   note: Note;
-  capture: number;
+  tried: Tried;
   setup: Setup;
   onChange: Change;
 }
@@ -63,24 +64,24 @@ function Question(props: QuestionProps) {
 }
 
 /** About one column: its unit is chosen, its counts are stated; joining files is left to the setup file. */
-function ChannelAnswer({ note: { channel, choices }, capture, setup, onChange }: QuestionProps) {
+function ChannelAnswer({ note: { channel, choices }, tried, setup, onChange }: QuestionProps) {
   if (channel === undefined)
     return <p className="quiet">Answer it in the folder’s setup.json, under channels.</p>;
   const changeOf = (part: Partial<SetupChannel>) => ({ channels: withChannel(setup, channel, null, part) });
   if (!choices)
-    return <CountsAnswer {...{ capture, channel, changeOf }} onAnswer={(part) => onChange(changeOf(part))} />;
+    return <CountsAnswer {...{ tried, channel, changeOf }} onAnswer={(part) => onChange(changeOf(part))} />;
   const offers = choices.map((choice) => ({ words: choice, change: changeOf(unitPart(choice)) }));
-  return <Choices {...{ capture, channel, offers, onChange }} />;
+  return <Choices {...{ tried, channel, offers, onChange }} />;
 }
 
-function FieldAnswer({ note, capture, onChange }: QuestionProps) {
+function FieldAnswer({ note, tried, onChange }: QuestionProps) {
   const [text, setText] = useState("");
   const settled = useSettled(text);
   const field = allFields.find((field) => field.key === note.answers);
   if (!field) return <p className="quiet">{note.choices?.join(", ")}</p>;
   if (note.choices && note.choices.length > 0) {
     const offers = note.choices.map((choice) => offerOf(field, choice));
-    return <Choices {...{ capture, offers, onChange }} />;
+    return <Choices {...{ tried, offers, onChange }} />;
   }
   const changeOf = (words: string) => {
     const number = parseEntry(words, field.unit);
@@ -99,7 +100,7 @@ function FieldAnswer({ note, capture, onChange }: QuestionProps) {
       <button type="submit" disabled={change === null}>
         answer
       </button>
-      <Outcome capture={capture} change={changeOf(settled)} />
+      <Outcome tried={tried} change={changeOf(settled)} />
     </form>
   );
 }
@@ -117,14 +118,14 @@ function offerOf(field: Field, choice: string): Offer {
 }
 
 interface ChoicesProps {
-  capture: number;
+  tried: Tried;
   channel?: string;
   offers: Offer[];
   onChange: Change;
 }
 
 /** Every choice with what it would make of the file. */
-function Choices({ capture, channel, offers, onChange }: ChoicesProps) {
+function Choices({ tried, channel, offers, onChange }: ChoicesProps) {
   return (
     <ul className="choices">
       {offers.map(({ words, change }) => (
@@ -132,7 +133,7 @@ function Choices({ capture, channel, offers, onChange }: ChoicesProps) {
           <button type="button" onClick={() => onChange(change)}>
             {words}
           </button>
-          <Outcome {...{ capture, channel, change }} />
+          <Outcome {...{ tried, channel, change }} />
         </li>
       ))}
     </ul>

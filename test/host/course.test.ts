@@ -8,23 +8,26 @@ interface Shot {
   ruled?: "spark" | "no-spark";
   onset_s?: number;
   breakdown_V?: number;
+  from?: "secondary" | "ratio";
   q?: number;
 }
 
 /** A capture as the book holds it, with what a course is made of. */
 function capture(time: string | null, shots: Shot[]): CaptureDetail {
-  const pulses = shots.map(({ at, verdict = "no-spark", ruled, onset_s, breakdown_V, q }) => ({
-    switchOffTime_s: at,
-    ring: q === undefined ? null : { modes: [{ q: { value: q, u: 0.1 } }] },
-    ruled: ruled ? { verdict: ruled, at: "", remark: "" } : null,
-    spark: {
-      verdict,
-      onset_s: onset_s ?? null,
-      breakdown_V: breakdown_V ?? null,
-      breakdownFrom: "secondary",
-    },
-    u: {},
-  }));
+  const pulses = shots.map(
+    ({ at, verdict = "no-spark", ruled, onset_s, breakdown_V, from = "secondary", q }) => ({
+      switchOffTime_s: at,
+      ring: q === undefined ? null : { modes: [{ q: { value: q, u: 0.1 } }] },
+      ruled: ruled ? { verdict: ruled, at: "", remark: "" } : null,
+      spark: {
+        verdict,
+        onset_s: onset_s ?? null,
+        breakdown_V: breakdown_V ?? null,
+        breakdownFrom: from,
+      },
+      u: {},
+    }),
+  );
   return { reading: { record: { index: 0, count: 1, time }, pulses } } as unknown as CaptureDetail;
 }
 
@@ -49,6 +52,23 @@ describe("the course of a run", () => {
     const course = courseOf([capture(null, [{ at: 0 }, { at: 0.03125, ...spark }])], null);
     expect(course).toMatchObject({ onset_s: [null, 0.03125], breakdown_V: [null, 9000] });
     expect(course.breakdownFrom).toBe("secondary");
+  });
+
+  it("never mixes measured breakdowns with referred ones: the measured where three are there, else the more", () => {
+    const shots = (measured: number, referred: number) =>
+      Array.from({ length: measured + referred }, (_, at): Shot => {
+        const from = at < measured ? "secondary" : "ratio";
+        return { at, verdict: "spark", onset_s: at, breakdown_V: 8000 + at, from };
+      });
+    const told = (measured: number, referred: number) => {
+      const { breakdownFrom, breakdown_V } = courseOf([capture(null, shots(measured, referred))], null);
+      return [breakdownFrom, breakdown_V.filter((value) => value !== null).length];
+    };
+    expect(told(3, 30)).toEqual(["secondary", 3]);
+    expect(told(2, 30)).toEqual(["ratio", 30]);
+    expect(told(2, 2)).toEqual(["secondary", 2]);
+    expect(told(0, 2)).toEqual(["ratio", 2]);
+    expect(told(0, 0)).toEqual([null, 0]);
   });
 
   it("follows the user's verdict", () => {

@@ -2,26 +2,19 @@
 import { copyFileSync, mkdirSync } from "node:fs";
 import { join } from "node:path";
 import type { Browser } from "playwright-core";
-import { afterAll, afterEach, beforeAll, expect, it } from "vitest";
+import { afterAll, beforeAll, expect, it } from "vitest";
 import { seeded } from "../reference/random.ts";
 import { describeWindow, launch } from "./chromium.ts";
 import { demo, openDoor, type TestDoor } from "./door.ts";
-import {
-  closeSilent,
-  dropFiles,
-  expectAccessible,
-  goTo,
-  openContents,
-  openSheet,
-  type Sheet,
-} from "./sheet.ts";
+import { closeSilent, dropFiles, expectAccessible, goTo, openSheet, turnTo, type Sheet } from "./sheet.ts";
 
 describeWindow("the setup card", () => {
   let browser: Browser;
   let door: TestDoor;
-  let sheet: Sheet | undefined;
+  let sheet: Sheet;
   beforeAll(async () => {
     [browser, door] = await Promise.all([launch(), openDoor()]);
+    sheet = await openSheet(browser, door, "/help");
     // Two quiet pulses of the demo run: a change is judged anew at once.
     const folder = join(door.folder, "two pulses");
     mkdirSync(folder);
@@ -31,15 +24,12 @@ describeWindow("the setup card", () => {
     await door.host.idle();
   });
   afterAll(async () => {
+    await closeSilent(sheet);
     await browser?.close();
     await door?.end();
   });
-  afterEach(async () => {
-    await closeSilent(sheet);
-    sheet = undefined;
-  });
   const turned = async () => {
-    sheet = await openSheet(browser, door, "/run/1");
+    await turnTo(sheet.page, "/run/1");
     await sheet.page.getByText(/^2 pulses:/).waitFor();
     await sheet.page.keyboard.press("e");
     await sheet.page.getByRole("heading", { name: "Setup, the back of the card" }).waitFor();
@@ -111,9 +101,8 @@ describeWindow("the setup card", () => {
   });
 
   it("asks for the interval that a file does not tell, beside its first lines, and reads it with the answer", async () => {
-    sheet = await openSheet(browser, door, "/");
-    const { page } = sheet;
-    await openContents(page);
+    const page = await turnTo(sheet.page, "/");
+    await page.getByRole("heading", { name: "Contents" }).waitFor();
     const lines = ["node,gate", "Volt,Volt"];
     for (let at = 0; at < 3000; at++) lines.push(`${ring(at * 2e-6 - 1e-3).toFixed(2)},${at < 500 ? 5 : 0}`);
     await dropFiles(page, [{ name: "no-interval.csv", text: lines.join("\n") }]);
@@ -135,8 +124,7 @@ describeWindow("the setup card", () => {
     for (let at = 0; at < 3000; at++)
       lines.push(`${(at * 0.002 - 1).toFixed(3)},${ring(at * 2e-6 - 1e-3).toFixed(2)}`);
     const run = await door.readIn("no unit", { "one.csv": lines.join("\n") });
-    sheet = await openSheet(browser, door, `/run/${run}`);
-    const { page } = sheet;
+    const page = await turnTo(sheet.page, `/run/${run}`);
     const choice = (unit: string) =>
       page.locator(".choices li").filter({ has: page.getByRole("button", { name: unit, exact: true }) });
     await choice("s")

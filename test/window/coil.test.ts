@@ -1,10 +1,10 @@
 /** The coil's sheet: history, another capacitor by slider, dwell, stress; curves drawn when they arrive. */
 import type { Browser } from "playwright-core";
-import { afterAll, afterEach, beforeAll, expect, it } from "vitest";
+import { afterAll, beforeAll, expect, it } from "vitest";
 import { seeded } from "../reference/random.ts";
 import { describeWindow, launch } from "./chromium.ts";
 import { openDoor, type TestDoor } from "./door.ts";
-import { closeSilent, expectAccessible, openSheet, sidewaysOverflow, type Sheet } from "./sheet.ts";
+import { closeSilent, expectAccessible, openSheet, sidewaysOverflow, turnTo, type Sheet } from "./sheet.ts";
 
 const coil = "Igniter coil A";
 const path = `/coil/${encodeURIComponent(coil)}`;
@@ -26,22 +26,20 @@ function ringAt(frequency_Hz: number): string {
 describeWindow("a coil", () => {
   let browser: Browser;
   let door: TestDoor;
-  let sheet: Sheet | undefined;
+  let sheet: Sheet;
   beforeAll(async () => {
     [browser, door] = await Promise.all([launch(), openDoor({ demo: true })]);
+    // One page for all: the plotting library is large, and is fetched and compiled once.
+    sheet = await openSheet(browser, door, "/help");
   });
   afterAll(async () => {
+    await closeSilent(sheet);
     await browser?.close();
     await door?.end();
   });
-  afterEach(async () => {
-    await closeSilent(sheet);
-    sheet = undefined;
-  });
 
   it("shows its history, the dwell as table and curve, and what each part bears", async () => {
-    sheet = await openSheet(browser, door, path);
-    const { page } = sheet;
+    const page = await turnTo(sheet.page, path);
     await page.getByRole("heading", { name: coil, level: 1 }).waitFor();
     const told = await door.ask("coil", { coil });
     const rows = page
@@ -67,8 +65,7 @@ describeWindow("a coil", () => {
   });
 
   it("answers what another capacitor would do: a larger one, a lower kick and a slower ring", async () => {
-    sheet = await openSheet(browser, door, path);
-    const { page } = sheet;
+    const page = await turnTo(sheet.page, path);
     const sentence = page.locator(".capacitor-choice .sentence");
     const kick = async () => Number(/Kick ([\d.]+)/.exec((await sentence.textContent()) ?? "")?.[1]);
     await page.getByText(/Kick [\d.]+ ±/).waitFor();
@@ -87,8 +84,7 @@ describeWindow("a coil", () => {
       const files = { "one.csv": ringAt(frequency_Hz), "setup.json": JSON.stringify(setup) };
       await door.readIn(`line ${added_F}`, files);
     }
-    sheet = await openSheet(browser, door, "/coil/Line%20coil");
-    const { page } = sheet;
+    const page = await turnTo(sheet.page, "/coil/Line%20coil");
     const line = page.locator("section", {
       has: page.getByRole("heading", { name: "Added-capacitor line" }),
     });
@@ -104,8 +100,7 @@ describeWindow("a coil", () => {
   });
 
   it("is reached from its run, fits a narrow window, and says what is missing", async () => {
-    sheet = await openSheet(browser, door, "/run/1", { viewport: { width: 380, height: 800 } });
-    const { page } = sheet;
+    const page = await turnTo(sheet.page, "/run/1", { width: 380, height: 800 });
     await page.getByRole("link", { name: coil }).click();
     await page.getByRole("heading", { name: coil, level: 1 }).waitFor();
     await page.getByRole("heading", { name: "Added-capacitor line" }).waitFor();

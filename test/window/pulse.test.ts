@@ -1,11 +1,11 @@
 /** A pulse in full: trace with notes and leaders, verdict by key, zoom, figures, pictures. */
 import { readFileSync } from "node:fs";
 import type { Browser, Page } from "playwright-core";
-import { afterAll, afterEach, beforeAll, expect, it } from "vitest";
+import { afterAll, beforeAll, expect, it } from "vitest";
 import type { PulseRow } from "../../app/bridge.ts";
 import { describeWindow, launch } from "./chromium.ts";
 import { openDoor, type TestDoor } from "./door.ts";
-import { closeSilent, expectAccessible, goTo, openSheet, type Sheet } from "./sheet.ts";
+import { closeSilent, expectAccessible, goTo, openSheet, turnTo, type Sheet } from "./sheet.ts";
 
 const pathOf = (row: PulseRow) => `/pulse/1/${row.capture}/${row.pulse}`;
 
@@ -13,24 +13,22 @@ describeWindow("a pulse", () => {
   let browser: Browser;
   let door: TestDoor;
   let rows: PulseRow[];
-  let sheet: Sheet | undefined;
+  let sheet: Sheet;
   beforeAll(async () => {
     [browser, door] = await Promise.all([launch(), openDoor({ demo: true })]);
+    sheet = await openSheet(browser, door, "/help", { permissions: ["clipboard-read", "clipboard-write"] });
     ({ rows } = await door.ask("pulses", { run: 1, limit: 1000 }));
   });
   afterAll(async () => {
+    await closeSilent(sheet);
     await browser?.close();
     await door?.end();
-  });
-  afterEach(async () => {
-    await closeSilent(sheet);
-    sheet = undefined;
   });
 
   const first = (wanted: (row: PulseRow) => boolean) =>
     rows.find((row) => wanted(row) && row.quality === "good")!;
-  const open = async (row: PulseRow, options = {}) => {
-    sheet = await openSheet(browser, door, pathOf(row), options);
+  const open = async (row: PulseRow) => {
+    await turnTo(sheet.page, pathOf(row));
     await sheet.page.locator(".pulse-figure .ink").first().waitFor();
     await sheet.page.locator(".pulse-figure .fitted").first().waitFor();
     return sheet.page;
@@ -66,20 +64,16 @@ describeWindow("a pulse", () => {
     await page.keyboard.press("n");
     await page.keyboard.type("<b>seen</b> by eye");
     await page.keyboard.press("Enter");
-    await expect
-      .poll(
-        async () =>
-          (await door.ask("capture", { capture: row.capture })).reading.pulses[row.pulse].ruled?.remark,
-      )
-      .toBe("<b>seen</b> by eye");
+    const ruled = async () =>
+      (await door.ask("capture", { capture: row.capture })).reading.pulses[row.pulse].ruled;
+    await expect.poll(async () => (await ruled())?.remark).toBe("<b>seen</b> by eye");
     expect(await page.getByText(/^Misfire, .* sure/).count()).toBe(1);
-    const ruled = await door.ask("run", { run: 1 });
-    expect(ruled.counts.sparks).toBe(rows.filter((each) => each.verdict === "spark").length + 1);
+    const counted = await door.ask("run", { run: 1 });
+    expect(counted.counts.sparks).toBe(rows.filter((each) => each.verdict === "spark").length + 1);
     // Two statements were made: the verdict, then the verdict with its remark.
-    for (let step = 0; step < 3 && (await page.getByText("You say:").count()) > 0; step++) {
-      await page.keyboard.press("Control+z");
-      await page.waitForTimeout(400);
-    }
+    await page.keyboard.press("Control+z");
+    await expect.poll(async () => (await ruled())?.remark).toBe("");
+    await page.keyboard.press("Control+z");
     await page.getByText("You say:").waitFor({ state: "hidden" });
   });
 
@@ -132,10 +126,7 @@ describeWindow("a pulse", () => {
   });
 
   it("gives its drawing as SVG and PNG that stand alone, and its table as text", async () => {
-    const page = await open(
-      first((row) => row.verdict === "spark"),
-      { permissions: ["clipboard-read", "clipboard-write"] },
-    );
+    const page = await open(first((row) => row.verdict === "spark"));
     const svg = readFileSync(await download(page, "Shift+P"), "utf8");
     expect(svg).toContain('xmlns="http://www.w3.org/2000/svg"');
     expect(svg).toContain("Kick ");

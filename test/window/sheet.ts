@@ -43,6 +43,20 @@ export async function openSheet(
 
 export const goTo = (page: Page, path: string) => page.evaluate((path) => (location.hash = `#${path}`), path);
 
+/** A page that several tests share, brought to a sheet as if it were new: nothing is left of the one before. */
+export async function turnTo(
+  page: Page,
+  path: string,
+  viewport = { width: 1360, height: 860 },
+): Promise<Page> {
+  await page.emulateMedia({ media: "screen", colorScheme: "light" });
+  await page.setViewportSize(viewport);
+  await goTo(page, "/help");
+  await page.getByRole("heading", { name: "Cautions" }).waitFor();
+  await goTo(page, path);
+  return page;
+}
+
 /** To the book's contents by key, once the place where the book was closed is restored. */
 export async function openContents(page: Page): Promise<void> {
   await page.locator(".sheet-head").waitFor();
