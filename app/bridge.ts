@@ -5,6 +5,7 @@
  */
 import * as v from "valibot";
 import { setupSchema } from "../analysis/setup/schema.ts";
+import type { RunComparison } from "../analysis/coil/compare.ts";
 import type { Verdict } from "../analysis/reading-format.ts";
 import type {
   CapacitorOption,
@@ -61,6 +62,8 @@ export const commands = {
   pulses: v.strictObject({ run: id, ...page }),
   /** When and at what voltage the run's pulses sparked, over their number and over time. */
   course: v.strictObject({ run: id }),
+  /** The second run less the first. */
+  compare: v.strictObject({ first: id, second: id }),
   capture: v.strictObject({ capture: id }),
   trace: v.strictObject({
     capture: id,
@@ -119,6 +122,7 @@ export interface Answers {
   run: RunDetail;
   pulses: Page<PulseRow>;
   course: RunCourse;
+  compare: RunComparison;
   capture: CaptureDetail;
   trace: TraceWindow;
   ringPicture: RingPicture | null;

@@ -17,23 +17,25 @@ interface Props {
   values: number[];
   unit: string;
   marks: FittedMark[];
+  /** Drawn over this range, where it is to be compared with another. */
+  range?: [low: number, high: number];
 }
 
 const height = 92;
 const mark_px = 20;
 
-export function Distribution({ label, values, unit, marks }: Props) {
+export function Distribution({ label, values, unit, marks, range }: Props) {
   const [box, width] = useWidth<HTMLDivElement>(440);
   const { near, beyond } = useMemo(() => fenced(values), [values]);
   const x = useMemo(() => {
-    const all = [...near, ...marks.flatMap(({ low, high }) => [low, high])];
+    const all = range ?? [...near, ...marks.flatMap(({ low, high }) => [low, high])];
     const [low, high] = all.reduce(
       ([low, high], value) => [Math.min(low, value), Math.max(high, value)],
       [Infinity, -Infinity],
     );
     const [from, to] = aired([low, high], 0.06);
     return linear(from, to, 4, width - 4);
-  }, [near, marks, width]);
+  }, [near, marks, range, width]);
   const strokes = useMemo(() => tally(near, x), [near, x]);
   const below = height + 6;
   const foot = below + marks.length * mark_px;

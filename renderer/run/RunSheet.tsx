@@ -4,6 +4,7 @@ import type { PulseRow, RunDetail } from "../../app/bridge.ts";
 import { finalVerdict } from "../draw/glyph.ts";
 import { figureText, percent, plain } from "../format/figure.ts";
 import { countsSentence, dayText, verdictWord } from "../format/words.ts";
+import { BesideWith } from "../compare/BesideWith.tsx";
 import { Caution } from "../help/Caution.tsx";
 import { CopyButton } from "../shell/CopyButton.tsx";
 import { SheetHead } from "../shell/SheetHead.tsx";
@@ -122,6 +123,7 @@ export function RunSheet({ run }: { run: number }) {
       {course.answer && <Sparks course={course.answer} />}
       <Remarks title="Of this run" notes={notAbove(detail)} />
       <SetupCard run={detail} capture={captureOfCard(detail)} reading={null} />
+      <BesideWith run={detail} />
       <Captures detail={detail} rows={rows} />
       <Exports run={run} />
       <Caution />

@@ -1,5 +1,6 @@
 /** The page: one sheet at a time, keys that work everywhere, and the foot with what they are. */
 import { lazy, Suspense, useEffect, useMemo, useRef, useState } from "react";
+import { BesideSheet } from "../compare/BesideSheet.tsx";
 import { Contents } from "../book/Contents.tsx";
 import { Help } from "../help/Help.tsx";
 import { KeyOverview } from "../help/KeyOverview.tsx";
@@ -73,6 +74,8 @@ function Sheet({ route }: { route: Route }) {
       return <RunSheet key={route.run} run={route.run} />;
     case "pulse":
       return <PulseSheet run={route.run} capture={route.capture} pulse={route.pulse} />;
+    case "beside":
+      return <BesideSheet key={`${route.first} ${route.second}`} first={route.first} second={route.second} />;
     case "coil":
       return <CoilSheet key={route.coil} coil={route.coil} />;
     case "help":

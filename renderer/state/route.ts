@@ -4,6 +4,7 @@ import { useSyncExternalStore } from "react";
 export type Route =
   | { view: "book" }
   | { view: "run"; run: number }
+  | { view: "beside"; first: number; second: number }
   | { view: "pulse"; run: number; capture: number; pulse: number }
   | { view: "coil"; coil: string }
   | { view: "help" };
@@ -11,6 +12,7 @@ export type Route =
 const number = String.raw`(\d{1,9})`;
 const runPath = new RegExp(`^/run/${number}$`);
 const pulsePath = new RegExp(`^/pulse/${number}/${number}/${number}$`);
+const besidePath = new RegExp(`^/beside/${number}/${number}$`);
 const coilPath = /^\/coil\/(.+)$/;
 
 export function parseRoute(path: string): Route {
@@ -21,6 +23,8 @@ export function parseRoute(path: string): Route {
     const [run, capture, index] = pulse.slice(1).map(Number);
     return { view: "pulse", run, capture, pulse: index };
   }
+  const beside = besidePath.exec(path);
+  if (beside) return { view: "beside", first: Number(beside[1]), second: Number(beside[2]) };
   const coil = coilPath.exec(path);
   if (coil) return { view: "coil", coil: decoded(coil[1]) };
   return path === "/help" ? { view: "help" } : { view: "book" };
@@ -42,6 +46,8 @@ export function pathOf(route: Route): string {
       return `/run/${route.run}`;
     case "pulse":
       return `/pulse/${route.run}/${route.capture}/${route.pulse}`;
+    case "beside":
+      return `/beside/${route.first}/${route.second}`;
     case "coil":
       return `/coil/${encodeURIComponent(route.coil)}`;
     case "help":

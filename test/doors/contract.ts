@@ -54,6 +54,10 @@ export function keepsTheContract(bench: () => Bench): void {
     const picture = await bench().call("ringPicture", { capture, pulse, pixels: 200 });
     expect(picture?.fitted.time_s.length).toBeGreaterThan(20);
     expect((await bench().call("fileHead", { capture, lines: 3 })).lines).toHaveLength(3);
+    const { quietRate } = await bench().call("compare", { first: 1, second: 1 });
+    expect(quietRate === null || (quietRate.value === 0 && quietRate.low < 0 && quietRate.high > 0)).toBe(
+      true,
+    );
     const course = await bench().call("course", { run: 1 });
     expect(course.onset_s.map((onset) => onset === null)).toEqual(rows.map((row) => row.verdict !== "spark"));
     // Two captures without a clock in their files: no common time.
@@ -124,6 +128,7 @@ export function keepsTheContract(bench: () => Bench): void {
     ["trySetup", { capture: 1, change: { nonsense: 1 }, pixels: 100 }],
     ["trySetup", { capture: 1, change: {}, pixels: 0 }],
     ["course", { run: 999 }],
+    ["compare", { first: 1, second: 999 }],
     ["rule", { capture: 1, pulse: 0, verdict: "maybe", remark: "" }],
     ["exportRun", { run: 1, kind: "exe" }],
     ["fileHead", { capture: 1, lines: 1e6 }],

@@ -18,10 +18,11 @@ describe("routes", () => {
     { view: "pulse", run: 14, capture: 9, pulse: 0 },
     { view: "coil", coil: "Coil #3 / “50 %”" },
     { view: "help" },
+    { view: "beside", first: 3, second: 14 },
   ])("$view leads back to itself", (route) => expect(parseRoute(pathOf(route))).toEqual(route));
 
   it("anything else is the book", () => {
-    for (const path of ["", "/run/x", "/pulse/1/2", "/nowhere", "/run/1/2"])
+    for (const path of ["", "/run/x", "/pulse/1/2", "/nowhere", "/run/1/2", "/beside/1"])
       expect(parseRoute(path)).toEqual({ view: "book" });
     expect(parseRoute("/coil/%E0%A4%A")).toEqual({ view: "coil", coil: "%E0%A4%A" });
   });

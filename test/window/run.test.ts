@@ -138,6 +138,28 @@ describeWindow("a run", () => {
     await page.getByText("No other pulse is unclear.").waitFor();
   });
 
+  it("lies beside another run, by keys: figures, what lies between them, onsets on one scale", async () => {
+    const damped = (await door.ask("runs", {})).rows.find(({ name }) => name === "damped")!.run;
+    sheet = await openSheet(browser, door, `/run/${run}`);
+    const { page } = sheet;
+    await page.getByText(/^54 pulses:/).waitFor();
+    await page.getByLabel("beside").waitFor();
+    await page.keyboard.press("v");
+    await page.getByLabel("beside").selectOption(String(damped));
+    await page.getByRole("heading", { name: "Two runs side by side" }).waitFor();
+    const { q } = await door.ask("compare", { first: damped, second: run });
+    const cells = await page.getByRole("row", { name: /^Q/ }).getByRole("cell").allTextContents();
+    expect(cells).toHaveLength(3);
+    const [a, b, less] = cells.map((cell) => Number.parseFloat(cell.replace("−", "-")));
+    expect(less).toBeCloseTo(b - a, 0);
+    expect(less).toBeCloseTo(q!.value, 1);
+    await page.getByText(/^Of a hundred pulses/).waitFor();
+    await page.getByRole("img", { name: /^Onset after switch-off in / }).waitFor();
+    await expectAccessible(page);
+    await page.keyboard.press("x");
+    await expect.poll(() => page.evaluate(() => location.hash)).toBe(`#/beside/${run}/${damped}`);
+  });
+
   it("leads to a pulse by click, by keys and from the attention list", async () => {
     sheet = await openSheet(browser, door, `/run/${run}`);
     const { page } = sheet;

@@ -1,3 +1,4 @@
+import { compareRuns } from "../../../analysis/coil/compare.ts";
 import { version } from "../../../package.json";
 import type { Handlers } from "../call.ts";
 import { courseOf } from "../view/course.ts";
@@ -10,6 +11,7 @@ type FromBook =
   | "run"
   | "pulses"
   | "course"
+  | "compare"
   | "capture"
   | "rule"
   | "exportRun"
@@ -29,6 +31,7 @@ export function bookHandlers({ book, emit, views }: BenchParts): Pick<Handlers, 
     run: ({ run }) => book.run(run),
     pulses: ({ run, cursor, limit }) => book.pulses(run, { cursor, limit }),
     course: ({ run }) => courseOf(book.captures(run), book.trends(run)),
+    compare: ({ first, second }) => compareRuns(book.run(first), book.run(second)),
     capture: ({ capture }) => book.capture(capture),
     rule({ capture, pulse, verdict, remark }) {
       const ruled = book.rule(capture, pulse, verdict, remark);
