@@ -2,7 +2,7 @@
 import { useMemo } from "react";
 import type { RunCourse, RunDetail } from "../../app/bridge.ts";
 import { plural } from "../format/words.ts";
-import { Distribution, type FittedMark } from "../run/Distribution.tsx";
+import { Distribution, fenced, type FittedMark } from "../run/Distribution.tsx";
 import { useAnswer, useDesk } from "../state/bench.tsx";
 
 const none: FittedMark[] = [];
@@ -46,7 +46,7 @@ interface PairProps {
 function Pair({ title, unit, names, of }: PairProps) {
   const values = useMemo(() => of.map((list) => list.filter((value) => value !== null)), [of]);
   const range = useMemo((): [number, number] => {
-    const all = values.flat().toSorted((p, q) => p - q);
+    const all = values.flatMap((list) => fenced(list).near).toSorted((p, q) => p - q);
     return [all[0], all[all.length - 1]];
   }, [values]);
   if (values.flat().length === 0) return null;

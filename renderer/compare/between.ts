@@ -14,10 +14,10 @@ export function farApart(figures: { name: string; difference: Figure }[]): strin
 /** Share of quiet pulses, second less first, in points of a hundred. */
 export function between(rate: RunComparison["quietRate"]): string {
   if (!rate) return "In one of them no pulse was judged: their rates can't be compared.";
-  const points = (share: number) => (100 * share).toFixed(1).replace("-", "−");
+  const points = (share: number) => `${Math.abs(100 * share).toFixed(1)} ${share < 0 ? "fewer" : "more"}`;
   const sure = rate.low > 0 || rate.high < 0;
   return (
-    `Of a hundred pulses ${points(Math.abs(rate.value))} ${rate.value < 0 ? "fewer" : "more"} stay without a spark in the second ` +
+    `Of a hundred pulses ${points(rate.value)} stay without a spark in the second ` +
     `(${points(rate.low)} to ${points(rate.high)} at ${(100 * rate.level).toFixed(0)} %): ` +
     `${sure ? "more than chance explains." : "chance explains that."}`
   );

@@ -85,7 +85,7 @@ export function Distribution({ label, values, unit, marks, range }: Props) {
 const anchorAt = (x: number, width: number) => (x < 30 ? "start" : x > width - 30 ? "end" : "middle");
 
 /** Values beyond Tukey's outer fences (1977) would take the drawing for themselves: they are named beside it. */
-function fenced(values: number[]): { near: number[]; beyond: number[] } {
+export function fenced(values: number[]): { near: number[]; beyond: number[] } {
   const sorted = values.toSorted((a, b) => a - b);
   const at = (share: number) => sorted[Math.round((sorted.length - 1) * share)];
   const reach = 3 * (at(0.75) - at(0.25));
