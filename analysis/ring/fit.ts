@@ -22,6 +22,8 @@ export interface FitOptions {
   like?: RingFit;
   /** One period of the ring in samples, rough: lets the search average down what is sampled far finer. */
   period?: number;
+  /** The end of the ring may be left out, where the slowest mode is gone long before the window is over. */
+  trimmed?: boolean;
   /** Noise per sample where it is known; else from the window's differences. */
   noise?: number;
 }
@@ -32,6 +34,8 @@ const SEARCH_VALUES = 4096;
 const SEARCH_PER_CYCLE = 40;
 /** Values a cycle of the fastest mode the last pass keeps: block means lose 1 − sinc² = 0.3 %. */
 const FINE_PER_CYCLE = 32;
+/** e-foldings after which a ring says nothing more about itself (0.3 % of the information is left). */
+const FOLDINGS = 5;
 const none = new Int32Array(0);
 
 /**
@@ -41,12 +45,12 @@ const none = new Int32Array(0);
 export function fitRing(
   samples: Float64Array,
   from: number,
-  to: number,
+  windowEnd: number,
   step_s: number,
   options: FitOptions = {},
 ): RingFit | null {
   const unusable = options.unusable ?? none;
-  const length = to - from;
+  const length = windowEnd - from;
   if (length < 8) return null;
   let start: Mode[];
   const known = options.like?.modes ?? options.start;
@@ -54,11 +58,12 @@ export function fitRing(
   else {
     const fine = Math.floor((options.period ?? 0) / SEARCH_PER_CYCLE);
     const by = Math.max(1, Math.ceil(length / SEARCH_VALUES), fine);
-    const blocks = makeBlocks(samples, from, to, unusable, by);
+    const blocks = makeBlocks(samples, from, windowEnd, unusable, by);
     const found = searchModes(blocks, pinnedValues(samples, from, blocks), options.mostModes ?? 2);
     if (!found) return null;
     start = scaled(found.modes, 1 / by);
   }
+  const to = options.trimmed ? endOfRing(start, from, windowEnd, options.period ?? 0) : windowEnd;
   const fastest = Math.max(...start.map((mode) => mode.omega));
   const decimation = Math.max(1, Math.floor((2 * Math.PI) / fastest / FINE_PER_CYCLE));
   const blocks = makeBlocks(samples, from, to, unusable, decimation);
@@ -67,6 +72,13 @@ export function fitRing(
   const plain = solve(blocks, scaled(start, decimation), degree);
   const solution = options.like ? plain : withBaseline(blocks, plain);
   return describe(samples, from, to, step_s, blocks, inOrder(solution), options);
+}
+
+/** Where the slowest mode is gone, if that is long before `to`; modes per sample. */
+function endOfRing(modes: Mode[], from: number, to: number, period: number): number {
+  const slowest = Math.min(...modes.map((mode) => mode.decay));
+  const end = Math.ceil(from + Math.max(FOLDINGS / slowest, 3 * period));
+  return slowest > 0 && end < from + 0.9 * (to - from) ? end : to;
 }
 
 const perSample = (mode: { frequency_Hz: number; decay_per_s: number }, step_s: number): Mode => ({

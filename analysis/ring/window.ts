@@ -32,8 +32,6 @@ export interface Place {
   unusable: ArrayLike<number>;
 }
 
-/** e-foldings after which a ring says nothing more about itself (0.3 % of the information is left). */
-const FOLDINGS = 5;
 const CLEAN = 1.5;
 const MOST_MASKS = 4;
 /** Where the tail of a ring is looked for, as shares of the window; the cycles it must have. */
@@ -79,15 +77,9 @@ const options = (place: Place, extra: FitOptions = {}): FitOptions => ({
   ...extra,
 });
 
-/** Fits [from, to); where the slowest mode is gone long before the end, once more on the part it lives in. */
-function fitTrimmed(place: Place, from: number, to: number, extra: FitOptions = {}): RingFit | null {
-  const fit = fitRing(place.samples, from, to, place.step_s, options(place, extra));
-  if (!fit) return null;
-  const slowest = Math.min(...fit.modes.map((mode) => mode.decay_per_s));
-  const end = Math.ceil(from + Math.max(FOLDINGS / (slowest * place.step_s), 3 * place.period));
-  if (!(slowest > 0) || end > from + 0.9 * (to - from)) return fit;
-  return fitRing(place.samples, from, end, place.step_s, options(place, { ...extra, like: fit })) ?? fit;
-}
+/** Fits [from, to), or the part of it that the ring lives in. */
+const fitTrimmed = (place: Place, from: number, to: number, extra: FitOptions = {}): RingFit | null =>
+  fitRing(place.samples, from, to, place.step_s, options(place, { ...extra, trimmed: true }));
 
 function isClean(place: Place, fit: RingFit, unusable = place.unusable): boolean {
   if (!(fit.residual <= CLEAN * noiseOf(place))) return false;

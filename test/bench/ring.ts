@@ -102,7 +102,7 @@ function pulseOf(second: number): RingTrial {
 function speed(): void {
   const two = pulseOf(25);
   const capture = captureOf([channelOf("switch-node", "V", two.samples, two.lsb)], two.step_s);
-  const whole = best(() => readCapture(capture, { capacitor_F: 1e-7 }), 60);
+  const whole = best(() => readCapture(capture, { capacitor_F: 1e-7 }), 5, 200);
   row(`a pulse of ${two.samples.length} samples, two modes, read whole (ms)`, whole.toFixed(2), "≤ 1");
   train();
   againstLibrary();
