@@ -6,7 +6,8 @@ import type { RingFit } from "./fit-format.ts";
 import type { Mode } from "./gram.ts";
 import { colourOf, differenceNoise, excessAt } from "./noise.ts";
 import { residualBuffer, searchModes, variance } from "./search.ts";
-import { residualProfile } from "./residuals.ts";
+import { separatePickup } from "./pickup.ts";
+import { residualProfile, wavesOf } from "./residuals.ts";
 import { solve, type Solution } from "./solve.ts";
 import { scaled } from "./start.ts";
 
@@ -53,7 +54,7 @@ export function fitRing(
   const length = windowEnd - from;
   if (length < 8) return null;
   let start: Mode[];
-  const known = options.like?.modes ?? options.start;
+  const known = options.like ? wavesOf(options.like) : options.start;
   if (known) start = known.map((mode) => perSample(mode, step_s));
   else {
     const fine = Math.floor((options.period ?? 0) / SEARCH_PER_CYCLE);
@@ -145,7 +146,8 @@ function describe(
   const noise = options.noise ?? differenceNoise(samples, from, to, options.lsb ?? null);
   const quantisation = (options.lsb ?? 0) ** 2 / 12 / blocks.decimation;
   const perBlock = Math.max(variance(blocks, solution), quantisation);
-  const excess = options.like?.excess ?? excessOf(residual, blocks, solution);
+  const like = options.like && [...options.like.excess, ...(options.like.pickup ? [1] : [])];
+  const excess = like ?? excessOf(residual, blocks, solution);
   const colours = excess.map((ratio) => Math.sqrt(ratio));
   const size = 4 * modes.length;
   const covariance = unit.map(
@@ -156,6 +158,7 @@ function describe(
     to,
     step_s,
     modes,
+    pickup: null,
     baseline: baselineOf(blocks, solution, to - from),
     covariance,
     residual: Math.sqrt(perBlock * blocks.decimation),
@@ -165,6 +168,7 @@ function describe(
     iterations: solution.iterations,
     stopped: solution.stopped,
   };
+  separatePickup(fit);
   // Errors alike within a block (quantisation, slow noise) are smaller per sample than white ones would be.
   if (blocks.decimation > 1 && fit.residual > 1.2 * noise)
     [fit.residual] = residualProfile(samples, fit, from, to, to - from, options.unusable ?? none).rms;

@@ -6,7 +6,7 @@
 import type { RingFit } from "./fit-format.ts";
 import { fitRing, type FitOptions } from "./fit.ts";
 import { judgeFit } from "./quality.ts";
-import { noiseLimit, residualProfile } from "./residuals.ts";
+import { noiseLimit, residualProfile, wavesOf } from "./residuals.ts";
 
 export interface WindowedRing {
   fit: RingFit;
@@ -162,7 +162,7 @@ function lateStart(place: Place): RingFit | null {
 
 /** The ring of `known` modes from an earlier start; a mode that had died by then is looked for once. */
 function holds(place: Place, from: number, to: number, known: RingFit): RingFit | null {
-  const same = fitTrimmed(place, from, to, { start: known.modes });
+  const same = fitTrimmed(place, from, to, { start: wavesOf(known) });
   if (same && isClean(place, same)) return same;
   if (known.modes.length > 1 || !same || same.residual > 6 * noiseOf(place)) return null;
   const fresh = fitTrimmed(place, from, to);
