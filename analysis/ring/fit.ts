@@ -143,7 +143,8 @@ function describe(
   if (!unit || solution.stopped === "singular") return null;
   const residual = residualBuffer(blocks.count);
   residualBlocks(blocks, solution, residual);
-  const noise = options.noise ?? differenceNoise(samples, from, to, options.lsb ?? null);
+  const noise =
+    options.noise ?? differenceNoise(samples, from, to, options.lsb ?? null, options.unusable ?? none);
   const quantisation = (options.lsb ?? 0) ** 2 / 12 / blocks.decimation;
   const perBlock = Math.max(variance(blocks, solution), quantisation);
   const like = options.like && [...options.like.excess, ...(options.like.pickup ? [1] : [])];

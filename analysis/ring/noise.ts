@@ -83,6 +83,8 @@ export function deviationFromMedian(values: Float64Array): number {
   return select(values, values.length >> 1) / 0.6745;
 }
 
+const none: number[] = [];
+
 /** Differences looked at: the median is then good to 5 %. */
 const NOISE_VALUES = 1024;
 /** Binomial weights of the sixth difference and their root sum of squares. */
@@ -92,13 +94,24 @@ const SIXTH_GAIN = Math.sqrt(924);
 /**
  * Noise per sample from sixth differences, which a ring of 6 samples a cycle leaves through by 3 % only
  * (of 12: 0.06 %); at least the quantisation's LSB/√12. Noise of a narrower band than the sampling is
- * underestimated: where a quiet stretch is to be had, its scatter counts as well.
+ * underestimated: where a quiet stretch is to be had, its scatter counts as well. `unusable`: sorted pairs
+ * [from, to) of sample numbers.
  */
-export function differenceNoise(samples: Float64Array, from: number, to: number, lsb: number | null): number {
+export function differenceNoise(
+  samples: Float64Array,
+  from: number,
+  to: number,
+  lsb: number | null,
+  unusable: ArrayLike<number> = none,
+): number {
   const stride = Math.max(1, Math.floor((to - from) / NOISE_VALUES));
   const differences = new Float64Array(Math.ceil(Math.max(0, to - from - 6) / stride));
   let count = 0;
+  let gap = 0;
   for (let i = from; i + 6 < to; i += stride) {
+    // Samples pinned at the screen's edge are alike, and would pass for a trace without noise.
+    while (gap < unusable.length && unusable[gap + 1] <= i) gap += 2;
+    if (gap < unusable.length && unusable[gap] < i + 7) continue;
     let d = 0;
     for (let k = 0; k < 7; k++) d += SIXTH[k] * samples[i + k];
     if (Number.isFinite(d)) differences[count++] = d;

@@ -39,20 +39,20 @@ const TAILS = [0.04, 0.12, 0.3, 0.5, 0.7];
 const LEAST_PERIODS = 3;
 const MOST_HALVINGS = 9;
 
-/** The ring over the whole free interval, where it explains all of it. */
+/** The ring over the whole free interval, where it explains all of it but for short bursts. */
 export function undisturbedRing(place: Place): WindowedRing | null {
   const whole = fitTrimmed(place, place.from, place.to);
-  return whole && isClean(place, whole)
-    ? { fit: whole, clean: true, courseChanges: false, masked: [] }
-    : null;
+  if (whole && isClean(place, whole)) return { fit: whole, clean: true, courseChanges: false, masked: [] };
+  return withoutBursts(place, whole);
 }
 
 /** The ring over whatever part of the interval one ring explains; null without any oscillation. */
-export function disturbedRing(place: Place): WindowedRing | null {
+export const disturbedRing = (place: Place): WindowedRing | null =>
+  undisturbedRing(place) ?? partialRing(place);
+
+/** The same where one ring is known not to explain the whole. */
+export function partialRing(place: Place): WindowedRing | null {
   const whole = fitTrimmed(place, place.from, place.to);
-  if (whole && isClean(place, whole)) return { fit: whole, clean: true, courseChanges: false, masked: [] };
-  const patched = withoutBursts(place, whole);
-  if (patched) return patched;
   const late = lateStart(place);
   const early = earlyEnd(place);
   if (whole && LAST_RESORT * informative(whole) > Math.max(informative(late), informative(early)))
@@ -97,6 +97,9 @@ const limitOf = (place: Place, noise: number, length: number) =>
 const stretch = (place: Place, fit: RingFit) =>
   Math.max(4, Math.round(Math.min(place.period, (fit.to - fit.from) / 8) / 4));
 
+/** Stretches that may be bursts: a share of a long window, two short ones where it is short. */
+const mostMasked = (stretches: number) => Math.max(0.15 * stretches, Math.min(8, 0.25 * stretches));
+
 /** Leaves out isolated stretches of large residual, a few at a time. */
 function withoutBursts(place: Place, whole: RingFit | null): WindowedRing | null {
   let fit = whole;
@@ -113,7 +116,7 @@ function withoutBursts(place: Place, whole: RingFit | null): WindowedRing | null
       share++;
       masked.push(fit!.from + (s - 1) * length, fit!.from + (s + 2) * length);
     });
-    if (share === 0 || share > 0.15 * rms.length) return null;
+    if (share === 0 || share > mostMasked(rms.length)) return null;
     const patched = merged(place.unusable, masked);
     fit = fitRing(place.samples, fit.from, fit.to, place.step_s, options(place, { unusable: patched }));
     if (fit && isClean(place, fit, patched)) return { fit, clean: true, courseChanges: false, masked };
