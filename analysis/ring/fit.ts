@@ -147,8 +147,7 @@ function describe(
     options.noise ?? differenceNoise(samples, from, to, options.lsb ?? null, options.unusable ?? none);
   const quantisation = (options.lsb ?? 0) ** 2 / 12 / blocks.decimation;
   const perBlock = Math.max(variance(blocks, solution), quantisation);
-  const like = options.like && [...options.like.excess, ...(options.like.pickup ? [1] : [])];
-  const excess = like ?? excessOf(residual, blocks, solution);
+  const excess = options.like ? excessLike(options.like) : excessOf(residual, blocks, solution);
   const colours = excess.map((ratio) => Math.sqrt(ratio));
   const size = 4 * modes.length;
   const covariance = unit.map(
@@ -159,7 +158,7 @@ function describe(
     to,
     step_s,
     modes,
-    pickup: null,
+    pickup: [],
     baseline: baselineOf(blocks, solution, to - from),
     covariance,
     residual: Math.sqrt(perBlock * blocks.decimation),
@@ -175,6 +174,13 @@ function describe(
     [fit.residual] = residualProfile(samples, fit, from, to, to - from, options.unusable ?? none).rms;
   return fit;
 }
+
+/** Of the other window's fit, in the order of frequency. */
+const excessLike = (like: RingFit): number[] =>
+  wavesOf(like)
+    .map(({ frequency_Hz }, m) => ({ frequency_Hz, ratio: like.excess[m] ?? 1 }))
+    .toSorted((a, b) => a.frequency_Hz - b.frequency_Hz)
+    .map(({ ratio }) => ratio);
 
 function excessOf(residual: Float64Array, blocks: Blocks, solution: Solution): number[] {
   const colour = colourOf(residual, blocks.count);

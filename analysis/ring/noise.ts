@@ -50,10 +50,7 @@ export function colourOf(residual: Float64Array, count: number): Colour | null {
   return { power: spectrum, half, count, mean: all / (half - 1) };
 }
 
-/**
- * Power density around `omega` (radian a value) over the mean density: 1 for white noise. Within what
- * the number of spectral bins leaves open it is 1, so that white noise keeps the sharper estimate.
- */
+/** Power density around `omega` (radian a value) over the mean density: 1 where no colour shows. */
 export function excessAt(colour: Colour | null, omega: number): number {
   if (!colour || !(colour.mean > 0)) return 1;
   const { half, count, power } = colour;
@@ -62,7 +59,8 @@ export function excessAt(colour: Colour | null, omega: number): number {
   // The bins the fit itself has emptied say nothing.
   const skip = 2 * wide;
   const reach = Math.max(12 * wide, 0.02 * half);
-  const low = Math.max(1, Math.floor(centre - reach));
+  // So are those that offset and baseline take.
+  const low = Math.max(1, Math.ceil(1.5 * wide), Math.floor(centre - reach));
   const high = Math.min(half - 1, Math.ceil(centre + reach));
   let near = 0;
   let bins = 0;
@@ -73,7 +71,7 @@ export function excessAt(colour: Colour | null, omega: number): number {
   }
   if (bins === 0) return 1;
   const ratio = near / bins / colour.mean;
-  return Math.abs(ratio - 1) < 3.5 / Math.sqrt(bins / wide) ? 1 : ratio;
+  return ratio;
 }
 
 /** Median of |x| over 0.6745: standard deviation of normal noise. Reorders `values`. */

@@ -16,23 +16,24 @@ interface Wave {
 const WEAKER = 1 / 3;
 const SLOWER = 0.5;
 const FEW_CYCLES = 3;
+/** However it decays: a ring's own mode is never this weak beside a faster one. Noise of a narrow band is. */
+const FAR_WEAKER = 0.05;
 
 /**
- * Number of the wave that is no mode of the ring; −1 where there is none. `length` of the window in the same
- * unit of time; `unsure[m]`: decay below which wave m counts as steady.
+ * Numbers of the waves that are no modes of the ring. `length` of the window in the same unit of time; `unsure[m]`: decay below which wave m counts as steady.
  */
-export function pickupAmong(waves: Wave[], length: number, unsure: number[]): number {
-  if (waves.length < 2) return -1;
+export function pickupAmong(waves: Wave[], length: number, unsure: number[]): number[] {
+  if (waves.length < 2) return [];
   const ring = waves.reduce((a, b) => (b.amplitude > a.amplitude ? b : a));
-  return waves.findIndex(
-    ({ frequency, decay, amplitude }, m) =>
-      frequency < SLOWER * ring.frequency &&
+  const isPickup = ({ frequency, decay, amplitude }: Wave, m: number) =>
+    (frequency < ring.frequency && amplitude < FAR_WEAKER * ring.amplitude) ||
+    (frequency < SLOWER * ring.frequency &&
       amplitude < WEAKER * ring.amplitude &&
-      (decay < unsure[m] || frequency * length < FEW_CYCLES),
-  );
+      (decay < unsure[m] || frequency * length < FEW_CYCLES));
+  return waves.flatMap((wave, m) => (isPickup(wave, m) ? [m] : []));
 }
 
-/** Takes a slow steady wave out of the modes; their covariance stays what it is with it in the model. */
+/** Takes the slow steady waves out of the modes; their covariance stays what it is with them in the model. */
 export function separatePickup(fit: RingFit): void {
   const { modes, covariance } = fit;
   const size = 4 * modes.length;
@@ -42,11 +43,11 @@ export function separatePickup(fit: RingFit): void {
     decay: mode.decay_per_s,
     amplitude: Math.hypot(mode.cosine, mode.sine),
   }));
-  const at = pickupAmong(waves, (fit.to - fit.from) * fit.step_s, unsure);
-  if (at < 0) return;
-  const own = (k: number) => k >> 2 !== at;
-  fit.pickup = modes[at];
-  fit.modes = modes.toSpliced(at, 1);
-  fit.excess = fit.excess.toSpliced(at, 1);
+  const slow = new Set(pickupAmong(waves, (fit.to - fit.from) * fit.step_s, unsure));
+  if (slow.size === 0) return;
+  const own = (k: number) => !slow.has(k >> 2);
+  fit.pickup = modes.filter((_, m) => slow.has(m));
+  fit.modes = modes.filter((_, m) => !slow.has(m));
+  fit.excess = fit.excess.filter((_, m) => !slow.has(m));
   fit.covariance = covariance.filter((_, k) => own(Math.floor(k / size)) && own(k % size));
 }

@@ -5,7 +5,7 @@ import type { FittedMode, RingFit } from "./fit-format.ts";
 let scratch = new Float64Array(0);
 
 /** Modes and what they stand on. */
-export const wavesOf = ({ modes, pickup }: RingFit): FittedMode[] => (pickup ? [...modes, pickup] : modes);
+export const wavesOf = ({ modes, pickup }: RingFit): FittedMode[] => [...modes, ...pickup];
 
 /** model(i) for samples first … first + count, continued outside the fit's window. Valid until the next call. */
 export function modelValues(fit: RingFit, first: number, count: number): Float64Array {

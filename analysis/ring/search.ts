@@ -35,7 +35,7 @@ const priceOfMode = (used: number) => 18 + 2 * Math.log(used);
 export function searchModes(blocks: Blocks, pinned: Float64Array, most: number): Solution | null {
   let best = fitNext(blocks, [], pinned, 0);
   if (!best || blocks.power - best.cost < priceOfMode(blocks.used) * variance(blocks, best)) return null;
-  while (best.modes.length < most + (holdsPickup(blocks, best) ? 1 : 0)) {
+  while (best.modes.length < most + Math.min(1, pickups(blocks, best))) {
     const residual = residualBuffer(blocks.count);
     residualBlocks(blocks, best, residual);
     const next: Solution | null = fitNext(blocks, best.modes, residual, variance(blocks, best));
@@ -45,15 +45,15 @@ export function searchModes(blocks: Blocks, pinned: Float64Array, most: number):
   return best;
 }
 
-/** A slow steady wave under the ring leaves the place of a mode free. */
-function holdsPickup({ count }: Blocks, { modes, linear }: Solution): boolean {
+/** Slow steady waves under the ring: the first leaves the place of a mode free. */
+function pickups({ count }: Blocks, { modes, linear }: Solution): number {
   const waves = modes.map(({ omega, decay }, m) => ({
     frequency: omega / (2 * Math.PI),
     decay,
     amplitude: Math.hypot(linear[2 * m], linear[2 * m + 1]),
   }));
   const steady = modes.map(() => STEADY / count);
-  return pickupAmong(waves, count, steady) >= 0;
+  return pickupAmong(waves, count, steady).length;
 }
 
 /** Residual variance of a block, degrees of freedom counted. */

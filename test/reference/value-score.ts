@@ -32,13 +32,18 @@ const collect = () => {
   };
 };
 
-export function scoreTroubledRings(count: number, first: number): Errors {
+export function scoreTroubledRings(count: number, first: number) {
   const inductance = collect();
+  let missed = 0;
+  let invented = 0;
   for (let seed = first; seed < first + count; seed++) {
     const { capture, setup, inductance_H } = troubledRing(seed);
-    inductance.add(readCapture(capture, setup).reading.pulses[0]?.inductance_H, inductance_H);
+    const { pulses } = readCapture(capture, setup).reading;
+    if (pulses.length === 0) missed++;
+    invented += Math.max(0, pulses.length - 1);
+    inductance.add(pulses[0]?.inductance_H, inductance_H);
   }
-  return inductance.score();
+  return { ...inductance.score(), missed, invented };
 }
 
 export function scoreRamps(count: number, first: number) {
