@@ -3,6 +3,7 @@
  * which the ring is free) to the next edge, the noise floor, or where one ring stops explaining the
  * data. A short burst inside it is left out instead.
  */
+import { medianOf } from "../numeric/robust.ts";
 import type { RingFit } from "./fit-format.ts";
 import { fitRing, type FitOptions } from "./fit.ts";
 import { judgeFit } from "./quality.ts";
@@ -33,6 +34,10 @@ export interface Place {
 }
 
 const CLEAN = 1.5;
+/** Noise of a narrow band: its excess over what was estimated before, and how alike its stretches are. */
+const MOST_UNDERESTIMATED = 4;
+const EVEN = 2;
+const EVEN_ENDS = 1.6;
 const MOST_MASKS = 4;
 /** Where the tail of a ring is looked for, as shares of the window; the cycles it must have. */
 const TAILS = [0.04, 0.12, 0.3, 0.5, 0.7];
@@ -42,7 +47,8 @@ const MOST_HALVINGS = 9;
 /** The ring over the whole free interval, where it explains all of it but for short bursts. */
 export function undisturbedRing(place: Place): WindowedRing | null {
   const whole = fitTrimmed(place, place.from, place.to);
-  if (whole && isClean(place, whole)) return { fit: whole, clean: true, courseChanges: false, masked: [] };
+  if (whole && (isClean(place, whole) || isEven(place, whole)))
+    return { fit: whole, clean: true, courseChanges: false, masked: [] };
   return withoutBursts(place, whole);
 }
 
@@ -88,6 +94,18 @@ function isClean(place: Place, fit: RingFit, unusable = place.unusable): boolean
   // With little noise the quantisation's error stands still for whole stretches: half an LSB and some.
   const limit = Math.max(limitOf(place, noiseOf(place), length), 0.75 * (place.lsb ?? 0));
   return rms.every((value) => !(value > limit));
+}
+
+/** What is left is as large at the end as in the beginning: noise, though of a narrow band and so underestimated. */
+function isEven(place: Place, fit: RingFit): boolean {
+  if (!(fit.residual <= MOST_UNDERESTIMATED * noiseOf(place))) return false;
+  const length = Math.ceil(place.period);
+  const { rms } = residualProfile(place.samples, fit, fit.from, fit.to, length, place.unusable);
+  if (rms.length < LEAST_PERIODS) return false;
+  const sorted = rms.toSorted();
+  const third = Math.floor(rms.length / 3);
+  const ratio = medianOf(rms, 0, third) / medianOf(rms, rms.length - third);
+  return sorted.at(-1)! <= EVEN * sorted[rms.length >> 1] && ratio < EVEN_ENDS && ratio > 1 / EVEN_ENDS;
 }
 
 const noiseOf = (place: Place) => Math.max(place.noise, (place.lsb ?? 0) / Math.sqrt(12));
