@@ -3,12 +3,14 @@ import { findKick } from "./coil/peak.ts";
 import { losslessAmplitude_V } from "./coil/kick.ts";
 import type { Tank } from "./coil/infer.ts";
 import { expectedInductance } from "./coil/plausible.ts";
+import { hasSecondary } from "./coil/secondary.ts";
 import type { ChannelMap, PulseEvidence } from "./evidence.ts";
 import type { SwitchOff } from "./events/event-format.ts";
 import { isVoltage } from "./events/channels.ts";
 import { readRamp, type Ramp } from "./ramp/read-ramp.ts";
 import type { PulseReading, RingReading } from "./reading-format.ts";
 import { periodOf, readRing, type KnownCoil, type PulseContext } from "./pulse-ring.ts";
+import { standard } from "./setup/toleranced.ts";
 import type { Setup } from "./setup/schema.ts";
 
 export interface Pulse {
@@ -102,13 +104,26 @@ function assemble(
   if (capacitance_F && kick && centre !== null && !kick.clipped)
     reading.energy_J.capacitor = 0.5 * capacitance_F.value * (kick.value - centre) ** 2;
   if (inductance_H && current_A) reading.energy_J.coil = 0.5 * inductance_H.value * current_A.value ** 2;
-  if (inductance_H && capacitance_F && current_A) {
+  const coil_H = inductance_H ?? rampInductance(ramp);
+  const tank_F = capacitance_F ?? statedCapacitance(setup);
+  if (coil_H && tank_F && current_A) {
     const supply = setup.supply_V ?? Math.abs(centre ?? 0);
     const step = supply - (setup.switchOnVoltage_V ?? 0);
-    reading.expectedPeak_V =
-      supply + losslessAmplitude_V(current_A.value, inductance_H.value, capacitance_F.value, step);
+    reading.expectedPeak_V = supply + losslessAmplitude_V(current_A.value, coil_H.value, tank_F.value, step);
   }
   return reading;
+}
+
+/** Where the ring gives no inductance: the one whose ½LI² is the energy the ramp has stored, saturated or not. */
+function rampInductance(ramp: Ramp | null): { value: number } | null {
+  const { energy_J } = ramp?.reading ?? {};
+  return energy_J && ramp?.current_A ? { value: (2 * energy_J.value) / ramp.current_A.value ** 2 } : null;
+}
+
+/** Capacitor and stray capacitance; null without the capacitor, or where a secondary adds to it unseen. */
+function statedCapacitance(setup: Setup): { value: number } | null {
+  const capacitor = hasSecondary(setup) ? null : standard(setup.capacitor_F);
+  return capacitor && { value: capacitor.value + (standard(setup.strayCapacitance_F)?.value ?? 0) };
 }
 
 /** Largest magnitude at the switch node to ground, from whichever channel shows it. */

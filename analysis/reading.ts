@@ -45,7 +45,9 @@ export function readCapture(capture: Capture, setup: Setup): CaptureEvidence {
     period: events.period,
     noise:
       events.noise ??
-      (channel ? differenceNoise(channel.samples, 0, channel.samples.length, channel.lsb) : 0),
+      (channel
+        ? differenceNoise(channel.samples, 0, channel.samples.length, channel.lsb, channel.unusable)
+        : 0),
     timeRelative: stepUncertainty_s / step_s,
   };
   const pulses = pulsesOf(context, events);

@@ -18,7 +18,7 @@ describe("layers", () => {
     const foreign = sources("analysis").flatMap((file) =>
       [...text(file).matchAll(/from "([^"]+)"/g)]
         .map((match) => match[1])
-        .filter((name) => !/^\.\.?\//.test(name) && !["valibot", "papaparse", "fili"].includes(name))
+        .filter((name) => !/^\.\.?\//.test(name) && !["valibot", "papaparse"].includes(name))
         .map((name) => `${file}: ${name}`),
     );
     expect(foreign).toEqual([]);

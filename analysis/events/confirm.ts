@@ -6,7 +6,12 @@ import type { Channel } from "../capture.ts";
 import type { PulseEvidence } from "../evidence.ts";
 import { meanAndDeviation, medianOf } from "../numeric/robust.ts";
 import type { RingQuality } from "../reading-format.ts";
+import type { FittedMode } from "../ring/fit-format.ts";
 import { amplitude } from "../ring/quality.ts";
+import { residualProfile } from "../ring/residuals.ts";
+
+/** How long a ring is followed on to see whether it goes on. */
+const CONTINUED_PERIODS = 4;
 
 export interface Candidate {
   evidence: PulseEvidence;
@@ -17,7 +22,10 @@ export interface Candidate {
 /** Candidates in order of time; answers for each whether it is a pulse. */
 export function confirm(channel: Channel, candidates: Candidate[], noise: number): boolean[] {
   const sure = candidates.map(
-    (candidate) => candidate.witnessed ?? (hasRing(candidate, noise) || kicks(channel, candidate, noise)),
+    (candidate, k) =>
+      candidate.witnessed ??
+      ((hasRing(candidate, noise) && !goesOn(channel, candidates[k - 1], candidate, noise)) ||
+        kicks(channel, candidate, noise)),
   );
   const known = candidates.filter((_, k) => sure[k] && candidates[k].evidence.switchOff !== null);
   if (known.length === 0) return sure;
@@ -42,6 +50,21 @@ function hasRing({ evidence, quality }: Candidate, noise: number): boolean {
   const main = fit.modes.find((mode) => amplitude(mode) === largest)!;
   const decays = main.decay_per_s * (fit.to - fit.from) * fit.step_s > 0.4;
   return decays && largest > 6 * noise && fit.residual < 3 * fit.noise;
+}
+
+/** What rings after a burst is the ring of the pulse before, which goes on: it tells of no new one. */
+function goesOn(channel: Channel, before: Candidate | undefined, { evidence }: Candidate, noise: number) {
+  const { fit, switchOff, period, freeTo } = evidence;
+  const earlier = before?.evidence.fit;
+  if (!fit || !earlier || switchOff === null || !period) return false;
+  const from = Math.ceil(switchOff + period);
+  const to = Math.min(freeTo, from + Math.ceil(CONTINUED_PERIODS * period));
+  if (to - from < period) return false;
+  const left = (mode: FittedMode) =>
+    amplitude(mode) * Math.exp(-mode.decay_per_s * (from - fit.from) * fit.step_s);
+  if (Math.max(...fit.modes.map(left)) < 3 * noise) return false;
+  const [rms] = residualProfile(channel.samples, earlier, from, to, to - from, channel.unusable).rms;
+  return rms < 1.3 * Math.max(noise, fit.residual);
 }
 
 /** The kick goes well beyond the change from the conduction level to the level after it. */

@@ -3,6 +3,7 @@
  * later half-waves fall as slowly as they rise, a triangle and a sine do so too; a square wave rises as
  * fast as it falls.
  */
+import type { Channel } from "../capture.ts";
 import { differenceNoise } from "../ring/noise.ts";
 import type { Conduction } from "./gate.ts";
 
@@ -15,7 +16,7 @@ export interface CurrentPulse extends Conduction {
   polarity: 1 | -1;
 }
 
-export function currentConductions(samples: Float64Array, lsb: number | null): CurrentPulse[] {
+export function currentConductions({ samples, lsb, unusable }: Channel): CurrentPulse[] {
   let low = Infinity;
   let high = -Infinity;
   for (const y of samples) {
@@ -25,7 +26,7 @@ export function currentConductions(samples: Float64Array, lsb: number | null): C
   if (!(high > low)) return [];
   const zero = Math.min(Math.max(0, low), high);
   const top = Math.max(high - zero, zero - low);
-  const noise = differenceNoise(samples, 0, samples.length, lsb);
+  const noise = differenceNoise(samples, 0, samples.length, lsb, unusable);
   if (top < 8 * noise) return [];
   // A ring swings as far the other way: the ramp's own direction is the one that makes conductions.
   const up = excursions(samples, zero, 1, top, noise);

@@ -94,7 +94,15 @@ function typicalSpacing(
     }
   }
   if (widths.length === 0) return null;
-  const wide = medianOf(widths);
+  const wide = medianByLength(widths);
   const ringing = spacings.filter((spacing) => spacing < 6 * wide);
-  return ringing.length > 0 ? medianOf(ringing) : 2.3 * wide;
+  return ringing.length > 0 ? medianByLength(ringing) : 2.3 * wide;
+}
+
+/** The length in which half of the whole time is reached: many short ones of a noise burst weigh little. */
+function medianByLength(lengths: number[]): number {
+  const sorted = lengths.toSorted((a, b) => a - b);
+  const half = sorted.reduce((sum, length) => sum + length, 0) / 2;
+  let sum = 0;
+  return sorted.find((length) => (sum += length) >= half)!;
 }

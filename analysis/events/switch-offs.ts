@@ -21,9 +21,7 @@ export interface Events {
 export function findSwitchOffs(capture: Capture, map: ChannelMap): Events {
   const channel = map.ring === null ? null : capture.channels[map.ring];
   const seen =
-    channel && isVoltage(map, map.ring)
-      ? voltageSwitchOffs(channel.samples, channel.lsb)
-      : { offs: [], period: 0, noise: null };
+    channel && isVoltage(map, map.ring) ? voltageSwitchOffs(channel) : { offs: [], period: 0, noise: null };
   const { period, noise } = seen;
   if (map.gate !== null) {
     const conductions = bestGate(capture.channels[map.gate].samples, seen.offs, period);
@@ -37,7 +35,7 @@ export function findSwitchOffs(capture: Capture, map: ChannelMap): Events {
   }
   if (map.current !== null) {
     const current = capture.channels[map.current];
-    const pulses = currentConductions(current.samples, current.lsb);
+    const pulses = currentConductions(current);
     if (seen.offs.length === 0 && pulses.length > 0) {
       const offs = fromConductions(capture, map, pulses, [], period);
       offs.forEach(

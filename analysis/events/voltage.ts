@@ -1,4 +1,5 @@
 /** Switch-offs from a voltage trace: onsets of the kick's own direction out of the conduction level. */
+import type { Channel } from "../capture.ts";
 import { meanAndDeviation, medianOf } from "../numeric/robust.ts";
 import { differenceNoise } from "../ring/noise.ts";
 import { conductionStart } from "./conduction.ts";
@@ -18,11 +19,12 @@ const FLAT = 2;
 const SMALL_SHARE = 0.34;
 const STEP_OVERSHOOT = 2.3;
 
-export function voltageSwitchOffs(
-  samples: Float64Array,
-  lsb: number | null,
-): { offs: SwitchOff[]; period: number; noise: number } {
-  const noise = differenceNoise(samples, 0, samples.length, lsb);
+export function voltageSwitchOffs({ samples, lsb, unusable }: Channel): {
+  offs: SwitchOff[];
+  period: number;
+  noise: number;
+} {
+  const noise = differenceNoise(samples, 0, samples.length, lsb, unusable);
   const rough = scaleOf(samples, noise);
   if (!rough) return { offs: [], period: 0, noise };
   const first = findOnsets(samples, rough, noise, lsb);

@@ -96,10 +96,7 @@ function describe(
       ? (-slope * dwell_s * dwell_s) / 2
       : slope * ((dwell_s * Math.exp(-x)) / rate - shape / rate);
   const gradient = [1, shape, byRate];
-  let variance = 0;
-  for (let a = 0; a < 3; a++)
-    for (let b = 0; b < 3; b++) variance += gradient[a] * c[a * 3 + b] * gradient[b];
-  const final = { value: initial + slope * shape, u: Math.sqrt(Math.max(0, variance)) };
+  const final = { value: initial + slope * shape, u: deviation(gradient, c) };
   reading.finalCurrent_A = final;
   reading.initialCurrent_A = startSeen ? { value: initial, u: Math.sqrt(c[0]) } : null;
   const rateU = Math.sqrt(c[8]);
@@ -111,9 +108,7 @@ function describe(
   }
   const scale = slope + rate * initial;
   const inductance = drive_V / scale;
-  const uScale = Math.sqrt(
-    c[4] + 2 * initial * c[5] + initial * initial * c[8] + 2 * rate * c[1] + rate * rate * c[0],
-  );
+  const uScale = deviation([rate, 1, initial], c);
   if (!(inductance * Math.sign(drive_V) > 0 || inductance > 0)) {
     reading.reason = "the current does not rise as the stated supply would drive it";
     return { reading, current_A: final };
@@ -121,7 +116,7 @@ function describe(
   reading.inductance_H = { value: inductance, u: (inductance * uScale) / Math.abs(scale) };
   const resistance = rate * inductance;
   if (rate > 2 * rateU) {
-    const relative = Math.hypot(rateU / rate - (initial * rateU) / scale, Math.sqrt(c[4]) / scale);
+    const relative = deviation([-rate / scale, -1 / scale, 1 / rate - initial / scale], c);
     reading.resistance_ohm = { value: resistance, u: resistance * relative };
     reading.resistance20_ohm = windingAt20(reading.resistance_ohm, setup);
   } else
@@ -133,8 +128,21 @@ function describe(
   return { reading, current_A: final };
 }
 
+/** Standard uncertainty of what has this gradient by (initial, slope, rate). */
+function deviation(gradient: number[], covariance: Float64Array): number {
+  let variance = 0;
+  for (let a = 0; a < 3; a++)
+    for (let b = 0; b < 3; b++) variance += gradient[a] * covariance[a * 3 + b] * gradient[b];
+  return Math.sqrt(Math.max(0, variance));
+}
+
 /** Points the saturating model is fitted to. */
 const SATURATING_POINTS = 160;
+/** Parts of the ramp whose slopes are compared. */
+const STRETCHES = 6;
+/** A core that saturates fast and then rests at V/R steepens in a short part only, as ringing does: the fit tells. */
+const SHORT_STRETCHES = [12, 24];
+const SHORT_RESIDUAL = 0.5;
 
 /** Replaces L and R by the saturating core's where the plain exponential does not explain the ramp. */
 function withSaturation(
@@ -155,7 +163,8 @@ function withSaturation(
   });
   const first = first_s + ((by - 1) / 2) * step_s;
   const alike = fitRamp(coarse, first, step_s * by);
-  if (!alike || !steepens(coarse)) return ramp;
+  const slowly = steepens(coarse, STRETCHES);
+  if (!alike || !(slowly || SHORT_STRETCHES.some((stretches) => steepens(coarse, stretches)))) return ramp;
   const head = fitRamp(coarse.slice(0, Math.max(12, coarse.length >> 2)), first, step_s * by);
   const inductance_H = Math.abs(drive_V) / Math.max(1e-30, head?.slope ?? sign * plain.slope);
   const start = {
@@ -165,6 +174,7 @@ function withSaturation(
   };
   const fit = fitSaturating(coarse, first, step_s * by, Math.abs(drive_V), start);
   if (!fit || !explainsMore(fit, alike, coarse.length) || fit.saturation_A > Math.max(...coarse)) return ramp;
+  if (!slowly && fit.residual > SHORT_RESIDUAL * alike.residual) return ramp;
   const { reading } = ramp;
   const [uL, uR, uI] = fit.u;
   reading.inductance_H = { value: fit.inductance_H, u: uL };

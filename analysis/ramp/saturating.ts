@@ -16,8 +16,10 @@ export interface SaturatingFit {
   knee_A: number;
 }
 
-const STEPS_PER_POINT = 3;
 const MOST_ITERATIONS = 30;
+/** From every start a few steps; the most promising go on. */
+const ROUGH_ITERATIONS = 6;
+const PROMISING = 2;
 /** ln L0, R, ln Is, ln n, i0. */
 const PARAMETERS = 5;
 
@@ -34,15 +36,20 @@ function currents(p: number[], drive_V: number, first_s: number, step_s: number,
     const c = slope(i + (h / 2) * b);
     i += (h / 6) * (a + 2 * b + 2 * c + slope(i + h * c));
   };
-  advance(first_s);
+  advance(first_s - step_s / 2);
   for (let k = 0; k < out.length; k++) {
-    out[k] = i;
-    for (let s = 0; s < STEPS_PER_POINT; s++) advance(step_s / STEPS_PER_POINT);
+    // The values are means over their interval, and a saturating current bends within it: Simpson's rule.
+    const begin = i;
+    advance(step_s / 2);
+    const middle = i;
+    advance(step_s / 2);
+    out[k] = (begin + 4 * middle + i) / 6;
   }
 }
 
 /**
- * values: |current| at first_s + k·step_s after conduction's start. Null where the fit does not settle.
+ * values: means of |current| over step_s about first_s + k·step_s after conduction's start. Null where the
+ * fit does not settle.
  * `start`: first slope's inductance and a resistance.
  */
 export function fitSaturating(
@@ -54,9 +61,8 @@ export function fitSaturating(
 ): SaturatingFit | null {
   const n = values.length;
   const top = Math.max(...values);
-  let best: { p: number[]; cost: number } | null = null;
   const starts = [0.25, 0.6, 1].flatMap((share) => [2, 5].map((exponent) => ({ share, exponent })));
-  for (const { share, exponent } of starts) {
+  const rough = starts.map(({ share, exponent }) => {
     const p = [
       Math.log(start.inductance_H),
       start.resistance_ohm,
@@ -64,8 +70,16 @@ export function fitSaturating(
       Math.log(exponent),
       start.initial_A,
     ];
-    const found = descend(values, first_s, step_s, drive_V, p);
-    if (found && (!best || found.cost < best.cost)) best = found;
+    return descend(values, first_s, step_s, drive_V, p, ROUGH_ITERATIONS);
+  });
+  const promising = rough
+    .filter((found) => found !== null)
+    .toSorted((a, b) => a.cost - b.cost)
+    .slice(0, PROMISING);
+  let best: { p: number[]; cost: number } | null = null;
+  for (const { p } of promising) {
+    const found = descend(values, first_s, step_s, drive_V, p, MOST_ITERATIONS);
+    if (found && !(found.cost >= (best?.cost ?? Infinity))) best = found;
   }
   if (!best) return null;
   const { p, cost } = best;
@@ -117,11 +131,18 @@ function normalMatrix(values: Float64Array, first_s: number, step_s: number, dri
   return { matrix, right, cost };
 }
 
-function descend(values: Float64Array, first_s: number, step_s: number, drive_V: number, start: number[]) {
+function descend(
+  values: Float64Array,
+  first_s: number,
+  step_s: number,
+  drive_V: number,
+  start: number[],
+  iterations: number,
+) {
   let p = start;
   let damping = 1e-2;
   let state = normalMatrix(values, first_s, step_s, drive_V, p);
-  for (let round = 0; round < MOST_ITERATIONS; round++) {
+  for (let round = 0; round < iterations; round++) {
     const damped = state.matrix.slice();
     for (let k = 0; k < PARAMETERS; k++) damped[k * PARAMETERS + k] *= 1 + damping;
     const inverted = inverse(damped, PARAMETERS);

@@ -1,13 +1,12 @@
-/** Stretches of the ramp whose slopes are compared, and the standard errors that make a difference. */
-const STRETCHES = 6;
+/** Standard errors that make a difference between the slopes of two stretches. */
 const STEEPER = 6;
 
 /**
  * Whether the current grows faster somewhere than before: through a constant inductance it never does,
- * whatever else the ramp holds (the secondary's ringing after switch-on averages out of a stretch).
+ * whatever else the ramp holds (the secondary's ringing after switch-on averages out of a long stretch).
  */
-export function steepens(values: Float64Array): boolean {
-  const length = Math.floor(values.length / STRETCHES);
+export function steepens(values: Float64Array, stretches: number): boolean {
+  const length = Math.floor(values.length / stretches);
   if (length < 4) return false;
   let least: Line | null = null;
   for (let from = 0; from + length <= values.length; from += length) {

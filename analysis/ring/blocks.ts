@@ -5,6 +5,8 @@
  */
 
 export interface Blocks {
+  /** Tells these blocks from any others; a fit takes their values for fixed. */
+  serial: number;
   /** Mean of each block; 0 where the block holds an unusable sample. */
   values: Float64Array;
   count: number;
@@ -21,9 +23,10 @@ export interface Blocks {
   moments: Float64Array;
 }
 
+let made = 0;
+
 /**
  * Blocks of `decimation` samples of [from, to). `unusable`: sorted pairs [from, to) of sample numbers.
- * `into` is reused when it is large enough.
  */
 export function makeBlocks(
   samples: Float64Array,
@@ -31,14 +34,12 @@ export function makeBlocks(
   to: number,
   unusable: ArrayLike<number>,
   decimation: number,
-  into?: Float64Array,
 ): Blocks {
   const count = Math.max(0, Math.floor((to - from) / decimation));
-  const values = into && into.length >= count ? into : new Float64Array(count);
+  const values = new Float64Array(count);
   const segments = usableSegments(from, count, decimation, unusable);
   let used = 0;
   let sum = 0;
-  values.fill(0, 0, count);
   const scale = 1 / decimation;
   for (let s = 0; s < segments.length; s += 2) {
     for (let b = segments[s]; b < segments[s + 1]; b++) {
@@ -62,7 +63,7 @@ export function makeBlocks(
       moments[2] += y * b * b;
       moments[3] += y * b * b * b;
     }
-  return { values, count, segments, used, decimation, level, power, moments };
+  return { serial: ++made, values, count, segments, used, decimation, level, power, moments };
 }
 
 /**

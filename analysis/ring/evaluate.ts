@@ -39,6 +39,8 @@ function addWave(
   const e = Math.exp(-decay);
   const zRe = e * Math.cos(omega);
   const zIm = e * Math.sin(omega);
+  const wRe = zRe * zRe - zIm * zIm;
+  const wIm = 2 * zRe * zIm;
   for (let start = 0; start < count; start += RESTART) {
     const i = first + start;
     const magnitude = Math.exp(-decay * i);
@@ -47,13 +49,21 @@ function addWave(
     // Re[(cosine − j·sine)·z^i]
     let re = cosine * c + sine * s;
     let im = cosine * s - sine * c;
+    // Even and odd samples in turns of z²: two chains that need not wait for each other.
+    let oddRe = re * zRe - im * zIm;
+    let oddIm = re * zIm + im * zRe;
     const end = Math.min(count, start + RESTART);
-    for (let k = start; k < end; k++) {
+    for (let k = start; k + 1 < end; k += 2) {
       out[k] += re;
-      const turned = re * zRe - im * zIm;
-      im = re * zIm + im * zRe;
+      out[k + 1] += oddRe;
+      const turned = re * wRe - im * wIm;
+      im = re * wIm + im * wRe;
       re = turned;
+      const turnedOdd = oddRe * wRe - oddIm * wIm;
+      oddIm = oddRe * wIm + oddIm * wRe;
+      oddRe = turnedOdd;
     }
+    if ((end - start) & 1) out[end - 1] += re;
   }
 }
 

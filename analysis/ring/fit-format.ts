@@ -19,6 +19,8 @@ export interface RingFit {
   step_s: number;
   /** Lowest frequency first; empty when nothing could be fitted. */
   modes: FittedMode[];
+  /** Mains pick-up and other slow waves that the ring stands on, part of the model. */
+  pickup: FittedMode[];
   /** Polynomial in t/(window length), lowest power first: offset, slope, …; offset(t) = Σ baseline[k]·(t/T)^k. */
   baseline: number[];
   /**

@@ -6,7 +6,8 @@ import type { RingFit } from "./fit-format.ts";
 import type { Mode } from "./gram.ts";
 import { colourOf, differenceNoise, excessAt } from "./noise.ts";
 import { residualBuffer, searchModes, variance } from "./search.ts";
-import { residualProfile } from "./residuals.ts";
+import { separatePickup } from "./pickup.ts";
+import { residualProfile, wavesOf } from "./residuals.ts";
 import { solve, type Solution } from "./solve.ts";
 import { scaled } from "./start.ts";
 
@@ -22,6 +23,8 @@ export interface FitOptions {
   like?: RingFit;
   /** One period of the ring in samples, rough: lets the search average down what is sampled far finer. */
   period?: number;
+  /** The end of the ring may be left out, where the slowest mode is gone long before the window is over. */
+  trimmed?: boolean;
   /** Noise per sample where it is known; else from the window's differences. */
   noise?: number;
 }
@@ -32,6 +35,8 @@ const SEARCH_VALUES = 4096;
 const SEARCH_PER_CYCLE = 40;
 /** Values a cycle of the fastest mode the last pass keeps: block means lose 1 − sinc² = 0.3 %. */
 const FINE_PER_CYCLE = 32;
+/** e-foldings after which a ring says nothing more about itself (0.3 % of the information is left). */
+const FOLDINGS = 5;
 const none = new Int32Array(0);
 
 /**
@@ -41,24 +46,25 @@ const none = new Int32Array(0);
 export function fitRing(
   samples: Float64Array,
   from: number,
-  to: number,
+  windowEnd: number,
   step_s: number,
   options: FitOptions = {},
 ): RingFit | null {
   const unusable = options.unusable ?? none;
-  const length = to - from;
+  const length = windowEnd - from;
   if (length < 8) return null;
   let start: Mode[];
-  const known = options.like?.modes ?? options.start;
+  const known = options.like ? wavesOf(options.like) : options.start;
   if (known) start = known.map((mode) => perSample(mode, step_s));
   else {
     const fine = Math.floor((options.period ?? 0) / SEARCH_PER_CYCLE);
     const by = Math.max(1, Math.ceil(length / SEARCH_VALUES), fine);
-    const blocks = makeBlocks(samples, from, to, unusable, by);
+    const blocks = makeBlocks(samples, from, windowEnd, unusable, by);
     const found = searchModes(blocks, pinnedValues(samples, from, blocks), options.mostModes ?? 2);
     if (!found) return null;
     start = scaled(found.modes, 1 / by);
   }
+  const to = options.trimmed ? endOfRing(start, from, windowEnd, options.period ?? 0) : windowEnd;
   const fastest = Math.max(...start.map((mode) => mode.omega));
   const decimation = Math.max(1, Math.floor((2 * Math.PI) / fastest / FINE_PER_CYCLE));
   const blocks = makeBlocks(samples, from, to, unusable, decimation);
@@ -67,6 +73,13 @@ export function fitRing(
   const plain = solve(blocks, scaled(start, decimation), degree);
   const solution = options.like ? plain : withBaseline(blocks, plain);
   return describe(samples, from, to, step_s, blocks, inOrder(solution), options);
+}
+
+/** Where the slowest mode is gone, if that is long before `to`; modes per sample. */
+function endOfRing(modes: Mode[], from: number, to: number, period: number): number {
+  const slowest = Math.min(...modes.map((mode) => mode.decay));
+  const end = Math.ceil(from + Math.max(FOLDINGS / slowest, 3 * period));
+  return slowest > 0 && end < from + 0.9 * (to - from) ? end : to;
 }
 
 const perSample = (mode: { frequency_Hz: number; decay_per_s: number }, step_s: number): Mode => ({
@@ -130,10 +143,11 @@ function describe(
   if (!unit || solution.stopped === "singular") return null;
   const residual = residualBuffer(blocks.count);
   residualBlocks(blocks, solution, residual);
-  const noise = options.noise ?? differenceNoise(samples, from, to, options.lsb ?? null);
+  const noise =
+    options.noise ?? differenceNoise(samples, from, to, options.lsb ?? null, options.unusable ?? none);
   const quantisation = (options.lsb ?? 0) ** 2 / 12 / blocks.decimation;
   const perBlock = Math.max(variance(blocks, solution), quantisation);
-  const excess = options.like?.excess ?? excessOf(residual, blocks, solution);
+  const excess = options.like ? excessLike(options.like) : excessOf(residual, blocks, solution);
   const colours = excess.map((ratio) => Math.sqrt(ratio));
   const size = 4 * modes.length;
   const covariance = unit.map(
@@ -144,6 +158,7 @@ function describe(
     to,
     step_s,
     modes,
+    pickup: [],
     baseline: baselineOf(blocks, solution, to - from),
     covariance,
     residual: Math.sqrt(perBlock * blocks.decimation),
@@ -153,11 +168,19 @@ function describe(
     iterations: solution.iterations,
     stopped: solution.stopped,
   };
+  separatePickup(fit);
   // Errors alike within a block (quantisation, slow noise) are smaller per sample than white ones would be.
   if (blocks.decimation > 1 && fit.residual > 1.2 * noise)
     [fit.residual] = residualProfile(samples, fit, from, to, to - from, options.unusable ?? none).rms;
   return fit;
 }
+
+/** Of the other window's fit, in the order of frequency. */
+const excessLike = (like: RingFit): number[] =>
+  wavesOf(like)
+    .map(({ frequency_Hz }, m) => ({ frequency_Hz, ratio: like.excess[m] ?? 1 }))
+    .toSorted((a, b) => a.frequency_Hz - b.frequency_Hz)
+    .map(({ ratio }) => ratio);
 
 function excessOf(residual: Float64Array, blocks: Blocks, solution: Solution): number[] {
   const colour = colourOf(residual, blocks.count);

@@ -17,6 +17,8 @@ export class Gram {
   matrix = new Float64Array(0);
   /** Inner products of the columns with the data. */
   data = new Float64Array(0);
+  /** Blocks, decay and frequency each mode was last projected with: modes held fixed need no second pass. */
+  private readonly projected: number[] = [];
   private readonly pRe = new Float64Array(7);
   private readonly pIm = new Float64Array(7);
   private readonly qRe = new Float64Array(7);
@@ -27,11 +29,12 @@ export class Gram {
     if (this.matrix.length !== this.columns ** 2) {
       this.matrix = new Float64Array(this.columns ** 2);
       this.data = new Float64Array(this.columns);
+      this.projected.length = 0;
     }
     for (let m = 0; m < modes.length; m++) {
       for (let n = m; n < modes.length; n++) this.modePair(blocks, modes, m, n);
       this.modeBaseline(blocks, modes, m, degree);
-      this.project(blocks, modes[m], 4 * m);
+      if (this.isNew(blocks, modes[m], 3 * m)) this.project(blocks, modes[m], 4 * m);
     }
     this.baseline(blocks, 4 * modes.length, degree);
   }
@@ -94,6 +97,15 @@ export class Gram {
       for (let k = j; k <= degree; k++) this.set(base + j, base + k, this.pRe[j + k]);
       this.data[base + j] = blocks.moments[j];
     }
+  }
+
+  private isNew({ serial }: Blocks, { decay, omega }: Mode, at: number): boolean {
+    const { projected } = this;
+    if (projected[at] === serial && projected[at + 1] === decay && projected[at + 2] === omega) return false;
+    projected[at] = serial;
+    projected[at + 1] = decay;
+    projected[at + 2] = omega;
+    return true;
   }
 
   /** Inner products with one mode's four columns. */

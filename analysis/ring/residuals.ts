@@ -1,14 +1,17 @@
 /** Residuals of a fit on raw samples, in short stretches: where one ring explains the data and where not. */
 import { addModes, baselineInto } from "./evaluate.ts";
-import type { RingFit } from "./fit-format.ts";
+import type { FittedMode, RingFit } from "./fit-format.ts";
 
 let scratch = new Float64Array(0);
+
+/** Modes and what they stand on. */
+export const wavesOf = ({ modes, pickup }: RingFit): FittedMode[] => [...modes, ...pickup];
 
 /** model(i) for samples first … first + count, continued outside the fit's window. Valid until the next call. */
 export function modelValues(fit: RingFit, first: number, count: number): Float64Array {
   if (scratch.length < count) scratch = new Float64Array(count);
   baselineInto(fit.baseline, fit.to - fit.from, first - fit.from, count, scratch);
-  addModes(fit.modes, fit.step_s, first - fit.from, count, scratch);
+  addModes(wavesOf(fit), fit.step_s, first - fit.from, count, scratch);
   return scratch;
 }
 

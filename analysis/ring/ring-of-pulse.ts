@@ -12,7 +12,14 @@ import { amplitudeDependence, type AmplitudeDependence } from "./nonlinear.ts";
 import { amplitude, judgeFit } from "./quality.ts";
 import { afterFlatTops } from "./flat-tops.ts";
 import { noiseLimit, residualProfile } from "./residuals.ts";
-import { disturbedRing, merged, undisturbedRing, type Place, type WindowedRing } from "./window.ts";
+import {
+  disturbedRing,
+  merged,
+  partialRing,
+  undisturbedRing,
+  type Place,
+  type WindowedRing,
+} from "./window.ts";
 
 export interface PulseRing extends WindowedRing {
   /** Instant of the switch-off by the model; null where the ring is not seen from its beginning. */
@@ -38,7 +45,7 @@ export function ringOfPulse(place: Omit<Place, "from">, off: SwitchOff): PulseRi
   // A second mode at a harmonic or beside the first, or a little too much left over: the frequency may move.
   const moving = free > begin || (undisturbed && !suspicious(undisturbed.fit)) ? null : nonlinearRing(whole);
   if (moving && (moving.clean || !undisturbed)) return moving;
-  const ring = undisturbed ?? disturbedRing({ ...place, from: free });
+  const ring = undisturbed ?? (free > begin ? disturbedRing({ ...place, from: free }) : partialRing(whole));
   if (!ring) return null;
   const fromBeginning = ring.clean && ring.fit.from <= begin + 0.1 * period;
   return fromBeginning ? extended(place, off, ring) : { ...ring, switchOff: null, nonlinear: null };

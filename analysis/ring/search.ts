@@ -7,6 +7,7 @@ import type { Blocks } from "./blocks.ts";
 import { residualBlocks } from "./evaluate.ts";
 import type { Mode } from "./gram.ts";
 import { colourOf, excessAt } from "./noise.ts";
+import { pickupAmong } from "./pickup.ts";
 import { solve, type Solution } from "./solve.ts";
 import { bestStart, coarser, scaled, strongestLines } from "./start.ts";
 
@@ -14,6 +15,8 @@ import { bestStart, coarser, scaled, strongestLines } from "./start.ts";
 const COARSE_PER_CYCLE = 12;
 const LINES_TRIED = 3;
 const FULL = 0.85;
+/** Fall over the window, in e-foldings, below which a wave may be steady. */
+const STEADY = 0.7;
 
 const buffer = { residual: new Float64Array(0) };
 
@@ -32,7 +35,7 @@ const priceOfMode = (used: number) => 18 + 2 * Math.log(used);
 export function searchModes(blocks: Blocks, pinned: Float64Array, most: number): Solution | null {
   let best = fitNext(blocks, [], pinned, 0);
   if (!best || blocks.power - best.cost < priceOfMode(blocks.used) * variance(blocks, best)) return null;
-  while (best.modes.length < most) {
+  while (best.modes.length < most + Math.min(1, pickups(blocks, best))) {
     const residual = residualBuffer(blocks.count);
     residualBlocks(blocks, best, residual);
     const next: Solution | null = fitNext(blocks, best.modes, residual, variance(blocks, best));
@@ -40,6 +43,17 @@ export function searchModes(blocks: Blocks, pinned: Float64Array, most: number):
     best = next;
   }
   return best;
+}
+
+/** Slow steady waves under the ring: the first leaves the place of a mode free. */
+function pickups({ count }: Blocks, { modes, linear }: Solution): number {
+  const waves = modes.map(({ omega, decay }, m) => ({
+    frequency: omega / (2 * Math.PI),
+    decay,
+    amplitude: Math.hypot(linear[2 * m], linear[2 * m + 1]),
+  }));
+  const steady = modes.map(() => STEADY / count);
+  return pickupAmong(waves, count, steady).length;
 }
 
 /** Residual variance of a block, degrees of freedom counted. */

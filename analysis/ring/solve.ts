@@ -19,7 +19,8 @@ export interface Solution {
   stopped: "converged" | "iterations" | "singular";
 }
 
-const GOOD_STEP = 1e-3;
+/** A step of this share of the standard uncertainty is none. */
+const GOOD_STEP = 1e-2;
 const MOST_ITERATIONS = 40;
 
 /** State at one point: everything the step and the covariance need. */

@@ -3,10 +3,11 @@
  * which the ring is free) to the next edge, the noise floor, or where one ring stops explaining the
  * data. A short burst inside it is left out instead.
  */
+import { medianOf } from "../numeric/robust.ts";
 import type { RingFit } from "./fit-format.ts";
 import { fitRing, type FitOptions } from "./fit.ts";
 import { judgeFit } from "./quality.ts";
-import { noiseLimit, residualProfile } from "./residuals.ts";
+import { noiseLimit, residualProfile, wavesOf } from "./residuals.ts";
 
 export interface WindowedRing {
   fit: RingFit;
@@ -32,29 +33,32 @@ export interface Place {
   unusable: ArrayLike<number>;
 }
 
-/** e-foldings after which a ring says nothing more about itself (0.3 % of the information is left). */
-const FOLDINGS = 5;
 const CLEAN = 1.5;
+/** Noise of a narrow band: its excess over what was estimated before, and how alike its stretches are. */
+const MOST_UNDERESTIMATED = 4;
+const EVEN = 2;
+const EVEN_ENDS = 1.6;
 const MOST_MASKS = 4;
 /** Where the tail of a ring is looked for, as shares of the window; the cycles it must have. */
 const TAILS = [0.04, 0.12, 0.3, 0.5, 0.7];
 const LEAST_PERIODS = 3;
 const MOST_HALVINGS = 9;
 
-/** The ring over the whole free interval, where it explains all of it. */
+/** The ring over the whole free interval, where it explains all of it but for short bursts. */
 export function undisturbedRing(place: Place): WindowedRing | null {
   const whole = fitTrimmed(place, place.from, place.to);
-  return whole && isClean(place, whole)
-    ? { fit: whole, clean: true, courseChanges: false, masked: [] }
-    : null;
+  if (whole && (isClean(place, whole) || isEven(place, whole)))
+    return { fit: whole, clean: true, courseChanges: false, masked: [] };
+  return withoutBursts(place, whole);
 }
 
 /** The ring over whatever part of the interval one ring explains; null without any oscillation. */
-export function disturbedRing(place: Place): WindowedRing | null {
+export const disturbedRing = (place: Place): WindowedRing | null =>
+  undisturbedRing(place) ?? partialRing(place);
+
+/** The same where one ring is known not to explain the whole. */
+export function partialRing(place: Place): WindowedRing | null {
   const whole = fitTrimmed(place, place.from, place.to);
-  if (whole && isClean(place, whole)) return { fit: whole, clean: true, courseChanges: false, masked: [] };
-  const patched = withoutBursts(place, whole);
-  if (patched) return patched;
   const late = lateStart(place);
   const early = earlyEnd(place);
   if (whole && LAST_RESORT * informative(whole) > Math.max(informative(late), informative(early)))
@@ -79,15 +83,9 @@ const options = (place: Place, extra: FitOptions = {}): FitOptions => ({
   ...extra,
 });
 
-/** Fits [from, to); where the slowest mode is gone long before the end, once more on the part it lives in. */
-function fitTrimmed(place: Place, from: number, to: number, extra: FitOptions = {}): RingFit | null {
-  const fit = fitRing(place.samples, from, to, place.step_s, options(place, extra));
-  if (!fit) return null;
-  const slowest = Math.min(...fit.modes.map((mode) => mode.decay_per_s));
-  const end = Math.ceil(from + Math.max(FOLDINGS / (slowest * place.step_s), 3 * place.period));
-  if (!(slowest > 0) || end > from + 0.9 * (to - from)) return fit;
-  return fitRing(place.samples, from, end, place.step_s, options(place, { ...extra, like: fit })) ?? fit;
-}
+/** Fits [from, to), or the part of it that the ring lives in. */
+const fitTrimmed = (place: Place, from: number, to: number, extra: FitOptions = {}): RingFit | null =>
+  fitRing(place.samples, from, to, place.step_s, options(place, { ...extra, trimmed: true }));
 
 function isClean(place: Place, fit: RingFit, unusable = place.unusable): boolean {
   if (!(fit.residual <= CLEAN * noiseOf(place))) return false;
@@ -98,12 +96,27 @@ function isClean(place: Place, fit: RingFit, unusable = place.unusable): boolean
   return rms.every((value) => !(value > limit));
 }
 
+/** What is left is as large at the end as in the beginning: noise, though of a narrow band and so underestimated. */
+function isEven(place: Place, fit: RingFit): boolean {
+  if (!(fit.residual <= MOST_UNDERESTIMATED * noiseOf(place))) return false;
+  const length = Math.ceil(place.period);
+  const { rms } = residualProfile(place.samples, fit, fit.from, fit.to, length, place.unusable);
+  if (rms.length < LEAST_PERIODS) return false;
+  const sorted = rms.toSorted();
+  const third = Math.floor(rms.length / 3);
+  const ratio = medianOf(rms, 0, third) / medianOf(rms, rms.length - third);
+  return sorted.at(-1)! <= EVEN * sorted[rms.length >> 1] && ratio < EVEN_ENDS && ratio > 1 / EVEN_ENDS;
+}
+
 const noiseOf = (place: Place) => Math.max(place.noise, (place.lsb ?? 0) / Math.sqrt(12));
 /** What a stretch of plain noise stays below; coloured noise holds fewer independent values than samples. */
 const limitOf = (place: Place, noise: number, length: number) =>
   CLEAN * noiseLimit(noise, length / (place.colour ?? 1) ** 4);
 const stretch = (place: Place, fit: RingFit) =>
   Math.max(4, Math.round(Math.min(place.period, (fit.to - fit.from) / 8) / 4));
+
+/** Stretches that may be bursts: a share of a long window, two short ones where it is short. */
+const mostMasked = (stretches: number) => Math.max(0.15 * stretches, Math.min(8, 0.25 * stretches));
 
 /** Leaves out isolated stretches of large residual, a few at a time. */
 function withoutBursts(place: Place, whole: RingFit | null): WindowedRing | null {
@@ -121,7 +134,7 @@ function withoutBursts(place: Place, whole: RingFit | null): WindowedRing | null
       share++;
       masked.push(fit!.from + (s - 1) * length, fit!.from + (s + 2) * length);
     });
-    if (share === 0 || share > 0.15 * rms.length) return null;
+    if (share === 0 || share > mostMasked(rms.length)) return null;
     const patched = merged(place.unusable, masked);
     fit = fitRing(place.samples, fit.from, fit.to, place.step_s, options(place, { unusable: patched }));
     if (fit && isClean(place, fit, patched)) return { fit, clean: true, courseChanges: false, masked };
@@ -170,7 +183,7 @@ function lateStart(place: Place): RingFit | null {
 
 /** The ring of `known` modes from an earlier start; a mode that had died by then is looked for once. */
 function holds(place: Place, from: number, to: number, known: RingFit): RingFit | null {
-  const same = fitTrimmed(place, from, to, { start: known.modes });
+  const same = fitTrimmed(place, from, to, { start: wavesOf(known) });
   if (same && isClean(place, same)) return same;
   if (known.modes.length > 1 || !same || same.residual > 6 * noiseOf(place)) return null;
   const fresh = fitTrimmed(place, from, to);

@@ -3,6 +3,7 @@ import { readCapture } from "../../analysis/reading.ts";
 import { captureOf, scoped } from "../reference/captures.ts";
 import { seeded } from "../reference/random.ts";
 import { runBench } from "../reference/switched-coil.ts";
+import { scoreRamps } from "../reference/value-score.ts";
 
 const random = seeded(5);
 const setup = { supply_V: 12, switchOnVoltage_V: 0.2, capacitor_F: 330e-9 };
@@ -68,4 +69,30 @@ describe("the ramp", () => {
     expect(pulse.ramp!.timeConstant_s!.value).toBeCloseTo(7.5e-3 / 4, 4);
     expect(pulse.ramp!.finalCurrent_A!.value).toBeCloseTo(2.92, 1);
   });
+});
+
+// Truth: the values the ramps are integrated from.
+it("ramps of many coils, half of them into saturation: L, R and saturation current", () => {
+  const { inductance, resistance, saturation } = scoreRamps(24, 1);
+  const median = ({ relative }: { relative: number[] }) => relative[relative.length >> 1];
+  expect(median(inductance)).toBeLessThan(0.005);
+  expect(median(resistance)).toBeLessThan(0.01);
+  expect(median(saturation)).toBeLessThan(0.02);
+  expect(inductance.missing + resistance.missing + saturation.missing).toBe(0);
+  expect(inductance.relative.at(-1)).toBeLessThan(0.02);
+});
+
+// Truth: ½LI² into the capacitor, about the supply (closed form, lossless).
+it("where the record ends before the ring, the ramp's L and the stated capacitor give the kick to expect", () => {
+  const bench = { inductance_H: 7.5e-3, resistance_ohm: 1, capacitance_F: 330e-9, supply_V: 12 };
+  const trace = runBench(bench, [[0.4e-3, 3.4e-3]], 880, 4e-6, 20);
+  const channels = [
+    scoped("switch-node", "V", trace.node_V, random),
+    scoped("coil-current", "A", trace.current_A, random, { bits: 12 }),
+  ];
+  const [pulse] = readCapture(captureOf(channels, 4e-6), setup).reading.pulses;
+  expect(pulse.inductance_H).toBeNull();
+  const lossless_V = 12 + Math.hypot(trace.current_A[849] * Math.sqrt(7.5e-3 / 330e-9), 11.8);
+  // A dwell of 0.4 L/R tells L to about 1 %.
+  expect(Math.abs(pulse.expectedPeak_V! / lossless_V - 1)).toBeLessThan(0.01);
 });
