@@ -24,8 +24,8 @@ export function confirm(channel: Channel, candidates: Candidate[], noise: number
   const sure = candidates.map(
     (candidate, k) =>
       candidate.witnessed ??
-      ((hasRing(candidate, noise) && !goesOn(channel, candidates[k - 1], candidate, noise)) ||
-        kicks(channel, candidate, noise)),
+      ((hasRing(candidate, noise) || kicks(channel, candidate, noise)) &&
+        !goesOn(channel, candidates[k - 1], candidate, noise)),
   );
   const known = candidates.filter((_, k) => sure[k] && candidates[k].evidence.switchOff !== null);
   if (known.length === 0) return sure;
@@ -52,19 +52,19 @@ function hasRing({ evidence, quality }: Candidate, noise: number): boolean {
   return decays && largest > 6 * noise && fit.residual < 3 * fit.noise;
 }
 
-/** What rings after a burst is the ring of the pulse before, which goes on: it tells of no new one. */
+/** The ring of the pulse before, still to be seen, explains what comes here: it goes on, and nothing is new. */
 function goesOn(channel: Channel, before: Candidate | undefined, { evidence }: Candidate, noise: number) {
-  const { fit, switchOff, period, freeTo } = evidence;
+  const { switchOff, period, freeTo } = evidence;
   const earlier = before?.evidence.fit;
-  if (!fit || !earlier || switchOff === null || !period) return false;
+  if (!earlier || switchOff === null || !period) return false;
   const from = Math.ceil(switchOff + period);
   const to = Math.min(freeTo, from + Math.ceil(CONTINUED_PERIODS * period));
   if (to - from < period) return false;
   const left = (mode: FittedMode) =>
-    amplitude(mode) * Math.exp(-mode.decay_per_s * (from - fit.from) * fit.step_s);
-  if (Math.max(...fit.modes.map(left)) < 3 * noise) return false;
+    amplitude(mode) * Math.exp(-mode.decay_per_s * (from - earlier.from) * earlier.step_s);
+  if (Math.max(...earlier.modes.map(left)) < 2 * noise) return false;
   const [rms] = residualProfile(channel.samples, earlier, from, to, to - from, channel.unusable).rms;
-  return rms < 1.3 * Math.max(noise, fit.residual);
+  return rms < 1.3 * Math.max(noise, earlier.residual);
 }
 
 /** The kick goes well beyond the change from the conduction level to the level after it. */
