@@ -30,6 +30,8 @@ export interface PulseRing extends WindowedRing {
 /** Share of a period after the edge before the first window begins. */
 const GUARD = 0.1;
 /** How far the model's instant may be from the edge's, in periods: with the noise's share of the ring. */
+/** Periods after switch-off from which on a ring that does not hold from there is another's. */
+const LATE = 0.1;
 const LEAST_REACH = 0.03;
 const MOST_REACH = 0.16;
 /** A single ring leaves less than this of its amplitude behind, however its frequency moves. */
@@ -97,10 +99,11 @@ function extended(place: Omit<Place, "from">, off: SwitchOff, ring: WindowedRing
   const switchOff = { at: crossing.at, u };
   if (start >= fit.from) return { ...ring, switchOff, nonlinear: null };
   const longer = fitRing(samples, start, fit.to, step_s, { unusable, lsb, noise, like: fit });
-  if (!longer) return { ...ring, switchOff, nonlinear: null };
+  if (!longer) return { ...ring, switchOff: null, nonlinear: null };
   const { rms } = residualProfile(samples, longer, start, fit.from + 2, fit.from + 2 - start, unusable);
-  const agrees = !(rms[0] > 1.15 * noiseLimit(Math.max(noise, longer.residual), fit.from + 2 - start));
-  return agrees
-    ? { ...ring, fit: longer, switchOff, nonlinear: null }
-    : { ...ring, switchOff, nonlinear: null };
+  const agrees = rms[0] <= 1.15 * noiseLimit(Math.max(noise, fit.residual), fit.from + 2 - start);
+  if (agrees) return { ...ring, fit: longer, switchOff, nonlinear: null };
+  // What rings after an arc or a clamp is not the rise, and does not lead back to its foot.
+  const late = fit.from - off.at > LATE * period;
+  return { ...ring, switchOff: late ? null : switchOff, nonlinear: null };
 }
