@@ -71,7 +71,14 @@ function pulsesOf(context: PulseContext, { offs, source }: Events): Pulse[] {
     witnessed: offs[k].witnessed,
   }));
   const kept = confirm(context.capture.channels[ring], candidates, context.noise);
-  const pulses = found.filter((_, k) => kept[k]);
+  const pulses = found.flatMap((pulse, k) => {
+    if (!kept[k]) return [];
+    // What was no switch-off does not end the ring before it.
+    let last = k;
+    while (last + 1 < offs.length && !kept[last + 1]) last++;
+    const { freeTo } = offs[last];
+    return freeTo > offs[k].freeTo ? [readPulse(context, { ...offs[k], freeTo }, k)] : [pulse];
+  });
   pulses.forEach((pulse, index) => (pulse.reading.index = pulse.evidence.index = index));
   return pulses;
 }

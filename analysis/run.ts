@@ -5,8 +5,9 @@ import type { CaptureEvidence, PulseEvidence } from "./evidence.ts";
 import { combineRamps } from "./ramp/combine-ramps.ts";
 import type { CaptureReading, Measured, PulseReading, RunCounts, SparkReading } from "./reading-format.ts";
 import type { Setup } from "./setup/schema.ts";
+import { againstQuiet } from "./spark/against-quiet.ts";
 import { countPulses, verdictOf } from "./spark/counts.ts";
-import { expectedOf } from "./spark/expected.ts";
+import { expectedOf, type Expectations } from "./spark/expected.ts";
 import { breakdownOf, sparkEnergy_J, type Breakdown } from "./spark/account.ts";
 import { burnLine } from "./spark/burn-line.ts";
 import { endedEarly, gatherHalfWave, judgeHalfWaves, type HalfWave } from "./spark/half-wave.ts";
@@ -54,8 +55,13 @@ export function judgeRun(evidence: CaptureEvidence[], setup: Setup): RunJudgemen
   const verdicts = judgePulses(judgeable).map((judged, i) =>
     unsure(judged) && !waves[i] ? byItself(judged!, judgeable[i]) : byHalfWave(judged, waves[i]),
   );
-  const run = judgeable.flatMap((place, i) => (verdicts[i] ? [{ ...place, judged: verdicts[i] }] : []));
-  const quiet = run.flatMap(({ judged }, i) => (judged.likelihood.probability < 0.1 ? [i] : []));
+  const first = judgeable.flatMap((place, i) => (verdicts[i] ? [{ ...place, judged: verdicts[i] }] : []));
+  const likelihoods = againstQuiet(first, quietPlaces(first));
+  const run = first.map((place, i) => ({
+    ...place,
+    judged: { ...place.judged, likelihood: likelihoods[i] },
+  }));
+  const quiet = quietPlaces(run);
   const found = new Map(run.map((place, i) => [place.pulse, findings(place, run, quiet, i, setup)]));
   const readings = evidence.map((capture) => {
     const pulses = capture.reading.pulses.map((pulse, p) => judgedPulse(pulse, found.get(capture.pulses[p])));
@@ -83,6 +89,11 @@ interface Place {
   judged: Judged;
 }
 
+const NOTHING: Expectations = { course: [], rise: null };
+
+const quietPlaces = (run: { judged: Judged }[]) =>
+  run.flatMap(({ judged }, i) => (judged.likelihood.probability < 0.1 ? [i] : []));
+
 interface Findings {
   spark: SparkReading;
   energy_J: Measured | null;
@@ -98,9 +109,10 @@ function findings(
   setup: Setup,
 ): Findings {
   const likely = judged.likelihood.probability > 0.1 || (window.secondary?.strikes.length ?? 0) > 0;
-  const expected = likely ? expectedOf(judged, run, quiet, i, window) : null;
+  const expected = likely ? expectedOf(judged, run, quiet, i, window) : NOTHING;
   const times = timesOf(window, judged.traits, expected);
-  const breakdown = likely ? breakdownOf(window, setup, expected, times) : null;
+  const known = expected.course.length > 0;
+  const breakdown = likely ? breakdownOf(window, setup, known ? judged.traits : null, times) : null;
   const spark = sparkReading(judged, window, times, breakdown);
   const sparked = spark.verdict === "spark";
   const energy_J = sparked ? sparkEnergy_J(judged, pulse, setup, window) : null;

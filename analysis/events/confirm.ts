@@ -67,18 +67,72 @@ function goesOn(channel: Channel, before: Candidate | undefined, { evidence }: C
   return rms < 1.3 * Math.max(noise, earlier.residual);
 }
 
-/** The kick goes well beyond the change from the conduction level to the level after it. */
+/** The kick goes well beyond the change from the conduction level to the level after it, or swings about the latter. */
 function kicks(channel: Channel, { evidence }: Candidate, noise: number): boolean {
   const { kick, levelOn, freeFrom, freeTo } = evidence;
-  if (!kick || levelOn === null) return false;
-  const tail = medianOf(channel.samples, Math.floor(freeTo - (freeTo - freeFrom) / 3), freeTo);
-  const change = Math.abs(tail - levelOn);
-  return (
-    // Both levels are means of many samples: coarse steps and hum, not the samples' noise, blur their difference.
-    change > Math.max(2 * noise, 1.5 * (channel.lsb ?? 0)) &&
-    Math.abs(kick.value - levelOn) > 2 * change &&
-    isSmooth(channel, evidence)
+  if (!kick || levelOn === null || !isSmooth(channel, evidence)) return false;
+  const third = (freeTo - freeFrom) / 3;
+  const high = Math.abs(kick.value - levelOn);
+  // The last third may hold the next conduction.
+  return [freeTo - third, freeFrom + third].some((start) => {
+    const [from, to] = [Math.floor(start), Math.floor(start + third)];
+    const levels = levelsOf(channel.samples, from, to, evidence.period ?? to - from);
+    const level = medianOf(levels);
+    const change = Math.abs(level - levelOn);
+    if (high < 2 * change) return false;
+    return (
+      change > levelBlur(levels, noise, channel.lsb ?? 0) ||
+      swingsAbout(channel.samples, evidence, level, noise)
+    );
+  });
+}
+
+/** Pieces of a stretch at most whose levels are compared. */
+const PIECES = 8;
+
+/** Medians over pieces no shorter than a period, so that a ring in them does not count. */
+function levelsOf(samples: Float64Array, from: number, to: number, period: number): Float64Array {
+  const count = Math.min(PIECES, Math.max(1, Math.floor((to - from) / period)));
+  const length = (to - from) / count;
+  return Float64Array.from({ length: count }, (_, k) =>
+    medianOf(samples, Math.floor(from + k * length), Math.floor(from + (k + 1) * length)),
   );
+}
+
+/** Noise of this many steps of the converter makes means finer than a step (Widrow & Kollár). */
+const DITHER = 0.4;
+
+/**
+ * How far two levels, means of many samples each, may lie apart for no change of state: by hum and drift, as
+ * neighbouring levels show them, by the noise in few independent values, and by coarse steps it does not blur.
+ */
+function levelBlur(levels: Float64Array, noise: number, step: number): number {
+  const wander = Math.max(...levels) - Math.min(...levels);
+  return Math.max(1.5 * wander, 0.5 * noise, noise > DITHER * step ? 0.5 * step : 1.5 * step);
+}
+
+/** Swings this far to both sides, in units of the noise, belong to a ring, however an arc has bent it. */
+const FAR = 10;
+
+/** Both sides of its level are reached within two periods, and less of both later. */
+function swingsAbout(
+  samples: Float64Array,
+  { freeFrom, freeTo, period }: PulseEvidence,
+  level: number,
+  noise: number,
+): boolean {
+  const middle = Math.min(Math.floor(freeFrom + 2 * (period ?? 0)), (freeFrom + freeTo) >> 1);
+  const reach = (from: number, to: number) => {
+    let [low, high] = [0, 0];
+    for (let i = from; i < to; i++) {
+      low = Math.min(low, samples[i] - level || 0);
+      high = Math.max(high, samples[i] - level || 0);
+    }
+    return { low: -low, high };
+  };
+  const early = reach(freeFrom, middle);
+  const late = reach(middle, freeTo);
+  return Math.min(early.low, early.high) > FAR * noise && early.low > late.low && early.high > late.high;
 }
 
 /** Neighbouring samples alike over the first half period (von Neumann's ratio): a wave, not a noise burst. */

@@ -57,7 +57,8 @@ export function voltageSwitchOffs({ samples, lsb, unusable }: Channel): {
       witnessed: null,
     };
   });
-  for (let k = 0; k < offs.length; k++) offs[k].freeTo = freeEnd(samples, offs, onsets, k, lsb, width, noise);
+  for (let k = 0; k < offs.length; k++)
+    offs[k].freeTo = freeEnd(samples, offs, onsets[k], k, { lsb, noise, period: scale.period });
   const early = beginsInRing(samples, offs[0] ?? null, scale.period, noise);
   return { offs: early ? [early, ...offs] : offs, period: scale.period, noise };
 }
@@ -93,30 +94,29 @@ function beginsInRing(
 function freeEnd(
   samples: Float64Array,
   offs: SwitchOff[],
-  onsets: Onset[],
+  onset: Onset,
   k: number,
-  lsb: number | null,
-  width: number,
-  noise: number,
+  { lsb, noise, period }: { lsb: number | null; noise: number; period: number },
 ): number {
   const next = offs[k + 1];
   if (next) return Math.floor(next.on ?? next.at!);
-  const onset = onsets[k];
+  const width = Math.max(2, Math.round(period / 8));
   const off = Math.ceil(onset.at) + width;
-  const start = conductionStart(
-    samples,
-    samples.length,
-    off,
-    onset.level,
-    toleranceOf(onset, lsb, width, noise),
-    width,
-  );
+  const tolerance = toleranceOf(onset, lsb, width, noise);
+  const start = conductionStart(samples, samples.length, off, onset.level, tolerance, width);
   if (start === null || start <= off || samples.length - start < 2 * width) return samples.length;
   // Without a step there, the ring has merely settled to where it was before.
   const before = medianOf(samples, Math.max(off, Math.floor(start) - 3 * width), Math.floor(start) - 1);
-  const stepped = Math.abs(before - onset.level) > 3 * toleranceOf(onset, lsb, width, noise);
-  return stepped ? Math.floor(start) : samples.length;
+  const stepped = Math.abs(before - onset.level) > 3 * tolerance;
+  // An arc's end leaves the supply's level, which may lie within a step's tolerance: the whole stretch tells.
+  const { mean } = meanAndDeviation(samples, Math.ceil(start), samples.length);
+  const fine = noise > DITHER * (lsb ?? 0) ? 0.3 * (lsb ?? 0) : lsb;
+  const same = Math.abs(mean - onset.level) < toleranceOf(onset, fine, Math.round(period / 2), noise);
+  return stepped && same ? Math.floor(start) : samples.length;
 }
+
+/** Noise of this many steps of the converter makes means finer than a step (Widrow & Kollár). */
+const DITHER = 0.4;
 
 /** A body diode lets go, or the switch closes: the swing is little more than the change of level behind it. */
 function isStep(samples: Float64Array, onset: Onset, period: number): boolean {
@@ -127,12 +127,22 @@ function isStep(samples: Float64Array, onset: Onset, period: number): boolean {
 
 /** Swings so far above what the other kicks of a train reach are disturbances, and set no measure. */
 const GIANT = 4;
+/** So many other kicks out of the same level make a train. */
+const TRAIN = 4;
 
 function withoutGiants(onsets: Onset[], samples: Float64Array, period: number): Onset[] {
   const kicks = onsets.filter((onset) => !isStep(samples, onset, period));
-  if (kicks.length < 5) return onsets;
-  const usual = medianOf(kicks.map((onset) => Math.abs(onset.swing)));
-  return onsets.filter((onset) => Math.abs(onset.swing) < GIANT * usual);
+  return onsets.filter((giant) => {
+    // What a ring leaves to be taken for an onset begins at other levels.
+    const others = kicks.filter(
+      (onset) =>
+        onset !== giant &&
+        onset.polarity === giant.polarity &&
+        Math.abs(onset.level - giant.level) < LEVEL_SHARE * Math.abs(onset.swing),
+    );
+    if (others.length < TRAIN) return true;
+    return Math.abs(giant.swing) < GIANT * medianOf(others.map((onset) => Math.abs(onset.swing)));
+  });
 }
 
 /** Onsets out of a flat level, in the kick's direction, all from the same level. */
@@ -158,7 +168,9 @@ function outOfConduction(
   const tolerance = Math.max(6 * unrest, 2 * (lsb ?? 0));
   const within = (onset: Onset, about: number, widths: number) =>
     Math.abs(onset.level - about) < widths * Math.max(tolerance, LEVEL_SHARE * Math.abs(onset.swing));
-  const level = medianOf(flat.filter((onset) => within(onset, anchor.level, 2)).map((onset) => onset.level));
+  // Edges at turn-on and at an arc's end leave other levels nearby, by small swings: the kicks have the say.
+  const kicks = flat.filter((onset) => Math.abs(onset.swing) > SMALL_SHARE * reach);
+  const level = medianOf(kicks.filter((onset) => within(onset, anchor.level, 1)).map((onset) => onset.level));
   return flat.filter(
     (onset) =>
       within(onset, level, 1) &&

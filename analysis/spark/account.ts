@@ -3,9 +3,9 @@ import type { PulseEvidence } from "../evidence.ts";
 import type { Measured } from "../reading-format.ts";
 import type { Setup } from "../setup/schema.ts";
 import { standard } from "../setup/toleranced.ts";
-import type { Expected } from "./expected.ts";
 import type { Judged } from "./judge.ts";
 import { sizeAt } from "./split.ts";
+import type { Traits } from "./traits.ts";
 import type { SparkTimes } from "./onset.ts";
 import type { SparkWindow } from "./window.ts";
 
@@ -55,19 +55,32 @@ export interface Breakdown {
   from: "secondary" | "ratio";
 }
 
-/** From the secondary's trace, else the node's swing about its settled level times the stated turns ratio. */
+/**
+ * From the secondary's trace, else the node's swing about its settled level times the stated turns ratio;
+ * null where noise and the onset's doubt leave no figure. `traits`: null where the onset is no more than a guess.
+ */
 export function breakdownOf(
   window: SparkWindow,
   setup: Setup,
-  expected: Expected | null,
+  traits: Traits | null,
   times: SparkTimes,
 ): Breakdown | null {
-  const measured = window.secondary?.strikes[0]?.breakdown_V;
-  if (measured) return { value: Math.abs(measured), u: 0.02 * Math.abs(measured), from: "secondary" };
-  if (!setup.turnsRatio || times.block === null || !expected) return null;
-  const block = Math.min(window.blocks.count - 1, Math.max(0, Math.round(times.block)));
-  const swing = Math.abs(window.blocks.values[block] - expected.settled);
-  const value = swing * setup.turnsRatio;
+  const measured = window.secondary?.strikes[0];
+  if (measured?.breakdown_V) {
+    const value = Math.abs(measured.breakdown_V);
+    // A probe's own scale: two percent, common practice, no source.
+    return { value, u: Math.hypot(0.02 * value, measured.breakdownUncertainty_V ?? 0), from: "secondary" };
+  }
+  if (!setup.turnsRatio || times.block === null || !traits) return null;
+  const { values, count } = window.blocks;
+  const block = Math.min(count - 2, Math.max(1, Math.round(times.block)));
+  const swing = Math.abs(values[block] - traits.split.after.coefficients[0]);
+  const slope = Math.abs(values[block + 1] - values[block - 1]) / 2;
   // Leakage keeps some of the swing from the secondary, or adds to it: a fifth, common practice, no source.
-  return { value, u: 0.2 * value, from: "ratio" };
+  const u = Math.hypot(0.2 * swing, slope, Math.sqrt(traits.split.variance));
+  if (swing < LEAST_BREAKDOWN * u) return null;
+  return { value: swing * setup.turnsRatio, u: u * setup.turnsRatio, from: "ratio" };
 }
+
+/** Below so many times its uncertainty a referred voltage says nothing. */
+const LEAST_BREAKDOWN = 2;

@@ -1,6 +1,6 @@
 /** From what a pulse shows to the probability of a spark. */
 import { distance, scaled, type Reference } from "./reference.ts";
-import { NOISE, type Traits } from "./traits.ts";
+import { NOISE, SPENT, type Traits } from "./traits.ts";
 
 export interface Likelihood {
   probability: number;
@@ -15,7 +15,9 @@ export interface Likelihood {
     | "missing"
     | "doubt"
     | "volt-seconds"
-    | "burn-line";
+    | "burn-line"
+    | "like-quiet"
+    | "unlike-quiet";
   /** Distance of the ring after from the run's quiet ring, as a share; null without reference. */
   away: number | null;
   /** Share of the quiet amplitude that is missing after; null where it is not known. */
@@ -40,11 +42,18 @@ function againstRun(traits: Traits, reference: Reference, rest: [number, number]
     excess,
     reference.misfit > NOISE ? 0 : Math.sqrt(Math.max(0, traits.split.gain)),
   );
+  // Where the quiet ring is far from spent, one that is has been taken from.
+  const early = traits.spent && Math.hypot(...rest) * traits.kept > 2 * SPENT;
+  if (early) return { probability: 0.97, because: "course", away: null, loss: null };
+  const gone = !traits.rest && !traits.spent && !traits.tail && traits.loss === 1 && traits.misfit > NOISE;
+  if (gone) return { probability: 0.95, because: "course", away: null, loss: 1 };
   if (!traits.rest || traits.spent) return cutShort(traits, disturbed, reference.misfit < NOISE);
   const calm = disturbed <= NOISE;
   const scale = currentScale(traits.kick / reference.kick, calm);
   const away = Math.min(distance(traits.rest, rest), distance(traits.rest, scaled(rest, scale)));
   const loss = 1 - Math.hypot(...traits.rest) / (Math.hypot(...rest) * Math.min(1, scale));
+  // A spark only takes: whatever has clearly more than the reference shows that this had sparked itself.
+  if (loss < -MORE) return byItself(traits, null);
   const sure = away / Math.max(0.01, reference.stray);
   const answer = (probability: number, because: Likelihood["because"]) => ({
     probability,
@@ -64,6 +73,9 @@ function againstRun(traits: Traits, reference: Reference, rest: [number, number]
   if (away > 0.03 && sure > (plain ? 2 : 4)) return answer(plain && !traits.ringBefore ? 0.93 : 0.7, "loss");
   return answer(sure > 3 ? 0.2 : 0.01, "ring-goes-on");
 }
+
+/** Share of the reference's amplitude by which more than it is no stray. */
+const MORE = 0.25;
 
 /**
  * Less current gives a smaller ring and a smaller kick alike. But a spark cuts the kick as well: where the
@@ -113,7 +125,7 @@ function byItself(traits: Traits, most: number | null): Likelihood {
   const missing = most && traits.rest ? 1 - Math.hypot(...traits.rest) / most : 0;
   if (missing > 0.2) return { ...answer(0.96, "missing"), loss: missing };
   if (loss !== null && loss > 0.35) return answer(0.98, "loss");
-  const turned = traits.rest ? phaseTurned(traits.rest) : 0;
+  const turned = traits.rest ? phaseTurned(traits.rest, LEADS * traits.passed) : 0;
   if (misfit > 2 * NOISE && turned > 0.7 * FREE_START)
     return answer(turned > FREE_START ? 0.97 : 0.7, "turned");
   if (loss !== null && loss > 0.25) return answer(0.6, "doubt");
@@ -124,15 +136,18 @@ function byItself(traits: Traits, most: number | null): Likelihood {
 
 /** Radians; a saturating core leads by up to about as much, a clamp lags by less. */
 const FREE_START = 1.2;
+/** Share of the phase passed that a saturating core gains at most, and what it gains in all. */
+const LEADS = 0.35;
+const MOST_LEAD = 2;
 
 /**
  * A ring that was free from switch-off on starts near the level of conduction and rises: its low mode, carried
- * back, is nearly a sine. How far it is turned from that, in radians: a lag counts more, a lead
- * less, for a saturating core rings faster at first.
+ * back, is nearly a sine. How far it is turned from that, in radians: a lag counts more, a lead less, for a
+ * saturating core rings faster while its current is large; in a part of a period it gains but little.
  */
-function phaseTurned([cosine, sine]: [number, number]): number {
+function phaseTurned([cosine, sine]: [number, number], lead = MOST_LEAD): number {
   const turn = Math.atan2(-cosine, sine);
-  return turn > 0 ? turn * 1.5 : -0.6 * turn;
+  return turn > 0 ? turn * 1.5 : (-turn * FREE_START) / Math.min(MOST_LEAD, Math.max(0.6, lead));
 }
 
 /** One ring explains a pulse only if it is the ring the kick began: of its size, and starting where it starts. */

@@ -1,5 +1,5 @@
 /** When the spark struck and when it went out: where the trace leaves the expected one, and joins its own ring again. */
-import type { Expected } from "./expected.ts";
+import type { Expectations, Expected } from "./expected.ts";
 import type { Traits } from "./traits.ts";
 import type { SparkWindow } from "./window.ts";
 
@@ -15,8 +15,9 @@ export interface SparkTimes {
 /** Departures this many σ large are no noise, three in a row. */
 const CLEAR = 5;
 
-export function timesOf(window: SparkWindow, traits: Traits, expected: Expected | null): SparkTimes {
-  const onset = (expected && departure(window, traits, expected)) ?? kink(window, traits);
+export function timesOf(window: SparkWindow, traits: Traits, { course, rise }: Expectations): SparkTimes {
+  const onset =
+    leaves(window, traits, course) ?? (rise && departure(window, traits, rise)) ?? kink(window, traits);
   const file_s = (block: number) => window.zero_s + window.first_s + block * window.step_s;
   const out = traits.ringAfter ? rejoining(window, traits, onset ?? traits.a) : null;
   return {
@@ -27,50 +28,35 @@ export function timesOf(window: SparkWindow, traits: Traits, expected: Expected 
   };
 }
 
+/** A slow leak lets what follows it pass for a ring of its own: an expectation that speaks from earlier on wins. */
+function leaves(window: SparkWindow, traits: Traits, course: Expected[]): number | null {
+  const found = course.flatMap((expected) => departure(window, traits, expected) ?? []);
+  if (found.length === 0) return null;
+  const earliest = Math.min(...found);
+  return found.find((block) => block - earliest < 0.1 * window.period) ?? earliest;
+}
+
 /** First block from which the trace stays away from the expected one, carried back to where it parted. */
-function departure(window: SparkWindow, traits: Traits, { values, from, slack }: Expected): number | null {
+function departure(
+  window: SparkWindow,
+  traits: Traits,
+  { values, from, slack, spread, to }: Expected,
+): number | null {
   const y = window.blocks.values;
   const sigma = Math.sqrt(traits.split.variance);
-  const shift = slack > 0 ? shiftOf(y, values, window.period, from) : 0;
-  const value = (i: number) => (shift === 0 ? values[i] : between(values, i - shift));
   // A block off the screen tells nothing: it agrees with whatever is expected.
   const seen = measuredBlocks(window.blocks);
-  const away = (i: number) => (seen[i] ? Math.abs(y[i] - value(i)) : 0);
-  const limit = (i: number) =>
-    CLEAR * sigma + slack * (Math.abs(value(i)) + 10 * Math.abs(value(i + 1) - value(i)));
-  const last = Math.min(window.blocks.count - 3, traits.b + Math.round(window.period));
+  const off = (i: number) => (seen[i] ? y[i] - values[i] : 0);
+  const doubt = (i: number) =>
+    slack * (Math.abs(values[i]) + 10 * Math.abs(values[i + 1] - values[i])) + 3 * (spread?.[i] ?? 0);
+  const beyond = (i: number) => Math.abs(off(i)) > CLEAR * sigma + doubt(i);
+  const last = Math.min(window.blocks.count - 3, to - 2, traits.b + Math.round(window.period));
   for (let i = slack > 0 ? from + 3 : from; i < last; i++) {
-    if (away(i) < limit(i) || away(i + 1) < limit(i + 1) || away(i + 2) < limit(i + 2)) continue;
-    return partedAt(i, away, limit, from);
+    if (!beyond(i) || !beyond(i + 1) || !beyond(i + 2)) continue;
+    const earliest = Math.max(from, i - Math.round(0.5 * window.period));
+    return partedAt(off, (k) => Math.hypot(sigma, doubt(k) / 2), earliest, i);
   }
   return null;
-}
-
-/**
- * Blocks by which another pulse's trace must be moved to lie on this one's first rise: two switch-offs are
- * known to a sample or two only.
- */
-function shiftOf(y: Float64Array, values: Float64Array, period: number, from: number): number {
-  const rise = Math.max(4, Math.round(0.04 * period));
-  let [best, least] = [0, Number.POSITIVE_INFINITY];
-  for (let shift = -MOST_SHIFT; shift <= MOST_SHIFT; shift += 0.125) {
-    let sum = 0;
-    let count = 0;
-    for (let i = from; i < Math.min(from + rise, y.length); i++) {
-      if (i - shift < from) continue;
-      sum += (y[i] - between(values, i - shift)) ** 2;
-      count++;
-    }
-    if (count >= 2 && sum / count < least) [best, least] = [shift, sum / count];
-  }
-  return best;
-}
-
-const MOST_SHIFT = 3;
-
-function between(values: Float64Array, at: number): number {
-  const left = Math.min(values.length - 2, Math.max(0, Math.floor(at)));
-  return values[left] + (at - left) * (values[left + 1] - values[left]);
 }
 
 /**
@@ -98,23 +84,35 @@ function kink(window: SparkWindow, traits: Traits): number | null {
 const curve = (y: Float64Array, i: number) => y[i - 2] - 2 * y[i] + y[i + 2];
 
 /**
- * The trace parts from the expected one like (t − t0)²: its current has jumped, not its voltage. The root
- * of the distance is a straight line; its foot is t0, but not earlier than what was clearly still together.
+ * An arc makes the trace part from the expected one like (t − t0)², for its current's slope has jumped; a glow,
+ * which only begins to leak, like (t − t0)³. t0 by least squares over both, from `from` to just after the
+ * first clear block.
  */
 function partedAt(
-  first: number,
-  away: (i: number) => number,
-  limit: (i: number) => number,
+  off: (i: number) => number,
+  doubt: (i: number) => number,
   from: number,
+  first: number,
 ): number {
-  let together = first;
-  while (together > from && away(together) > limit(together) / 2.5) together--;
-  const [r0, r1] = [Math.sqrt(away(first)), Math.sqrt(away(first + 1))];
-  const r2 = Math.sqrt(away(first + 2));
-  const slope = Math.max(r1 - r0, (r2 - r0) / 2);
-  const foot = slope > 0 ? first - r0 / slope : first;
-  return Math.min(first, Math.max(foot, together - 1));
+  let [best, least] = [first, Number.POSITIVE_INFINITY];
+  for (const power of [2, 3])
+    for (let t0 = from; t0 <= first; t0 += 0.125) {
+      let [cross, square, rest] = [0, 0, 0];
+      for (let i = from; i <= first + 1; i++) {
+        const weight = 1 / doubt(i) ** 2;
+        const grown = i > t0 ? (i - t0) ** power : 0;
+        cross += weight * off(i) * grown;
+        square += weight * grown * grown;
+        rest += weight * off(i) ** 2;
+      }
+      const cost = rest - (cross * cross) / square + (power === 3 ? GLOW_PROOF : 0);
+      if (cost < least) [best, least] = [t0, cost];
+    }
+  return best;
 }
+
+/** So much better must the slow parting explain the trace (χ²): arcs are the usual case. */
+const GLOW_PROOF = 9;
 
 /** Going back from the ring after: the last block that does not lie on it. */
 function rejoining(window: SparkWindow, traits: Traits, onset: number): number | null {

@@ -69,6 +69,20 @@ export function reasonsOf(
         at(burn!.from),
       );
       return reasons;
+    case "like-quiet":
+      say(
+        `laid on the run's quiet pulses it differs by no more than they do (${percent(Math.abs(likelihood.loss ?? 0))} of size apart)`,
+        at(0),
+      );
+      return reasons;
+    case "unlike-quiet":
+      if (after)
+        say(`the trace leaves that of the run's quiet pulses ${after} after switch-off`, times.onset_s);
+      say(
+        `from its third period on ${percent(Math.max(0, 1 - (likelihood.loss ?? 0)))} of the quiet pulses' course is left`,
+        at(2 * window.period),
+      );
+      return reasons;
     case "doubt":
       say(`a disturbance of strength ${strength} that could be a spark or something else`, at(traits.a));
       break;

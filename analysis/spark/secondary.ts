@@ -1,11 +1,17 @@
 /** What the secondary's own channels show: the voltage's collapse, the arc's current. */
 import type { Channel } from "../capture.ts";
 import type { CaptureEvidence, PulseEvidence } from "../evidence.ts";
+import { factor, solveFactored } from "../numeric/cholesky.ts";
 import { median } from "../numeric/median.ts";
 
 export interface SecondaryEvidence {
   /** Sample positions (fractional); breakdown in the channel's unit, null off screen or from the current alone. */
-  strikes: { onset: number; extinction: number | null; breakdown_V: number | null }[];
+  strikes: {
+    onset: number;
+    extinction: number | null;
+    breakdown_V: number | null;
+    breakdownUncertainty_V: number | null;
+  }[];
   /** Largest magnitude of the secondary voltage after switch-off; null without that channel or clipped. */
   peak_V: number | null;
 }
@@ -67,13 +73,14 @@ function strikesOf(
     for (let i = from + k * width; i < from + (k + 1) * width; i++) sum += samples[i];
     return sum / width;
   });
+  const fine = Math.hypot(noiseOf(samples, from, to), (lsb ?? 0) / Math.sqrt(12));
   return collapses(means, lsb, 0, means.length, period / width).map(({ onset, extinction }) => {
     const about = from + Math.floor(onset) * width;
     const last = highest(samples, Math.max(from, about - width), Math.min(to, about + 2 * width));
     return {
       onset: last + 0.5,
       extinction: extinction === null ? null : from + (extinction + 0.5) * width,
-      breakdown_V: samples[last],
+      ...readAtCollapse(samples, last, from, period, fine),
     };
   });
 }
@@ -95,6 +102,7 @@ function collapses(
   to: number,
   period: number,
 ): SecondaryEvidence["strikes"] {
+  const fine = Math.hypot(noiseOf(samples, from, to), (lsb ?? 0) / Math.sqrt(12));
   const noise = Math.max(noiseOf(samples, from, to), lsb ?? 0);
   let largest = 0;
   for (let i = from; i < to; i++) largest = Math.max(largest, Math.abs(samples[i]));
@@ -106,7 +114,11 @@ function collapses(
     if (Math.abs(before) < least || !breaksOff(samples, i, from) || !fallsAway(samples, i, stays)) continue;
     const onset = lastHigh(samples, i);
     const extinction = comesBack(samples, onset + 2, to, before, noise);
-    strikes.push({ onset: onset + 0.5, extinction, breakdown_V: extrapolated(samples, onset) });
+    strikes.push({
+      onset: onset + 0.5,
+      extinction,
+      ...readAtCollapse(samples, onset, from, period, fine),
+    });
     i = Math.max(i + FALLS_WITHIN + stays, Math.floor(extinction ?? to));
   }
   return strikes;
@@ -150,11 +162,57 @@ function lastHigh(samples: Float64Array, i: number): number {
   return best;
 }
 
-/** The voltage went on rising for half a sample, on average, after the last one seen. */
-function extrapolated(samples: Float64Array, last: number): number {
-  const slope = (samples[last] - samples[last - 2]) / 2;
-  const sign = Math.sign(samples[last]);
-  return samples[last] + (sign * slope > 0 ? slope / 2 : 0);
+/** Samples before the collapse that its voltage is read from, few enough for a line or a parabola. */
+const READ = { least: 4, most: 8, periods: 0.06 };
+/** A parabola's bend must take away so many σ² of what a line leaves (Akaike, one more parameter). */
+const BENT = 2;
+
+/**
+ * The collapse lies between two samples, half of one after the last on average: a line through the last ones,
+ * or a parabola where they bend, read there. Its uncertainty is the noise's share and that of the place, evenly
+ * spread over a sample.
+ */
+function readAtCollapse(samples: Float64Array, last: number, from: number, period: number, noise: number) {
+  const wanted = Math.min(READ.most, Math.max(READ.least, Math.round(READ.periods * period)));
+  const values = samples.subarray(Math.max(from, last - wanted + 1), last + 1).toReversed();
+  const line = values.length >= READ.least ? polynomialAhead(values, 2) : null;
+  const bent = values.length > READ.least ? polynomialAhead(values, 3) : null;
+  const read = line && bent && line.rest - bent.rest > BENT * noise * noise ? bent : line;
+  if (!read)
+    return {
+      breakdown_V: samples[last],
+      breakdownUncertainty_V: Math.max(noise, 0.1 * Math.abs(samples[last])),
+    };
+  const u = Math.hypot(noise * read.gain, read.slope / Math.sqrt(12));
+  return { breakdown_V: read.value, breakdownUncertainty_V: u };
+}
+
+/** Least squares through values 0, 1, 2 … steps back, read half a step ahead: value, slope, noise gain, what is left. */
+function polynomialAhead(values: Float64Array, order: number) {
+  const powers = (x: number) => Float64Array.from({ length: order }, (_, r) => x ** r);
+  const gram = new Float64Array(order * order);
+  const right = new Float64Array(order);
+  let square = 0;
+  values.forEach((value, k) => {
+    const row = powers(-k);
+    square += value * value;
+    for (let r = 0; r < order; r++) {
+      right[r] += row[r] * value;
+      for (let c = 0; c < order; c++) gram[order * r + c] += row[r] * row[c];
+    }
+  });
+  const place = powers(0.5);
+  const [coefficients, gain] = [right.slice(), place.slice()];
+  if (!factor(gram, order)) return null;
+  solveFactored(gram, order, coefficients);
+  solveFactored(gram, order, gain);
+  const dot = (a: Float64Array, b: Float64Array) => a.reduce((sum, x, k) => sum + x * b[k], 0);
+  return {
+    value: dot(coefficients, place),
+    slope: coefficients[1] + (coefficients[2] ?? 0),
+    gain: Math.sqrt(dot(gain, place)),
+    rest: square - dot(coefficients, right),
+  };
 }
 
 /** The arc's voltage stays small and steady; it is out when the voltage leaves that level for good. */
@@ -181,7 +239,8 @@ function currentPulses({ samples, lsb }: Channel, from: number, to: number): Sec
     if (Math.abs(samples[i] - rest) < limit || Math.abs(samples[i + 1] - rest) < limit) continue;
     let end = i + 2;
     while (end < to && Math.abs(samples[end] - rest) > limit / 2) end++;
-    strikes.push({ onset: i - 0.5, extinction: end < to ? end - 0.5 : null, breakdown_V: null });
+    const extinction = end < to ? end - 0.5 : null;
+    strikes.push({ onset: i - 0.5, extinction, breakdown_V: null, breakdownUncertainty_V: null });
     i = end;
   }
   return strikes;

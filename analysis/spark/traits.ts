@@ -19,8 +19,12 @@ export interface Traits {
   ringAfter: boolean;
   /** At the disturbance the ring before had already sunk into the noise: too little for a spark. */
   spent: boolean;
+  /** Share of its amplitude that a quiet ring still has at the disturbance, over the noise of a block. */
+  kept: number;
   /** The free ring after begins later than half a period. */
   late: boolean;
+  /** Phase of the low mode from switch-off to where the ring after begins, in radians. */
+  passed: number;
   /** One free ring explains the whole pulse to the noise. */
   oneRing: boolean;
   /** The disturbance begins in the last stretch of the window. */
@@ -41,6 +45,8 @@ export interface Traits {
 
 /** Strength below which a disturbance is noise: √χ² of a few hundred blocks strays by about 7. */
 export const NOISE = 12;
+/** Amplitude in σ of a block below which a ring has sunk into the noise. */
+export const SPENT = 4;
 /** Shorter stretches say nothing certain of a ring, in periods. */
 const LEAST_RING = 0.7;
 
@@ -102,8 +108,10 @@ function freshTraits(window: SparkWindow, modes: KnownMode[], ceiling: number): 
     ringBefore,
     ringAfter,
     tail,
-    spent: ringBefore && leftAt(sums, split, a, window, modes[0]) < 4 * Math.sqrt(split.variance),
+    spent: ringBefore && leftAt(sums, split, a, window, modes[0]) < SPENT * Math.sqrt(split.variance),
+    kept: Math.exp(-modes[0].decay_per_s * (window.first_s + a * window.step_s)) / Math.sqrt(split.variance),
     late: b > 0.5 * period,
+    passed: 2 * Math.PI * modes[0].frequency_Hz * (window.first_s + b * window.step_s),
     oneRing,
     rest: known ? rest : null,
     jump,

@@ -94,7 +94,8 @@ function turn(blocks: Blocks): void {
  * The next conduction may begin inside the window: a stretch of a third of a period or more that lies still, nearer
  * to the level of conduction than to what the ring settles to, and lasts to the window's end, all goes. A diode
  * can hold as still and for longer, but the ring goes on after it. Judged by means over stretches, for the two
- * levels may be closer than the noise.
+ * levels may be closer than the noise. A switch closes at once: an arc's plateau is come to by its
+ * leakage's fast ring.
  */
 function leaveOutConduction(blocks: Blocks, levelOn: number, noise: number, period: number): void {
   const { values, count } = blocks;
@@ -116,7 +117,34 @@ function leaveOutConduction(blocks: Blocks, levelOn: number, noise: number, peri
     if (still && since < 0) since = i + 1 - length;
     if (!still && i < count - length) since = -1;
   }
-  if (since >= 0) cut(blocks, Math.max(0, since - 2));
+  if (since < 0) return;
+  if (apart > SURE_APART * noise || closesAtOnce(values, since, levelOn, 4 * noise, period))
+    cut(blocks, Math.max(0, since - 2));
+}
+
+/** Levels this many σ of a block apart are told by themselves, whatever hum adds. */
+const SURE_APART = 6;
+/** Blocks that a closing switch takes at most, and the share of the swing before that it takes away. */
+const CLOSING = { blocks: 3, share: 0.2 };
+
+/** Whether the trace came to this stretch from its swing in one step; yes where nothing swung any more. */
+function closesAtOnce(
+  values: Float64Array,
+  since: number,
+  levelOn: number,
+  band: number,
+  period: number,
+): boolean {
+  const far = (i: number) => Math.abs(values[i] - levelOn);
+  let last = since + Math.round(0.3 * period) - 1;
+  while (last >= 0 && far(last) < band) last--;
+  const reach = (from: number) => {
+    let most = 0;
+    for (let i = Math.max(0, from); i <= last; i++) most = Math.max(most, far(i));
+    return most;
+  };
+  const swing = reach(last - Math.round(period));
+  return swing < 2 * band || reach(last - CLOSING.blocks) > CLOSING.share * swing;
 }
 
 /** Mean over whole periods, after the first: what the ring swings about. */
@@ -176,12 +204,26 @@ function conductionNoise(pulse: PulseEvidence, samples: Float64Array, decimation
   const from = Math.ceil(Math.max(0, conducts, to - 64 * decimation));
   const { values, count } = makeBlocks(samples, from, Math.max(from, to), [], decimation);
   if (count < 8) return 0;
+  const all = scatterOf(values, 0, count);
+  // A contact may have opened before it bounced: then the earlier half alone is conduction.
+  const early = count < 16 ? all : scatterOf(values, 0, count >> 1);
+  return all > BOUNCED * early ? early : all;
+}
+
+const BOUNCED = 2;
+
+/** Standard deviation about a straight line. */
+function scatterOf(values: Float64Array, from: number, to: number): number {
+  const count = to - from;
   const middle = (count - 1) / 2;
+  let mean = 0;
+  for (let i = from; i < to; i++) mean += values[i] / count;
   let [square, lean, spread] = [0, 0, 0];
-  for (let i = 0; i < count; i++) {
-    square += values[i] ** 2;
-    lean += values[i] * (i - middle);
-    spread += (i - middle) ** 2;
+  for (let k = 0; k < count; k++) {
+    const value = values[from + k] - mean;
+    square += value ** 2;
+    lean += value * (k - middle);
+    spread += (k - middle) ** 2;
   }
   return Math.sqrt(Math.max(0, square - (lean * lean) / spread) / (count - 2));
 }

@@ -59,7 +59,6 @@ export function integrateRing(
     coilCurrent_A: new Float64Array(samples),
     strikes: [],
   };
-  // At least four, so that the gap gives way between two samples and not on one.
   const substeps = Math.max(4, Math.ceil(step_s / (fastestPeriod_s(circuit) / 40)));
   const h = step_s / substeps;
   let state: State = [start.node_V, start.current_A, start.secondary_V ?? 0, start.secondaryCurrent_A ?? 0];
@@ -71,12 +70,34 @@ export function integrateRing(
     waves.gapCurrent_A[i] = arc === 0 || !gap ? 0 : gapCurrent(gap, state);
     for (let k = 0; k < substeps; k++) {
       const time_s = i * step_s + (k + 1) * h;
-      state = step(circuit, gap, state, arc, h);
+      const before = state;
+      state = step(circuit, gap, before, arc, h);
+      // The gap gives way where the voltage gets there, not at the step's end.
+      const share = gap && arc === 0 ? givesWayAt(gap, before, state, (gap.lag_s - time_s) / h + 1) : null;
+      if (gap && share !== null) {
+        state = step(circuit, gap, before, 0, share * h);
+        arc = switchGap(gap, state, 0, time_s - (1 - share) * h, waves);
+        state = step(circuit, gap, state, arc, (1 - share) * h);
+      }
       if (circuit.bounces_s?.some(([from, to]) => time_s >= from && time_s < to)) state[0] = start.node_V;
       if (gap) arc = switchGap(gap, state, arc, time_s, waves);
     }
   }
   return waves;
+}
+
+/**
+ * Share of a step after which the gap gives way: when the voltage reaches the breakdown's, or the lag is over
+ * (`lag`, in steps from this one's start) with the voltage already there; null where neither falls in this step.
+ */
+function givesWayAt(gap: Gap, before: State, after: State, lag: number): number | null {
+  const [from, to] = [Math.abs(before[2]), Math.abs(after[2])];
+  if (before[2] * after[2] <= 0 || lag > 1) return null;
+  // A hair beyond, so that the gap sees it reached.
+  const level = gap.breakdown_V * (1 + 1e-9);
+  const reached = from >= level ? 0 : to > level ? (level - from) / (to - from) : 2;
+  const share = Math.max(reached, lag + 1e-9);
+  return share > 0 && share <= 1 && from + share * (to - from) >= level ? share : null;
 }
 
 const gapCurrent = (gap: Gap, state: State) =>

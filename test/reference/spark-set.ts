@@ -145,6 +145,8 @@ function makePulse(
   };
 }
 
+const GOLDEN = (Math.sqrt(5) - 1) / 2;
+
 function gapOf(
   kind: SparkKind,
   bench: RandomBench,
@@ -154,7 +156,9 @@ function gapOf(
   const least = kind === "low" ? 2.5 : 0.6;
   const lag =
     kind === "first-rise" ? 0 : Math.floor(bench.free * random.between(0.05, kind === "low" ? 0.6 : 0.4));
-  const lag_s = kind === "first-rise" ? 0 : Math.max(least * bench.period_s, lag * bench.step_s);
+  // Between two samples: a gap does not wait for the scope, and one that strikes on a sample is read half a sample off.
+  const between_s = ((GOLDEN * lag) % 1) * bench.step_s;
+  const lag_s = kind === "first-rise" ? 0 : Math.max(least * bench.period_s, lag * bench.step_s) + between_s;
   const from = Math.min(bench.free - 2, Math.round(lag_s / bench.step_s));
   const ahead = full.secondary_V.subarray(from, from + Math.ceil(bench.period_s / bench.step_s));
   const local_V = kind === "first-rise" ? reach_V : Math.max(...ahead.map(Math.abs));
