@@ -73,9 +73,16 @@ function compared(run: Member[], quiet: number[], place: number): Comparison | n
     let [n, s, sy, sx, sxx, sxy, syy] = [0, 0, 0, 0, 0, 0, 0];
     for (let k = 0; k < segments.length; k += 2)
       for (let i = Math.max(start, segments[k]); i < Math.min(segments[k + 1], count); i++) {
-        const w = 1 / (variance + spread[i] ** 2);
-        [n, s, sy, sx] = [n + 1, s + w, sy + w * y[i], sx + w * values[i]];
-        [sxx, sxy, syy] = [sxx + w * values[i] ** 2, sxy + w * values[i] * y[i], syy + w * y[i] ** 2];
+        const w = 1 / (variance + spread[i] * spread[i]);
+        const wx = w * values[i];
+        const wy = w * y[i];
+        n++;
+        s += w;
+        sx += wx;
+        sy += wy;
+        sxx += wx * values[i];
+        sxy += wx * y[i];
+        syy += wy * y[i];
       }
     const [cxx, cxy, cyy] = [sxx - (sx * sx) / s, sxy - (sx * sy) / s, syy - (sy * sy) / s];
     return { n, multiple: cxy / cxx, known: cxx, rest: cyy - (cxy * cxy) / cxx };

@@ -98,8 +98,21 @@ export function quietNeighbours(
     .filter((other) => Math.abs(Math.log(scale(other))) < MOST_SCALE)
     .slice(0, MODELS);
   if (models.length === 0) return null;
-  return asSeen(models, window, scale);
+  const scales = models.map(scale);
+  const earlier = held.get(window);
+  const same =
+    earlier?.models.length === models.length &&
+    earlier.models.every(
+      (each, k) => each === models[k].window && Math.abs(earlier.scales[k] - scales[k]) < 1e-3,
+    );
+  if (same) return earlier.expected;
+  const expected = asSeen(models, window, scale);
+  held.set(window, { models: models.map((model) => model.window), scales, expected });
+  return expected;
 }
+
+/** What a window was laid on the last time: a growing run is judged again and again. */
+const held = new WeakMap<SparkWindow, { models: SparkWindow[]; scales: number[]; expected: Expected }>();
 
 /** The median of other pulses in this one's blocks: one of them may be no quiet one after all. */
 function asSeen(models: Member[], window: SparkWindow, scale: (model: Member) => number): Expected {

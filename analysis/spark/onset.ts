@@ -95,15 +95,18 @@ function partedAt(
   first: number,
 ): number {
   let [best, least] = [first, Number.POSITIVE_INFINITY];
+  const weights = Float64Array.from({ length: first + 2 - from }, (_, k) => 1 / doubt(from + k) ** 2);
+  const offs = weights.map((_, k) => off(from + k));
+  const rest = offs.reduce((sum, value, k) => sum + weights[k] * value * value, 0);
   for (const power of [2, 3])
     for (let t0 = from; t0 <= first; t0 += 0.125) {
-      let [cross, square, rest] = [0, 0, 0];
-      for (let i = from; i <= first + 1; i++) {
-        const weight = 1 / doubt(i) ** 2;
-        const grown = i > t0 ? (i - t0) ** power : 0;
-        cross += weight * off(i) * grown;
-        square += weight * grown * grown;
-        rest += weight * off(i) ** 2;
+      let cross = 0;
+      let square = 0;
+      for (let i = Math.max(from, Math.ceil(t0)); i <= first + 1; i++) {
+        const t = i - t0;
+        const grown = power === 2 ? t * t : t * t * t;
+        cross += weights[i - from] * offs[i - from] * grown;
+        square += weights[i - from] * grown * grown;
       }
       const cost = rest - (cross * cross) / square + (power === 3 ? GLOW_PROOF : 0);
       if (cost < least) [best, least] = [t0, cost];
