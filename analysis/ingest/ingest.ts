@@ -33,6 +33,8 @@ export interface ChunkParser {
   spare?(): ArrayBuffer | undefined;
   /** Its values have been copied: their memory may be used again. */
   release?(chunk: ParsedChunk): void;
+  /** No more pieces will come. */
+  close?(): Promise<void>;
 }
 
 interface Ingested {
@@ -82,6 +84,8 @@ export async function ingest(
   const layout = planLayout(head, stream.ended, setup, options.sidecar ?? null);
   const columns = new Columns(layout, likelyRows(layout, source.size));
   const end = await readData(stream, head.subarray(layout.dataStart), layout, columns, options);
+  // What the threads and their pieces take is given back before the channels are looked through.
+  await options.parser?.close?.();
   return { captures: finish(layout, columns, setup, end), layout: layout.signature };
 }
 

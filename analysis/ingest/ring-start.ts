@@ -1,5 +1,7 @@
 /** The largest kick of a channel, looked at coarsely: how it begins and how densely it is sampled. */
 
+import { medianOf } from "../numeric/robust.ts";
+
 export interface RingStart {
   /** The record begins at full swing: there is no rest and no rise before it. */
   fromFirstSample: boolean;
@@ -12,6 +14,8 @@ export interface RingStart {
 }
 
 const crossingsLooked = 12;
+/** Values that a level or a noise is taken from, however long the stretch. */
+const LOOKED = 4096;
 
 export function ringStart(samples: Float64Array): RingStart | null {
   const rest = tailLevel(samples);
@@ -41,7 +45,7 @@ export function ringStart(samples: Float64Array): RingStart | null {
 
 /** The level the record ends on: the middle of its last twentieth. */
 function tailLevel(samples: Float64Array): number | null {
-  const level = medianOf(samples.subarray(Math.floor(0.95 * samples.length)));
+  const level = medianOf(samples, Math.floor(0.95 * samples.length), samples.length, LOOKED);
   return Number.isNaN(level) ? null : level;
 }
 
@@ -60,11 +64,6 @@ function zeroCrossings(share: (i: number) => number, peak: number, end: number):
   return crossings;
 }
 
-const medianOf = (values: Float64Array) => {
-  const ordered = values.filter((value) => value === value).toSorted();
-  return ordered[ordered.length >> 1] ?? NaN;
-};
-
 /**
  * The conduction before the kick holds a level; behind a blocking capacitor it sags towards zero from its
  * first moment on (a current limiter, which lifts the level too, does so at the end). Answers the sag as a
@@ -72,14 +71,14 @@ const medianOf = (values: Float64Array) => {
  */
 function sagBefore(samples: Float64Array, kick: number, rest: number): number | null {
   const end = kick - 1;
-  const last = medianOf(samples.subarray(Math.max(0, end - 10), end));
+  const last = medianOf(samples, Math.max(0, end - 10), end);
   if (!(Math.abs(last - rest) > 0) || end < 60) return null;
   let start = end;
   while (start > 0 && (samples[start - 1] - rest) / (last - rest) > 0.5) start--;
   const length = end - start;
   if (start === 0 || length < 50) return null;
   const third = Math.floor(length / 10);
-  const levelAt = (from: number) => medianOf(samples.subarray(from, from + third)) - rest;
+  const levelAt = (from: number) => medianOf(samples, from, from + third, LOOKED) - rest;
   const [first, middle, final] = [start + 2, start + (length >> 1), end - third].map(levelAt);
   const sag = first - final;
   if (Math.abs(rest) > 0.25 * Math.abs(first) || Math.abs(sag) < noiseOf(samples, start, end)) return null;
@@ -88,6 +87,7 @@ function sagBefore(samples: Float64Array, kick: number, rest: number): number | 
 }
 
 function noiseOf(samples: Float64Array, from: number, to: number): number {
-  const steps = samples.subarray(from + 2, to).map((value, i) => Math.abs(value - samples[from + 1 + i]));
-  return 2 * medianOf(steps) + 1e-12;
+  const first = Math.max(from + 2, to - LOOKED);
+  const steps = samples.subarray(first, to).map((value, i) => Math.abs(value - samples[first - 1 + i]));
+  return 2 * medianOf(steps, 0, steps.length, LOOKED) + 1e-12;
 }

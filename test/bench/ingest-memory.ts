@@ -12,6 +12,7 @@ const onProgress = () => {
   last = performance.now();
 };
 const { captures } = await readFile(process.argv[2], {}, { onProgress });
+onProgress();
 const seconds = (performance.now() - start) / 1000;
 const arrays = captures
   .flatMap(({ channels }) => channels)

@@ -16,7 +16,7 @@ const worthThreads = 8 * 1024 * 1024;
 const mostThreads = 8;
 
 export interface ParserPool extends ChunkParser {
-  close(): void;
+  close(): Promise<void>;
 }
 
 export function openParser(bytes: number): ParserPool | undefined {
@@ -68,9 +68,11 @@ class Pool implements ParserPool {
     return result;
   }
 
-  close(): void {
-    for (const worker of this.workers) void worker.terminate();
+  async close(): Promise<void> {
     this.fail(new Error("the parser was closed"));
+    this.spares.length = 0;
+    this.values.length = 0;
+    await Promise.all(this.workers.splice(0).map((worker) => worker.terminate()));
   }
 
   private fail(error: Error): void {

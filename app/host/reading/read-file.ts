@@ -46,6 +46,8 @@ async function readOne(path: string, setup: Setup, options: ReadOptions): Promis
   return sidecar === null ? read : readAlone(path, setup, options, sidecar);
 }
 
+const beat_ms = 100;
+
 async function readAlone(
   path: string,
   setup: Setup,
@@ -54,8 +56,11 @@ async function readAlone(
 ): Promise<ReadFile> {
   const file = await openFile(path);
   const parser = openParser(file.bytes);
+  let beat: NodeJS.Timeout | undefined;
   try {
     const progress = () => onProgress?.(file.share());
+    // While threads start and pieces are awaited nothing else tells that it goes on.
+    beat = setInterval(progress, beat_ms);
     const { captures, layout } = await ingest(file.source, setup, { progress, signal, parser, sidecar });
     return { sha256: await file.finish(), bytes: file.bytes, layout, captures };
   } catch (error) {
@@ -66,7 +71,8 @@ async function readAlone(
       "Cut the record into shorter files",
     );
   } finally {
-    parser?.close();
+    clearInterval(beat);
+    await parser?.close();
     await file.close();
   }
 }
