@@ -25,13 +25,15 @@ export function ringPeriod(
   const next = onsets.find((onset) => onset.at > anchor.at && sharpness(onset) > 0.4 * sharpness(anchor));
   const from = Math.ceil(anchor.at);
   const to = Math.floor(Math.min(next?.at ?? samples.length, samples.length, from + LOOKED_PERIODS * rough));
-  const slow = slowRing(samples, onsets, rough, noise, lsb);
-  if (to - from < 3 * rough) return slow ?? rough;
+  if (to - from < 3 * rough) return slowRing(samples, onsets, rough, noise, lsb) ?? rough;
   const width = Math.max(1, Math.floor(rough / 16));
   const early = linePeriod(samples, from, to, width, 1.5, 0) ?? rough;
   const start = Math.round(from + LATE * (to - from));
   const late = linePeriod(samples, start, to, width, 4, 40 * noise * noise);
   if (late !== null && late > 1.2 * early && late < MUCH_SLOWER * early) return late;
+  // Where the fast ring is still the strongest late in the free interval it is the coil's own.
+  const goesOn = late !== null && Math.abs(late / early - 1) < 0.2 && (!next || alike(next, anchor));
+  const slow = goesOn ? null : slowRing(samples, onsets, rough, noise, lsb);
   return slow !== null && slow > MUCH_SLOWER * early ? slow : early;
 }
 

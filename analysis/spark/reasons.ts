@@ -101,6 +101,9 @@ export function reasonsOf(
     );
   if (spark && !traits.ringAfter) say("no free ring is seen after it", at(traits.b));
   if (!spark && reference && likelihood.away !== null)
-    say(`its ring agrees with the run's quiet pulses within ${percent(likelihood.away)}`, at(traits.b));
+    say(
+      `its ring agrees with the run's quiet pulses within ${percent(Math.max(0.01, likelihood.away))}`,
+      at(traits.b),
+    );
   return reasons;
 }
