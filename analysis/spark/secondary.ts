@@ -52,6 +52,8 @@ function noiseOf(samples: Float64Array, from: number, to: number): number {
 /** An arc takes the voltage away within this many samples, and leaves this share of it at most. */
 const FALLS_WITHIN = 2;
 const LEFT = 0.4;
+/** A step of at least this share of the fall's steepest is part of the fall. */
+const PART = 0.25;
 /** Breakdowns are looked for above this share of the pulse's largest voltage. */
 const LEAST = 0.12;
 
@@ -152,13 +154,16 @@ function fallsAway(samples: Float64Array, i: number, stays: number): boolean {
   return true;
 }
 
-/** The sample before the steepest step of the fall. */
+/** The sample before the steepest step of the fall, or before the steps of its kind that lead to it. */
 function lastHigh(samples: Float64Array, i: number): number {
   let [best, steepest] = [i, 0];
   for (let k = i - 1; k < i + FALLS_WITHIN; k++) {
     const step = Math.abs(samples[k + 1] - samples[k]);
     if (step > steepest) [best, steepest] = [k, step];
   }
+  const sign = Math.sign(samples[best]);
+  // An arc takes its time: a sample in the middle of the fall is none of the rise.
+  while (best > i - 2 && sign * (samples[best - 1] - samples[best]) > PART * steepest) best--;
   return best;
 }
 
