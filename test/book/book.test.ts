@@ -40,6 +40,16 @@ describe("a run in the book", () => {
     expect(book.ensureRun({ key: "name:a", name: "a", folder: null })).toBe(id);
   });
 
+  it("keeps a capture that lies under two paths once, and says so", () => {
+    const id = run();
+    const run2 = judged(two);
+    run2.files[1].sha256 = run2.files[0].sha256;
+    book.keepRun(id, run2);
+    expect(book.captures(id)).toHaveLength(1);
+    expect(book.pulses(id, {}).rows.map(({ number }) => number)).toEqual([1, 2]);
+    expect(book.run(id).attention[0].text).toContain("/bench/b.csv: is the same capture as /bench/a.csv");
+  });
+
   it("adds a reading beside the old one when the setup changed, and never drops the old one", () => {
     const id = run();
     book.keepRun(id, judged(two));

@@ -37,6 +37,7 @@ export function keeper(db: DatabaseSyncInstance, trail: Trail) {
      VALUES (?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?)`,
   );
   const solved = db.prepare("DELETE FROM problems WHERE run = ? AND path = ?");
+  const twice = db.prepare("INSERT OR REPLACE INTO problems VALUES (?, ?, 'same-capture', ?, ?)");
   const supersede = db.prepare("UPDATE captures SET position = -1 WHERE run = ? AND position >= 0");
   const forgetSuperseded = db.prepare(
     "DELETE FROM pulses WHERE capture IN (SELECT id FROM captures WHERE run = ? AND position < 0)",
@@ -95,7 +96,14 @@ export function keeper(db: DatabaseSyncInstance, trail: Trail) {
     supersede.run(run);
     let position = 0;
     let number = 0;
+    const kept = new Map<string, string>();
     for (const file of files) {
+      const twin = kept.get(file.sha256);
+      if (twin !== undefined) {
+        twice.run(run, file.path, `is the same capture as ${twin}, byte for byte: it is kept once`, isoNow());
+        continue;
+      }
+      kept.set(file.sha256, file.path);
       const setup = JSON.stringify(file.setup);
       for (const [r, reading] of file.readings.entries()) {
         const { index, count } = reading.record;
