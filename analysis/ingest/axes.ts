@@ -46,27 +46,34 @@ export function findAxes(numeric: HeadColumn[], symbolic: number[], timingStated
 
 const countName = /^(#|n|no|nr|nummer|sample|samples|index|point|count|number)\b/i;
 
+/** Of a counter's steps this share may go astray: lines lost or written twice, a damaged cell. */
+const strayCounts = 0.02;
+
 /**
  * 0, 1, 2 … (or from 1; from anywhere where the file's beginning is lost and no name says time), starting anew
- * where a record does; a stated unit of time makes it a time.
+ * where a record does; a stated unit of time makes it a time. Empty and damaged cells count for nothing.
  */
 function isCounter({ head, name }: HeadColumn): boolean {
-  const late = head[0] > 1 && Number.isInteger(head[0]) && !timeName.test(name.name);
-  if (name.unit || head.length < 2 || !(head[0] === 0 || head[0] === 1 || late)) return false;
-  let restarts = 0;
-  for (let i = 1; i < head.length; i++) {
-    if (head[i] === head[i - 1] + 1) continue;
-    if (head[i] !== head[0]) return false;
-    restarts++;
+  const counts = head.filter(Number.isInteger);
+  if (name.unit || counts.length < 2 || counts.length < (1 - strayCounts) * head.length) return false;
+  const [first] = counts;
+  const late = first > 1 && !timeName.test(name.name);
+  if (!(first === 0 || first === 1 || late)) return false;
+  let [restarts, strays] = [0, 0];
+  for (let i = 1; i < counts.length; i++) {
+    if (counts[i] === counts[i - 1] + 1) continue;
+    if (counts[i] === first) restarts++;
+    else strays++;
   }
-  return restarts <= head.length / 8;
+  return restarts <= counts.length / 8 && strays <= strayCounts * counts.length;
 }
 
 /** Whether the first column merely counts rows and a time runs beside it, whatever the names row says. */
 export function countsBesideTime([count, time, ...values]: Float64Array[]): boolean {
   if (!count || !time || values.length === 0) return false;
   const name = { name: "", spelled: null, unit: null };
-  return isCounter({ column: 0, head: count, name }) && !time.every(Number.isInteger) && isEven(time);
+  const whole = time.every((value) => Number.isNaN(value) || Number.isInteger(value));
+  return isCounter({ column: 0, head: count, name }) && !whole && isEven(time);
 }
 
 function isNamedTime({ name, head, column }: HeadColumn): boolean {
@@ -106,9 +113,10 @@ export function isMonotonic(head: Float64Array, share = 0.97): boolean {
   return up + down > 0 && Math.max(up, down) >= share * (up + down);
 }
 
-/** Monotonic, and as good as straight over each half: rounding and repeats allowed. */
-function isEven(head: Float64Array): boolean {
-  if (head.length < 2 || !isMonotonic(head)) return false;
+/** Monotonic, and as good as straight over each half: rounding, repeats and a few cells without a number allowed. */
+function isEven(cells: Float64Array): boolean {
+  const head = cells.filter((value) => !Number.isNaN(value));
+  if (head.length < 2 || head.length < 0.95 * cells.length || !isMonotonic(head)) return false;
   const direction = Math.sign(longestRise(head));
   let from = 0;
   for (let i = 1; i <= head.length; i++) {

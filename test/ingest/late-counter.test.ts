@@ -32,3 +32,15 @@ it("takes an exponent after D only as Fortran writes it, signed: a stray letter 
   expect(samples[0]).toBeCloseTo(Number(value(123)), 10);
   expect(samples[300 - 123]).toBeNaN();
 });
+
+it("tells the running number from the time across blank, lost, doubled and damaged lines", () => {
+  const line = (k: number) => `${k},${(k * 2e-6).toExponential(6)},${value(k)}`;
+  const file = Array.from({ length: 400 }, (_, k) => line(k));
+  file.splice(90, 0, ",,,");
+  file.splice(150, 1);
+  file.splice(200, 0, file[200]);
+  file[300] = file[300].replace("300", "3x0");
+  const [capture] = ingestBytes(new TextEncoder().encode(["Time(S),Node(V)", ...file].join("\n")), {});
+  expect(capture.timebase.step_s! / 2e-6).toBeCloseTo(1, 2);
+  expect(capture.channels.map(({ name }) => name)).toEqual(["Node"]);
+});
