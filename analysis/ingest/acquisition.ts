@@ -50,14 +50,15 @@ function says(
   return said.some((text) => valued.test(text)) && (keyed.test(key) || said.some((text) => keyed.test(text)));
 }
 
-/** "A" and "A peak": lowest and highest of each interval in two columns. */
+/** "A" and "A peak", "A min" and "A max": lowest and highest of each interval in two columns. */
 const twins = ({ channels }: Capture) =>
   channels.some(({ name }, i) => {
     const before = channels[i - 1]?.name;
-    return (
-      before !== undefined && name.startsWith(before) && /peak|max|min|env/i.test(name.slice(before.length))
-    );
+    return before !== undefined && name !== before && extremeWord.test(name) && stem(name) === stem(before);
   });
+
+const extremeWord = /[\s_.-]*\(?\b_?(peak|max|min|env)\w*(\s+det\w*)?\)?\s*$/i;
+const stem = (name: string) => name.replace(extremeWord, "").toLowerCase();
 
 const leadingBlank = ({ unusable, samples, overrange }: Channel) =>
   unusable[0] === 0 && unusable[1] >= 3 && unusable[1] < samples.length && overrange < unusable[1];

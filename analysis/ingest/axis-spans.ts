@@ -5,6 +5,7 @@ import { lastDigit, measureInterval } from "./interval.ts";
 import type { Layout } from "./layout.ts";
 import { readNumber } from "./number.ts";
 import { splitSpans, type Span } from "./spans.ts";
+import type { TimeColumn } from "./time-column.ts";
 import type { RecordTime } from "./time-base.ts";
 
 export function axisSpans(layout: Layout, columns: Columns, group: AxisGroup): RecordTime[] {
@@ -13,11 +14,14 @@ export function axisSpans(layout: Layout, columns: Columns, group: AxisGroup): R
   const column = columns.times.get(group.axis)!;
   const name = layout.names.get(group.axis) ?? null;
   const common = { name, axis: true, counterFrom: null };
-  if (column.pairs && rows >= 6 && rows % 2 === 0) {
-    const span = { from: 0, to: rows, first: column.first, last: column.last };
-    const step = Math.abs(span.last - span.first) / (rows / 2 - 1);
+  if (column.pairs && rows >= 6) {
+    // A file cut between the two of a pair ends one row and one step later: that row is left out.
+    const [pairs, times] = [Math.floor(rows / 2), Math.ceil(rows / 2)];
+    const step = Math.abs(column.last - column.first) / (times - 1);
+    const last = column.last - (times - pairs) * column.direction * step;
+    const span = { from: 0, to: 2 * pairs, first: column.first, last };
     const quantum = quantumOf(layout, group.axis, columns, span);
-    const uncertainty = quantum / Math.sqrt(6) / (rows / 2 - 1);
+    const uncertainty = quantum / Math.sqrt(6) / (times - 1);
     return [
       {
         ...common,
@@ -36,7 +40,8 @@ export function axisSpans(layout: Layout, columns: Columns, group: AxisGroup): R
     .filter(({ from, to }) => to - from >= 2)
     .map((span) => {
       const quantum = quantumOf(layout, group.axis!, columns, span);
-      const measured = measureInterval(span, values, quantum, column.anchors);
+      const even = measureInterval(span, values, quantum, column.anchors);
+      const measured = isBrokenPairs(column, quantum) ? { ...even, step: NaN } : even;
       const inSpan = mended.filter((row) => row >= span.from && row < span.to).length;
       return {
         ...common,
@@ -50,6 +55,13 @@ export function axisSpans(layout: Layout, columns: Columns, group: AxisGroup): R
       };
     });
 }
+
+/**
+ * About every time twice, though the digits could tell the two apart: envelope pairs of which some rows are
+ * lost, not rounding. Rows then tell nothing of the interval: span/(n − 1) would be half of it.
+ */
+const isBrokenPairs = ({ rows, repeats, smallest }: TimeColumn, quantum: number) =>
+  Math.abs(repeats - rows / 2) < 0.05 * rows && smallest > 3 * quantum;
 
 /** No time in the data: the whole is one record. */
 export function withoutAxis({ axes }: Layout, rows: number): RecordTime {

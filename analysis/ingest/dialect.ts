@@ -1,6 +1,7 @@
 /** Separator and decimal mark, found together from the number-like lines, not from the first line. */
 import { splitCells } from "./cells.ts";
 import { readCell, type CellKind, type NumberFormat } from "./number.ts";
+import { groupsDigits } from "./thousands.ts";
 
 export interface Dialect {
   separator: string;
@@ -30,7 +31,7 @@ export interface DialectChoice {
   best: Run;
 }
 
-const separators = ["\t", ";", ",", " "];
+const separators = ["\t", ";", "|", ",", " "];
 
 /** Judged by the last of the lines, where the data are; up to this many characters of them. */
 const judged = 40_000;
@@ -48,9 +49,15 @@ export function chooseDialect(lines: string[], decimalMark: "." | "," | null): D
     if (score > (chosen?.score ?? -Infinity)) chosen = { dialect, score };
   }
   if (!chosen) return null;
-  const { dialect } = chosen;
-  const rows = lines.map((line) => readRow(line, dialect));
-  const best = bestRun(rows);
+  let { dialect } = chosen;
+  let rows = lines.map((line) => readRow(line, dialect));
+  let best = bestRun(rows);
+  const { decimal, thousands } = dialect.format;
+  if (best && !decimalMark && thousands === null && groupsDigits(rows, best, decimal)) {
+    dialect = { ...dialect, format: { decimal: otherMark(decimal), thousands: decimal } };
+    rows = lines.map((line) => readRow(line, dialect));
+    best = bestRun(rows);
+  }
   const prose = best !== null && best.numbers <= best.texts && best.to - best.from < fewestMixed;
   return best === null || prose ? null : { dialect, rows, best };
 }
@@ -66,20 +73,28 @@ function lastLines(lines: string[]): string[] {
 function candidates(lines: string[], decimalMark: "." | "," | null): Dialect[] {
   const text = lines.slice(0, 2000).join("\n");
   const found: Dialect[] = [];
-  for (const thousands of [false, true])
+  const groups = ["none", "mark", ...(/\d'\d{3}/.test(text) ? ["'"] : [])];
+  for (const group of groups)
     for (const separator of separators) {
       if (separator !== " " && !text.includes(separator)) continue;
       for (const decimal of [".", ","] as const) {
-        if (decimal === "," && (separator === "," || !text.includes(","))) continue;
+        if (decimal === "," && (separator === "," ? !quotedFraction.test(text) : !text.includes(",")))
+          continue;
         if (decimalMark && decimal !== decimalMark && !(separator === "," && decimalMark === ",")) continue;
-        const mark = decimal === "." ? "," : ".";
+        const mark = otherMark(decimal);
         const possible = text.includes(mark) && (mark !== separator || text.includes('"'));
-        if (thousands && !possible) continue;
-        found.push({ separator, format: { decimal, thousands: thousands ? mark : null } });
+        if (group === "mark" && !possible) continue;
+        const thousands = group === "none" ? null : group === "mark" ? mark : group;
+        found.push({ separator, format: { decimal, thousands } });
       }
     }
   return found;
 }
+
+/** Between commas a decimal comma stands in quotes; three digits behind it may be a group of thousands. */
+const quotedFraction = /"\s*[+-]?\d+,(\d{1,2}|\d{4,})(e[+-]?\d+)?\s*"/i;
+
+const otherMark = (mark: "." | ",") => (mark === "." ? "," : ".");
 
 export function readRow(line: string, { separator, format }: Dialect): Row {
   const cells = splitCells(line, separator);

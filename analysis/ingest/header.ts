@@ -74,14 +74,24 @@ function takeNames(above: HeaderLine[], block: Block) {
     units = last.cells;
     rest.pop();
   }
-  const next = rest[rest.length - 1];
+  const next = pastRemarks(rest, block);
   if (next && isNamesRow(next, rest, block, units !== null)) {
     names = cellsOf(next, block);
-    rest.pop();
+    rest.splice(rest.indexOf(next), 1);
   } else if (units && !units.some((cell) => /\d/.test(cell)) && !next) {
     return namesOrUnits(units, rest);
   }
   return { rest, names, units };
+}
+
+/** The last line above the data; where remarks follow a names row that knows its time or units, that row. */
+function pastRemarks(above: HeaderLine[], block: Block): HeaderLine | undefined {
+  const last = above[above.length - 1];
+  const spoken = last?.comment ? above.findLast(({ comment: remark }) => !remark) : undefined;
+  if (!spoken || !isNamesRow(spoken, above, block, false)) return last;
+  return spoken.cells.some((cell) => timeName.test(splitName(cell).name) || splitName(cell).unit)
+    ? spoken
+    : last;
 }
 
 /** A lone row of words that are all units: "s,A" names a channel A, "s,V" gives units. */

@@ -33,7 +33,7 @@ export function readCell(cell: string, format: NumberFormat): { kind: CellKind; 
 /** A number in the file's spelling, else null: signs, either decimal mark, grouped digits, exponents after E or D. */
 export function readNumber(text: string, format: NumberFormat): number | null {
   if (format.decimal === "." && plain.test(text)) return Number(text);
-  let spelled = text.replace(/^−/, "-").replace(/(?<=[.,]\d*)d(?=[+-]\d{2,3}$)/i, "e");
+  let spelled = text.replaceAll("−", "-").replace(/(?<=[.,]\d*)d(?=[+-]\d{2,3}$)/i, "e");
   if (format.thousands !== null && spelled.includes(format.thousands)) {
     if (!grouped(spelled, format)) return null;
     spelled = spelled.replaceAll(format.thousands, "");

@@ -119,7 +119,8 @@ function findJoints(values: Float64Array): number[] {
 }
 
 function spansBetween(column: TimeColumn, joints: number[], values: Float64Array | null): Span[] {
-  const bounds = [0, ...joints, column.rows];
+  // Rows without a time at the ends of the column have no place on it.
+  const bounds = [column.firstRow, ...joints, column.lastRow + 1];
   const at = new Map(column.joints.map((joint) => [joint.row, joint]));
   return bounds.slice(1).map((to, i) => {
     const from = bounds[i];
@@ -130,14 +131,15 @@ function spansBetween(column: TimeColumn, joints: number[], values: Float64Array
         first: at.get(from)?.after ?? column.first,
         last: at.get(to)?.before ?? column.last,
       };
-    return { from, to, first: edge(values, from, to, 1), last: edge(values, from, to, -1) };
+    return filled(values, from, to);
   });
 }
 
-function edge(values: Float64Array, from: number, to: number, by: 1 | -1): number {
-  let i = by > 0 ? from : to - 1;
-  while (i > from && i < to - 1 && values[i] !== values[i]) i += by;
-  return values[i];
+/** Without the rows at either end whose time is no number. */
+function filled(values: Float64Array, from: number, to: number): Span {
+  while (to - from > 1 && Number.isNaN(values[from])) from++;
+  while (to - from > 1 && Number.isNaN(values[to - 1])) to--;
+  return { from, to, first: values[from], last: values[to - 1] };
 }
 
 /** Packets of two or three rows that start over are no record of a waveform. */

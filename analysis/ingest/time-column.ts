@@ -19,6 +19,9 @@ export class TimeColumn {
   rows = 0;
   first = NaN;
   last = NaN;
+  /** Rows of these two: cells without a number may stand before and after them. */
+  firstRow = 0;
+  lastRow = 0;
   /** +1 rising, −1 falling; from the first rows. */
   direction = 0;
   /** Where time goes against its direction. */
@@ -57,7 +60,7 @@ export class TimeColumn {
     if (this.rows + chunk.length > keptRows) this.kept = null;
     this.kept?.push(chunk.slice());
     const { direction } = this;
-    let { last, smallest, largest, pairs } = this;
+    let { last, lastRow, smallest, largest, pairs } = this;
     for (let i = 0; i < chunk.length; i++) {
       const value = chunk[i];
       if (value !== value) {
@@ -68,12 +71,16 @@ export class TimeColumn {
       const before = last;
       const step = (value - before) * direction;
       last = value;
+      lastRow = this.rows + i;
       if (step > 0) {
         if (step < smallest) smallest = step;
         if (step > largest) largest = step;
       } else if (step === 0) this.repeats++;
       else if (step < 0) this.join({ row: this.rows + i, before, after: value });
-      else this.first = value;
+      else {
+        this.first = value;
+        this.firstRow = lastRow;
+      }
       if (pairs && (step === 0) !== ((this.rows + i) % 2 === 1)) pairs = false;
     }
     for (
@@ -82,7 +89,7 @@ export class TimeColumn {
       row += anchorEvery
     )
       this.anchors.push(chunk[row - this.rows]);
-    Object.assign(this, { last, smallest, largest, pairs });
+    Object.assign(this, { last, lastRow, smallest, largest, pairs });
     this.rows += chunk.length;
   }
 

@@ -11,7 +11,7 @@ import type { ShapeFile } from "./shapes/shape.ts";
 const slowest_ms = 2000;
 /** Shapes whose cells are not one channel's column each are tried for crashes only. */
 const notByColumn =
-  /utf16|envelope-pairs|trace-per-row|comma-comma|thousands|symbols|\.dat$|wide-shots|own-axes/;
+  /utf16|envelope-pairs|trace-per-row|comma-comma|thousands|symbols|\.dat$|wide-shots|own-axes|n-grouped|n-quoted|n-minus|n-upright|n-envelope/;
 /** Notes that own up to samples left out or added. */
 const owned =
   /unreadable|short|long|cut|missing|skipped|overrange|mended|damaged|fewer|ambiguous|uneven|dropped|column|records/;
@@ -56,7 +56,7 @@ export function tryOne(shape: ShapeFile, bytes: Uint8Array, tally: Tally): strin
 /** Where times stand in a column, damage must not move the interval without a word. */
 function wrongInterval(shape: ShapeFile, captures: Capture[]): string | null {
   const expected = shape.records[0]?.step_s;
-  if (!expected || !/^(p-|s01|s02|s12|s14)/.test(shape.file) || shape.setup) return null;
+  if (!expected || !/^(p-|n-|s01|s02|s12|s14)/.test(shape.file) || shape.setup) return null;
   const wrong = captures.find(({ timebase, notes }) => {
     const error = Math.abs((timebase.step_s ?? expected) / expected - 1);
     return error > 0.05 && !notes.some(({ code }) => owned.test(code) || /^(time|interval)-/.test(code));
