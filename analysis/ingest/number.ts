@@ -43,7 +43,9 @@ export function readNumber(text: string, format: NumberFormat): number | null {
 }
 
 function grouped(text: string, { decimal, thousands }: NumberFormat): boolean {
-  const [whole] = text.replace(/^[+-]/, "").split(decimal);
+  const [whole, ...fraction] = text.replace(/^[+-]/, "").split(decimal);
+  // Behind the decimal mark nothing is grouped: there the mark ends a cell ("0.70, 0.57,").
+  if (fraction.some((part) => part.includes(thousands ?? ""))) return false;
   const groups = whole.split(thousands ?? "");
   return groups.every((group, i) => (i === 0 ? /^\d{1,3}$/ : /^\d{3}$/).test(group));
 }

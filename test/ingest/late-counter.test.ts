@@ -44,3 +44,14 @@ it("tells the running number from the time across blank, lost, doubled and damag
   expect(capture.timebase.step_s! / 2e-6).toBeCloseTo(1, 2);
   expect(capture.channels.map(({ name }) => name)).toEqual(["Node"]);
 });
+
+it("a damaged cell does not make grouping marks of the separators", () => {
+  const line = (k: number) =>
+    `${(k * 2e-6).toExponential(6)}, ${value(k)}, ${k === 300 ? "0.,792" : "0.5728"}, `;
+  const [capture] = ingestBytes(
+    rows((k) => line(k)),
+    {},
+  );
+  // RFC 4180, section 2.4: the commas part cells, so that the damaged one is "0.".
+  expect(capture.channels[1].samples[300 - 123]).toBe(0);
+});
