@@ -6,12 +6,10 @@ import type { Channel } from "../capture.ts";
 import type { PulseEvidence } from "../evidence.ts";
 import { meanAndDeviation, medianOf } from "../numeric/robust.ts";
 import type { RingQuality } from "../reading-format.ts";
-import type { FittedMode } from "../ring/fit-format.ts";
+import { makeBlocks } from "../ring/blocks.ts";
+import type { RingFit } from "../ring/fit-format.ts";
 import { amplitude } from "../ring/quality.ts";
-import { residualProfile } from "../ring/residuals.ts";
-
-/** How long a ring is followed on to see whether it goes on. */
-const CONTINUED_PERIODS = 4;
+import { costAt } from "../ring/solve.ts";
 
 export interface Candidate {
   evidence: PulseEvidence;
@@ -21,18 +19,21 @@ export interface Candidate {
 
 /** Candidates in order of time; answers for each whether it is a pulse. */
 export function confirm(channel: Channel, candidates: Candidate[], noise: number): boolean[] {
+  const rings = clearest(candidates);
+  const nothingNew = candidates.map(
+    (candidate) => candidate.witnessed === null && ringsThrough(channel, rings, candidate, noise),
+  );
   const sure = candidates.map(
     (candidate, k) =>
       candidate.witnessed ??
-      ((hasRing(candidate, noise) || kicks(channel, candidate, noise)) &&
-        !goesOn(channel, candidates[k - 1], candidate, noise)),
+      (!nothingNew[k] && (hasRing(candidate, noise) || kicks(channel, candidate, noise))),
   );
   const known = candidates.filter((_, k) => sure[k] && candidates[k].evidence.switchOff !== null);
   if (known.length === 0) return sure;
   const swing = medianOf(known.map(({ evidence }) => swingOf(evidence)));
   const level = medianOf(known.map(({ evidence }) => evidence.levelOn ?? NaN));
   return candidates.map(({ evidence, witnessed }, k) => {
-    if (sure[k] || witnessed === false) return sure[k];
+    if (sure[k] || witnessed === false || nothingNew[k]) return sure[k];
     if (evidence.levelOn === null || evidence.switchOff === null) return false;
     const alike = Math.abs(evidence.levelOn - level) < Math.max(6 * noise, 0.1 * swing);
     return alike && swingOf(evidence) > 0.5 * swing && isSmooth(channel, evidence);
@@ -52,19 +53,42 @@ function hasRing({ evidence, quality }: Candidate, noise: number): boolean {
   return decays && largest > 6 * noise && fit.residual < 3 * fit.noise;
 }
 
-/** The ring of the pulse before, still to be seen, explains what comes here: it goes on, and nothing is new. */
-function goesOn(channel: Channel, before: Candidate | undefined, { evidence }: Candidate, noise: number) {
+/** Fits of the record's clearest rings, at most so many. */
+const RINGS = 6;
+
+function clearest(candidates: Candidate[]): RingFit[] {
+  const strength = (fit: RingFit) => Math.max(...fit.modes.map(amplitude)) / fit.residual;
+  const fits = candidates.flatMap(({ evidence: { fit } }) => (fit && fit.modes.length > 0 ? [fit] : []));
+  return fits.toSorted((a, b) => strength(b) - strength(a)).slice(0, RINGS);
+}
+
+/** How far before and after a candidate a ring must go on for nothing to be new there, in periods. */
+const BEFORE = 0.9;
+const AFTER = 1.5;
+/** Root mean square over the noise that a free ring leaves. */
+const EXPLAINED = 1.4;
+
+/**
+ * A free ring of the coil's modes explains the stretch about the candidate: a lull between its beats, and nothing
+ * new. Quiet with a kick out of it is no sum of damped waves.
+ */
+function ringsThrough(channel: Channel, rings: RingFit[], { evidence }: Candidate, noise: number): boolean {
   const { switchOff, period, freeTo } = evidence;
-  const earlier = before?.evidence.fit;
-  if (!earlier || switchOff === null || !period) return false;
-  const from = Math.ceil(switchOff + period);
-  const to = Math.min(freeTo, from + Math.ceil(CONTINUED_PERIODS * period));
-  if (to - from < period) return false;
-  const left = (mode: FittedMode) =>
-    amplitude(mode) * Math.exp(-mode.decay_per_s * (from - earlier.from) * earlier.step_s);
-  if (Math.max(...earlier.modes.map(left)) < 2 * noise) return false;
-  const [rms] = residualProfile(channel.samples, earlier, from, to, to - from, channel.unusable).rms;
-  return rms < 1.3 * Math.max(noise, earlier.residual);
+  if (switchOff === null || !period) return false;
+  const from = Math.max(0, Math.floor(switchOff - BEFORE * period));
+  const to = Math.min(freeTo, Math.ceil(switchOff + AFTER * period));
+  if (switchOff - from < 0.5 * BEFORE * period || to - switchOff < 0.5 * AFTER * period) return false;
+  const width = Math.max(1, Math.floor(period / 32));
+  const blocks = makeBlocks(channel.samples, from, to, channel.unusable, width);
+  if (blocks.used < 24) return false;
+  const limit = EXPLAINED ** 2 * (noise ** 2 / width) * blocks.used;
+  return rings.some(({ modes, step_s }) => {
+    const known = modes.map(({ frequency_Hz, decay_per_s }) => ({
+      omega: 2 * Math.PI * frequency_Hz * step_s * width,
+      decay: decay_per_s * step_s * width,
+    }));
+    return costAt(blocks, known, 1) < limit;
+  });
 }
 
 /** The kick goes well beyond the change from the conduction level to the level after it, or swings about the latter. */

@@ -3,7 +3,7 @@
  * at once. Later half-waves of a ring, beats and turn-on edges of a ringing node have no quiet before
  * them or no swing after.
  */
-import { lineThrough, meanAndDeviation } from "../numeric/robust.ts";
+import { lineThrough, meanAndDeviation, medianOf } from "../numeric/robust.ts";
 import type { Scale } from "./scale.ts";
 
 export interface Onset {
@@ -149,6 +149,9 @@ function calmStart(samples: Float64Array, to: number, length: number, width: num
   return from;
 }
 
+/** Share of its size by which an edge's level may be off just before it. */
+const SAME = 0.1;
+
 /** The edge on the raw samples: leaves the quiet level for good, extrapolated back to it. */
 function refine(
   samples: Float64Array,
@@ -183,6 +186,9 @@ function refine(
   const at = high > leave + 1 ? crossing(samples, leave, high + 1, level) : between(samples, leave, level);
   const u = high > leave + 1 ? Math.max(0.1, (scatter / size) * (high - leave)) : 0.29;
   const bounded = Math.min(leave, Math.max(leave - Math.max(2, 0.1 * scale.period), at));
+  // A small edge ahead of a large one is not to be taken for it, with its own level before.
+  const before = medianOf(samples, Math.max(0, Math.floor(bounded) - 3 * width), Math.floor(bounded));
+  if (Math.abs(before - level(bounded)) > 3 * scatter + SAME * size) return null;
   return { at: bounded, u, level: level(bounded), scatter, swing: first, polarity };
 }
 

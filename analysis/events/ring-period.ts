@@ -22,12 +22,16 @@ export function ringPeriod(
 ): number {
   if (onsets.length === 0) return rough;
   const anchor = onsets.reduce((a, b) => (sharpness(b) > sharpness(a) ? b : a));
-  const next = onsets.find((onset) => onset.at > anchor.at && sharpness(onset) > 0.4 * sharpness(anchor));
+  const next = onsets.find(
+    (onset) => onset.at > anchor.at && sharpness(onset) > 0.4 * sharpness(anchor) && sameLevel(onset, anchor),
+  );
   const from = Math.ceil(anchor.at);
   const to = Math.floor(Math.min(next?.at ?? samples.length, samples.length, from + LOOKED_PERIODS * rough));
   if (to - from < 3 * rough) return slowRing(samples, onsets, rough, noise, lsb) ?? rough;
   const width = Math.max(1, Math.floor(rough / 16));
-  const early = linePeriod(samples, from, to, width, 1.5, 0) ?? rough;
+  const line = linePeriod(samples, from, to, width, 1.5, 0) ?? rough;
+  // A lone kick's own shape, where little rings after it: no more than the foot of the spectrum.
+  const early = line > FOOT * rough && (to - from) / line < CYCLES ? rough : line;
   const start = Math.round(from + LATE * (to - from));
   const late = linePeriod(samples, start, to, width, 4, 40 * noise * noise);
   if (late !== null && late > 1.2 * early && late < MUCH_SLOWER * early) return late;
@@ -38,6 +42,7 @@ export function ringPeriod(
 }
 
 const MUCH_SLOWER = 6;
+const FOOT = 3;
 /** Cycles a slow ring shows at least, values it is looked for in at most. */
 const CYCLES = 4;
 const VALUES = 4096;
@@ -68,9 +73,12 @@ function slowRing(
   return diesAway(samples, start, to, period) ? period : null;
 }
 
+const sameLevel = (onset: Onset, anchor: Onset) =>
+  Math.abs(onset.level - anchor.level) < 0.1 * Math.abs(anchor.swing);
+
 const alike = (onset: Onset, anchor: Onset) =>
   onset.polarity === anchor.polarity &&
-  Math.abs(onset.level - anchor.level) < 0.1 * Math.abs(anchor.swing) &&
+  sameLevel(onset, anchor) &&
   Math.abs(onset.swing) > 0.5 * Math.abs(anchor.swing);
 
 function conductionBefore(

@@ -1,5 +1,6 @@
 /** Switch-offs from a voltage trace: onsets of the kick's own direction out of the conduction level. */
 import type { Channel } from "../capture.ts";
+import { robustSpread } from "../numeric/median.ts";
 import { meanAndDeviation, medianOf } from "../numeric/robust.ts";
 import { differenceNoise } from "../ring/noise.ts";
 import { conductionStart } from "./conduction.ts";
@@ -165,15 +166,18 @@ function outOfConduction(
   if (flat.length === 0) return [];
   const anchor = flat.reduce((a, b) => (sharpness(b) > sharpness(a) ? b : a));
   const reach = Math.max(...flat.map((onset) => Math.abs(onset.swing)));
-  const tolerance = Math.max(6 * unrest, 2 * (lsb ?? 0));
-  const within = (onset: Onset, about: number, widths: number) =>
-    Math.abs(onset.level - about) < widths * Math.max(tolerance, LEVEL_SHARE * Math.abs(onset.swing));
+  const tolerance = Math.max(3 * unrest, 2 * (lsb ?? 0));
+  const within = (onset: Onset, about: number, least: number) =>
+    Math.abs(onset.level - about) < Math.max(least, LEVEL_SHARE * Math.abs(onset.swing));
   // Edges at turn-on and at an arc's end leave other levels nearby, by small swings: the kicks have the say.
   const kicks = flat.filter((onset) => Math.abs(onset.swing) > SMALL_SHARE * reach);
-  const level = medianOf(kicks.filter((onset) => within(onset, anchor.level, 1)).map((onset) => onset.level));
+  const levels = kicks.filter((onset) => within(onset, anchor.level, tolerance)).map((onset) => onset.level);
+  const level = medianOf(levels);
+  // Hum moves the level of conduction from one pulse to the next.
+  const wander = levels.length >= TRAIN ? 3 * robustSpread(levels) : 0;
   return flat.filter(
     (onset) =>
-      within(onset, level, 1) &&
+      within(onset, level, Math.max(tolerance, wander)) &&
       !(Math.abs(onset.swing) < SMALL_SHARE * reach && isStep(samples, onset, period)) &&
       (onset.polarity === anchor.polarity || Math.abs(onset.swing) > OPPOSITE_SHARE * reach),
   );
