@@ -23,7 +23,8 @@ export function ringPeriod(
   if (onsets.length === 0) return rough;
   const anchor = onsets.reduce((a, b) => (sharpness(b) > sharpness(a) ? b : a));
   const next = onsets.find(
-    (onset) => onset.at > anchor.at && sharpness(onset) > 0.4 * sharpness(anchor) && sameLevel(onset, anchor),
+    (onset) =>
+      onset.at > anchor.at && sharpness(onset) > 0.4 * sharpness(anchor) && likeKick(onset, anchor, 0.34),
   );
   const from = Math.ceil(anchor.at);
   const to = Math.floor(Math.min(next?.at ?? samples.length, samples.length, from + LOOKED_PERIODS * rough));
@@ -73,13 +74,12 @@ function slowRing(
   return diesAway(samples, start, to, period) ? period : null;
 }
 
-const sameLevel = (onset: Onset, anchor: Onset) =>
-  Math.abs(onset.level - anchor.level) < 0.1 * Math.abs(anchor.swing);
+const likeKick = (onset: Onset, anchor: Onset, share: number) =>
+  Math.abs(onset.level - anchor.level) < 0.1 * Math.abs(anchor.swing) &&
+  Math.abs(onset.swing) > share * Math.abs(anchor.swing);
 
 const alike = (onset: Onset, anchor: Onset) =>
-  onset.polarity === anchor.polarity &&
-  sameLevel(onset, anchor) &&
-  Math.abs(onset.swing) > 0.5 * Math.abs(anchor.swing);
+  onset.polarity === anchor.polarity && likeKick(onset, anchor, 0.5);
 
 function conductionBefore(
   samples: Float64Array,

@@ -47,10 +47,18 @@ const MOST_HALVINGS = 9;
 /** The ring over the whole free interval, where it explains all of it but for short bursts. */
 export function undisturbedRing(place: Place): WindowedRing | null {
   const whole = fitTrimmed(place, place.from, place.to);
+  if (whole && hidesTransient(whole)) return null;
   if (whole && (isClean(place, whole) || isEven(place, whole)))
     return { fit: whole, clean: true, courseChanges: false, masked: [] };
   return withoutBursts(place, whole);
 }
+
+/** Decays by so many foldings in a cycle are no ring's. */
+const GONE = 3;
+
+/** A wave that is gone within its first cycle beside a ring: an arc or a clamp at the beginning, smoothed over. */
+const hidesTransient = ({ modes }: RingFit) =>
+  modes.length > 1 && modes.some((mode) => mode.decay_per_s > GONE * mode.frequency_Hz);
 
 /** The ring over whatever part of the interval one ring explains; null without any oscillation. */
 export const disturbedRing = (place: Place): WindowedRing | null =>
