@@ -34,8 +34,9 @@ export function ringPeriod(
   // A lone kick's own shape, where little rings after it: no more than the foot of the spectrum.
   const early = line > FOOT * rough && (to - from) / line < CYCLES ? rough : line;
   const start = Math.round(from + LATE * (to - from));
-  const late = linePeriod(samples, start, to, width, 4, 40 * noise * noise);
-  if (late !== null && late > 1.2 * early && late < MUCH_SLOWER * early) return late;
+  const late = linePeriod(samples, start, to, width, CYCLES, 40 * noise * noise);
+  const sure = late !== null && !isFoot(late, to - start);
+  if (sure && late > 1.2 * early && late < MUCH_SLOWER * early) return late;
   // Where the fast ring is still the strongest late in the free interval it is the coil's own.
   const goesOn = late !== null && Math.abs(late / early - 1) < 0.2 && (!next || alike(next, anchor));
   const slow = goesOn ? null : slowRing(samples, onsets, rough, noise, lsb);
@@ -69,13 +70,15 @@ function slowRing(
   if (rough < 2 * width || to - start < 64) return null;
   const energy = 400 * noise * noise + 40 * (lsb ?? 0) ** 2;
   const period = linePeriod(samples, start, to, width, CYCLES, energy);
-  // At the least number of cycles it is the foot of something slower still.
-  if (period === null || (to - start) / period < 1.15 * CYCLES) return null;
+  if (period === null || isFoot(period, to - start)) return null;
   return diesAway(samples, start, to, period) ? period : null;
 }
 
+/** At the least number of cycles a line is the foot of something slower still. */
+const isFoot = (period: number, length: number) => length / period < 1.15 * CYCLES;
+
 const likeKick = (onset: Onset, anchor: Onset, share: number) =>
-  Math.abs(onset.level - anchor.level) < 0.1 * Math.abs(anchor.swing) &&
+  Math.abs(onset.level - anchor.level) < 0.06 * Math.abs(anchor.swing) &&
   Math.abs(onset.swing) > share * Math.abs(anchor.swing);
 
 const alike = (onset: Onset, anchor: Onset) =>
