@@ -27,12 +27,11 @@ export function ringPeriod(
       onset.at > anchor.at && sharpness(onset) > 0.4 * sharpness(anchor) && likeKick(onset, anchor, 0.34),
   );
   const from = Math.ceil(anchor.at);
-  const to = Math.floor(Math.min(next?.at ?? samples.length, samples.length, from + LOOKED_PERIODS * rough));
+  const end = Math.floor(next?.at ?? samples.length);
+  const to = Math.min(end, from + Math.ceil(LOOKED_PERIODS * rough));
   if (to - from < 3 * rough) return slowRing(samples, onsets, rough, noise, lsb) ?? rough;
   const width = Math.max(1, Math.floor(rough / 16));
-  const line = linePeriod(samples, from, to, width, 1.5, 0) ?? rough;
-  // A lone kick's own shape, where little rings after it: no more than the foot of the spectrum.
-  const early = line > FOOT * rough && (to - from) / line < CYCLES ? rough : line;
+  const early = strongest(samples, from, to, end, width, rough);
   const start = Math.round(from + LATE * (to - from));
   const late = linePeriod(samples, start, to, width, CYCLES, 40 * noise * noise);
   const sure = late !== null && !isFoot(late, to - start);
@@ -43,8 +42,30 @@ export function ringPeriod(
   return slow !== null && slow > MUCH_SLOWER * early ? slow : early;
 }
 
+/**
+ * The strongest oscillation from the anchor on. At few cycles it may be the lone kick's own shape, the foot of the
+ * spectrum: then more is looked at, and without more the rough period stands.
+ */
+function strongest(
+  samples: Float64Array,
+  from: number,
+  to: number,
+  end: number,
+  width: number,
+  rough: number,
+): number {
+  const line = linePeriod(samples, from, to, width, 1.5, 0) ?? rough;
+  const kicksShape = line > FOOT * rough && line < LONGEST_KICK * rough;
+  if (!kicksShape || (to - from) / line > CYCLES) return line;
+  if (to >= end) return rough;
+  const further = Math.min(end, from + 4 * (to - from));
+  return strongest(samples, from, further, end, Math.max(width, Math.floor(line / 64)), rough);
+}
+
 const MUCH_SLOWER = 6;
+/** Rough periods that a lone kick's own shape lasts. */
 const FOOT = 3;
+const LONGEST_KICK = 20;
 /** Cycles a slow ring shows at least, values it is looked for in at most. */
 const CYCLES = 4;
 const VALUES = 4096;
