@@ -3,7 +3,7 @@ import type { BurnLine } from "./burn-line.ts";
 import { median } from "../numeric/median.ts";
 import { likelihoodOf, type Likelihood } from "./likelihood.ts";
 import { agreedModes, bestTraits, ownModes } from "./modes.ts";
-import { referenceOf, type Reference } from "./reference.ts";
+import { referenceBefore, referenceOf, type Reference } from "./reference.ts";
 import type { KnownMode } from "./ring-sums.ts";
 import { traitsOf, type Traits } from "./traits.ts";
 import type { SparkWindow } from "./window.ts";
@@ -99,7 +99,7 @@ const isClean = ({ oneRing, rest, kick }: Traits) =>
   oneRing && rest !== null && Math.hypot(...rest) > 0.3 * kick;
 
 function judgeGroup(group: Traits[]): Judged[] {
-  let reference = group.length > 1 ? referenceOf(group, seeds(group)) : null;
+  let reference = group.length > 1 ? (referenceOf(group, seeds(group)) ?? referenceBefore(group)) : null;
   // Twice: the second time with the pulses that the first found quiet.
   for (let round = 0; round < 2 && reference; round++) {
     const held = reference;

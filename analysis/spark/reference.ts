@@ -21,23 +21,52 @@ const NEIGHBOURS = 5;
 const MOST_STRAY = 0.1;
 
 /** `quiet` holds places in `traits`; null with none that shows a ring to its end. */
-export function referenceOf(traits: Traits[], quiet: number[]): Reference | null {
-  const known = quiet.filter((i) => traits[i].rest !== null);
+export const referenceOf = (traits: Traits[], quiet: number[]): Reference | null =>
+  agreedReference(
+    traits,
+    quiet.filter((i) => traits[i].rest !== null),
+    ({ rest }) => rest!,
+    ({ misfit }) => misfit,
+  );
+
+/** The same from sparking pulses whose sparks came late: until then each was a quiet one. One alone is none. */
+export function referenceBefore(traits: Traits[]): Reference | null {
+  const late = traits.flatMap(({ restBefore }, i) => (restBefore ? [i] : []));
+  if (late.length < 2) return null;
+  const sizes = late.map((i) => Math.hypot(...traits[i].restBefore!));
+  // A spark only takes: the largest are the quiet ones.
+  const most = Math.max(...sizes);
+  const whole = late.filter((_, k) => sizes[k] > (1 - MOST_STRAY) * most);
+  if (whole.length < 2) return null;
+  return agreedReference(
+    traits,
+    whole,
+    ({ restBefore }) => restBefore!,
+    ({ split: { before, variance } }) => Math.sqrt(Math.max(0, before.cost / variance - before.blocks)),
+  );
+}
+
+function agreedReference(
+  traits: Traits[],
+  known: number[],
+  restOf: (traits: Traits) => [number, number],
+  misfitOf: (traits: Traits) => number,
+): Reference | null {
   if (known.length === 0) return null;
   const rest = traits.map((_, i) => {
     const near = nearest(known, i, 2 * NEIGHBOURS);
     if (near.length === 0) return null;
-    const rests = near.map((p) => traits[p].rest!);
+    const rests = near.map((p) => restOf(traits[p]));
     return [median(rests.map(([c]) => c)), median(rests.map(([, s]) => s))] as [number, number];
   });
   const kick = median(known.map((i) => traits[i].kick));
   const strays = known.flatMap((i) =>
-    rest[i] ? [distance(traits[i].rest!, scaled(rest[i], traits[i].kick / kick))] : [],
+    rest[i] ? [distance(restOf(traits[i]), scaled(rest[i], traits[i].kick / kick))] : [],
   );
   const stray = known.length > 2 ? 1.5 * median(strays) : 0.02;
   // Pulses that do not agree are no reference.
   if (stray > MOST_STRAY) return null;
-  const misfits = known.map((i) => traits[i].misfit);
+  const misfits = known.map((i) => misfitOf(traits[i]));
   return {
     quiet: known.length,
     rest,

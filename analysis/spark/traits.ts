@@ -31,6 +31,8 @@ export interface Traits {
   tail: boolean;
   /** Low mode of the ring after (cosine, sine), carried back to switch-off; null without a ring after. */
   rest: [cosine: number, sine: number] | null;
+  /** The same of a ring before that lasted for long enough: what a spark late in the pulse leaves of a quiet one. */
+  restBefore: [cosine: number, sine: number] | null;
   /** Low mode of the ring before at the disturbance, and of the ring after: how far apart, over the former. */
   jump: number | null;
   /** Largest excursion in the first period and its block. */
@@ -47,8 +49,9 @@ export interface Traits {
 export const NOISE = 12;
 /** Amplitude in σ of a block below which a ring has sunk into the noise. */
 export const SPENT = 4;
-/** Shorter stretches say nothing certain of a ring, in periods. */
+/** Shorter stretches say nothing certain of a ring, in periods; and of its whole course. */
 const LEAST_RING = 0.7;
+const LONG_RING = 1.5;
 
 /** Traits of a window held from the last time the run was judged: growing by a pulse hardly moves its modes. */
 const held = new WeakMap<SparkWindow, Traits[]>();
@@ -98,6 +101,9 @@ function freshTraits(window: SparkWindow, modes: KnownMode[], ceiling: number): 
   const known =
     rest !== null && isKnown(rest, first.size * (clipped ? 2 : 1), oneRing ? 0 : b, split, window, modes[0]);
   const kick = { kick: first.size, kickBlock: first.block, clipped, startsInRing: window.startsInRing };
+  const early = ringBefore && a >= LONG_RING * period && !oneRing && !window.startsInRing;
+  const start = a - Math.round(period);
+  const restBefore = early ? carriedBack(sums, split.before.coefficients, start, window, modes[0]) : null;
   const jump = ringBefore && ringAfter ? jumpOf(sums, split, a, b, modes[0], window) : null;
   const traits = {
     sums,
@@ -114,6 +120,10 @@ function freshTraits(window: SparkWindow, modes: KnownMode[], ceiling: number): 
     passed: 2 * Math.PI * modes[0].frequency_Hz * (window.first_s + b * window.step_s),
     oneRing,
     rest: known ? rest : null,
+    restBefore:
+      restBefore && isKnown(restBefore, first.size * (clipped ? 2 : 1), start, split, window, modes[0])
+        ? restBefore
+        : null,
     jump,
     ...kick,
   };
