@@ -47,7 +47,7 @@ const MOST_HALVINGS = 9;
 /** The ring over the whole free interval, where it explains all of it but for short bursts. */
 export function undisturbedRing(place: Place): WindowedRing | null {
   const whole = fitTrimmed(place, place.from, place.to);
-  if (whole && hidesTransient(whole)) return null;
+  if (whole && hidesTransient(whole) && judgeFit(whole, whole.noise).quality === "refused") return null;
   if (whole && (isClean(place, whole) || isEven(place, whole)))
     return { fit: whole, clean: true, courseChanges: false, masked: [] };
   return withoutBursts(place, whole);

@@ -142,7 +142,7 @@ function mostLeft(group: Traits[]): number | null {
 
 /**
  * Pulses to begin with: clean ones, the strongest rings among them; or many that no free ring explains but that
- * agree closely, where they have clearly more left than the clean ones.
+ * agree closely, where they have clearly more left than the clean ones, or as much and far outnumber them.
  */
 function seeds(group: Traits[]): number[] {
   const places = group.flatMap(({ rest }, i) => (rest ? [i] : []));
@@ -162,5 +162,7 @@ function seeds(group: Traits[]): number[] {
   );
   const agree = others.alike.length >= Math.max(3, 0.25 * group.length);
   if (clean.alike.length === 0) return agree ? others.alike : [];
-  return agree && others.centre > 1.2 * clean.centre ? others.alike : clean.alike;
+  const larger = others.centre > 1.2 * clean.centre;
+  const more = others.alike.length > 2 * clean.alike.length && others.centre > 0.9 * clean.centre;
+  return agree && (larger || more) ? others.alike : clean.alike;
 }
