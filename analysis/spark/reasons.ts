@@ -88,7 +88,7 @@ export function reasonsOf(
       break;
   }
   if (likelihood.loss !== null && spark && traits.ringAfter && likelihood.loss > 0.02) {
-    const against = reference ? "what the run's quiet pulses have" : "what it would have kept";
+    const against = reference ? `what the run's ${reference.from} have` : "what it would have kept";
     say(
       `after it ${percent(Math.max(0, 1 - likelihood.loss))} of the ring's amplitude is left, against ${against}`,
       at(traits.b),
@@ -96,13 +96,13 @@ export function reasonsOf(
   }
   if (spark && likelihood.loss !== null && likelihood.loss <= 0.02 && likelihood.away !== null)
     say(
-      `after it the ring is shifted by ${percent(likelihood.away)} against the run's quiet pulses`,
+      `after it the ring is shifted by ${percent(likelihood.away)} against the run's ${reference!.from}`,
       at(traits.b),
     );
   if (spark && !traits.ringAfter) say("no free ring is seen after it", at(traits.b));
   if (!spark && reference && likelihood.away !== null)
     say(
-      `its ring agrees with the run's quiet pulses within ${percent(Math.max(0.01, likelihood.away))}`,
+      `its ring agrees with the run's ${reference.from} within ${percent(Math.max(0.01, likelihood.away))}`,
       at(traits.b),
     );
   return reasons;

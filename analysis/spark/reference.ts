@@ -3,8 +3,9 @@ import { median, robustSpread } from "../numeric/median.ts";
 import type { Traits } from "./traits.ts";
 
 export interface Reference {
-  /** Quiet pulses it rests on. */
+  /** Quiet pulses it rests on, or late sparks with a quiet ring before them. */
   quiet: number;
+  from: "quiet pulses" | "rings before their sparks";
   /** Low mode carried back to switch-off, for each pulse by the others near it; null: there are no others. */
   rest: ([cosine: number, sine: number] | null)[];
   /** How far the quiet pulses' own rings stray from that, as a share. */
@@ -24,6 +25,7 @@ const MOST_STRAY = 0.1;
 export const referenceOf = (traits: Traits[], quiet: number[]): Reference | null =>
   agreedReference(
     traits,
+    "quiet pulses",
     quiet.filter((i) => traits[i].rest !== null),
     ({ rest }) => rest!,
     ({ misfit }) => misfit,
@@ -40,6 +42,7 @@ export function referenceBefore(traits: Traits[]): Reference | null {
   if (whole.length < 2) return null;
   return agreedReference(
     traits,
+    "rings before their sparks",
     whole,
     ({ restBefore }) => restBefore!,
     ({ split: { before, variance } }) => Math.sqrt(Math.max(0, before.cost / variance - before.blocks)),
@@ -48,6 +51,7 @@ export function referenceBefore(traits: Traits[]): Reference | null {
 
 function agreedReference(
   traits: Traits[],
+  from: Reference["from"],
   known: number[],
   restOf: (traits: Traits) => [number, number],
   misfitOf: (traits: Traits) => number,
@@ -69,6 +73,7 @@ function agreedReference(
   const misfits = known.map((i) => misfitOf(traits[i]));
   return {
     quiet: known.length,
+    from,
     rest,
     stray,
     kick,
