@@ -64,7 +64,8 @@ function clearest(candidates: Candidate[]): RingFit[] {
 
 /** How far before and after a candidate a ring must go on for nothing to be new there, in periods. */
 const BEFORE = 0.9;
-const AFTER = 1.5;
+/** The shorter where an arc or an edge follows soon. */
+const AFTER = [1.5, 0.6];
 /** Root mean square over the noise that a free ring leaves. */
 const EXPLAINED = 1.4;
 
@@ -76,19 +77,30 @@ function ringsThrough(channel: Channel, rings: RingFit[], { evidence }: Candidat
   const { switchOff, period, freeTo } = evidence;
   if (switchOff === null || !period) return false;
   const from = Math.max(0, Math.floor(switchOff - BEFORE * period));
-  const to = Math.min(freeTo, Math.ceil(switchOff + AFTER * period));
-  if (switchOff - from < 0.5 * BEFORE * period || to - switchOff < 0.5 * AFTER * period) return false;
-  const width = Math.max(1, Math.floor(period / 32));
-  const blocks = makeBlocks(channel.samples, from, to, channel.unusable, width);
-  if (blocks.used < 24) return false;
-  const limit = EXPLAINED ** 2 * (noise ** 2 / width) * blocks.used;
-  return rings.some(({ modes, step_s }) => {
-    const known = modes.map(({ frequency_Hz, decay_per_s }) => ({
-      omega: 2 * Math.PI * frequency_Hz * step_s * width,
-      decay: decay_per_s * step_s * width,
-    }));
-    return costAt(blocks, known, 1) < limit;
+  if (switchOff - from < 0.5 * BEFORE * period) return false;
+  return AFTER.some((after) => {
+    const to = Math.ceil(switchOff + after * period);
+    return to <= freeTo && rings.some((ring) => explains(ring, channel, from, to, period, noise));
   });
+}
+
+/** Whether a sum of the ring's modes, of any size and phase, is all there is in [from, to). */
+function explains(
+  { modes, step_s }: RingFit,
+  { samples, unusable }: Channel,
+  from: number,
+  to: number,
+  period: number,
+  noise: number,
+): boolean {
+  const width = Math.max(1, Math.floor(period / 32));
+  const blocks = makeBlocks(samples, from, to, unusable, width);
+  if (blocks.used < 24) return false;
+  const known = modes.map(({ frequency_Hz, decay_per_s }) => ({
+    omega: 2 * Math.PI * frequency_Hz * step_s * width,
+    decay: decay_per_s * step_s * width,
+  }));
+  return costAt(blocks, known, 1) < EXPLAINED ** 2 * (noise ** 2 / width) * blocks.used;
 }
 
 /** The kick goes well beyond the change from the conduction level to the level after it, or swings about the latter. */

@@ -21,11 +21,11 @@ export async function run(): Promise<void> {
 }
 
 function byTrouble(scored: Scored[]): void {
-  console.log("trouble        sparks  called    quiet  alarms  unclear  not found  Brier");
+  console.log("trouble        sparks  called    quiet  alarms  unclear  not found  invented  Brier");
   for (const trouble of troubles) {
     const t = tally(scored.filter(({ run: from }) => from.trouble === trouble));
     console.log(
-      `${trouble.padEnd(14)} ${String(t.sparks).padStart(6)} ${percent(t.called, t.sparks).padStart(9)} ${String(t.quiet).padStart(6)} ${String(t.alarms).padStart(7)} ${String(t.unclear).padStart(8)} ${String(t.missing).padStart(10)}  ${t.brier.toFixed(4)}`,
+      `${trouble.padEnd(14)} ${String(t.sparks).padStart(6)} ${percent(t.called, t.sparks).padStart(9)} ${String(t.quiet).padStart(6)} ${String(t.alarms).padStart(7)} ${String(t.unclear).padStart(8)} ${String(t.missing).padStart(10)} ${String(t.invented).padStart(9)}  ${t.brier.toFixed(4)}`,
     );
   }
 }
@@ -40,7 +40,8 @@ function reached(scored: Scored[]): void {
   console.log(`sensitivity                           ${percent(t.called, t.sparks).padEnd(11)} ≥ 99 %`);
   console.log(`false alarms                          ${percent(t.alarms, t.quiet).padEnd(11)} ≤ 0.3 %`);
   console.log(`unclear                               ${percent(t.unclear, found).padEnd(11)} ≤ 2 %`);
-  console.log(`pulses not found                      ${percent(t.missing, found)}`);
+  console.log(`pulses not found                      ${percent(t.missing, found).padEnd(11)} 0`);
+  console.log(`pulses invented                       ${percent(t.invented, scored.length).padEnd(11)} 0`);
   console.log(
     `onset error in periods, median        ${quantile(t.onsets, 0.5).toFixed(4).padEnd(11)} ≤ 0.02`,
   );

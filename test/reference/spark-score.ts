@@ -11,6 +11,8 @@ export interface Scored {
   truth: PulseTruth;
   /** Null where the pulse was not found at all. */
   spark: SparkReading | null;
+  /** Pulses found in its capture that no switch-off explains; told with the capture's first pulse only. */
+  invented: number;
 }
 
 /** Pulses are told by their switch-off, within a third of a ring period. */
@@ -18,11 +20,14 @@ export function scoreRun(run: SimulatedRun): Scored[] {
   const evidence = run.captures.map((capture) => readCapture(capture, run.setup));
   const { readings } = judgeRun(evidence, run.setup);
   return readings.flatMap((reading, k) =>
-    run.truths[k].map((truth) => {
-      const near = (off: number | null) =>
-        off !== null && Math.abs(off - truth.switchOff_s) < 0.33 * run.period_s;
-      const pulse = reading.pulses.find(({ switchOffTime_s }) => near(switchOffTime_s));
-      return { run, truth, spark: pulse?.spark ?? null };
+    run.truths[k].map((truth, i) => {
+      const near = (off: number | null, { switchOff_s }: PulseTruth) =>
+        off !== null && Math.abs(off - switchOff_s) < 0.33 * run.period_s;
+      const pulse = reading.pulses.find(({ switchOffTime_s }) => near(switchOffTime_s, truth));
+      const invented = reading.pulses.filter(
+        ({ switchOffTime_s }) => !run.truths[k].some((other) => near(switchOffTime_s, other)),
+      );
+      return { run, truth, spark: pulse?.spark ?? null, invented: i === 0 ? invented.length : 0 };
     }),
   );
 }
@@ -57,6 +62,7 @@ export interface Tally {
   alarms: number;
   unclear: number;
   missing: number;
+  invented: number;
   brier: number;
   onsets: number[];
 }
@@ -72,9 +78,11 @@ export function tally(scored: Scored[]): Tally {
     alarms: 0,
     unclear: 0,
     missing: 0,
+    invented: 0,
     brier: 0,
     onsets: [],
   };
+  for (const { invented } of scored) sum.invented += invented;
   const counted = scored.filter(({ truth }) => !truth.spark || truth.strength >= COUNTED);
   for (const { run, truth, spark } of counted) {
     const said = spark?.verdict === "spark";

@@ -15,6 +15,12 @@ describe("verdicts on a small simulated set, every trouble in it", () => {
     expect(alarms / quiet).toBeLessThanOrEqual(0.01);
   });
 
+  it("finds the switch-offs there are, in every trouble", () => {
+    const { missing, invented } = tally(scored);
+    expect(missing / scored.length).toBeLessThanOrEqual(0.005);
+    expect(invented / scored.length).toBeLessThanOrEqual(0.005);
+  });
+
   it("trains with half of the pulses sparking: at least 95 % of strong sparks called", () => {
     const runs = (["plain", "coloured", "ac-coupled", "inverted"] as const).map((trouble) =>
       simulateRun(123, { trouble, pulses: 16, sparkShare: 0.5, kinds: ["first-rise", "late"], train: true }),
@@ -36,5 +42,33 @@ describe("verdicts on a small simulated set, every trouble in it", () => {
     const { sparks, called } = tally(scoreRun(run));
     expect(sparks).toBe(16);
     expect(called / sparks).toBeGreaterThanOrEqual(0.8);
+  });
+
+  it("all pulses sparking, some of them late: the rings before these are the quiet ones", () => {
+    const runs = (["plain", "hum", "clipped"] as const).map((trouble) =>
+      simulateRun(1 + 7919 * 22, {
+        trouble,
+        pulses: 12,
+        sparkShare: 1,
+        kinds: ["first-rise", "first-rise", "late", "low", "glow"],
+        train: true,
+      }),
+    );
+    const { sparks, called, invented } = tally(runs.flatMap(scoreRun));
+    expect(sparks).toBeGreaterThan(30);
+    expect(called).toBe(sparks);
+    expect(invented).toBe(0);
+  });
+
+  it("a lull between the beats of two modes is no switch-off", () => {
+    const run = simulateRun(1 + 7919 * 8, {
+      trouble: "beating",
+      pulses: 12,
+      sparkShare: 0.5,
+      kinds: ["late"],
+      train: true,
+    });
+    const { missing, invented } = tally(scoreRun(run));
+    expect([missing, invented]).toEqual([0, 0]);
   });
 });
