@@ -115,6 +115,8 @@ export interface CaptureDetail {
   run: number;
   file: string;
   sha256: string;
+  /** Files read along with it: its settings, further channels of its shot. */
+  companions: { name: string; sha256: string }[];
   setup: Setup;
   reading: CaptureReading;
 }

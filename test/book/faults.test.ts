@@ -1,9 +1,11 @@
 import { spawnSync } from "node:child_process";
 import { copyFileSync, mkdirSync, readFileSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
+import { pathToFileURL } from "node:url";
 import { DatabaseSync } from "@photostructure/sqlite";
 import { afterEach, beforeEach, describe, expect, it } from "vitest";
 import { openBook } from "../../app/host/book/index.ts";
+import { migrations } from "../../app/host/book/schema.ts";
 import { faultsOf, killWriter } from "./kill.ts";
 import { schemaText } from "./schema-text.ts";
 import { judged, temporaryFolder, trainOf } from "./runs.ts";
@@ -29,14 +31,35 @@ describe("the schema", () => {
     expect(schemaText(path)).toBe(readFileSync(join(import.meta.dirname, "fixtures", "schema.sql"), "utf8"));
   });
 
-  it("reads a book of format 1 as it was committed", async () => {
-    copyFileSync(join(import.meta.dirname, "fixtures", "book-1.db"), path);
+  const formats = migrations.map((_, i) => i + 1);
+
+  it.each(formats)("reads a book of format %i as it was committed", async (format) => {
+    copyFileSync(join(import.meta.dirname, "fixtures", `book-${format}.db`), path);
     const book = await openBook(path);
     expect(book.readOnly).toBe(false);
     expect(book.run(1)).toMatchObject({ name: "old run", counts: { pulses: 5, sparks: 3, quiet: 2 } });
     expect(book.capture(1).reading.pulses[0].ruled).toMatchObject({ verdict: "no-spark" });
     book.close();
   });
+
+  it.each(formats.slice(0, -1))(
+    "opens one of format %i for reading while it can't be brought up to date",
+    async (format) => {
+      copyFileSync(join(import.meta.dirname, "fixtures", `book-${format}.db`), path);
+      const other = new DatabaseSync(path);
+      other.exec("BEGIN IMMEDIATE");
+      const book = await openBook(path);
+      other.close();
+      expect(book).toMatchObject({ readOnly: true, note: expect.stringContaining("locked") });
+      expect(book.run(1)).toMatchObject({ name: "old run", counts: { pulses: 5, sparks: 3, quiet: 2 } });
+      expect(book.capture(1)).toMatchObject({ companions: [], file: expect.stringContaining("old.csv") });
+      expect(book.runs({}).rows).toHaveLength(1);
+      expect(book.coils()).toHaveLength(1);
+      expect(() => book.rule(1, 0, "spark", "")).toThrow("for reading only");
+      book.close();
+    },
+    20_000,
+  );
 
   it("refuses a newer book and changes nothing in it", async () => {
     await makeBook();
@@ -124,6 +147,20 @@ describe("what a disk can do", () => {
     expect(first.run(run).counts).toMatchObject({ sparks: 7, quiet: 1 });
     first.close();
     second.close();
+  });
+
+  it("uses a rollback journal where a write-ahead log can't be had, and says so", async () => {
+    writeFileSync(path, "");
+    // Locks by files, as on shares without shared memory (SQLite's own documentation of its file systems).
+    const share = new URL(`${pathToFileURL(path).href}?vfs=unix-dotfile`);
+    const book = await openBook(share as unknown as string);
+    expect(book).toMatchObject({ readOnly: false, note: expect.stringContaining("rollback journal") });
+    const run = book.ensureRun({ key: "name:b", name: "b", folder: null });
+    book.keepRun(run, judged([{ name: "b.csv", verdicts: trainOf(8) }]));
+    book.close();
+    const again = await openBook(path);
+    expect(again.run(run).counts.pulses).toBe(8);
+    again.close();
   });
 
   it("makes the folder a new book lies in", async () => {

@@ -57,3 +57,33 @@ it("copies nothing unasked", async () => {
   rmSync(path, { recursive: true });
   await expect(state(book, run, { supply_V: 14 })).rejects.toThrow("a.csv");
 });
+
+it("holds what was read along with a file: its settings, and the further channels of its shot", async () => {
+  book.setPreference(keepFiles, "yes");
+  const shot = join(place.folder, "shot");
+  mkdirSync(shot);
+  writeFileSync(join(shot, "a_ch1.csv"), captureText("Node (V)", 4e-7));
+  writeFileSync(join(shot, "a_ch2.csv"), captureText("Coil (V)", 4e-7));
+  writeFileSync(
+    join(shot, "setup.json"),
+    JSON.stringify({ channels: [{ file: "a_ch1.csv" }, { file: "a_ch2.csv", scale: 2 }] }),
+  );
+  const bare = join(place.folder, "bare");
+  mkdirSync(bare);
+  writeFileSync(join(bare, "b.csv"), captureText("Node (V)"));
+  writeFileSync(join(bare, "b.txt"), "Record Length:900:\nStart:0:\nStop:0.0001798:\nPoints:900:\n");
+  const runs = [await readFolder(book, shot), await readFolder(book, bare)];
+  expect(runs.map((run) => first(run).companions.map(({ name }) => name))).toEqual([
+    ["a_ch2.csv"],
+    ["b.txt"],
+  ]);
+  rmSync(shot, { recursive: true });
+  rmSync(bare, { recursive: true });
+  for (const run of runs) await state(book, run, { supply_V: 14 });
+  const [joined, settled] = runs.map((run) => first(run).reading);
+  expect(joined.channels.map(({ name, scale }) => [name, scale])).toEqual([
+    ["Node", 1],
+    ["Coil", 2],
+  ]);
+  expect(settled.timebase.step_s).toBeCloseTo(2e-7, 12);
+});

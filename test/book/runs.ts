@@ -109,6 +109,7 @@ export function judged(files: { name: string; verdicts: Verdict[]; stated?: Setu
       path: `/bench/${name}`,
       sha256: name.padEnd(64, "0"),
       bytes: 1000,
+      companions: [],
       layout: "time,node",
       setup: stated ?? setup,
       origins: {},

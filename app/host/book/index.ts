@@ -10,7 +10,7 @@ import { coilQueries } from "./coils.ts";
 import { keeper, type JudgedRun } from "./keep.ts";
 import { openDatabase } from "./open.ts";
 import { queries } from "./queries.ts";
-import { originalsOf } from "./originals.ts";
+import { companionsOf, originalsOf } from "./originals.ts";
 import { parse, uOf, valueOf } from "./rows.ts";
 import { trailOf } from "./trail.ts";
 import { transaction } from "./transaction.ts";
@@ -151,6 +151,7 @@ function bookOn(db: DatabaseSyncInstance, path: string, readOnly: boolean, note:
     },
     /** Copies of the files themselves, where the user wants them. */
     originals,
+    companions: companionsOf(db),
 
     /** Whether the file was kept as it is: same size, and not changed since. */
     knows(file: string, bytes: number, changed_ms: number): boolean {

@@ -36,6 +36,7 @@ export function keeper(db: DatabaseSyncInstance, trail: Trail) {
        frequency_Hz, frequency_u, onset_s, quality, sketch, sketchOnset)
      VALUES (?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?, ?)`,
   );
+  const accompany = db.prepare("INSERT OR REPLACE INTO companions VALUES (?, ?, ?)");
   const solved = db.prepare("DELETE FROM problems WHERE run = ? AND path = ?");
   const twice = db.prepare("INSERT OR REPLACE INTO problems VALUES (?, ?, 'same-capture', ?, ?)");
   const supersede = db.prepare("UPDATE captures SET position = -1 WHERE run = ? AND position >= 0");
@@ -104,6 +105,7 @@ export function keeper(db: DatabaseSyncInstance, trail: Trail) {
         continue;
       }
       kept.set(file.sha256, file.path);
+      for (const { name, sha256 } of file.companions) accompany.run(file.sha256, name, sha256);
       const setup = JSON.stringify(file.setup);
       for (const [r, reading] of file.readings.entries()) {
         const { index, count } = reading.record;

@@ -60,6 +60,7 @@ function touchTables(db: DatabaseSyncInstance) {
     "preferences",
     "answers",
     "originals",
+    "companions",
   ])
     db.prepare(`SELECT * FROM ${table} LIMIT 1`).get();
 }

@@ -8,6 +8,7 @@ import type { Argument, CaptureDetail, CaptureRow, Page, PulseRow, RunDetail, Ru
 import { CallError } from "../failure.ts";
 import { attentionOf, missingStatements, trendAttention, worstFirst } from "./attention.ts";
 import { figure, parse, unpack } from "./rows.ts";
+import { companionsOf } from "./originals.ts";
 import type { Trail } from "./trail.ts";
 
 const firstPage = 100;
@@ -25,6 +26,7 @@ export function queries(db: DatabaseSyncInstance, trail: Trail) {
     `SELECT captures.*, readings.json FROM captures LEFT JOIN readings ON readings.id = captures.reading
      WHERE captures.id = ?`,
   );
+  const companions = companionsOf(db);
   const readings = db.prepare("SELECT * FROM readings WHERE capture = ? ORDER BY id");
   const problems = db.prepare("SELECT path, text FROM problems WHERE run = ? ORDER BY path");
 
@@ -39,7 +41,8 @@ export function queries(db: DatabaseSyncInstance, trail: Trail) {
     const read = unpack<CaptureReading>(row.json);
     const pulses = read.pulses.map((pulse) => ({ ...pulse, ruled: trail.ruling(row.id, pulse.index) }));
     const reading = { ...read, pulses, run: countPulses(pulses, setup) };
-    return { capture: row.id, run: row.run, file: row.path, sha256: row.sha256, setup, reading };
+    const { id: capture, run, path: file, sha256 } = row;
+    return { capture, run, file, sha256, companions: companions(sha256), setup, reading };
   }
 
   return {

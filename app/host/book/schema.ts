@@ -121,4 +121,13 @@ export const migrations: readonly string[] = [
   -- Files copied in, gzip-compressed, where the user wants that.
   CREATE TABLE originals (sha256 TEXT PRIMARY KEY, bytes INTEGER NOT NULL, gz BLOB NOT NULL) STRICT;
   `,
+  `
+  -- Files read along with a capture file: its settings, further channels of its shot.
+  CREATE TABLE companions (
+    capture TEXT NOT NULL,
+    name TEXT NOT NULL,
+    sha256 TEXT NOT NULL,
+    PRIMARY KEY (capture, name)
+  ) STRICT, WITHOUT ROWID;
+  `,
 ];

@@ -1,5 +1,6 @@
 import { countSentence } from "../../../analysis/format/counts.ts";
 import { formatNumber } from "../../../analysis/format/figure.ts";
+import type { CaptureReading } from "../../../analysis/reading-format.ts";
 import { version } from "../../../package.json";
 import type { CaptureDetail, RunDetail } from "../../bridge.ts";
 import { baseName } from "./base-name.ts";
@@ -113,14 +114,25 @@ async function drawPulse(
 const fileTable = (captures: CaptureDetail[]) =>
   table(
     ["file", "record", "samples", "interval", "SHA-256"],
-    captures.map(({ file, sha256, reading }) => [
-      baseName(file),
-      `${reading.record.index + 1} of ${reading.record.count}`,
-      String(reading.timebase.samples),
-      reading.timebase.step_s === null ? "unknown" : formatNumber(reading.timebase.step_s, "s", 5),
-      html`<span class="hash">${sha256}</span>`,
+    captures.flatMap(({ file, sha256, companions, reading }) => [
+      fileRow(file, sha256, reading),
+      ...companions.map((companion) => [
+        `${baseName(companion.name)}, read along with it`,
+        "",
+        "",
+        "",
+        html`<span class="hash">${companion.sha256}</span>`,
+      ]),
     ]),
   );
+
+const fileRow = (file: string, sha256: string, { record, timebase }: CaptureReading) => [
+  baseName(file),
+  `${record.index + 1} of ${record.count}`,
+  String(timebase.samples),
+  timebase.step_s === null ? "unknown" : formatNumber(timebase.step_s, "s", 5),
+  html`<span class="hash">${sha256}</span>`,
+];
 
 const cautions = html`<h2>Cautions</h2>
   <p>

@@ -1,5 +1,6 @@
 import type { RunReading } from "../../../analysis/run.ts";
 import { CallError } from "../failure.ts";
+import type { Companion } from "../reading/index.ts";
 import { rememberedNote, withRemembered, type Remembered } from "../remembered.ts";
 import type { CaptureSource } from "../sources.ts";
 import type { JudgedFile, Tasks } from "../threads/tasks.ts";
@@ -20,8 +21,8 @@ export interface RunKeeper {
   keep(files: JudgedSource[], reading: RunReading): void;
   /** What was answered before for files of this layout. */
   remembered(layout: string): Remembered[];
-  /** A file has been read: the book may want a copy of it. */
-  copy(file: CaptureSource, sha256: string): Promise<void>;
+  /** A file has been read: the book may want a copy of it and of what was read along with it. */
+  copy(file: CaptureSource, sha256: string, companions: Companion[]): Promise<void>;
   /** A file that could not be read. */
   problem(file: CaptureSource, error: unknown): void;
 }
@@ -75,10 +76,14 @@ async function readOne(
     // An answer may bring up the next question: every key is answered once at most.
     for (let now = file; ;) {
       const { path, setup, copy } = now;
-      const { layout, asked, sha256 } = await reader.ask("read", { path, setup, copy }, onProgress);
+      const { layout, asked, sha256, companions } = await reader.ask(
+        "read",
+        { path, setup, copy },
+        onProgress,
+      );
       const answered = withRemembered(now, asked, keeper.remembered(layout));
       if (!answered || progress.cancelled) {
-        await keeper.copy(now, sha256);
+        await keeper.copy(now, sha256, companions);
         return now;
       }
       now = answered;

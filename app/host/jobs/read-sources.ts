@@ -5,6 +5,7 @@ import type { Setup } from "../../../analysis/setup/schema.ts";
 import type { Book } from "../book/index.ts";
 import { describeFailure } from "../failure.ts";
 import { keepCopy, placeOf } from "../originals.ts";
+import type { Companion } from "../reading/index.ts";
 import { readSetups } from "../setups.ts";
 import { findSources, groupIntoRuns, type CaptureSource } from "../sources.ts";
 import { readRun, type JudgedSource, type Reader, type RunProgress } from "./read-run.ts";
@@ -110,7 +111,8 @@ const keeperInto = (book: Book, run: number, readout: Readout, fresh: CaptureSou
     );
   },
   remembered: book.remembered,
-  copy: ({ path }: CaptureSource, sha256: string) => keepCopy(book, path, sha256),
+  copy: ({ path }: CaptureSource, sha256: string, companions: Companion[]) =>
+    keepCopy(book, path, sha256, companions),
   problem(file: CaptureSource, error: unknown) {
     book.keepProblem(run, file.path, describeFailure(error));
     readout.problem(file.path, error);

@@ -15,13 +15,13 @@ export const isCaptureFile = (name: string) => captureEnding.test(name) && !name
 const stemOf = (path: string) => basename(path).replace(/(\.[^.]+)(\.gz)?$/, "");
 
 /** The settings of a neighbour with the same stem ("key:value:" lines and no data); null without one. */
-export async function readSidecar(path: string): Promise<string | null> {
+export async function readSidecar(path: string): Promise<{ path: string; text: string } | null> {
   const folder = dirname(path);
   for (const name of await readdir(folder)) {
     const neighbour = join(folder, name);
     if (name === basename(path) || stemOf(name) !== stemOf(path) || name.endsWith(".json")) continue;
     const text = await settingsIn(neighbour);
-    if (text !== null) return text;
+    if (text !== null) return { path: neighbour, text };
   }
   return null;
 }

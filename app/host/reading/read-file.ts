@@ -1,3 +1,5 @@
+import { createHash } from "node:crypto";
+import { readFile as readBytes } from "node:fs/promises";
 import { basename, dirname, join } from "node:path";
 import type { Capture, Note } from "../../../analysis/capture.ts";
 import { ReadingError } from "../../../analysis/errors.ts";
@@ -14,6 +16,13 @@ interface ReadOptions {
   signal?: CancelSignal;
 }
 
+/** A file read along with a capture file: its settings, or a further channel of its shot. */
+export interface Companion {
+  /** In the capture file's own folder. */
+  name: string;
+  sha256: string;
+}
+
 interface ReadFile {
   /** Lower-case hex over the file's bytes as they lie on the disk. */
   sha256: string;
@@ -21,6 +30,7 @@ interface ReadFile {
   /** The same for files of the same layout: answers given for one hold for the others. */
   layout: string;
   captures: Capture[];
+  companions: Companion[];
 }
 
 /**
@@ -36,15 +46,23 @@ export async function readFile(path: string, setup: Setup, options: ReadOptions 
   const parts = [];
   for (const file of files)
     parts.push({ path: file, ...(await readOne(file, setupOfFile(setup, file), options)) });
-  return { ...parts[0], captures: joinCaptures(parts) };
+  const companions = parts.flatMap((part, i) => [
+    ...(i > 0 ? [{ name: basename(part.path), sha256: part.sha256 }] : []),
+    ...part.companions,
+  ]);
+  return { ...parts[0], captures: joinCaptures(parts), companions };
 }
 
 async function readOne(path: string, setup: Setup, options: ReadOptions): Promise<ReadFile> {
   const read = await readAlone(path, setup, options, null);
   if (!read.captures.some(({ notes }) => notes.some(({ code }) => code === "interval-unknown"))) return read;
   const sidecar = await readSidecar(path);
-  return sidecar === null ? read : readAlone(path, setup, options, sidecar);
+  if (sidecar === null) return read;
+  const settings = { name: basename(sidecar.path), sha256: hashOf(await readBytes(sidecar.path)) };
+  return { ...(await readAlone(path, setup, options, sidecar.text)), companions: [settings] };
 }
+
+const hashOf = (bytes: Uint8Array) => createHash("sha256").update(bytes).digest("hex");
 
 const beat_ms = 100;
 
@@ -62,7 +80,7 @@ async function readAlone(
     // While threads start and pieces are awaited nothing else tells that it goes on.
     beat = setInterval(progress, beat_ms);
     const { captures, layout } = await ingest(file.source, setup, { progress, signal, parser, sidecar });
-    return { sha256: await file.finish(), bytes: file.bytes, layout, captures };
+    return { sha256: await file.finish(), bytes: file.bytes, layout, captures, companions: [] };
   } catch (error) {
     if (error instanceof ReadingError || !(error instanceof RangeError)) throw error;
     throw new ReadingError(

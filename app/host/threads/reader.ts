@@ -1,7 +1,7 @@
 import type { CaptureEvidence } from "../../../analysis/evidence.ts";
 import { readCapture } from "../../../analysis/reading.ts";
 import { judgeRun } from "../../../analysis/run.ts";
-import { readFile } from "../reading/index.ts";
+import { readFile, type Companion } from "../reading/index.ts";
 import { sketchPulses } from "../view/sketch.ts";
 import type { FileToRead, JudgedFile, Tasks } from "./tasks.ts";
 
@@ -9,6 +9,7 @@ interface Kept {
   sha256: string;
   bytes: number;
   layout: string;
+  companions: Companion[];
   evidence: CaptureEvidence[];
   /** Drawn when the file was first judged, while its samples were at hand. */
   sketches: JudgedFile["sketches"] | null;
@@ -20,16 +21,18 @@ export function createReader() {
 
   return {
     async read(file: FileToRead, onProgress: (fraction: number) => void) {
-      const { sha256, bytes, layout, captures } = await readFile(file.copy ?? file.path, file.setup, {
-        onProgress,
-      });
+      const { sha256, bytes, layout, captures, companions } = await readFile(
+        file.copy ?? file.path,
+        file.setup,
+        { onProgress },
+      );
       const evidence = captures.map((capture) => readCapture(capture, file.setup));
-      kept.set(keyOf(file), { sha256, bytes, layout, evidence, sketches: null });
+      kept.set(keyOf(file), { sha256, bytes, layout, companions, evidence, sketches: null });
       const notes = captures.flatMap((capture) => capture.notes);
       const asked = [
         ...new Set(notes.flatMap(({ question, answers }) => (question && answers ? [answers] : []))),
       ];
-      return { sha256, bytes, records: captures.length, layout, asked };
+      return { sha256, bytes, records: captures.length, layout, asked, companions };
     },
 
     judge({ files, setup }: Tasks["judge"]["argument"]): Tasks["judge"]["answer"] {
@@ -40,10 +43,10 @@ export function createReader() {
       const { readings, run } = judgeRun(all, setup);
       let end = 0;
       const judged = held.map((file, i): JudgedFile => {
-        const { sha256, bytes, layout, evidence } = file;
+        const { evidence, sketches: _, ...read } = file;
         const of = readings.slice(end, (end += evidence.length));
         file.sketches ??= sketchPulses(evidence, readings);
-        return { path: files[i].path, sha256, bytes, layout, readings: of, sketches: file.sketches };
+        return { path: files[i].path, ...read, readings: of, sketches: file.sketches };
       });
       forgetSamples(all);
       return { files: judged, run };

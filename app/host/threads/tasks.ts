@@ -1,6 +1,7 @@
 import type { CaptureReading } from "../../../analysis/reading-format.ts";
 import type { Setup } from "../../../analysis/setup/schema.ts";
 import type { RingPicture, TraceWindow, TriedSetup } from "../../bridge.ts";
+import type { Companion } from "../reading/index.ts";
 import type { Failure } from "../failure.ts";
 import type { RunReading } from "../../../analysis/run.ts";
 import type { Sketch } from "../view/sketch.ts";
@@ -19,7 +20,14 @@ export interface Tasks {
   read: {
     argument: FileToRead;
     /** `asked`: setup keys that answer what the file left open. */
-    answer: { sha256: string; bytes: number; records: number; layout: string; asked: string[] };
+    answer: {
+      sha256: string;
+      bytes: number;
+      records: number;
+      layout: string;
+      asked: string[];
+      companions: Companion[];
+    };
   };
   /** Judges files of one run together; those whose evidence the thread no longer has are named instead. */
   judge: {
@@ -50,6 +58,7 @@ export interface JudgedFile {
   sha256: string;
   bytes: number;
   layout: string;
+  companions: Companion[];
   /** One a record, in the file's order. */
   readings: CaptureReading[];
   /** Per record, per pulse. */
