@@ -1,7 +1,8 @@
 /** How the record was taken, where that can fool quietly: from the header's words and from the data. */
 import type { AcquisitionCode, Capture, Channel, Note } from "../capture.ts";
+import type { Steps } from "../steps.ts";
 import type { Layout } from "./layout.ts";
-import { ringStart } from "./ring-start.ts";
+import { ringStart, type RingStart } from "./ring-start.ts";
 
 interface Acquired {
   codes: AcquisitionCode[];
@@ -28,13 +29,14 @@ const words: [AcquisitionCode, RegExp, RegExp][] = [
   ["roll-mode", /acq|mode|horiz|time ?base/i, /\broll\b/i],
 ];
 
-export function acquisitionOf(capture: Capture, layout: Layout, pairs: boolean): Acquired {
+export function* acquisitionOf(capture: Capture, layout: Layout, pairs: boolean): Steps<Acquired> {
   const found = new Set<AcquisitionCode>();
   for (const [code, key, value] of words)
     if (layout.header.settings.some((setting) => says(setting, key, value))) found.add(code);
   if (pairs || twins(capture)) found.add("peak-detect");
   if (capture.channels.some(leadingBlank)) found.add("roll-mode");
-  for (const channel of capture.channels.filter(isRinging)) addFromRing(channel, found);
+  for (const channel of capture.channels.filter(isRinging))
+    addFromRing(yield* ringStart(channel.samples), found);
   return {
     codes: [...found],
     notes: [...found].map((code) => ({ code, text: texts[code] })),
@@ -65,8 +67,7 @@ const leadingBlank = ({ unusable, samples, overrange }: Channel) =>
 
 const isRinging = ({ role }: Channel) => role === "switch-node" || role === "coil-voltage";
 
-function addFromRing(channel: Channel, found: Set<AcquisitionCode>): void {
-  const ring = ringStart(channel.samples);
+function addFromRing(ring: RingStart | null, found: Set<AcquisitionCode>): void {
   if (!ring) return;
   if (ring.fromFirstSample) found.add("starts-in-ring");
   else if (ring.samplesACycle !== null && ring.riseSamples <= 2) found.add("undersampled");

@@ -1,9 +1,10 @@
 /** Layout and columns → captures: one a record, each on its own time base. */
 import type { Capture, Note } from "../capture.ts";
 import type { Setup } from "../setup/schema.ts";
+import type { Steps } from "../steps.ts";
 import { acquisitionOf } from "./acquisition.ts";
 import type { AxisGroup } from "./axes.ts";
-import { buildChannel, type RawChannel } from "./channel.ts";
+import { buildChannel, type BuiltChannel, type RawChannel } from "./channel.ts";
 import type { Columns } from "./columns.ts";
 import { envelopeChannels } from "./envelope.ts";
 import type { Layout } from "./layout.ts";
@@ -13,17 +14,17 @@ import { shotChannels, wideNote } from "./wide.ts";
 import { timeBaseOf, type RecordTime } from "./time-base.ts";
 import { axisSpans, stretchOf, withoutAxis } from "./axis-spans.ts";
 
-export function assemble(layout: Layout, columns: Columns, setup: Setup): Capture[] {
+export function* assemble(layout: Layout, columns: Columns, setup: Setup): Steps<Capture[]> {
   const captures = layout.traces
-    ? traceCaptures(layout, layout.traces, setup)
-    : columnCaptures(layout, columns, setup);
+    ? yield* traceCaptures(layout, layout.traces, setup)
+    : yield* columnCaptures(layout, columns, setup);
   captures.forEach((capture, index) => {
     capture.record = { index, count: captures.length, time: segmentTime(layout, index, captures.length) };
   });
   return captures;
 }
 
-function columnCaptures(layout: Layout, columns: Columns, setup: Setup): Capture[] {
+function* columnCaptures(layout: Layout, columns: Columns, setup: Setup): Steps<Capture[]> {
   const shared: Note[] = [...layout.notes, ...damageNotes(layout, columns)];
   const captures: Capture[] = [];
   let position = 0;
@@ -33,7 +34,7 @@ function columnCaptures(layout: Layout, columns: Columns, setup: Setup): Capture
     const notes = [...shared, ...(wide ? [wide] : [])];
     for (const time of axisSpans(layout, columns, group))
       for (const channels of shotChannels(raw, setup, wide !== null))
-        captures.push(captureOf({ layout, time, channels, setup, notes }));
+        captures.push(yield* captureOf({ layout, time, channels, setup, notes }));
   }
   return captures;
 }
@@ -50,13 +51,14 @@ function rawChannel(layout: Layout, columns: Columns, column: number, position: 
 }
 
 /** One trace a row: a record each, or channels of one where that is stated. */
-function traceCaptures(layout: Layout, traces: RawChannel[], setup: Setup): Capture[] {
+function* traceCaptures(layout: Layout, traces: RawChannel[], setup: Setup): Steps<Capture[]> {
   const time = withoutAxis(layout, traces[0].values.length);
   const together =
     setup.wide === "channels" ? [traces.map((trace, position) => ({ ...trace, position }))] : null;
-  return (together ?? traces.map((trace) => [trace])).map((channels) =>
-    captureOf({ layout, time, channels, setup, notes: layout.notes }),
-  );
+  const captures: Capture[] = [];
+  for (const channels of together ?? traces.map((trace) => [trace]))
+    captures.push(yield* captureOf({ layout, time, channels, setup, notes: layout.notes }));
+  return captures;
 }
 
 interface CaptureParts {
@@ -67,11 +69,12 @@ interface CaptureParts {
   notes: Note[];
 }
 
-function captureOf({ layout, time, channels, setup, notes }: CaptureParts): Capture {
-  const envelope = time.pairs ? envelopeChannels(channels, time) : null;
-  const built = (envelope ?? channels.map((raw) => ({ ...raw, values: stretchOf(raw.values, time) }))).map(
-    (raw) => buildChannel(raw, layout, setup),
-  );
+function* captureOf({ layout, time, channels, setup, notes }: CaptureParts): Steps<Capture> {
+  const cut = time.pairs
+    ? yield* envelopeChannels(channels, time)
+    : channels.map((raw) => ({ ...raw, values: stretchOf(raw.values, time) }));
+  const built: BuiltChannel[] = [];
+  for (const raw of cut) built.push(yield* buildChannel(raw, layout, setup));
   const samples = built[0].channel.samples.length;
   const base = timeBaseOf(layout, time, samples, setup);
   const capture: Capture = {
@@ -81,8 +84,8 @@ function captureOf({ layout, time, channels, setup, notes }: CaptureParts): Capt
     acquisition: [],
     notes: [...base.notes, ...notes, ...built.flatMap((one) => one.notes)],
   };
-  capture.notes.push(...guessRoles(capture));
-  const acquired = acquisitionOf(capture, layout, time.pairs);
+  capture.notes.push(...(yield* guessRoles(capture)));
+  const acquired = yield* acquisitionOf(capture, layout, time.pairs);
   capture.acquisition = acquired.codes;
   capture.notes.push(...acquired.notes);
   return capture;

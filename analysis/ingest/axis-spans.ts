@@ -100,13 +100,16 @@ function finest(cells: string[], { dialect }: Layout, end: number): number {
   return Number.isFinite(quantum) ? quantum : 0;
 }
 
-/** A channel's samples in this record, in rising time, with NaN where rows are gone. */
-export function stretchOf(values: Float64Array, time: RecordTime): Float64Array {
-  const whole = time.from === 0 && time.to === values.length;
-  const part = whole ? values : values.slice(time.from, time.to);
-  const gaps = time.measured?.gaps ?? [];
+/** Above this a record keeps its place in the column's memory. */
+const copiedRows = 65_536;
+
+/** A channel's samples in this record, in rising time, with NaN where rows are gone; a long one in place. */
+export function stretchOf(values: Float64Array, { from, to, measured, reversed }: RecordTime): Float64Array {
+  const part = to - from > copiedRows ? values.subarray(from, to) : values.slice(from, to);
+  const gaps = measured?.gaps ?? [];
   const filled = gaps.length > 0 ? fill(part, gaps) : part;
-  return time.reversed ? filled.toReversed() : filled;
+  if (reversed) filled.reverse();
+  return filled;
 }
 
 function fill(values: Float64Array, gaps: { row: number; missing: number }[]): Float64Array {

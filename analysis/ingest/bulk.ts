@@ -43,7 +43,7 @@ export interface ColumnTally {
 
 export interface ParsedChunk {
   rows: number;
-  values: Float64Array<ArrayBuffer>[];
+  values: Float64Array[];
   tallies: ColumnTally[];
   odd: OddLine[];
   /** Odd lines beyond those listed. */
@@ -58,7 +58,7 @@ const kinds = ["number", "blank", "missing", "over", "text"] as const;
 const [isNumber, isBlank, isText] = [0, 1, 4];
 
 /** Parses whole lines, which end after a line end, or at the end of the file. `reuse`: memory for the values. */
-export function parseBulk(lines: Uint8Array, plan: BulkPlan, reuse: ArrayBuffer[] = []): ParsedChunk {
+export function parseBulk(lines: Uint8Array, plan: BulkPlan, reuse: ArrayBufferLike[] = []): ParsedChunk {
   const bytes = withLineEnd(plan.joinCommas ? joinDecimalCommas(lines) : lines);
   const { width, separator, columns } = plan;
   const blanks = separator === space;
@@ -72,6 +72,7 @@ export function parseBulk(lines: Uint8Array, plan: BulkPlan, reuse: ArrayBuffer[
   const { kindOf } = chunk;
   const end = bytes.length;
   let at = 0;
+  let plain = true;
   while (at < end) {
     let byte = bytes[at];
     if (byte === lineFeed || byte === carriageReturn) {
@@ -101,10 +102,12 @@ export function parseBulk(lines: Uint8Array, plan: BulkPlan, reuse: ArrayBuffer[
         } else {
           after = endOfCell(bytes, at, separator);
           chunk.oddCell(slot, at, after);
+          plain = false;
           odd = 1;
         }
       } else {
         after = endOfCell(bytes, at, separator);
+        if (after > at) plain = false;
         if (slot >= 0) chunk.symbolCell(slot, at, after);
         else if (cell >= plan.cells && after > at) odd |= 2;
       }
@@ -117,8 +120,12 @@ export function parseBulk(lines: Uint8Array, plan: BulkPlan, reuse: ArrayBuffer[
     if (odd === 0 && cell >= width) chunk.rows++;
     else chunk.oddLine(lineStart, at, cell, (odd & 2) !== 0);
   }
-  return chunk.done();
+  return chunk.done(plain);
 }
+
+/** Rows that a piece of so many bytes hardly exceeds. */
+export const likelyRows = (bytes: number, { width }: BulkPlan) =>
+  Math.ceil(bytes / Math.max(2, 6 * width)) + 16;
 
 /** The loops stop at a line end: reading behind the array would make every read slower. */
 function withLineEnd(bytes: Uint8Array): Uint8Array {
@@ -155,7 +162,7 @@ class ChunkBuilder {
   rows = 0;
   /** Kind of each wanted cell of the line under way. */
   readonly kindOf: Uint8Array;
-  values: Float64Array<ArrayBuffer>[];
+  values: Float64Array[];
   private capacity: number;
   private readonly tallies: ColumnTally[];
   private readonly odd: OddLine[] = [];
@@ -164,14 +171,15 @@ class ChunkBuilder {
   constructor(
     private readonly bytes: Uint8Array,
     private readonly plan: BulkPlan,
-    reuse: ArrayBuffer[],
+    reuse: ArrayBufferLike[],
   ) {
-    // Rounded up, so that the memory of one piece does for the next.
-    const likely = Math.ceil(bytes.length / Math.max(2, 6 * plan.width)) + 16;
-    this.capacity = bytes.length > 1e6 ? Math.ceil(likely / 16_384) * 16_384 : likely;
+    this.capacity = likelyRows(bytes.length, plan);
     this.values = plan.columns.map((_, slot) => {
       const used = reuse[slot];
-      return used?.byteLength >= 8 * this.capacity ? new Float64Array(used) : new Float64Array(this.capacity);
+      const { capacity } = this;
+      return used?.byteLength >= 8 * capacity
+        ? new Float64Array(used, 0, capacity)
+        : new Float64Array(capacity);
     });
     this.tallies = plan.columns.map(() => ({ blank: 0, missing: 0, over: 0, text: 0 }));
     this.kindOf = new Uint8Array(plan.columns.length);
@@ -238,14 +246,15 @@ class ChunkBuilder {
       });
   }
 
-  done(): ParsedChunk {
+  /** `plain`: all of it was read as numbers, among which no NUL byte stands. */
+  done(plain: boolean): ParsedChunk {
     return {
       rows: this.rows,
       values: this.values.map((column) => column.subarray(0, this.rows)),
       tallies: this.tallies,
       odd: this.odd,
       oddMore: this.oddMore,
-      nul: this.bytes.indexOf(0),
+      nul: plain ? -1 : this.bytes.indexOf(0),
     };
   }
 }

@@ -1,6 +1,7 @@
 /** One column → one channel in final units, with its resolution and what can't be used of it. */
 import type { Channel, Note } from "../capture.ts";
 import type { Setup, SetupChannel } from "../setup/schema.ts";
+import { overSamples, type Steps } from "../steps.ts";
 import type { ColumnTally } from "./bulk.ts";
 import type { Layout } from "./layout.ts";
 import { estimateLsb } from "./lsb.ts";
@@ -18,19 +19,20 @@ export interface RawChannel {
   column: number;
 }
 
-export function buildChannel(
-  raw: RawChannel,
-  layout: Layout,
-  setup: Setup,
-): { channel: Channel; notes: Note[] } {
+export interface BuiltChannel {
+  channel: Channel;
+  notes: Note[];
+}
+
+export function* buildChannel(raw: RawChannel, layout: Layout, setup: Setup): Steps<BuiltChannel> {
   const name = raw.name.name || String(raw.position + 1);
   const stated = statedChannel(setup, raw.position, name);
-  const codes = raw.symbolic ? null : integerCodes(raw, layout, stated);
+  const codes = raw.symbolic ? null : yield* integerCodes(raw, layout, stated);
   const factor = raw.name.unit?.factor ?? 1;
   const scale = stated?.scale ?? 1;
   const offset = stated?.offset ?? 0;
-  const { samples, unusable, overrange, lsb } = findUnusable(raw.values, estimateLsb(raw.values));
-  applyScale(samples, factor, scale, offset);
+  const { samples, unusable, overrange, lsb } = yield* findUnusable(raw.values, estimateLsb(raw.values));
+  yield* applyScale(samples, factor, scale, offset);
   const channel: Channel = {
     position: raw.position,
     name,
@@ -62,11 +64,13 @@ export function statedChannel(setup: Setup, position: number, name: string): Set
 }
 
 /** In place: the column belongs to this channel alone. */
-function applyScale(samples: Float64Array, factor: number, scale: number, offset: number): void {
+function* applyScale(samples: Float64Array, factor: number, scale: number, offset: number): Steps<void> {
   if (factor === 1 && scale === 1 && offset === 0) return;
   const divisor = factor < 1 ? Math.round(1 / factor) : 1;
   const product = (factor < 1 ? 1 : factor) * scale;
-  for (let i = 0; i < samples.length; i++) samples[i] = (samples[i] / divisor) * product + offset;
+  yield* overSamples(samples.length, (from, to) => {
+    for (let i = from; i < to; i++) samples[i] = (samples[i] / divisor) * product + offset;
+  });
 }
 
 function channelNotes(channel: Channel, raw: RawChannel, codes: Note | null): Note[] {

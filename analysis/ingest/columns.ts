@@ -64,11 +64,10 @@ export class Columns {
     return grown;
   }
 
-  /** The whole column, its own memory where it is small. */
+  /** The whole column. */
   column(column: number): Float64Array {
     const held = this.values.get(column);
     if (!held) throw new Error(`column ${column} is no value column`);
-    const whole = held.subarray(0, this.rows);
-    return this.rows > 65_536 ? whole : whole.slice();
+    return held.subarray(0, this.rows);
   }
 }

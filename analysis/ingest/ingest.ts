@@ -1,6 +1,7 @@
 /** The way in: bytes → captures. One road for files held whole and for files read piece by piece. */
 import type { Capture } from "../capture.ts";
 import { ReadingError } from "../errors.ts";
+import { atOnce, type Steps } from "../steps.ts";
 import type { Setup } from "../setup/schema.ts";
 import { assemble } from "./assemble.ts";
 import { parseBulk, type BulkPlan, type ParsedChunk } from "./bulk.ts";
@@ -10,13 +11,16 @@ import { Columns } from "./columns.ts";
 import { detectEncoding, utf16ToUtf8 } from "./encoding.ts";
 import { planLayout, type Layout } from "./layout.ts";
 import { splitLines } from "./lines.ts";
+import { PieceMemory } from "./memory.ts";
 import { nulByte, refuseForeign } from "./refuse.ts";
 import type { ByteSource, CancelSignal } from "./source.ts";
 import { concatenate, TextStream } from "./text-stream.ts";
 
 interface IngestOptions {
-  /** Called with the share read so far, 0 … 1, after every piece. */
+  /** Called with the share read so far, 0 … 1, after every piece and between the steps of the assembly. */
   progress?: (share: number) => void;
+  /** Waited for between the steps of the assembly, so that a signal can arrive. */
+  rest?: () => Promise<void>;
   signal?: CancelSignal;
   /** Parses pieces elsewhere (worker threads); without one they are parsed here. */
   parser?: ChunkParser;
@@ -24,17 +28,31 @@ interface IngestOptions {
   sidecar?: string | null;
 }
 
-/** Takes over the bytes it is given: they may be transferred to another thread. */
 export interface ChunkParser {
   /** Pieces worth having under way at once. */
   lanes: number;
-  parse(bytes: Uint8Array<ArrayBuffer>, plan: BulkPlan): Promise<ParsedChunk>;
-  /** Memory of a piece that is done with. */
-  spare?(): ArrayBuffer | undefined;
-  /** Its values have been copied: their memory may be used again. */
-  release?(chunk: ParsedChunk): void;
+  /** Memory for a piece's text. */
+  room(bytes: number): ArrayBufferLike;
+  /** Takes `text`, which lies at the beginning of such memory, until it is released. */
+  parse(text: Uint8Array, plan: BulkPlan): Promise<ParsedChunk> | ParsedChunk;
+  /** The values have been copied: what the piece took may be used again. */
+  release(text: Uint8Array, chunk: ParsedChunk): void;
   /** No more pieces will come. */
   close?(): Promise<void>;
+}
+
+/** Parses where it stands. */
+function parserInPlace(): ChunkParser {
+  const memory = new PieceMemory(ArrayBuffer);
+  return {
+    lanes: 0,
+    room: (bytes) => memory.text(bytes),
+    parse: (text, plan) => parseBulk(text, plan, memory.values(text.length, plan)),
+    release(text, chunk) {
+      memory.releaseText(text);
+      memory.releaseValues(chunk);
+    },
+  };
 }
 
 interface Ingested {
@@ -58,17 +76,20 @@ export function ingestBytes(bytes: Uint8Array, setup: Setup, _name?: string): Ca
   while (head.length < text.length && isShort(head)) head = text.subarray(0, 4 * head.length);
   refuseForeign(head);
   const layout = planLayout(head, head.length === text.length, setup);
-  const columns = new Columns(layout, likelyRows(layout, text.length));
+  const columns = new Columns(layout, likelyRowsOf(layout, text.length));
+  const memory = new PieceMemory(ArrayBuffer);
   let from = layout.dataStart;
   for (let size = pieceBytes; from < text.length; size = pieceBytes) {
     let to = lastLineEnd(text, from, from + size);
     while (to === from && from + size < text.length) to = lastLineEnd(text, from, from + (size *= 2));
     if (to === from) break;
-    columns.append(parseBulk(text.subarray(from, to), layout.plan), to - from);
+    const chunk = parseBulk(text.subarray(from, to), layout.plan, memory.values(to - from, layout.plan));
+    columns.append(chunk, to - from);
+    memory.releaseValues(chunk);
     from = to;
   }
   const tail = text.subarray(Math.max(layout.dataStart, from - tailBytes), from);
-  return finish(layout, columns, setup, { tail, unended: text.subarray(from) });
+  return atOnce(finish(layout, columns, setup, { tail, unended: text.subarray(from) }));
 }
 
 /** For files of any size: never more of them in memory than a few pieces. Throws ReadingError. */
@@ -82,11 +103,23 @@ export async function ingest(
   while (!stream.ended && isShort(head)) head = concatenate(head, await stream.next(3 * head.length));
   refuseForeign(head);
   const layout = planLayout(head, stream.ended, setup, options.sidecar ?? null);
-  const columns = new Columns(layout, likelyRows(layout, source.size));
+  const columns = new Columns(layout, likelyRowsOf(layout, source.size));
   const end = await readData(stream, head.subarray(layout.dataStart), layout, columns, options);
   // What the threads and their pieces take is given back before the channels are looked through.
   await options.parser?.close?.();
-  return { captures: finish(layout, columns, setup, end), layout: layout.signature };
+  const captures = await inTurn(finish(layout, columns, setup, end), options);
+  return { captures, layout: layout.signature };
+}
+
+/** Between two steps it is said how it goes, and it can be stopped. */
+async function inTurn<T>(steps: Steps<T>, { progress, rest, signal }: IngestOptions): Promise<T> {
+  for (;;) {
+    const { done, value } = steps.next();
+    if (done) return value;
+    progress?.(1);
+    await rest?.();
+    if (signal?.aborted) throw cancelled();
+  }
 }
 
 /** How the text ends: its last whole lines, and a last line without a line end. */
@@ -102,27 +135,24 @@ async function readData(
   columns: Columns,
   options: IngestOptions,
 ): Promise<TextEnd> {
-  const parser: ChunkParser = options.parser ?? {
-    lanes: 1,
-    parse: async (bytes, plan) => parseBulk(bytes, plan),
-  };
-  const underWay: { result: Promise<ParsedChunk>; bytes: number }[] = [];
+  const parser = options.parser ?? parserInPlace();
+  const underWay: { chunk: Promise<ParsedChunk> | ParsedChunk; text: Uint8Array }[] = [];
   const settle = async () => {
-    const { result, bytes } = underWay.shift()!;
-    const chunk = await result;
-    columns.append(chunk, bytes);
-    parser.release?.(chunk);
+    const { chunk, text } = underWay.shift()!;
+    const parsed = await chunk;
+    columns.append(parsed, text.length);
+    parser.release(text, parsed);
   };
   let tail = new Uint8Array(0);
-  let piece = concatenate(first, new Uint8Array(0));
+  let piece = concatenate(first, new Uint8Array(0), parser.room(first.length));
   for (;;) {
     if (options.signal?.aborted) throw cancelled();
     const end = lastLineEnd(piece, 0, piece.length);
     const rest = piece.slice(end);
     if (end > 0) {
-      const bytes = piece.subarray(0, end);
-      tail = bytes.slice(Math.max(0, end - tailBytes));
-      underWay.push({ result: parser.parse(bytes, plan), bytes: end });
+      const text = piece.subarray(0, end);
+      tail = text.slice(Math.max(0, end - tailBytes));
+      underWay.push({ chunk: parser.parse(text, plan), text });
       if (underWay.length > parser.lanes) await settle();
       options.progress?.(Math.min(1, stream.consumed / stream.size));
     }
@@ -131,11 +161,17 @@ async function readData(
       while (underWay.length > 0) await settle();
       return { tail, unended: rest };
     }
-    piece = concatenate(rest, await stream.next(pieceBytes), parser.spare?.());
+    const next = await stream.next(pieceBytes);
+    piece = concatenate(rest, next, parser.room(rest.length + next.length));
   }
 }
 
-function finish(layout: Layout, columns: Columns, setup: Setup, { tail, unended }: TextEnd): Capture[] {
+function* finish(
+  layout: Layout,
+  columns: Columns,
+  setup: Setup,
+  { tail, unended }: TextEnd,
+): Steps<Capture[]> {
   const cellsOf = (bytes: Uint8Array) =>
     splitLines(bytes).map(({ text }) => splitCells(text, layout.dialect.separator));
   columns.tail = cellsOf(tail)
@@ -146,7 +182,7 @@ function finish(layout: Layout, columns: Columns, setup: Setup, { tail, unended 
     columns.cutLine = last.join(layout.dialect.separator);
   else if (last) columns.append(parseBulk(unended, layout.plan), unended.length);
   if (columns.nul >= 0) throw nulByte(layout.dataStart + columns.nul);
-  return assemble(layout, columns, setup);
+  return yield* assemble(layout, columns, setup);
 }
 
 /** Too few lines to see how a file is built: its lines are long. */
@@ -165,7 +201,7 @@ function lastLineEnd(bytes: Uint8Array, from: number, to: number): number {
 }
 
 /** A little more than the file should hold, from the length of its first lines. */
-function likelyRows(layout: Layout, size: number): number {
+function likelyRowsOf(layout: Layout, size: number): number {
   const lines = layout.sample.length;
   const bytes = layout.sample.reduce(
     (sum, cells) => sum + cells.reduce((n, cell) => n + cell.length + 1, 0),

@@ -4,6 +4,8 @@
  * widens as the square root of the height below it, and a genuine level (ground, on-level, either level
  * of a gate) is where the signal rests.
  */
+import { overSamples, type Steps } from "../steps.ts";
+
 export interface Usable {
   /** Infinities made NaN, in place. */
   samples: Float64Array;
@@ -19,23 +21,27 @@ const mostPinned = 0.3;
 /** Within this share of the range from zero an extreme is the ground level. */
 const groundShare = 0.03;
 
-export function findUnusable(samples: Float64Array, lsb: number | null): Usable {
-  const range = extremes(samples);
+export function* findUnusable(samples: Float64Array, lsb: number | null): Steps<Usable> {
+  const range = yield* extremes(samples);
   const marks = new Marks(samples.length);
   let overrange = 0;
   if (range.finite < samples.length) {
-    for (let i = 0; i < samples.length; i++) {
-      if (Number.isFinite(samples[i])) continue;
-      marks.set(i, i + 1, samples[i] === samples[i] ? 2 : 1);
-      samples[i] = NaN;
-    }
-    overrange += countGaps(samples, marks.bad, range);
+    yield* overSamples(samples.length, (from, to) => markGaps(samples, marks, from, to));
+    overrange += countGaps(samples, marks.bad, range, yield* stretches(marks.bad));
   }
   const step = lsb ?? (range.high - range.low) / 250;
-  if (range.high > range.low && !isTwoLevel(samples, range)) {
-    overrange += markPinned(samples, marks, step, range);
+  if (range.high > range.low && !(yield* isTwoLevel(samples, range)))
+    overrange += yield* markPinned(samples, marks, step, range);
+  return { samples, unusable: yield* stretches(marks.bad), overrange, lsb };
+}
+
+/** Samples without a number; infinities become NaN. */
+function markGaps(samples: Float64Array, marks: Marks, from: number, to: number): void {
+  for (let i = from; i < to; i++) {
+    if (Number.isFinite(samples[i])) continue;
+    marks.set(i, i + 1, samples[i] === samples[i] ? 2 : 1);
+    samples[i] = NaN;
   }
-  return { samples, unusable: marks.any ? stretches(marks.bad) : new Int32Array(0), overrange, lsb };
 }
 
 /** Per sample 0 good, 1 missing, 2 over range; made only when there is something to mark. */
@@ -58,61 +64,63 @@ interface Range {
   finite: number;
 }
 
-function extremes(samples: Float64Array): Range {
-  let [low, high, finite] = [Infinity, -Infinity, 0];
-  for (let i = 0; i < samples.length; i++) {
-    const value = samples[i];
-    if (value - value !== 0) continue;
-    finite++;
-    if (value < low) low = value;
-    if (value > high) high = value;
-  }
-  return { low, high, finite };
+function* extremes(samples: Float64Array): Steps<Range> {
+  const range = { low: Infinity, high: -Infinity, finite: 0 };
+  yield* overSamples(samples.length, (from, to) => {
+    let { low, high, finite } = range;
+    for (let i = from; i < to; i++) {
+      const value = samples[i];
+      if (value - value !== 0) continue;
+      finite++;
+      if (value < low) low = value;
+      if (value > high) high = value;
+    }
+    Object.assign(range, { low, high, finite });
+  });
+  return range;
 }
 
 /** Infinite samples are over range; so is a gap inside the record whose edge reaches for an extreme. */
-function countGaps(samples: Float64Array, bad: Uint8Array, { low, high }: Range): number {
+function countGaps(samples: Float64Array, bad: Uint8Array, { low, high }: Range, gaps: Int32Array): number {
   const near = 0.1 * (high - low);
-  const atExtreme = (i: number) =>
-    i >= 0 && i < samples.length && (samples[i] > high - near || samples[i] < low + near);
+  const atExtreme = (i: number) => samples[i] > high - near || samples[i] < low + near;
   let count = 0;
-  for (let i = 0; i < samples.length; i++) {
-    if (!bad[i]) continue;
-    let end = i;
-    let infinite = 0;
-    for (; end < samples.length && bad[end]; end++) if (bad[end] === 2) infinite++;
-    const inside = i > 0 && end < samples.length;
-    count += infinite || (inside && (atExtreme(i - 1) || atExtreme(end)) ? end - i : 0);
-    i = end;
+  for (let k = 0; k < gaps.length; k += 2) {
+    const [from, to] = [gaps[k], gaps[k + 1]];
+    const infinite = bad.subarray(from, to).includes(2);
+    const inside = from > 0 && to < samples.length;
+    count += infinite || (inside && (atExtreme(from - 1) || atExtreme(to))) ? to - from : 0;
   }
   return count;
 }
 
 /** Almost all samples rest at one of two levels: a gate or logic signal. */
-function isTwoLevel(samples: Float64Array, { low, high, finite }: Range): boolean {
+function* isTwoLevel(samples: Float64Array, { low, high, finite }: Range): Steps<boolean> {
   const near = 0.08 * (high - low);
   let left = 0.05 * finite;
-  for (let i = 0; i < samples.length && left > 0; i++)
-    if (samples[i] > low + near && samples[i] < high - near) left--;
+  yield* overSamples(samples.length, (from, to) => {
+    for (let i = from; i < to && left > 0; i++)
+      if (samples[i] > low + near && samples[i] < high - near) left--;
+  });
   return left > 0;
 }
 
 /** Marks pinned runs at both extremes; answers how many samples. */
-function markPinned(samples: Float64Array, marks: Marks, lsb: number, { low, high }: Range): number {
+function* markPinned(samples: Float64Array, marks: Marks, lsb: number, { low, high }: Range): Steps<number> {
   const span = high - low;
   const tolerance = Math.min(0.25 * lsb, 1e-6 * span);
   const edges = [new Edge(high, 1), new Edge(low, -1)];
-  for (let i = 0; i < samples.length; i++) {
-    const value = samples[i];
-    if (value < high - tolerance && value > low + tolerance) continue;
-    const edge = value >= high - tolerance ? edges[0] : value <= low + tolerance ? edges[1] : null;
-    if (!edge) continue;
-    let end = i + 1;
-    while (end < samples.length && Math.abs(samples[end] - edge.level) <= tolerance) end++;
-    edge.total += end - i;
-    if (end - i >= shortestPinned && isAbrupt(samples, i, end, edge, lsb)) edge.runs.push([i, end]);
-    i = end - 1;
-  }
+  let done = 0;
+  yield* overSamples(samples.length, (from, to) => {
+    for (let i = Math.max(from, done); i < to; i++) {
+      const value = samples[i];
+      if (value < high - tolerance && value > low + tolerance) continue;
+      const edge = value >= high - tolerance ? edges[0] : value <= low + tolerance ? edges[1] : null;
+      if (!edge) continue;
+      done = runAt(samples, i, edge, tolerance, lsb);
+      i = done - 1;
+    }
+  });
   let count = 0;
   for (const { level, total, runs } of edges) {
     if (Math.abs(level) < groundShare * span || total > mostPinned * samples.length) continue;
@@ -122,6 +130,15 @@ function markPinned(samples: Float64Array, marks: Marks, lsb: number, { low, hig
     }
   }
   return count;
+}
+
+/** Adds the run of samples at this edge; answers its end. */
+function runAt(samples: Float64Array, from: number, edge: Edge, tolerance: number, lsb: number): number {
+  let end = from + 1;
+  while (end < samples.length && Math.abs(samples[end] - edge.level) <= tolerance) end++;
+  edge.total += end - from;
+  if (end - from >= shortestPinned && isAbrupt(samples, from, end, edge, lsb)) edge.runs.push([from, end]);
+  return end;
 }
 
 /** One extreme of the record: `side` +1 the highest, −1 the lowest. */
@@ -147,13 +164,12 @@ function isAbrupt(samples: Float64Array, from: number, to: number, edge: Edge, l
   return true;
 }
 
-function stretches(bad: Uint8Array): Int32Array {
-  const pairs: number[] = [];
-  for (let i = 0; i < bad.length; i++) {
-    if (!bad[i]) continue;
-    const from = i;
-    while (i < bad.length && bad[i]) i++;
-    pairs.push(from, i);
-  }
-  return Int32Array.from(pairs);
+/** Where marked and unmarked samples meet. */
+function* stretches(bad: Uint8Array): Steps<Int32Array> {
+  const bounds: number[] = [];
+  yield* overSamples(bad.length, (from, to) => {
+    for (let i = from; i < to; i++) if ((bad[i] !== 0) !== (bounds.length % 2 === 1)) bounds.push(i);
+  });
+  if (bounds.length % 2 === 1) bounds.push(bad.length);
+  return Int32Array.from(bounds);
 }

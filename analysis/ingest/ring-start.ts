@@ -1,6 +1,7 @@
 /** The largest kick of a channel, looked at coarsely: how it begins and how densely it is sampled. */
 
 import { medianOf } from "../numeric/robust.ts";
+import { overSamples, type Steps } from "../steps.ts";
 
 export interface RingStart {
   /** The record begins at full swing: there is no rest and no rise before it. */
@@ -17,12 +18,10 @@ const crossingsLooked = 12;
 /** Values that a level or a noise is taken from, however long the stretch. */
 const LOOKED = 4096;
 
-export function ringStart(samples: Float64Array): RingStart | null {
+export function* ringStart(samples: Float64Array): Steps<RingStart | null> {
   const rest = tailLevel(samples);
   if (rest === null) return null;
-  let peak = 0;
-  for (let i = 0; i < samples.length; i++)
-    if (Math.abs(samples[i] - rest) > Math.abs(samples[peak] - rest)) peak = i;
+  const peak = yield* farthestFrom(rest, samples);
   const height = samples[peak] - rest;
   if (!(Math.abs(height) > 0)) return null;
   const share = (i: number) => (samples[i] - rest) / height;
@@ -30,7 +29,7 @@ export function ringStart(samples: Float64Array): RingStart | null {
   while (from > 0 && share(from - 1) > 0.1) from--;
   let to = from;
   while (to < peak && share(to) < 0.9) to++;
-  const crossings = zeroCrossings(share, peak, samples.length);
+  const crossings = yield* zeroCrossings(share, peak, samples.length);
   const cycle =
     crossings.length < 4
       ? null
@@ -49,18 +48,33 @@ function tailLevel(samples: Float64Array): number | null {
   return Number.isNaN(level) ? null : level;
 }
 
+function* farthestFrom(rest: number, samples: Float64Array): Steps<number> {
+  let [peak, height] = [0, Math.abs(samples[0] - rest)];
+  yield* overSamples(samples.length, (from, to) => {
+    for (let i = from; i < to; i++) {
+      const here = Math.abs(samples[i] - rest);
+      if (here > height || height !== height) [peak, height] = [i, here];
+    }
+  });
+  return peak;
+}
+
 /** Places, in fractions of a sample, where the ring passes rest after its peak while it is still large. */
-function zeroCrossings(share: (i: number) => number, peak: number, end: number): number[] {
+function* zeroCrossings(share: (i: number) => number, peak: number, end: number): Steps<number[]> {
   const crossings: number[] = [];
-  let largest = 0;
-  for (let i = peak + 1; i < end && crossings.length < crossingsLooked; i++) {
-    const [before, here] = [share(i - 1), share(i)];
-    largest = Math.max(largest, Math.abs(here));
-    if (!(before * here < 0)) continue;
-    if (crossings.length > 0 && largest < 0.1) break;
-    crossings.push(i - 1 + before / (before - here));
-    largest = 0;
-  }
+  let [largest, ended] = [0, false];
+  yield* overSamples(end - peak - 1, (first, last) => {
+    for (let i = peak + 1 + first; i < peak + 1 + last && !ended; i++) {
+      const [before, here] = [share(i - 1), share(i)];
+      largest = Math.max(largest, Math.abs(here));
+      if (!(before * here < 0)) continue;
+      ended = crossings.length > 0 && largest < 0.1;
+      if (ended) break;
+      crossings.push(i - 1 + before / (before - here));
+      largest = 0;
+      ended = crossings.length === crossingsLooked;
+    }
+  });
   return crossings;
 }
 

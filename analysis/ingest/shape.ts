@@ -1,5 +1,7 @@
 /** What a waveform looks like, in the few respects that tell a switch node from a gate or a current. */
 
+import { overSamples, stepSamples, type Steps } from "../steps.ts";
+
 export interface Shape {
   low: number;
   high: number;
@@ -23,27 +25,39 @@ const bins = 256;
 const looked = 100_000;
 
 /** Every stretch of a long record by its lowest and highest sample: shapes need no more. */
-function thinned(samples: Float64Array): Float64Array {
+function* thinned(samples: Float64Array): Steps<Float64Array> {
   const blocks = looked / 2;
   if (samples.length <= 2 * looked) return samples;
   const kept = new Float64Array(2 * blocks);
-  for (let b = 0; b < blocks; b++) {
-    const to = Math.floor(((b + 1) * samples.length) / blocks);
-    let low = Math.floor((b * samples.length) / blocks);
-    let high = low;
-    for (let i = low + 1; i < to; i++) {
-      if (samples[i] < samples[low] || samples[low] !== samples[low]) low = i;
-      if (samples[i] > samples[high] || samples[high] !== samples[high]) high = i;
-    }
-    kept[2 * b] = samples[Math.min(low, high)];
-    kept[2 * b + 1] = samples[Math.max(low, high)];
-  }
+  const edge = (b: number) => Math.floor((b * samples.length) / blocks);
+  const visit = (from: number, to: number) => {
+    for (let b = from; b < to; b++) keepExtremes(samples, edge(b), edge(b + 1), kept, 2 * b);
+  };
+  yield* overSamples(blocks, visit, Math.ceil((blocks * stepSamples) / samples.length));
   return kept;
 }
 
+function keepExtremes(
+  samples: Float64Array,
+  from: number,
+  to: number,
+  kept: Float64Array,
+  place: number,
+): void {
+  let [low, high] = [from, from];
+  let [lowest, highest] = [samples[from], samples[from]];
+  for (let i = from + 1; i < to; i++) {
+    const value = samples[i];
+    if (value < lowest || lowest !== lowest) [low, lowest] = [i, value];
+    if (value > highest || highest !== highest) [high, highest] = [i, value];
+  }
+  kept[place] = samples[Math.min(low, high)];
+  kept[place + 1] = samples[Math.max(low, high)];
+}
+
 /** null without two different values. */
-export function shapeOf(record: Float64Array): Shape | null {
-  const samples = thinned(record);
+export function* shapeOf(record: Float64Array): Steps<Shape | null> {
+  const samples = yield* thinned(record);
   let [low, high] = [Infinity, -Infinity];
   for (const value of samples) {
     if (value < low) low = value;

@@ -39,14 +39,10 @@ export class TextStream {
   }
 }
 
-/** Pieces differ by a line: rounded up, the memory of one does for the next. */
-const roundUp = (bytes: number) => Math.ceil(bytes / 65_536) * 65_536;
-
-/** `into`: memory to be used again, if it is large enough. */
-export function concatenate(a: Uint8Array, b: Uint8Array, into?: ArrayBuffer): Uint8Array<ArrayBuffer> {
+/** `into`: memory of at least their length. */
+export function concatenate(a: Uint8Array, b: Uint8Array, into?: ArrayBufferLike): Uint8Array {
   const length = a.length + b.length;
-  const reused = into && into.byteLength >= length ? into : new ArrayBuffer(roundUp(length));
-  const whole = new Uint8Array(reused, 0, length);
+  const whole = new Uint8Array(into ?? new ArrayBuffer(length), 0, length);
   whole.set(a);
   whole.set(b, a.length);
   return whole;

@@ -2,7 +2,12 @@
 import { availableParallelism } from "node:os";
 import { Worker } from "node:worker_threads";
 import type { ParseResult, ParseTask } from "./parse-worker.ts";
-import type { BulkPlan, ChunkParser, ParsedChunk } from "../../../analysis/ingest/index.ts";
+import {
+  PieceMemory,
+  type BulkPlan,
+  type ChunkParser,
+  type ParsedChunk,
+} from "../../../analysis/ingest/index.ts";
 
 let script: URL | null = null;
 
@@ -33,15 +38,13 @@ interface Waiting {
 class Pool implements ParserPool {
   readonly lanes: number;
   private next = 0;
-  private readonly spares: ArrayBuffer[] = [];
-  private readonly values: ArrayBuffer[] = [];
+  private readonly memory = new PieceMemory(SharedArrayBuffer);
   private readonly waiting = new Map<number, Waiting>();
 
   constructor(private readonly workers: Worker[]) {
     this.lanes = workers.length + 1;
     for (const worker of workers) {
-      worker.on("message", ({ id, chunk, spare }: ParseResult) => {
-        this.spares.push(spare);
+      worker.on("message", ({ id, chunk }: ParseResult) => {
         this.waiting.get(id)?.resolve(chunk);
         this.waiting.delete(id);
       });
@@ -49,29 +52,28 @@ class Pool implements ParserPool {
     }
   }
 
-  spare(): ArrayBuffer | undefined {
-    return this.spares.pop();
+  room(bytes: number): ArrayBufferLike {
+    return this.memory.text(bytes);
   }
 
-  release({ values }: ParsedChunk): void {
-    this.values.push(...values.map(({ buffer }) => buffer));
-  }
-
-  parse(bytes: Uint8Array<ArrayBuffer>, plan: BulkPlan): Promise<ParsedChunk> {
+  parse(text: Uint8Array, plan: BulkPlan): Promise<ParsedChunk> {
     const id = this.next++;
     const result = new Promise<ParsedChunk>((resolve, reject) => this.waiting.set(id, { resolve, reject }));
     // Who stops early leaves results behind that nobody awaits.
     result.catch(() => undefined);
-    const reuse = this.values.splice(0, plan.columns.length);
-    const task: ParseTask = { id, bytes, plan, reuse };
-    this.workers[id % this.workers.length].postMessage(task, [bytes.buffer, ...reuse]);
+    const task: ParseTask = { id, text, plan, values: this.memory.values(text.length, plan) };
+    this.workers[id % this.workers.length].postMessage(task);
     return result;
+  }
+
+  release(text: Uint8Array, chunk: ParsedChunk): void {
+    this.memory.releaseText(text);
+    this.memory.releaseValues(chunk);
   }
 
   async close(): Promise<void> {
     this.fail(new Error("the parser was closed"));
-    this.spares.length = 0;
-    this.values.length = 0;
+    this.memory.clear();
     await Promise.all(this.workers.splice(0).map((worker) => worker.terminate()));
   }
 

@@ -1,24 +1,21 @@
-/** Parses pieces of a file in a thread of its own; arrays go back without a copy. */
+/** Parses pieces of a file in a thread of its own; text and values lie in shared memory. */
 import { parentPort } from "node:worker_threads";
 import { parseBulk, type BulkPlan, type ParsedChunk } from "../../../analysis/ingest/index.ts";
 
 export interface ParseTask {
   id: number;
-  bytes: Uint8Array<ArrayBuffer>;
+  text: Uint8Array;
   plan: BulkPlan;
   /** Memory for the values. */
-  reuse: ArrayBuffer[];
+  values: ArrayBufferLike[];
 }
 
 export interface ParseResult {
   id: number;
   chunk: ParsedChunk;
-  /** The task's memory, to be used again. */
-  spare: ArrayBuffer;
 }
 
-parentPort?.on("message", ({ id, bytes, plan, reuse }: ParseTask) => {
-  const chunk = parseBulk(bytes, plan, reuse);
-  const result: ParseResult = { id, chunk, spare: bytes.buffer };
-  parentPort?.postMessage(result, [bytes.buffer, ...chunk.values.map(({ buffer }) => buffer)]);
+parentPort?.on("message", ({ id, text, plan, values }: ParseTask) => {
+  // oxlint-disable-next-line unicorn/require-post-message-target-origin -- a thread's port has none
+  parentPort?.postMessage({ id, chunk: parseBulk(text, plan, values) } satisfies ParseResult);
 });

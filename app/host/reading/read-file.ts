@@ -1,6 +1,7 @@
 import { createHash } from "node:crypto";
 import { readFile as readBytes } from "node:fs/promises";
 import { basename, dirname, join } from "node:path";
+import { setImmediate } from "node:timers/promises";
 import type { Capture, Note } from "../../../analysis/capture.ts";
 import { ReadingError } from "../../../analysis/errors.ts";
 import { ingest, type CancelSignal } from "../../../analysis/ingest/index.ts";
@@ -79,7 +80,13 @@ async function readAlone(
     const progress = () => onProgress?.(file.share());
     // While threads start and pieces are awaited nothing else tells that it goes on.
     beat = setInterval(progress, beat_ms);
-    const { captures, layout } = await ingest(file.source, setup, { progress, signal, parser, sidecar });
+    const { captures, layout } = await ingest(file.source, setup, {
+      progress,
+      rest: setImmediate,
+      signal,
+      parser,
+      sidecar,
+    });
     return { sha256: await file.finish(), bytes: file.bytes, layout, captures, companions: [] };
   } catch (error) {
     if (error instanceof ReadingError || !(error instanceof RangeError)) throw error;
