@@ -2,6 +2,7 @@
 import type { AcquisitionCode, Capture, Channel, Note } from "../capture.ts";
 import type { Steps } from "../steps.ts";
 import type { Layout } from "./layout.ts";
+import type { Outline } from "./outline.ts";
 import { ringStart, type RingStart } from "./ring-start.ts";
 
 interface Acquired {
@@ -29,14 +30,19 @@ const words: [AcquisitionCode, RegExp, RegExp][] = [
   ["roll-mode", /acq|mode|horiz|time ?base/i, /\broll\b/i],
 ];
 
-export function* acquisitionOf(capture: Capture, layout: Layout, pairs: boolean): Steps<Acquired> {
+export function* acquisitionOf(
+  capture: Capture,
+  outlines: Map<Channel, Outline>,
+  layout: Layout,
+  pairs: boolean,
+): Steps<Acquired> {
   const found = new Set<AcquisitionCode>();
   for (const [code, key, value] of words)
     if (layout.header.settings.some((setting) => says(setting, key, value))) found.add(code);
   if (pairs || twins(capture)) found.add("peak-detect");
   if (capture.channels.some(leadingBlank)) found.add("roll-mode");
   for (const channel of capture.channels.filter(isRinging))
-    addFromRing(yield* ringStart(channel.samples), found);
+    addFromRing(yield* ringStart(channel.samples, outlines.get(channel)!), found);
   return {
     codes: [...found],
     notes: [...found].map((code) => ({ code, text: texts[code] })),

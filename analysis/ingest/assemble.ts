@@ -84,8 +84,9 @@ function* captureOf({ layout, time, channels, setup, notes }: CaptureParts): Ste
     acquisition: [],
     notes: [...base.notes, ...notes, ...built.flatMap((one) => one.notes)],
   };
-  capture.notes.push(...(yield* guessRoles(capture)));
-  const acquired = yield* acquisitionOf(capture, layout, time.pairs);
+  const outlines = new Map(built.map(({ channel, outline }) => [channel, outline]));
+  capture.notes.push(...guessRoles(capture, outlines));
+  const acquired = yield* acquisitionOf(capture, outlines, layout, time.pairs);
   capture.acquisition = acquired.codes;
   capture.notes.push(...acquired.notes);
   return capture;

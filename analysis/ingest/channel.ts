@@ -5,6 +5,7 @@ import { overSamples, type Steps } from "../steps.ts";
 import type { ColumnTally } from "./bulk.ts";
 import type { Layout } from "./layout.ts";
 import { estimateLsb } from "./lsb.ts";
+import { outlineOf, type Outline } from "./outline.ts";
 import { findUnusable } from "./overrange.ts";
 import { integerCodes } from "./integer-codes.ts";
 import { readUnit, scaleBy, type NamedUnit } from "./units.ts";
@@ -21,6 +22,8 @@ export interface RawChannel {
 
 export interface BuiltChannel {
   channel: Channel;
+  /** Of the samples in their final unit. */
+  outline: Outline;
   notes: Note[];
 }
 
@@ -31,8 +34,11 @@ export function* buildChannel(raw: RawChannel, layout: Layout, setup: Setup): St
   const factor = raw.name.unit?.factor ?? 1;
   const scale = stated?.scale ?? 1;
   const offset = stated?.offset ?? 0;
-  const { samples, unusable, overrange, lsb } = yield* findUnusable(raw.values, estimateLsb(raw.values));
-  yield* applyScale(samples, factor, scale, offset);
+  const samples = raw.values;
+  const outline = yield* outlineOf(samples);
+  const lsb = estimateLsb(samples);
+  const { unusable, overrange } = yield* findUnusable(samples, outline, lsb);
+  for (const values of [samples, outline.extremes]) yield* applyScale(values, factor, scale, offset);
   const channel: Channel = {
     position: raw.position,
     name,
@@ -51,7 +57,7 @@ export function* buildChannel(raw: RawChannel, layout: Layout, setup: Setup): St
     unusable,
     overrange,
   };
-  return { channel, notes: channelNotes(channel, raw, codes) };
+  return { channel, outline, notes: channelNotes(channel, raw, codes) };
 }
 
 /** Stated by position, else by name; the unit a user states may carry a prefix of its own. */

@@ -16,24 +16,28 @@ export function estimateLsb(values: Float64Array): number | null {
 }
 
 function levelSpacings(values: Float64Array): Float64Array {
-  const finite = pick(values).toSorted();
-  const spacings: number[] = [];
-  for (let i = 1; i < finite.length; i++)
-    if (finite[i] > finite[i - 1]) spacings.push(finite[i] - finite[i - 1]);
-  return Float64Array.from(spacings);
+  const levels = pick(values).toSorted();
+  let count = 0;
+  for (let i = 1; i < levels.length; i++) {
+    const spacing = levels[i] - levels[i - 1];
+    // In place: a spacing stands left of the levels it is taken from.
+    if (spacing > 0) levels[count++] = spacing;
+  }
+  return levels.subarray(0, count);
 }
 
-/** Blocks spread over the record: neighbours show small spacings, spread shows all of it. */
+/** Finite values, of blocks spread over the record: neighbours show small spacings, spread shows all of it. */
 function pick(values: Float64Array): Float64Array {
-  if (values.length <= looked) return values.filter(Number.isFinite);
-  const block = 400;
-  const blocks = looked / block;
-  const picked: number[] = [];
+  const whole = values.length <= looked;
+  const block = whole ? values.length : 400;
+  const blocks = whole ? 1 : looked / block;
+  const picked = new Float64Array(block * blocks);
+  let count = 0;
   for (let b = 0; b < blocks; b++) {
-    const from = Math.floor((b * (values.length - block)) / (blocks - 1));
-    for (let i = from; i < from + block; i++) if (Number.isFinite(values[i])) picked.push(values[i]);
+    const from = Math.floor((b * (values.length - block)) / Math.max(1, blocks - 1));
+    for (let i = from; i < from + block; i++) if (Number.isFinite(values[i])) picked[count++] = values[i];
   }
-  return Float64Array.from(picked);
+  return picked.subarray(0, count);
 }
 
 /** The smallest spacing that (almost) all are whole multiples of, refined over them. */

@@ -5,14 +5,12 @@
  * of a gate) is where the signal rests.
  */
 import { overSamples, type Steps } from "../steps.ts";
+import type { Outline } from "./outline.ts";
 
 export interface Usable {
-  /** Infinities made NaN, in place. */
-  samples: Float64Array;
   /** Pairs [from, to), sorted and apart. */
   unusable: Int32Array;
   overrange: number;
-  lsb: number | null;
 }
 
 const shortestPinned = 3;
@@ -21,18 +19,18 @@ const mostPinned = 0.3;
 /** Within this share of the range from zero an extreme is the ground level. */
 const groundShare = 0.03;
 
-export function* findUnusable(samples: Float64Array, lsb: number | null): Steps<Usable> {
-  const range = yield* extremes(samples);
+/** Infinities among the samples become NaN. */
+export function* findUnusable(samples: Float64Array, outline: Outline, lsb: number | null): Steps<Usable> {
+  const { low, high, finite } = outline;
   const marks = new Marks(samples.length);
   let overrange = 0;
-  if (range.finite < samples.length) {
+  if (finite < samples.length) {
     yield* overSamples(samples.length, (from, to) => markGaps(samples, marks, from, to));
-    overrange += countGaps(samples, marks.bad, range, yield* stretches(marks.bad));
+    overrange += countGaps(samples, marks.bad, outline, yield* stretches(marks.bad));
   }
-  const step = lsb ?? (range.high - range.low) / 250;
-  if (range.high > range.low && !(yield* isTwoLevel(samples, range)))
-    overrange += yield* markPinned(samples, marks, step, range);
-  return { samples, unusable: yield* stretches(marks.bad), overrange, lsb };
+  if (high > low && !isTwoLevel(samples, outline))
+    overrange += markPinned(samples, marks, outline, lsb ?? (high - low) / 250);
+  return { unusable: yield* stretches(marks.bad), overrange };
 }
 
 /** Samples without a number; infinities become NaN. */
@@ -58,30 +56,8 @@ class Marks {
   }
 }
 
-interface Range {
-  low: number;
-  high: number;
-  finite: number;
-}
-
-function* extremes(samples: Float64Array): Steps<Range> {
-  const range = { low: Infinity, high: -Infinity, finite: 0 };
-  yield* overSamples(samples.length, (from, to) => {
-    let { low, high, finite } = range;
-    for (let i = from; i < to; i++) {
-      const value = samples[i];
-      if (value - value !== 0) continue;
-      finite++;
-      if (value < low) low = value;
-      if (value > high) high = value;
-    }
-    Object.assign(range, { low, high, finite });
-  });
-  return range;
-}
-
 /** Infinite samples are over range; so is a gap inside the record whose edge reaches for an extreme. */
-function countGaps(samples: Float64Array, bad: Uint8Array, { low, high }: Range, gaps: Int32Array): number {
+function countGaps(samples: Float64Array, bad: Uint8Array, { low, high }: Outline, gaps: Int32Array): number {
   const near = 0.1 * (high - low);
   const atExtreme = (i: number) => samples[i] > high - near || samples[i] < low + near;
   let count = 0;
@@ -95,32 +71,36 @@ function countGaps(samples: Float64Array, bad: Uint8Array, { low, high }: Range,
 }
 
 /** Almost all samples rest at one of two levels: a gate or logic signal. */
-function* isTwoLevel(samples: Float64Array, { low, high, finite }: Range): Steps<boolean> {
-  const near = 0.08 * (high - low);
+function isTwoLevel(samples: Float64Array, { low, high, finite, stretch, extremes }: Outline): boolean {
+  const [upper, lower] = [high - 0.08 * (high - low), low + 0.08 * (high - low)];
   let left = 0.05 * finite;
-  yield* overSamples(samples.length, (from, to) => {
-    for (let i = from; i < to && left > 0; i++)
-      if (samples[i] > low + near && samples[i] < high - near) left--;
-  });
+  for (let k = 0; 2 * k < extremes.length && left > 0; k++) {
+    const [a, b] = [extremes[2 * k], extremes[2 * k + 1]];
+    if (Math.min(a, b) >= upper || Math.max(a, b) <= lower) continue;
+    const to = Math.min(samples.length, (k + 1) * stretch);
+    for (let i = k * stretch; i < to; i++) if (samples[i] > lower && samples[i] < upper) left--;
+  }
   return left > 0;
 }
 
 /** Marks pinned runs at both extremes; answers how many samples. */
-function* markPinned(samples: Float64Array, marks: Marks, lsb: number, { low, high }: Range): Steps<number> {
+function markPinned(samples: Float64Array, marks: Marks, outline: Outline, lsb: number): number {
+  const { low, high, stretch, extremes } = outline;
   const span = high - low;
   const tolerance = Math.min(0.25 * lsb, 1e-6 * span);
   const edges = [new Edge(high, 1), new Edge(low, -1)];
   let done = 0;
-  yield* overSamples(samples.length, (from, to) => {
-    for (let i = Math.max(from, done); i < to; i++) {
-      const value = samples[i];
-      if (value < high - tolerance && value > low + tolerance) continue;
-      const edge = value >= high - tolerance ? edges[0] : value <= low + tolerance ? edges[1] : null;
+  for (let k = 0; 2 * k < extremes.length; k++) {
+    const [a, b] = [extremes[2 * k], extremes[2 * k + 1]];
+    if (!(Math.max(a, b) >= high - tolerance || Math.min(a, b) <= low + tolerance)) continue;
+    const to = Math.min(samples.length, (k + 1) * stretch);
+    for (let i = Math.max(done, k * stretch); i < to; i++) {
+      const edge = edges.find(({ level }) => Math.abs(samples[i] - level) <= tolerance);
       if (!edge) continue;
       done = runAt(samples, i, edge, tolerance, lsb);
       i = done - 1;
     }
-  });
+  }
   let count = 0;
   for (const { level, total, runs } of edges) {
     if (Math.abs(level) < groundShare * span || total > mostPinned * samples.length) continue;

@@ -2,6 +2,7 @@
 
 import { medianOf } from "../numeric/robust.ts";
 import { overSamples, type Steps } from "../steps.ts";
+import type { Outline } from "./outline.ts";
 
 export interface RingStart {
   /** The record begins at full swing: there is no rest and no rise before it. */
@@ -18,10 +19,10 @@ const crossingsLooked = 12;
 /** Values that a level or a noise is taken from, however long the stretch. */
 const LOOKED = 4096;
 
-export function* ringStart(samples: Float64Array): Steps<RingStart | null> {
+export function* ringStart(samples: Float64Array, outline: Outline): Steps<RingStart | null> {
   const rest = tailLevel(samples);
   if (rest === null) return null;
-  const peak = yield* farthestFrom(rest, samples);
+  const peak = farthestFrom(rest, samples, outline);
   const height = samples[peak] - rest;
   if (!(Math.abs(height) > 0)) return null;
   const share = (i: number) => (samples[i] - rest) / height;
@@ -48,15 +49,15 @@ function tailLevel(samples: Float64Array): number | null {
   return Number.isNaN(level) ? null : level;
 }
 
-function* farthestFrom(rest: number, samples: Float64Array): Steps<number> {
-  let [peak, height] = [0, Math.abs(samples[0] - rest)];
-  yield* overSamples(samples.length, (from, to) => {
-    for (let i = from; i < to; i++) {
-      const here = Math.abs(samples[i] - rest);
-      if (here > height || height !== height) [peak, height] = [i, here];
-    }
-  });
-  return peak;
+function farthestFrom(rest: number, samples: Float64Array, { extremes, stretch }: Outline): number {
+  let [place, farthest] = [0, 0];
+  for (let k = 0; k < extremes.length; k++) {
+    const distance = Math.abs(extremes[k] - rest);
+    if (distance > farthest) [place, farthest] = [k >> 1, distance];
+  }
+  const from = place * stretch;
+  const at = samples.subarray(from, from + stretch).findIndex((value) => Math.abs(value - rest) === farthest);
+  return from + Math.max(0, at);
 }
 
 /** Places, in fractions of a sample, where the ring passes rest after its peak while it is still large. */

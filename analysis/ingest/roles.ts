@@ -1,6 +1,6 @@
 /** What each channel measures, guessed from name, unit and shape where the setup does not say; always noted. */
 import type { Capture, Channel, ChannelRole, Note } from "../capture.ts";
-import type { Steps } from "../steps.ts";
+import type { Outline } from "./outline.ts";
 import { shapeOf, type Shape } from "./shape.ts";
 
 const named: [RegExp, ChannelRole][] = [
@@ -19,14 +19,15 @@ const named: [RegExp, ChannelRole][] = [
   [/coil|spule|winding|inductor/i, "coil-voltage"],
 ];
 
-export function* guessRoles(capture: Capture): Steps<Note[]> {
+export function guessRoles(capture: Capture, outlines: Map<Channel, Outline>): Note[] {
   const notes: Note[] = [];
   const symbols = new Set(
     capture.notes.filter(({ code }) => code === "symbol-column").map(({ channel }) => channel),
   );
   const open = capture.channels.filter(({ roleGuessed, name }) => roleGuessed && !symbols.has(name));
-  const shapes = new Map<Channel, Shape | null>();
-  for (const channel of open) shapes.set(channel, yield* shapeOf(channel.samples));
+  const shapes = new Map(
+    open.map((channel) => [channel, shapeOf(channel.samples, outlines.get(channel)!)] as const),
+  );
   const taken = new Set(capture.channels.filter((channel) => !channel.roleGuessed).map(({ role }) => role));
   for (const channel of open) {
     const role = byName(channel);

@@ -1,6 +1,6 @@
 /** What a waveform looks like, in the few respects that tell a switch node from a gate or a current. */
 
-import { overSamples, stepSamples, type Steps } from "../steps.ts";
+import type { Outline } from "./outline.ts";
 
 export interface Shape {
   low: number;
@@ -22,42 +22,12 @@ export interface Shape {
 
 const bins = 256;
 
-const looked = 100_000;
-
-/** Every stretch of a long record by its lowest and highest sample: shapes need no more. */
-function* thinned(samples: Float64Array): Steps<Float64Array> {
-  const blocks = looked / 2;
-  if (samples.length <= 2 * looked) return samples;
-  const kept = new Float64Array(2 * blocks);
-  const edge = (b: number) => Math.floor((b * samples.length) / blocks);
-  const visit = (from: number, to: number) => {
-    for (let b = from; b < to; b++) keepExtremes(samples, edge(b), edge(b + 1), kept, 2 * b);
-  };
-  yield* overSamples(blocks, visit, Math.ceil((blocks * stepSamples) / samples.length));
-  return kept;
-}
-
-function keepExtremes(
-  samples: Float64Array,
-  from: number,
-  to: number,
-  kept: Float64Array,
-  place: number,
-): void {
-  let [low, high] = [from, from];
-  let [lowest, highest] = [samples[from], samples[from]];
-  for (let i = from + 1; i < to; i++) {
-    const value = samples[i];
-    if (value < lowest || lowest !== lowest) [low, lowest] = [i, value];
-    if (value > highest || highest !== highest) [high, highest] = [i, value];
-  }
-  kept[place] = samples[Math.min(low, high)];
-  kept[place + 1] = samples[Math.max(low, high)];
-}
+/** Of a longer record the outline tells all that a shape needs. */
+const looked = 200_000;
 
 /** null without two different values. */
-export function* shapeOf(record: Float64Array): Steps<Shape | null> {
-  const samples = yield* thinned(record);
+export function shapeOf(record: Float64Array, outline: Outline): Shape | null {
+  const samples = record.length <= looked ? record : outline.extremes;
   let [low, high] = [Infinity, -Infinity];
   for (const value of samples) {
     if (value < low) low = value;

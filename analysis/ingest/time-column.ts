@@ -63,13 +63,13 @@ export class TimeColumn {
     let { last, lastRow, smallest, largest, pairs } = this;
     for (let i = 0; i < chunk.length; i++) {
       const value = chunk[i];
+      const step = (value - last) * direction;
+      const before = last;
+      if (pairs) pairs = value === value && (step === 0) === ((this.rows + i) % 2 === 1);
       if (value !== value) {
         this.missing++;
-        pairs = false;
         continue;
       }
-      const before = last;
-      const step = (value - before) * direction;
       last = value;
       lastRow = this.rows + i;
       if (step > 0) {
@@ -81,7 +81,6 @@ export class TimeColumn {
         this.first = value;
         this.firstRow = lastRow;
       }
-      if (pairs && (step === 0) !== ((this.rows + i) % 2 === 1)) pairs = false;
     }
     for (
       let row = Math.ceil(this.rows / anchorEvery) * anchorEvery;
