@@ -17,9 +17,9 @@ import type { ByteSource, CancelSignal } from "./source.ts";
 import { concatenate, TextStream } from "./text-stream.ts";
 
 interface IngestOptions {
-  /** Called with the share read so far, 0 … 1, after every piece and between the steps of the assembly. */
+  /** Called with the share read so far, 0 … 1, after every piece and between the steps of other work. */
   progress?: (share: number) => void;
-  /** Waited for between the steps of the assembly, so that a signal can arrive. */
+  /** Waited for between these steps, so that a signal can arrive. */
   rest?: () => Promise<void>;
   signal?: CancelSignal;
   /** Parses pieces elsewhere (worker threads); without one they are parsed here. */
@@ -75,7 +75,7 @@ export function ingestBytes(bytes: Uint8Array, setup: Setup, _name?: string): Ca
   let head = text.subarray(0, headBytes);
   while (head.length < text.length && isShort(head)) head = text.subarray(0, 4 * head.length);
   refuseForeign(head);
-  const layout = planLayout(head, head.length === text.length, setup);
+  const layout = atOnce(planLayout(head, head.length === text.length, setup));
   const columns = new Columns(layout, likelyRowsOf(layout, text.length));
   const memory = new PieceMemory(ArrayBuffer);
   let from = layout.dataStart;
@@ -102,21 +102,26 @@ export async function ingest(
   let head = await stream.next(headBytes);
   while (!stream.ended && isShort(head)) head = concatenate(head, await stream.next(3 * head.length));
   refuseForeign(head);
-  const layout = planLayout(head, stream.ended, setup, options.sidecar ?? null);
+  const share = () => Math.min(1, stream.consumed / stream.size);
+  const layout = await inTurn(planLayout(head, stream.ended, setup, options.sidecar ?? null), share, options);
   const columns = new Columns(layout, likelyRowsOf(layout, source.size));
   const end = await readData(stream, head.subarray(layout.dataStart), layout, columns, options);
   // What the threads and their pieces take is given back before the channels are looked through.
   await options.parser?.close?.();
-  const captures = await inTurn(finish(layout, columns, setup, end), options);
+  const captures = await inTurn(finish(layout, columns, setup, end), share, options);
   return { captures, layout: layout.signature };
 }
 
 /** Between two steps it is said how it goes, and it can be stopped. */
-async function inTurn<T>(steps: Steps<T>, { progress, rest, signal }: IngestOptions): Promise<T> {
+async function inTurn<T>(
+  steps: Steps<T>,
+  share: () => number,
+  { progress, rest, signal }: IngestOptions,
+): Promise<T> {
   for (;;) {
     const { done, value } = steps.next();
     if (done) return value;
-    progress?.(1);
+    progress?.(share());
     await rest?.();
     if (signal?.aborted) throw cancelled();
   }

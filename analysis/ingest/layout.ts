@@ -2,6 +2,7 @@
 import { ReadingError } from "../errors.ts";
 import type { Note } from "../capture.ts";
 import type { Setup } from "../setup/schema.ts";
+import type { Steps } from "../steps.ts";
 import { countsBesideTime, findAxes, type Axes, type HeadColumn } from "./axes.ts";
 import { findBlock, type Block } from "./block.ts";
 import { parseBulk, type BulkPlan } from "./bulk.ts";
@@ -45,27 +46,29 @@ export interface Layout {
 const sniffedLines = 1500;
 
 /** `complete`: the head is the whole file, so its last line is not cut. `sidecar`: settings from another file. */
-export function planLayout(
+export function* planLayout(
   head: Uint8Array,
   complete: boolean,
   setup: Setup,
   sidecar: string | null = null,
-): Layout {
-  const parts = sniff(head, complete, setup);
+): Steps<Layout> {
+  const parts = yield* sniff(head, complete, setup);
+  yield;
   if (sidecar !== null) parts.header.settings.push(...sidecarSettings(sidecar));
   const ambiguous = isCommaAmbiguous(parts);
   if (!ambiguous || setup.decimalMark === ".") return describeLayout(parts, false);
   if (setup.decimalMark !== ",") return describeLayout(parts, true);
-  const layout = describeLayout(sniff(joinDecimalCommas(head), complete, setup), false);
+  const layout = describeLayout(yield* sniff(joinDecimalCommas(head), complete, setup), false);
   return { ...layout, plan: { ...layout.plan, joinCommas: true } };
 }
 
-function sniff(head: Uint8Array, complete: boolean, setup: Setup): Sniffed {
+function* sniff(head: Uint8Array, complete: boolean, setup: Setup): Steps<Sniffed> {
   let lines = splitLines(head, sniffedLines + 1);
   if (!complete || lines.length > sniffedLines) lines = lines.slice(0, -1);
   const texts = lines.map(({ text }) => text);
   const choice = chooseDialect(texts, setup.decimalMark ?? null);
   if (!choice) throw noNumbers(lines);
+  yield;
   const block = findBlock(choice);
   const header = readHeader(lines, choice.rows, block, choice.dialect.separator);
   const sample = choice.rows.slice(block.from, block.to).map(({ cells }) => cells);

@@ -4,7 +4,7 @@
  * widens as the square root of the height below it, and a genuine level (ground, on-level, either level
  * of a gate) is where the signal rests.
  */
-import { overSamples, type Steps } from "../steps.ts";
+import { overSamples, stepSamples, type Steps } from "../steps.ts";
 import type { Outline } from "./outline.ts";
 
 export interface Usable {
@@ -29,7 +29,7 @@ export function* findUnusable(samples: Float64Array, outline: Outline, lsb: numb
     overrange += countGaps(samples, marks.bad, outline, yield* stretches(marks.bad));
   }
   if (high > low && !isTwoLevel(samples, outline))
-    overrange += markPinned(samples, marks, outline, lsb ?? (high - low) / 250);
+    overrange += yield* markPinned(samples, marks, outline, lsb ?? (high - low) / 250);
   return { unusable: yield* stretches(marks.bad), overrange };
 }
 
@@ -84,23 +84,25 @@ function isTwoLevel(samples: Float64Array, { low, high, finite, stretch, extreme
 }
 
 /** Marks pinned runs at both extremes; answers how many samples. */
-function markPinned(samples: Float64Array, marks: Marks, outline: Outline, lsb: number): number {
+function* markPinned(samples: Float64Array, marks: Marks, outline: Outline, lsb: number): Steps<number> {
   const { low, high, stretch, extremes } = outline;
   const span = high - low;
   const tolerance = Math.min(0.25 * lsb, 1e-6 * span);
+  const [upper, lower] = [high - tolerance, low + tolerance];
   const edges = [new Edge(high, 1), new Edge(low, -1)];
   let done = 0;
-  for (let k = 0; 2 * k < extremes.length; k++) {
-    const [a, b] = [extremes[2 * k], extremes[2 * k + 1]];
-    if (!(Math.max(a, b) >= high - tolerance || Math.min(a, b) <= low + tolerance)) continue;
-    const to = Math.min(samples.length, (k + 1) * stretch);
-    for (let i = Math.max(done, k * stretch); i < to; i++) {
-      const edge = edges.find(({ level }) => Math.abs(samples[i] - level) <= tolerance);
-      if (!edge) continue;
-      done = runAt(samples, i, edge, tolerance, lsb);
-      i = done - 1;
+  const visit = (from: number, to: number) => {
+    for (let k = from; k < to; k++) {
+      const [a, b] = [extremes[2 * k], extremes[2 * k + 1]];
+      if (!(Math.max(a, b) >= upper || Math.min(a, b) <= lower)) continue;
+      const end = Math.min(samples.length, (k + 1) * stretch);
+      for (let i = nextBeyond(samples, Math.max(done, k * stretch), end, lower, upper); i < end;) {
+        done = runAt(samples, i, edges[samples[i] >= upper ? 0 : 1], tolerance, lsb);
+        i = nextBeyond(samples, done, end, lower, upper);
+      }
     }
-  }
+  };
+  yield* overSamples(extremes.length / 2, visit, Math.ceil(stepSamples / stretch));
   let count = 0;
   for (const { level, total, runs } of edges) {
     if (Math.abs(level) < groundShare * span || total > mostPinned * samples.length) continue;
@@ -110,6 +112,13 @@ function markPinned(samples: Float64Array, marks: Marks, outline: Outline, lsb: 
     }
   }
   return count;
+}
+
+/** The first sample from here on that is at either edge; `to` without one. */
+function nextBeyond(samples: Float64Array, from: number, to: number, lower: number, upper: number): number {
+  let i = from;
+  while (i < to && !(samples[i] >= upper || samples[i] <= lower)) i++;
+  return i;
 }
 
 /** Adds the run of samples at this edge; answers its end. */

@@ -80,6 +80,7 @@ async function readAlone(
     const progress = () => onProgress?.(file.share());
     // While threads start and pieces are awaited nothing else tells that it goes on.
     beat = setInterval(progress, beat_ms);
+    progress();
     const { captures, layout } = await ingest(file.source, setup, {
       progress,
       rest: setImmediate,
