@@ -67,9 +67,12 @@ export function breakdownOf(
 ): Breakdown | null {
   const measured = window.secondary?.strikes[0];
   if (measured?.breakdown_V) {
-    const value = Math.abs(measured.breakdown_V);
+    const between = collapseShare(window, times);
+    const read = between && measured.rise?.(between.share, between.u);
+    const value = Math.abs(read ? read.value_V : measured.breakdown_V);
+    const u = read ? read.u_V : (measured.breakdownUncertainty_V ?? 0);
     // A probe's own scale: two percent, common practice, no source.
-    return { value, u: Math.hypot(0.02 * value, measured.breakdownUncertainty_V ?? 0), from: "secondary" };
+    return { value, u: Math.hypot(0.02 * value, u), from: "secondary" };
   }
   if (!setup.turnsRatio || times.block === null || !traits) return null;
   const { values, count } = window.blocks;
@@ -81,6 +84,28 @@ export function breakdownOf(
   if (swing < LEAST_BREAKDOWN * u) return null;
   return { value: swing * setup.turnsRatio, u: u * setup.turnsRatio, from: "ratio" };
 }
+
+/** Samples beside the collapse's own two within which the node's onset is the same event. */
+const BESIDE = 1;
+
+/**
+ * Where between two samples the secondary collapsed, as a share from the first, by the instant at which the node
+ * leaves its course: that is known to a fraction of a sample. Null where the node tells no better.
+ */
+export function collapseShare(
+  { secondary, raw }: SparkWindow,
+  { onset_s, onsetUncertainty_s, sharp }: SparkTimes,
+): { share: number; u: number } | null {
+  const first = secondary?.strikes[0];
+  if (!first || !sharp || onset_s === null || onsetUncertainty_s === null) return null;
+  const u = onsetUncertainty_s / raw.step_s;
+  const share = (onset_s - raw.start_s) / raw.step_s - (first.onset - 0.5);
+  if (!(u < EVENLY) || share < -BESIDE || share > 1 + BESIDE) return null;
+  return { share: Math.min(1, Math.max(0, share)), u };
+}
+
+/** Standard uncertainty of a place evenly spread over a sample. */
+const EVENLY = 1 / Math.sqrt(12);
 
 /** Below so many times its uncertainty a referred voltage says nothing. */
 const LEAST_BREAKDOWN = 2;

@@ -10,30 +10,39 @@ export interface SparkTimes {
   extinction_s: number | null;
   /** Block of the onset, for the places of other evidence. */
   block: number | null;
+  /** Known to a fraction of a block, by how the trace parts from the expected one. */
+  sharp: boolean;
 }
 
 /** Departures this many σ large are no noise, three in a row. */
 const CLEAR = 5;
 
 export function timesOf(window: SparkWindow, traits: Traits, { course, rise }: Expectations): SparkTimes {
-  const onset =
-    leaves(window, traits, course) ?? (rise && departure(window, traits, rise)) ?? kink(window, traits);
+  const parted = leaves(window, traits, course) ?? (rise && departure(window, traits, rise));
+  const onset = parted?.at ?? kink(window, traits);
   const file_s = (block: number) => window.zero_s + window.first_s + block * window.step_s;
   const out = traits.ringAfter ? rejoining(window, traits, onset ?? traits.a) : null;
   return {
     onset_s: onset === null ? null : file_s(onset),
-    onsetUncertainty_s: onset === null ? null : window.step_s,
+    onsetUncertainty_s: onset === null ? null : window.step_s * (parted?.u ?? 1),
     extinction_s: out === null ? null : file_s(out),
     block: onset,
+    sharp: parted !== null,
   };
 }
 
 /** A slow leak lets what follows it pass for a ring of its own: an expectation that speaks from earlier on wins. */
-function leaves(window: SparkWindow, traits: Traits, course: Expected[]): number | null {
+function leaves(window: SparkWindow, traits: Traits, course: Expected[]): Parting | null {
   const found = course.flatMap((expected) => departure(window, traits, expected) ?? []);
   if (found.length === 0) return null;
-  const earliest = Math.min(...found);
-  return found.find((block) => block - earliest < 0.1 * window.period) ?? earliest;
+  const earliest = Math.min(...found.map(({ at }) => at));
+  return found.find(({ at }) => at - earliest < 0.1 * window.period) ?? null;
+}
+
+/** In blocks. */
+interface Parting {
+  at: number;
+  u: number;
 }
 
 /** First block from which the trace stays away from the expected one, carried back to where it parted. */
@@ -41,7 +50,7 @@ function departure(
   window: SparkWindow,
   traits: Traits,
   { values, from, slack, spread, to }: Expected,
-): number | null {
+): Parting | null {
   const y = window.blocks.values;
   const sigma = Math.sqrt(traits.split.variance);
   // A block off the screen tells nothing: it agrees with whatever is expected.
@@ -93,8 +102,9 @@ function partedAt(
   doubt: (i: number) => number,
   from: number,
   first: number,
-): number {
+): Parting {
   let [best, least] = [first, Number.POSITIVE_INFINITY];
+  const costs: [t0: number, cost: number][] = [];
   const weights = Float64Array.from({ length: first + 2 - from }, (_, k) => 1 / doubt(from + k) ** 2);
   const offs = weights.map((_, k) => off(from + k));
   const rest = offs.reduce((sum, value, k) => sum + weights[k] * value * value, 0);
@@ -109,10 +119,15 @@ function partedAt(
         square += weights[i - from] * grown * grown;
       }
       const cost = rest - (cross * cross) / square + (power === 3 ? GLOW_PROOF : 0);
+      costs.push([t0, cost]);
       if (cost < least) [best, least] = [t0, cost];
     }
-  return best;
+  // One σ: where χ² has grown by one; what the grid and the power law are good for at least.
+  const within = costs.flatMap(([t0, cost]) => (cost < least + 1 ? [Math.abs(t0 - best)] : []));
+  return { at: best, u: Math.max(LEAST_DOUBT, ...within) };
 }
+
+const LEAST_DOUBT = 0.2;
 
 /** So much better must the slow parting explain the trace (χ²): arcs are the usual case. */
 const GLOW_PROOF = 9;

@@ -11,6 +11,8 @@ export interface SecondaryEvidence {
     extinction: number | null;
     breakdown_V: number | null;
     breakdownUncertainty_V: number | null;
+    /** The rise read another share of a sample after the last one, where the instant is known better; else null. */
+    rise: ((share: number, u: number) => { value_V: number; u_V: number }) | null;
   }[];
   /** Largest magnitude of the secondary voltage after switch-off; null without that channel or clipped. */
   peak_V: number | null;
@@ -181,18 +183,23 @@ function readAtCollapse(samples: Float64Array, last: number, from: number, perio
   const wanted = Math.min(READ.most, Math.max(READ.least, Math.round(READ.periods * period)));
   const values = samples.subarray(Math.max(from, last - wanted + 1), last + 1).toReversed();
   const line = values.length >= READ.least ? polynomialAhead(values, 2) : null;
-  const bent = values.length > READ.least ? polynomialAhead(values, 3) : null;
-  const read = line && bent && line.rest - bent.rest > BENT * noise * noise ? bent : line;
+  const bent = values.length >= READ.least ? polynomialAhead(values, 3) : null;
+  const read = line && bent && line.rest - bent.rest > BENT * noise * noise ? bent.ahead : line?.ahead;
   if (!read)
     return {
       breakdown_V: samples[last],
       breakdownUncertainty_V: Math.max(noise, 0.1 * Math.abs(samples[last])),
+      rise: null,
     };
-  const u = Math.hypot(noise * read.gain, read.slope / Math.sqrt(12));
-  return { breakdown_V: read.value, breakdownUncertainty_V: u };
+  const rise = (share: number, u: number) => {
+    const { value, slope, gain } = read(share);
+    return { value_V: value, u_V: Math.hypot(noise * gain, slope * u) };
+  };
+  const { value_V, u_V } = rise(0.5, 1 / Math.sqrt(12));
+  return { breakdown_V: value_V, breakdownUncertainty_V: u_V, rise };
 }
 
-/** Least squares through values 0, 1, 2 … steps back, read half a step ahead: value, slope, noise gain, what is left. */
+/** Least squares through values 0, 1, 2 … steps back, to be read some steps ahead: value, slope, noise gain. */
 function polynomialAhead(values: Float64Array, order: number) {
   const powers = (x: number) => Float64Array.from({ length: order }, (_, r) => x ** r);
   const gram = new Float64Array(order * order);
@@ -206,18 +213,21 @@ function polynomialAhead(values: Float64Array, order: number) {
       for (let c = 0; c < order; c++) gram[order * r + c] += row[r] * row[c];
     }
   });
-  const place = powers(0.5);
-  const [coefficients, gain] = [right.slice(), place.slice()];
+  const coefficients = right.slice();
   if (!factor(gram, order)) return null;
   solveFactored(gram, order, coefficients);
-  solveFactored(gram, order, gain);
   const dot = (a: Float64Array, b: Float64Array) => a.reduce((sum, x, k) => sum + x * b[k], 0);
-  return {
-    value: dot(coefficients, place),
-    slope: coefficients[1] + (coefficients[2] ?? 0),
-    gain: Math.sqrt(dot(gain, place)),
-    rest: square - dot(coefficients, right),
+  const ahead = (steps: number) => {
+    const place = powers(steps);
+    const gain = place.slice();
+    solveFactored(gram, order, gain);
+    return {
+      value: dot(coefficients, place),
+      slope: coefficients[1] + 2 * steps * (coefficients[2] ?? 0),
+      gain: Math.sqrt(dot(gain, place)),
+    };
   };
+  return { ahead, rest: square - dot(coefficients, right) };
 }
 
 /** The arc's voltage stays small and steady; it is out when the voltage leaves that level for good. */
@@ -245,7 +255,7 @@ function currentPulses({ samples, lsb }: Channel, from: number, to: number): Sec
     let end = i + 2;
     while (end < to && Math.abs(samples[end] - rest) > limit / 2) end++;
     const extinction = end < to ? end - 0.5 : null;
-    strikes.push({ onset: i - 0.5, extinction, breakdown_V: null, breakdownUncertainty_V: null });
+    strikes.push({ onset: i - 0.5, extinction, breakdown_V: null, breakdownUncertainty_V: null, rise: null });
     i = end;
   }
   return strikes;

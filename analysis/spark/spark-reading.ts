@@ -1,7 +1,7 @@
 /** The verdict of a pulse as it is printed and kept. */
 import { formatNumber } from "../format/figure.ts";
 import type { SparkReading, Strike, Verdict } from "../reading-format.ts";
-import type { Breakdown } from "./account.ts";
+import { collapseShare, type Breakdown } from "./account.ts";
 import type { Judged } from "./judge.ts";
 import type { SparkTimes } from "./onset.ts";
 import { reasonsOf, type Reason } from "./reasons.ts";
@@ -80,10 +80,12 @@ function freeEnough(probability: number, { cutBelow, zero_s }: SparkWindow) {
 }
 
 /** From the secondary where it is on screen, else the one stretch the node shows. */
-function strikesOf({ secondary, raw }: SparkWindow, times: SparkTimes): Strike[] {
+function strikesOf(window: SparkWindow, times: SparkTimes): Strike[] {
+  const { secondary, raw } = window;
+  const between = collapseShare(window, times);
   if (secondary && secondary.strikes.length > 0)
-    return secondary.strikes.map(({ onset, extinction }) => ({
-      onset_s: raw.start_s + onset * raw.step_s,
+    return secondary.strikes.map(({ onset, extinction }, k) => ({
+      onset_s: raw.start_s + (k === 0 && between ? onset - 0.5 + between.share : onset) * raw.step_s,
       extinction_s: extinction === null ? null : raw.start_s + extinction * raw.step_s,
     }));
   return times.onset_s === null ? [] : [{ onset_s: times.onset_s, extinction_s: times.extinction_s }];
