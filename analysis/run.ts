@@ -89,7 +89,7 @@ interface Place {
   judged: Judged;
 }
 
-const NOTHING: Expectations = { course: [], rise: null };
+const NOTHING: Expectations = { course: [], rise: null, peers: [] };
 
 const quietPlaces = (run: { judged: Judged }[]) =>
   run.flatMap(({ judged }, i) => (judged.likelihood.probability < 0.1 ? [i] : []));

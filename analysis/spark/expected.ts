@@ -21,6 +21,8 @@ export interface Expectations {
   course: Expected[];
   /** Where nothing else is to be had: the first rise as the run's last sparks left it. */
   rise: Expected | null;
+  /** And other pulses of the run, each until it strikes itself: the last that is parted from tells the most. */
+  peers: Expected[];
 }
 
 /** Quiet pulses taken together for the expectation. */
@@ -48,20 +50,26 @@ export function expectedOf(
   const course = [ringBefore(judged, window), quietNeighbours(judged, run, quiet, place, window)].filter(
     (expected) => expected !== null,
   );
-  return { course, rise: course.length > 0 ? null : highestRise(judged, run, place, window) };
+  if (course.length > 0) return { course, rise: null, peers: [] };
+  const peers = peersOf(judged, run, place);
+  if (peers.length < PEERS.least) return { course, rise: null, peers: [] };
+  const seen = peers.map((peer) => asSeen([peer], window, () => 1));
+  return { course, rise: highestRise(seen, window), peers: seen };
+}
+
+/** Those nearest to it with its modes. */
+function peersOf(judged: Judged, run: Member[], place: number): Member[] {
+  const near = nearest([...run.keys()], place, 2 * PEERS.most)
+    .map((i) => run[i])
+    .filter((other) => other.judged.traits.modes === judged.traits.modes);
+  return near.slice(0, PEERS.most);
 }
 
 /**
  * Until they strike, all pulses rise alike, and a spark only takes: the second highest of many at each block is
  * what the rise would have been, up to the last but one of them.
  */
-function highestRise(judged: Judged, run: Member[], place: number, window: SparkWindow): Expected | null {
-  const peers = nearest([...run.keys()], place, 2 * PEERS.most)
-    .map((i) => run[i])
-    .filter((other) => other.judged.traits.modes === judged.traits.modes)
-    .slice(0, PEERS.most);
-  if (peers.length < PEERS.least) return null;
-  const seen = peers.map((peer) => asSeen([peer], window, () => 1));
+function highestRise(seen: Expected[], window: SparkWindow): Expected {
   const values = seen[0].values.map(
     (_, i) => seen.map((each) => each.values[i]).toSorted((p, q) => q - p)[1],
   );

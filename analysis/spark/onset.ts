@@ -17,8 +17,15 @@ export interface SparkTimes {
 /** Departures this many σ large are no noise, three in a row. */
 const CLEAR = 5;
 
-export function timesOf(window: SparkWindow, traits: Traits, { course, rise }: Expectations): SparkTimes {
-  const parted = leaves(window, traits, course) ?? (rise && departure(window, traits, rise));
+export function timesOf(
+  window: SparkWindow,
+  traits: Traits,
+  { course, rise, peers }: Expectations,
+): SparkTimes {
+  const parted =
+    leaves(window, traits, course) ??
+    (rise && departure(window, traits, rise)) ??
+    lastParting(window, traits, peers);
   const onset = parted?.at ?? kink(window, traits);
   const file_s = (block: number) => window.zero_s + window.first_s + block * window.step_s;
   const out = traits.ringAfter ? rejoining(window, traits, onset ?? traits.a) : null;
@@ -37,6 +44,16 @@ function leaves(window: SparkWindow, traits: Traits, course: Expected[]): Partin
   if (found.length === 0) return null;
   const earliest = Math.min(...found.map(({ at }) => at));
   return found.find(({ at }) => at - earliest < 0.1 * window.period) ?? null;
+}
+
+/**
+ * Parting from another pulse tells that one of the two has struck; from the one that held out longest, that this one
+ * has. Null without any.
+ */
+function lastParting(window: SparkWindow, traits: Traits, peers: Expected[]): Parting | null {
+  const partings = peers.flatMap((peer) => departure(window, traits, peer) ?? []);
+  if (partings.length === 0) return null;
+  return partings.reduce((a, b) => (b.at > a.at ? b : a));
 }
 
 /** In blocks. */
