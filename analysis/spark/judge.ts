@@ -36,12 +36,32 @@ export function judgePulses(candidates: Candidate[]): (Judged | null)[] {
     if (sets.length > 0) return bestTraits(window, sets, ceiling);
     return modes.length > 0 ? bestTraits(window, [modes], ceiling) : null;
   });
+  const judged = judgedBySet(traits);
+  const [known] = bySize(judged.flatMap((each) => (each?.reference ? [each.traits.modes] : [])));
+  const doubtful = (each: Judged | null) =>
+    each && !each.reference && !isClean(each.traits) && each.likelihood.probability > 0.1;
+  const stray = judged.flatMap((each, i) => (known && doubtful(each) ? [i] : []));
+  if (stray.length === 0) return judged;
+  // An arc rings in modes of its own: what has no reference by these, and is no free ring of another capacitor,
+  // is held against the run's ring.
+  for (const i of stray) traits[i] = bestTraits(candidates[i].window, [known], ceiling);
+  const again = judgedBySet(traits.map((each) => (each?.modes === known ? each : null)));
+  return judged.map((each, i) => (stray.includes(i) ? again[i] : each));
+}
+
+function judgedBySet(traits: (Traits | null)[]): (Judged | null)[] {
   const judged = traits.map((): Judged | null => null);
   for (const set of new Set(traits.map((each) => each?.modes))) {
     const members = traits.flatMap((each, i) => (each && each.modes === set ? [i] : []));
     judgeGroup(members.map((i) => traits[i]!)).forEach((each, k) => (judged[members[k]] = each));
   }
   return judged;
+}
+
+/** The sets among `modes`, the one most often met first. */
+function bySize(modes: KnownMode[][]): KnownMode[][] {
+  const count = (set: KnownMode[]) => modes.filter((each) => each === set).length;
+  return [...new Set(modes)].toSorted((a, b) => count(b) - count(a));
 }
 
 const alike = (a: KnownMode, b: KnownMode) => Math.abs(a.frequency_Hz / b.frequency_Hz - 1) < 0.03;
