@@ -1,7 +1,7 @@
 /** All pulses of a run judged together: first what they agree on, then each against it. */
 import type { BurnLine } from "./burn-line.ts";
 import { median } from "../numeric/median.ts";
-import { likelihoodOf, type Likelihood } from "./likelihood.ts";
+import { likelihoodOf, soundRing, type Likelihood } from "./likelihood.ts";
 import { agreedModes, bestTraits, ownModes } from "./modes.ts";
 import { referenceBefore, referenceOf, type Reference } from "./reference.ts";
 import type { KnownMode } from "./ring-sums.ts";
@@ -77,11 +77,17 @@ interface Own {
 /** Modes of the run and the variance of its free rings, from its clean pulses; else from a search in some. */
 function modeSets(candidates: Candidate[]): { sets: KnownMode[][]; ceiling?: number } {
   const lowest = lowestShared(candidates);
-  const own = candidates.flatMap(({ window, modes }): Own[] => {
-    if (modes.length === 0 || modes[0].frequency_Hz > 1.6 * lowest) return [];
+  const rings = candidates.flatMap(({ window, modes }): Own[] => {
+    if (modes.length === 0) return [];
     const traits = traitsOf(window, modes);
     return [{ modes, traits, excess: traits.split.variance / window.noise ** 2 }];
   });
+  const isFast = ({ modes }: Own) => modes[0].frequency_Hz > 1.6 * lowest;
+  const slowKick = median(rings.filter((ring) => !isFast(ring)).map(({ traits }) => traits.kick));
+  // A fast ring that is free from switch-off on and kicks higher is a smaller capacitor's, else an arc's.
+  const own = rings.filter(
+    (ring) => !isFast(ring) || (ring.traits.oneRing && soundRing(ring.traits) && ring.traits.kick > slowKick),
+  );
   const quietest = Math.min(...own.map(({ excess }) => excess));
   const calm = own.filter(({ excess }) => excess < 4 * Math.max(1, quietest));
   const ceiling =

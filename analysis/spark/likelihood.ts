@@ -151,7 +151,7 @@ function phaseTurned([cosine, sine]: [number, number], lead = MOST_LEAD): number
 }
 
 /** One ring explains a pulse only if it is the ring the kick began: of its size, and starting where it starts. */
-function soundRing({ rest, kick, startsInRing, clipped }: Traits): boolean {
+export function soundRing({ rest, kick, startsInRing, clipped }: Traits): boolean {
   if (startsInRing) return true;
   if (!rest) return false;
   const share = Math.hypot(...rest) / kick;
