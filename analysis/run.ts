@@ -5,6 +5,7 @@ import type { CaptureEvidence, PulseEvidence } from "./evidence.ts";
 import { combineRamps } from "./ramp/combine-ramps.ts";
 import type { CaptureReading, Measured, PulseReading, RunCounts, SparkReading } from "./reading-format.ts";
 import type { Setup } from "./setup/schema.ts";
+import { againstKicks } from "./spark/against-kicks.ts";
 import { againstQuiet } from "./spark/against-quiet.ts";
 import { countPulses, verdictOf } from "./spark/counts.ts";
 import { expectedOf, type Expectations } from "./spark/expected.ts";
@@ -55,7 +56,9 @@ export function judgeRun(evidence: CaptureEvidence[], setup: Setup): RunJudgemen
   const verdicts = judgePulses(judgeable).map((judged, i) =>
     unsure(judged) && !waves[i] ? byItself(judged!, judgeable[i]) : byHalfWave(judged, waves[i]),
   );
-  const first = judgeable.flatMap((place, i) => (verdicts[i] ? [{ ...place, judged: verdicts[i] }] : []));
+  const own = judgeable.flatMap((place, i) => (verdicts[i] ? [{ ...place, judged: verdicts[i] }] : []));
+  const kicks = againstKicks(own.map((place) => ({ ...place, drive: driveOf(place) })));
+  const first = own.map((place, i) => ({ ...place, judged: { ...place.judged, likelihood: kicks[i] } }));
   const likelihoods = againstQuiet(first, quietPlaces(first));
   const run = first.map((place, i) => ({
     ...place,
@@ -81,6 +84,14 @@ export function judgeRun(evidence: CaptureEvidence[], setup: Setup): RunJudgemen
       trends,
     },
   };
+}
+
+/** The current at switch-off where it was measured, else the dwell: alike in pulses of one setting. */
+function driveOf({ capture, pulse }: { capture: CaptureEvidence; pulse: PulseEvidence }): number | null {
+  const { switchOn, switchOff, current_A } = pulse;
+  if (current_A) return current_A.value;
+  if (switchOn === null || switchOff === null || capture.timebase.step_s === null) return null;
+  return (switchOff - switchOn) * capture.timebase.step_s;
 }
 
 interface Place {

@@ -14,6 +14,7 @@ export interface Likelihood {
     | "turned"
     | "missing"
     | "doubt"
+    | "kick"
     | "volt-seconds"
     | "burn-line"
     | "like-quiet"

@@ -56,6 +56,13 @@ export function reasonsOf(
     case "missing":
       say("the ring is weaker than the quiet ones from its start", at(traits.kickBlock));
       break;
+    case "kick":
+      say(
+        `its kick is ${percent(1 - (likelihood.loss ?? 0))} of what pulses of the same conduction reach`,
+        at(traits.kickBlock),
+      );
+      say(`one ring does not explain the trace: strength ${strength}, noise stays below 12`, at(traits.a));
+      return reasons;
     case "volt-seconds":
       say(
         `the first half-wave holds ${percent(Math.max(0, 1 - (likelihood.loss ?? 0)))} of a quiet one's volt-seconds; a ring that a diode cuts shows no more`,
