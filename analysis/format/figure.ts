@@ -45,6 +45,14 @@ export function formatNumber(value: number | null, unit: string, digits = 3): st
   return join(minus(scaled.toFixed(places)), shownUnit);
 }
 
+/** A value as somebody stated it, with no digits it has not: 12 V, 330 nF, 0.5 °C. */
+export function formatStated(value: number, unit: string): string {
+  if (unit === "°C") return minus(`${value} °C`);
+  return formatNumber(value, unit, 6)
+    .replace(/(\.\d*?)0+(?=\D|$)/, "$1")
+    .replace(/\.(?=\D|$)/, "");
+}
+
 /**
  * A figure with its standard uncertainty: "5.82 ± 0.04 mH". The uncertainty has two digits when they
  * are 10 to 35, else one (the rounding rule of the Particle Data Group's Review, section 5.3), and the

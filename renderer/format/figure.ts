@@ -1,5 +1,5 @@
 /** What the window adds to the common format of figures: shares, stated values, missing figures. */
-import { formatFigure, formatNumber, noFigure } from "../../analysis/format/figure.ts";
+import { formatFigure, formatNumber, formatStated, noFigure } from "../../analysis/format/figure.ts";
 import type { Figure } from "../../analysis/reading-format.ts";
 
 export const dash = noFigure;
@@ -21,11 +21,6 @@ export function percent(fraction: number | null | undefined, decimals = 0): stri
   return `${(fraction * 100).toFixed(decimals).replace("-", "−")}\u00a0%`;
 }
 
-/** A value as somebody stated it, with no digits it has not: 12 V, 330 nF, 0.5 °C. */
-export function stated(value: number | null | undefined, unit: string): string {
-  if (unit === "°C")
-    return value === null || value === undefined ? dash : `${String(value).replace("-", "−")}\u00a0°C`;
-  return plain(value, unit, 6)
-    .replace(/(\.\d*?)0+(?=\D|$)/, "$1")
-    .replace(/\.(?=\D|$)/, "");
-}
+/** A value as somebody stated it: 12 V, 330 nF, 0.5 °C. */
+export const stated = (value: number | null | undefined, unit: string) =>
+  value === null || value === undefined ? dash : together(formatStated(value, unit));

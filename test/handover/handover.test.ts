@@ -3,7 +3,7 @@ import Papa from "papaparse";
 import { afterEach, beforeEach, describe, expect, it } from "vitest";
 import { openBook, type Book } from "../../app/host/book/index.ts";
 import { exportRun, type Views } from "../../app/host/handover/index.ts";
-import { judged, temporaryFolder } from "../book/runs.ts";
+import { judged, setup, temporaryFolder } from "../book/runs.ts";
 
 const views: Views = {
   trace: ({ from_s, to_s }) =>
@@ -66,6 +66,35 @@ describe("the pulse table", () => {
   });
 });
 
+describe("a cell of text", () => {
+  // What starts a formula in spreadsheets, after the CSV injection notes that are published about it.
+  const begins = /(^|[;\t\r\n])\s*[=+\-@＝＋－＠]/;
+  for (const remark of [
+    "=1+1",
+    "+1",
+    "-1",
+    "@A1",
+    "\t=1",
+    "\r=1",
+    " =1",
+    "＝1",
+    "＠A1",
+    "fine;=1+1",
+    "fine\n=1",
+  ])
+    it(`is no formula: ${JSON.stringify(remark)}`, async () => {
+      book.rule(1, 1, "unclear", remark);
+      const { rows } = await csv();
+      expect(rows[1].remark).not.toMatch(begins);
+      expect(rows[1].remark.replaceAll("'", "")).toBe(remark);
+    });
+
+  it("is left as it is where nothing in it could be one", async () => {
+    book.rule(1, 1, "unclear", "L = 5 mH, Q - 3; gap 7 mm");
+    expect((await csv()).rows[1].remark).toBe("L = 5 mH, Q - 3; gap 7 mm");
+  });
+});
+
 describe("JSON Lines", () => {
   it("is one ringbook.capture/1 object a line", async () => {
     const { text, name } = await exportRun(book, run, "jsonl", views);
@@ -93,6 +122,38 @@ describe("the report", () => {
     expect(text).toMatch(/Ringbook \d+\.\d+\.\d+/);
     expect(text).toContain("never a safety device");
     expect(text).toContain("<svg");
+  });
+
+  it("writes what was stated in words with units, and says when it was computed again", async () => {
+    const again = judged([
+      {
+        name: '=cmd|"x".csv',
+        verdicts: ["spark"],
+        stated: { ...setup, capacitor_F: { value: 4.7e-7, tolerance: 0.05 } },
+      },
+    ]);
+    book.stateSetup(run, { capacitor_F: { value: 4.7e-7, tolerance: 0.05 } });
+    const before = (await exportRun(book, run, "html", views)).text;
+    expect(before).toContain("not computed yet");
+    book.keepRun(run, again);
+    const { text } = await exportRun(book, run, "html", views);
+    expect(text).toMatch(/capacitor<\/bdi>\s*<\/td>\s*<td>\s*<bdi>470 nF ± 5 %/);
+    expect(text).toMatch(/switch rating<\/bdi>\s*<\/td>\s*<td>\s*<bdi>600 V/);
+    expect(text).toMatch(/computed again from the captures; the book keeps\s+1 earlier reading/);
+    expect(text).toMatch(/Stated on \d{4}-\d\d-\d\d \d\d:\d\d UTC:\s+<bdi>capacitor: 470 nF ± 5 %/);
+    expect(text).not.toContain("not computed yet");
+  });
+
+  it("gives the added-capacitor line, or why there is none", async () => {
+    const { text } = await exportRun(book, run, "html", views);
+    expect(text).toMatch(/Added-capacitor line<\/h2>\s*<p class="quiet">\s*No line: /);
+  });
+
+  it("shows a name as it is spelled, whatever turns the direction of writing in it", async () => {
+    book.rule(1, 1, "unclear", "\u202egnp.exe\u202c \u05d0\u05d1");
+    const { text } = await exportRun(book, run, "html", views);
+    expect(text).not.toMatch(/[\u202a-\u202e\u2066-\u2069]/);
+    expect(text).toContain("\ufffdgnp.exe\ufffd \u05d0\u05d1");
   });
 
   it("says so where a trace can't be drawn, and keeps the rest", async () => {

@@ -7,6 +7,7 @@ import type { Failure } from "../failure.ts";
 import type { RunOfSources } from "../sources.ts";
 import { answersOf } from "./answers.ts";
 import { coilQueries } from "./coils.ts";
+import { historyOf } from "./history.ts";
 import { keeper, type JudgedRun } from "./keep.ts";
 import { openDatabase } from "./open.ts";
 import { queries } from "./queries.ts";
@@ -104,6 +105,7 @@ function bookOn(db: DatabaseSyncInstance, path: string, readOnly: boolean, note:
     note,
     ...ask,
     ...coilQueries(db),
+    history: historyOf(db),
     runCount: () => (db.prepare("SELECT count(*) AS n FROM runs").get() as { n: number }).n,
 
     /** The run of this key, made when there is none. */

@@ -61,10 +61,16 @@ export function pulseTable(captures: CaptureDetail[]): string {
   return `\uFEFF${rows.map((row) => `${row.map(cellText).join(",")}\r\n`).join("")}`;
 }
 
+/**
+ * Where a spreadsheet would begin a formula: at the cell's start, whatever blanks come first, and behind a
+ * semicolon or tab, which others take for the cells' separator. Full-width signs count there as well.
+ */
+const formulaStart = /(?<=^|[;\t\r\n])(?=\s*[=+\-@＝＋－＠]|[\t\r])/g;
+
 /** Text that a spreadsheet would take for a formula gets an apostrophe before it. */
 function cellText(cell: Cell): string {
   if (cell === null) return "";
   if (typeof cell === "number") return String(cell);
-  const safe = /^[=+\-@\t\r]/.test(cell) ? `'${cell}` : cell;
-  return /[",\r\n]/.test(safe) ? `"${safe.replaceAll('"', '""')}"` : safe;
+  const safe = cell.replace(formulaStart, "'");
+  return /[",;\t\r\n]/.test(safe) ? `"${safe.replaceAll('"', '""')}"` : safe;
 }

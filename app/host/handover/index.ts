@@ -1,6 +1,7 @@
 import type { Answer, Argument, RingPicture, TraceWindow } from "../../bridge.ts";
 import type { Book } from "../book/index.ts";
 import { captureLine } from "../capture-line.ts";
+import { capturesOf } from "../handlers/coil.ts";
 import { pulseTable } from "./csv.ts";
 import { reportPage } from "./report.ts";
 
@@ -32,7 +33,9 @@ export async function exportRun(
       text: lines.map((line) => `${line}\n`).join(""),
     };
   }
-  const text = await reportPage(book.run(run), captures, views);
+  const detail = book.run(run);
+  const ofCoil = detail.coil === null ? captures : capturesOf(book, detail.coil);
+  const text = await reportPage({ run: detail, captures, ofCoil, history: book.history(run) }, views);
   return { name: name("html"), mime: "text/html;charset=utf-8", text };
 }
 

@@ -7,7 +7,11 @@ const entities: Record<string, string> = {
   '"': "&quot;",
   "'": "&#39;",
 };
-export const escape = (text: string) => text.replace(/[&<>"']/g, (sign) => entities[sign]);
+/** Signs that turn the direction of what follows, or that no page can show: a name must read as it is spelled. */
+// oxlint-disable-next-line no-control-regex
+const unseen = /[\u0000-\u0008\u000b\u000c\u000e-\u001f\u007f-\u009f\u200e\u200f\u202a-\u202e\u2066-\u2069]/g;
+export const escape = (text: string) =>
+  text.replace(unseen, "\ufffd").replace(/[&<>"']/g, (sign) => entities[sign]);
 
 /** Ready markup, told apart from text that must be escaped. */
 export class Markup {
@@ -25,6 +29,9 @@ const piece = (value: Piece): string => {
 /** Template tag: what is filled in is escaped unless it is markup. */
 export const html = (parts: TemplateStringsArray, ...values: Piece[]) =>
   new Markup(parts.map((part, i) => part + (i < values.length ? piece(values[i]) : "")).join(""));
+
+/** Text in whatever direction it is written, without turning what stands beside it. */
+export const isolated = (text: string) => html`<bdi>${text}</bdi>`;
 
 export const table = (head: string[], rows: (string | Markup)[][]) =>
   html`<table>

@@ -15,6 +15,11 @@ th { text-align: left; font-weight: normal; color: #55534c; border-bottom: 1px s
 td, th { padding: .18rem .6rem .18rem 0; vertical-align: top; overflow-wrap: anywhere; }
 tr + tr td { border-top: 1px solid #e6e3d8; }
 .log td, .log th { white-space: nowrap; overflow-wrap: normal; }
+.log td.name { white-space: normal; overflow-wrap: anywhere; padding-bottom: 0; }
+.log tr:has(.name) + tr td { border-top: 0; }
+.files td, .files th { white-space: nowrap; }
+.files td:first-child, .files td:last-child { white-space: normal; }
+.files td:last-child { min-width: 17rem; }
 .log td.why { white-space: normal; border-top: 0; padding: 0 0 .3rem 1.2rem; color: #55534c; font-size: .95em; }
 .log tbody { break-inside: avoid; }
 .log tbody + tbody td:not(.why) { border-top: 1px solid #e6e3d8; }
@@ -23,12 +28,13 @@ figure { margin: 1rem 0; break-inside: avoid; }
 figcaption b { color: #1a1a18; font-weight: normal; }
 svg { width: 100%; height: auto; }
 svg path { fill: none; stroke-linejoin: round; }
-svg text { font: 11px Georgia, "DejaVu Serif", serif; fill: #55534c; }
+svg text, svg text.quiet { font: 11px Georgia, "DejaVu Serif", serif; fill: #55534c; }
 svg .ink { stroke: #1a1a18; stroke-width: .8; }
 svg .fit { stroke: #0072b2; stroke-width: 1.6; }
 svg line { stroke: #b5b2a5; stroke-width: .8; }
 svg line.spark { stroke: #d55e00; stroke-dasharray: 2 2; }
 svg text.spark { fill: #b34f00; }
+svg line.grid { stroke: #e6e3d8; stroke-width: .6; }
 svg .rule { stroke-dasharray: 1 3; }
 footer { margin-top: 2rem; border-top: 1px solid #1a1a18; padding-top: .4rem; }
 @media print {

@@ -1,7 +1,9 @@
 import { formatFigure, formatNumber } from "../../../analysis/format/figure.ts";
 import type { BudgetLine, Figure, PulseReading } from "../../../analysis/reading-format.ts";
 import type { CaptureDetail, RunDetail } from "../../bridge.ts";
-import { html, table, type Markup } from "./markup.ts";
+import { statementWords } from "../../../analysis/setup/words.ts";
+import type { Setup } from "../../../analysis/setup/schema.ts";
+import { html, isolated, table, type Markup } from "./markup.ts";
 import { baseName } from "./base-name.ts";
 
 /** The run's combined figures, and the ramp's of the first capture that has one. */
@@ -18,32 +20,58 @@ export function figureTable({ combined }: RunDetail, captures: CaptureDetail[]):
     ["current at switch-off", ramp?.finalCurrent_A ?? null, "A"],
     ["saturation current", ramp?.saturationCurrent_A ?? null, "A"],
   ];
-  const peaks = captures.flatMap(({ reading }) => reading.pulses.flatMap(({ peak_V }) => peak_V ?? []));
-  const highest = peaks.length === 0 ? null : Math.max(...peaks);
   return html`${table(
       ["figure", "value ± standard uncertainty"],
       [
         ...rows.map(([name, figure, unit]) => [name, formatFigure(figure, unit)]),
-        ["highest kick", formatNumber(highest, "V")],
+        ["highest kick", highestKick(captures)],
       ],
     )}
     <p class="quiet">A dash is a figure that could not be had; the notes of its capture say why.</p>
     ${notes(captures)}`;
 }
 
+function highestKick(captures: CaptureDetail[]): string {
+  const pulses = captures.flatMap(({ reading }) => reading.pulses);
+  const most = Math.max(...pulses.map(({ peak_V, peakAtLeast_V }) => peak_V ?? peakAtLeast_V ?? -Infinity));
+  const highest = pulses.find(({ peak_V, peakAtLeast_V }) => (peak_V ?? peakAtLeast_V) === most);
+  if (!highest) return formatNumber(null, "V");
+  if (highest.peak_V === null) return `over ${formatNumber(most, "V")}: the record is cut off there`;
+  const u = highest.u.peak_V;
+  return u === undefined ? formatNumber(most, "V") : formatFigure({ value: most, u }, "V");
+}
+
+const mostNotes = 30;
+
+/** Each text once, with the files it is about where it is not about all of them. */
 function notes(captures: CaptureDetail[]): Markup {
-  const texts = new Set(captures.flatMap(({ reading }) => reading.notes.map(({ text }) => text)));
-  if (texts.size === 0) return html``;
+  const files = new Map<string, Set<string>>();
+  for (const { file, reading } of captures)
+    for (const { text } of reading.notes)
+      files.set(text, (files.get(text) ?? new Set<string>()).add(baseName(file)));
+  if (files.size === 0) return html``;
+  const all = new Set(captures.map(({ file }) => baseName(file))).size;
+  const left = files.size - mostNotes;
   return html`<ul>
-    ${[...texts].slice(0, 30).map((text) => html`<li>${text}</li>`)}
+    ${[...files]
+      .slice(0, mostNotes)
+      .map(
+        ([text, about]) => html`<li>${about.size < all ? namesOf([...about]) : ""}${isolated(text)}</li>`,
+      )}${left > 0 ? html`<li>and ${String(left)} more, in the book</li>` : html``}
   </ul>`;
 }
 
-const budgetUnits: Record<string, string> = {
-  inductance_H: "H",
-  capacitance_F: "F",
-  resistance_ohm: "Ω",
-  frequency_Hz: "Hz",
+/** "a.csv, b.csv and 7 more: " */
+function namesOf(files: string[]): Markup {
+  const named = files.slice(0, 2).map((file, i) => html`${i > 0 ? ", " : ""}${isolated(file)}`);
+  return html`${named}${files.length > 2 ? ` and ${files.length - 2} more` : ""}: `;
+}
+
+const budgetWords: Record<string, [words: string, unit: string]> = {
+  inductance_H: ["inductance", "H"],
+  capacitance_F: ["capacitance", "F"],
+  resistance_ohm: ["resistance", "Ω"],
+  frequency_Hz: ["frequency", "Hz"],
 };
 
 /** What contributes how much, of the first pulse that has a budget. */
@@ -51,25 +79,24 @@ export function budgetTable(captures: CaptureDetail[]): Markup {
   const pulses = captures.flatMap(({ file, reading }) => reading.pulses.map((pulse) => ({ file, pulse })));
   const first = pulses.find(({ pulse }) => pulse.budget && Object.keys(pulse.budget).length > 0);
   if (!first) return html`<p class="quiet">No figure of this run has an uncertainty budget.</p>`;
-  const lines = Object.entries(first.pulse.budget ?? {}).flatMap(([figure, parts]: [string, BudgetLine[]]) =>
-    parts.map(({ source, u }) => [figure, source, formatNumber(u, budgetUnits[figure] ?? "", 2)]),
-  );
+  const lines = Object.entries(first.pulse.budget ?? {}).flatMap(([key, parts]: [string, BudgetLine[]]) => {
+    const [words, unit] = budgetWords[key] ?? [key, ""];
+    return parts.map(({ source, u }) => [words, source, formatNumber(u, unit, 2)]);
+  });
   return html`<p class="quiet">
-      Standard uncertainty that each source would give alone, for ${baseName(first.file)}, pulse
+      Standard uncertainty that each source would give alone, for ${isolated(baseName(first.file))}, pulse
       ${first.pulse.index + 1}.
     </p>
     ${table(["figure", "source", "u"], lines)}`;
 }
 
 export function setupTable({ setup, origins }: RunDetail): Markup {
-  const rows = Object.entries(setup)
-    .filter(([key]) => key !== "format")
-    .map(([key, value]) => [key, stated(value), origins[key] ?? ""]);
+  const rows = (Object.keys(setup) as (keyof Setup)[]).flatMap((key) =>
+    statementWords(key, setup).map(([what, value]) => [isolated(what), isolated(value), origins[key] ?? ""]),
+  );
   if (rows.length === 0) return html`<p class="quiet">Nothing was stated.</p>`;
-  return table(["field", "value", "from"], rows);
+  return table(["stated", "value", "from"], rows);
 }
-
-const stated = (value: unknown) => (typeof value === "string" ? value : JSON.stringify(value));
 
 const logColumns = ["file", "pulse", "switch-off", "kick", "ring", "Q", "verdict", "probability"];
 
@@ -85,28 +112,38 @@ export function pulseLog(captures: CaptureDetail[]): Markup {
     ${pulses.map(
       ({ file, pulse }) =>
         html`<tbody>
+          ${
+            longName(file)
+              ? html`<tr>
+                  <td class="name" colspan="${logColumns.length}">${isolated(baseName(file))}</td>
+                </tr>`
+              : ""
+          }
           <tr>
-            ${logRow(file, pulse).map((cell) => html`<td>${cell}</td>`)}
+            <td>${longName(file) ? "" : isolated(baseName(file))}</td>
+            ${logRow(pulse).map((cell) => html`<td>${cell}</td>`)}
           </tr>
           <tr>
-            <td class="why" colspan="${logColumns.length}">${reasonsOf(pulse)}</td>
+            <td class="why" colspan="${logColumns.length}">${isolated(reasonsOf(pulse))}</td>
           </tr>
         </tbody>`,
     )}
   </table>`;
 }
 
+/** Too long for the log's first column: it has a row of its own. */
+const longName = (file: string) => baseName(file).length > 18;
+
 const reasonsOf = ({ ruled, spark }: PulseReading) =>
   [ruled?.remark, ...(spark?.reasons ?? [])].filter(Boolean).join("; ");
 
-function logRow(file: string, pulse: PulseReading): string[] {
+function logRow(pulse: PulseReading): string[] {
   const { ring, spark, ruled } = pulse;
   const mode = ring?.modes[0];
   const own = ruled ? `${ruled.verdict}, ruled ${ruled.at.slice(0, 10)}` : "";
   const verdict = [own, spark ? `${spark.verdict}` : "no verdict"].filter(Boolean).join("; program: ");
   const clipped = pulse.peakAtLeast_V === undefined ? null : `over ${formatNumber(pulse.peakAtLeast_V, "V")}`;
   return [
-    baseName(file),
     String(pulse.index + 1),
     formatNumber(pulse.switchOffTime_s, "s", 6),
     pulse.peak_V === null && clipped ? clipped : formatNumber(pulse.peak_V, "V"),

@@ -3,10 +3,13 @@ import { formatNumber } from "../../../analysis/format/figure.ts";
 import type { CaptureReading } from "../../../analysis/reading-format.ts";
 import { version } from "../../../package.json";
 import type { CaptureDetail, RunDetail } from "../../bridge.ts";
+import type { RunHistory } from "../book/history.ts";
 import { baseName } from "./base-name.ts";
 import type { Views } from "./index.ts";
-import { escape, html, table, type Markup } from "./markup.ts";
+import { escape, html, isolated, table, type Markup } from "./markup.ts";
 import { budgetTable, figureTable, pulseLog, setupTable } from "./report-tables.ts";
+import { historySection, momentOf } from "./report-history.ts";
+import { capacitorLine } from "./report-line.ts";
 import { reportStyle } from "./report-style.ts";
 import { pulseDrawing } from "./trace-drawing.ts";
 
@@ -14,32 +17,46 @@ import { pulseDrawing } from "./trace-drawing.ts";
 const drawnPulses = 12;
 const drawingPixels = 640;
 
+interface HandedRun {
+  run: RunDetail;
+  captures: CaptureDetail[];
+  /** Captures of the coil's latest runs, this one's among them. */
+  ofCoil: CaptureDetail[];
+  history: RunHistory;
+}
+
 /** The run as one HTML file that needs nothing from outside and prints as it looks. */
-export async function reportPage(run: RunDetail, captures: CaptureDetail[], views: Views): Promise<string> {
+export async function reportPage(handed: HandedRun, views: Views): Promise<string> {
+  const { run, captures, ofCoil, history } = handed;
   const drawings = await drawPulses(captures, views);
   const body = html`<header>
       <h1>${run.name}</h1>
-      <p>${[run.coil, run.taken, `${run.captures} captures`].filter(Boolean).join(" · ")}</p>
+      <p>${headOf(run)}</p>
     </header>
     <main>
       <p class="counts">${countSentence(run.counts)}</p>
-      ${attention(run)}
+      ${attention(run, captures)}
       <h2>What was found</h2>
       ${figureTable(run, captures)}
       <h2>What it rests on</h2>
       ${budgetTable(captures)}
-      <h2>The setup, as stated</h2>
+      <h2>Added-capacitor line</h2>
+      ${capacitorLine(ofCoil)}
+      <h2>The setup</h2>
       ${setupTable(run)}
+      <h2>How it came about</h2>
+      ${historySection(history, captures)}
       <h2>Pulses, drawn</h2>
       ${drawings}
       <h2>Pulse log</h2>
       ${pulseLog(captures)}
       <h2>Files</h2>
-      ${fileTable(captures)} ${cautions}
+      <div class="files">${fileTable(captures)}</div>
+      ${cautions}
     </main>
     <footer>
-      Ringbook ${version} · written ${new Date().toISOString().slice(0, 16).replace("T", " ")} UTC · a
-      measuring aid, not a safety device
+      Ringbook ${version} · written ${momentOf(new Date().toISOString())} · a measuring aid, not a safety
+      device
     </footer>`;
   return `<!doctype html>
 <html lang="en"><head><meta charset="utf-8"><meta name="viewport" content="width=device-width">
@@ -48,16 +65,29 @@ export async function reportPage(run: RunDetail, captures: CaptureDetail[], view
 `;
 }
 
-function attention({ attention: found }: RunDetail): Markup {
+const headOf = ({ coil, taken, captures }: RunDetail): Markup[] =>
+  [coil, taken, `${captures} ${captures === 1 ? "capture" : "captures"}`]
+    .filter((part) => part !== null)
+    .map((part, i) => html`${i > 0 ? " · " : ""}${isolated(part)}`);
+
+function attention({ attention: found }: RunDetail, captures: CaptureDetail[]): Markup {
+  const files = new Map(captures.map(({ capture, file }) => [capture, baseName(file)]));
   const urgent = found.filter(({ kind }) => kind !== "setup-missing").slice(0, 20);
   if (urgent.length === 0) return html``;
   const left = found.length - urgent.length;
   return html`<h2>What needs a look</h2>
     <ul>
       ${urgent.map(
-        ({ text, pulse }) => html`<li>${pulse === null ? "" : `pulse ${pulse + 1}: `}${text}</li>`,
+        ({ text, pulse, capture }) =>
+          html`<li>${placeOf(files.get(capture ?? -1) ?? null, pulse)}${isolated(text)}</li>`,
       )}${left > 0 ? html`<li>and ${left} more</li>` : html``}
     </ul>`;
+}
+
+/** "pulse-07.csv, pulse 3: " */
+function placeOf(file: string | null, pulse: number | null): Markup {
+  if (file === null) return html``;
+  return html`${isolated(file)}${pulse === null ? "" : `, pulse ${pulse + 1}`}: `;
 }
 
 /** The first pulses that sparked, stayed quiet or are unclear, in turn, so that each kind is seen. */
@@ -84,7 +114,8 @@ async function drawPulse(
   views: Views,
 ): Promise<Markup> {
   const { ring, spark } = pulse;
-  const title = `${baseName(file)}, pulse ${pulse.index + 1}: ${pulse.ruled?.verdict ?? spark?.verdict ?? "no verdict"}`;
+  const verdict = pulse.ruled?.verdict ?? spark?.verdict ?? "no verdict";
+  const title = html`${placeOf(baseName(file), pulse.index)}${verdict}`;
   const channel = reading.channels.findIndex(({ name }) => name === ring?.channel);
   const from = pulse.switchOffTime_s ?? ring?.from_s ?? null;
   const to = ring?.to_s ?? null;
@@ -117,7 +148,7 @@ const fileTable = (captures: CaptureDetail[]) =>
     captures.flatMap(({ file, sha256, companions, reading }) => [
       fileRow(file, sha256, reading),
       ...companions.map((companion) => [
-        `${baseName(companion.name)}, read along with it`,
+        html`${isolated(baseName(companion.name))}, read along with it`,
         "",
         "",
         "",
@@ -127,7 +158,7 @@ const fileTable = (captures: CaptureDetail[]) =>
   );
 
 const fileRow = (file: string, sha256: string, { record, timebase }: CaptureReading) => [
-  baseName(file),
+  isolated(baseName(file)),
   `${record.index + 1} of ${record.count}`,
   String(timebase.samples),
   timebase.step_s === null ? "unknown" : formatNumber(timebase.step_s, "s", 5),
