@@ -5,6 +5,7 @@ import type {
   Figure,
   Measured,
   RampReading,
+  RateReading,
   RunCounts,
   Verdict,
 } from "../analysis/reading-format.ts";
@@ -185,6 +186,10 @@ export interface CoilHistoryRow {
   capacitance_F: Figure;
   resistance_ohm: Figure;
   q: Figure;
+  /** Of the winding, from the ramp. */
+  resistance20_ohm: Figure;
+  /** Null where no spark is expected. */
+  misfireRate: RateReading | null;
   peak_V: number | null;
   /** In plain words, where this run departs from the others. */
   flag: string | null;

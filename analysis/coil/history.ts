@@ -6,6 +6,8 @@ import { driftOf } from "../statistics/drift.ts";
 export interface CoilRun {
   /** Instant of the run, in days on any scale. */
   day: number;
+  /** With this capacitor; a null stands for an unknown one. */
+  capacitance_F: Figure;
   inductance_H: Figure;
   q: Figure;
   resistance20_ohm: Figure;
@@ -42,10 +44,20 @@ export function departures(runs: CoilRun[]): (string | null)[] {
   });
 }
 
+const sameCapacitor = 0.02;
+
+/** Q goes with the capacitor, and L where stray capacitance is not stated; the winding's resistance with neither. */
+function comparable(key: Tracked, one: CoilRun, other: CoilRun): boolean {
+  if (key === "resistance20_ohm") return true;
+  const [a, b] = [one.capacitance_F?.value, other.capacitance_F?.value];
+  if (a === undefined || b === undefined) return a === b;
+  return Math.abs(a / b - 1) <= sameCapacitor;
+}
+
 /** Relative departure from the median of the earlier runs, null when it is within their scatter. */
 function changeOf(key: Tracked, run: CoilRun, earlier: CoilRun[]): number | null {
   const now = run[key]?.value;
-  const before = earlier.flatMap((other) => other[key]?.value ?? []);
+  const before = earlier.flatMap((other) => (comparable(key, run, other) && other[key]?.value) || []);
   if (now === undefined || before.length < needed) return null;
   const middle = median(before);
   if (!(middle > 0)) return null;
@@ -54,10 +66,12 @@ function changeOf(key: Tracked, run: CoilRun, earlier: CoilRun[]): number | null
   return Math.abs(change) > scatter ? change : null;
 }
 
-/** What drifts over all runs, in words with the rate a year; empty where nothing does. */
+/** What drifts over the runs with the capacitor of the last, in words with the rate a year; empty where nothing does. */
 export function drifts(runs: CoilRun[]): string[] {
   return (Object.keys(least) as Tracked[]).flatMap((key) => {
+    const last = runs.findLast((run) => run[key] !== null);
     const points = runs.flatMap((run) => {
+      if (!last || !comparable(key, run, last)) return [];
       const figure = run[key];
       return figure ? [{ x: run.day, value: figure.value, u: 0 }] : [];
     });

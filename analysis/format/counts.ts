@@ -1,4 +1,4 @@
-import type { RunCounts } from "../reading-format.ts";
+import type { RateReading, RunCounts } from "../reading-format.ts";
 
 const percent = (share: number) => (share * 100).toFixed(1);
 
@@ -7,7 +7,11 @@ export function countSentence({ pulses, sparks, quiet, unclear, misfires, misfir
   const silent = misfires === null ? `${quiet} stayed quiet` : `${misfires} misfired`;
   const counted = `${pulses} pulses: ${sparks} sparked, ${silent}, ${unclear} unclear.`;
   if (!misfireRate) return counted;
-  const { value, low, high, level } = misfireRate;
+  return `${counted} Misfire rate ${rateText(misfireRate)}.`;
+}
+
+/** "32.1 % (19.5 to 47.5 % at 95 %)" */
+export function rateText({ value, low, high, level }: RateReading): string {
   const rate = value === null ? "cannot be given" : `${percent(value)} %`;
-  return `${counted} Misfire rate ${rate} (${percent(low)} to ${percent(high)} % at ${level * 100} %).`;
+  return `${rate} (${percent(low)} to ${percent(high)} % at ${level * 100} %)`;
 }

@@ -3,7 +3,9 @@ import { coilFromCaptures, type DwellGoal } from "../../analysis/coil/line.ts";
 import type { CaptureReading } from "../../analysis/reading-format.ts";
 import type { Setup } from "../../analysis/setup/schema.ts";
 import { capturesOf } from "../host/handlers/coil.ts";
+import type { Book } from "../host/book/index.ts";
 import { withBook } from "./book-option.ts";
+import { historyText } from "./history-text.ts";
 import { readAll, statedSetup } from "./read-all.ts";
 import { complain, readArguments, say, UsageError, withUsage } from "./usage.ts";
 
@@ -30,9 +32,10 @@ export const run = (args: string[]) =>
     if ((positionals.length === 0) === (values.coil === undefined))
       throw new UsageError("coil wants the paths of its captures, or --coil NAME for one of the book");
     const goal = goalOf(values);
-    const print = (measured: Measured) => {
+    const print = (measured: Measured, history?: ReturnType<Book["coilHistory"]>) => {
       const coil = coilFromCaptures(measured.readings, measured.setups, goal);
-      say(values.json ? JSON.stringify(coil) : coilText(coil, measured.files));
+      if (values.json) say(JSON.stringify({ ...coil, ...(history && { history: history.rows }) }));
+      else say([coilText(coil, measured.files), ...(history ? historyText(history) : [])].join("\n"));
     };
     if (values.coil !== undefined) return fromBook(values.coil, values.book, print);
     const { problems, files } = await readAll(positionals, await statedSetup(values.setup), null);
@@ -61,16 +64,24 @@ function goalOf({ current, energy }: { current?: string; energy?: string }): Dwe
   return energy === undefined ? null : { energy_J: positive("energy", energy) };
 }
 
-const fromBook = (coil: string, path: string | undefined, print: (measured: Measured) => void) =>
+const fromBook = (
+  coil: string,
+  path: string | undefined,
+  print: (measured: Measured, history: ReturnType<Book["coilHistory"]>) => void,
+) =>
   withBook(path, async (book) => {
     const captures = capturesOf(book, coil);
+    const history = book.coilHistory(coil);
     if (captures.length === 0)
       throw new UsageError(`the book ${book.path} has no captures of coil "${coil}"`);
-    print({
-      files: captures.map(({ file }) => file),
-      readings: captures.map(({ reading }) => reading),
-      setups: captures.map(({ setup }) => setup),
-    });
+    print(
+      {
+        files: captures.map(({ file }) => file),
+        readings: captures.map(({ reading }) => reading),
+        setups: captures.map(({ setup }) => setup),
+      },
+      history,
+    );
     return 0;
   });
 

@@ -1,7 +1,8 @@
 /** A coil over all its runs: history, added-capacitor line, ramp and saturation, drive design. */
+import { rateText } from "../../analysis/format/counts.ts";
 import type { CoilSheet as Coil } from "../../app/bridge.ts";
 import { Caution } from "../help/Caution.tsx";
-import { figureText, plain } from "../format/figure.ts";
+import { dash, figureText, plain } from "../format/figure.ts";
 import { dayText, plural } from "../format/words.ts";
 import { CopyButton } from "../shell/CopyButton.tsx";
 import { SheetHead } from "../shell/SheetHead.tsx";
@@ -60,6 +61,8 @@ function History({ sheet }: { sheet: Coil }) {
           figureText(row.inductance_H, "H"),
           figureText(row.q, ""),
           figureText(row.resistance_ohm, "Ω"),
+          figureText(row.resistance20_ohm, "Ω"),
+          row.misfireRate ? rateText(row.misfireRate) : dash,
         ].join("\t"),
       )
       .join("\n");
@@ -78,6 +81,8 @@ function History({ sheet }: { sheet: Coil }) {
               <th scope="col">C</th>
               <th scope="col">R</th>
               <th scope="col">Q</th>
+              <th scope="col">R at 20 °C</th>
+              <th scope="col">misfire rate</th>
               <th scope="col">highest kick</th>
             </tr>
           </thead>
@@ -100,6 +105,12 @@ function History({ sheet }: { sheet: Coil }) {
                 </td>
                 <td className="tabular" data-name="Q">
                   {figureText(row.q, "")}
+                </td>
+                <td className="tabular" data-name="R at 20 °C">
+                  {figureText(row.resistance20_ohm, "Ω")}
+                </td>
+                <td className="tabular" data-name="misfire rate">
+                  {row.misfireRate ? rateText(row.misfireRate) : dash}
                 </td>
                 <td className="tabular" data-name="highest kick">
                   {plain(row.peak_V, "V")}

@@ -39,6 +39,15 @@ it("computes a run again from the copies, with the setup its folder had, when th
   expect(await placeOfCapture(book, after.capture)).not.toBe(after.file);
 });
 
+it("keeps what its folder said however often it is computed again", async () => {
+  book.setPreference(keepFiles, "yes");
+  const run = await readFolder(book, path);
+  rmSync(path, { recursive: true });
+  for (const capacitor_F of [2e-7, 3e-7]) await state(book, run, { capacitor_F });
+  expect(first(run).setup).toMatchObject({ capacitor_F: 3e-7, supply_V: 12 });
+  expect(book.run(run).origins).toMatchObject({ capacitor_F: "stated", supply_V: "folder setup" });
+});
+
 it("is carried by a backup", async () => {
   book.setPreference(keepFiles, "yes");
   const run = await readFolder(book, path);

@@ -1,7 +1,8 @@
 import type { DatabaseSyncInstance } from "@photostructure/sqlite";
 import { departures, drifts, type CoilRun } from "../../../analysis/coil/history.ts";
+import type { RunCounts } from "../../../analysis/reading-format.ts";
 import type { CoilHistoryRow, CoilRow } from "../../bridge.ts";
-import { figure } from "./rows.ts";
+import { figure, parse } from "./rows.ts";
 
 type Row = Record<string, never>;
 
@@ -40,6 +41,7 @@ const day_ms = 86_400_000;
 
 const toCoilRun = (row: Row): CoilRun => ({
   day: Date.parse(row.taken ?? row.added) / day_ms,
+  capacitance_F: figure(row.capacitance_F, row.capacitance_u),
   inductance_H: figure(row.inductance_H, row.inductance_u),
   q: figure(row.q, row.q_u),
   resistance20_ohm: figure(row.resistance20_ohm, row.resistance20_u),
@@ -53,5 +55,7 @@ const toHistoryRow = (row: Row): Omit<CoilHistoryRow, "flag"> => ({
   capacitance_F: figure(row.capacitance_F, row.capacitance_u),
   resistance_ohm: figure(row.resistance_ohm, row.resistance_u),
   q: figure(row.q, row.q_u),
+  resistance20_ohm: figure(row.resistance20_ohm, row.resistance20_u),
+  misfireRate: parse<RunCounts>(row.counts).misfireRate,
   peak_V: row.peak_V,
 });

@@ -21,6 +21,7 @@ interface KeptFile {
   path: string;
   sha256: string;
   setup: Setup;
+  origins: Record<string, SetupOrigin>;
 }
 
 export type Book = ReturnType<typeof bookOn>;
@@ -138,7 +139,8 @@ function bookOn(db: DatabaseSyncInstance, path: string, readOnly: boolean, note:
     runFiles(run: number): KeptFile[] {
       const { origins } = db.prepare("SELECT origins FROM runs WHERE id = ?").get(run) as { origins: string };
       const ofFiles = Object.entries(parse<Record<string, SetupOrigin>>(origins)).filter(
-        ([, origin]) => origin !== "stated",
+        // What was answered before is asked and answered anew, so that it can be taken back.
+        ([, origin]) => origin === "file setup" || origin === "folder setup",
       );
       const rows = db
         .prepare(
@@ -148,7 +150,8 @@ function bookOn(db: DatabaseSyncInstance, path: string, readOnly: boolean, note:
         .all(run) as { path: string; sha256: string; setup: string }[];
       return rows.map(({ path, sha256, setup }) => {
         const kept = parse<Record<string, unknown>>(setup);
-        return { path, sha256, setup: Object.fromEntries(ofFiles.map(([key]) => [key, kept[key]])) };
+        const own = Object.fromEntries(ofFiles.map(([key]) => [key, kept[key]]));
+        return { path, sha256, setup: own, origins: Object.fromEntries(ofFiles) };
       });
     },
     /** Copies of the files themselves, where the user wants them. */

@@ -67,9 +67,11 @@ async function keptFiles(book: Book, run: number, readout: Readout): Promise<Cap
   const files = await withStated(kept, book.stated(run), readout);
   return Promise.all(
     files.map(async (file) => {
-      const { sha256, setup } = kept.find(({ path }) => resolve(path) === file.path)!;
+      const { sha256, setup, origins } = kept.find(({ path }) => resolve(path) === file.path)!;
       const copy = await placeOf(book, file.path, sha256);
-      return copy === file.path ? file : { ...file, copy, setup: mergeSetups([file.setup, setup]) };
+      if (copy === file.path) return file;
+      const merged = mergeSetups([file.setup, setup]);
+      return { ...file, copy, setup: merged, origins: { ...origins, ...file.origins } };
     }),
   );
 }
