@@ -12,6 +12,8 @@ export interface Block {
   to: number;
   /** Cells a data line has, empty ones included. */
   width: number;
+  /** Cells up to the last column that holds anything as a rule. */
+  filled: number;
   /** Columns with numbers, in order. */
   numeric: number[];
   /** Columns of words and symbols beside them. */
@@ -35,7 +37,19 @@ export function findBlock({ rows, best }: DialectChoice): Block {
   const data = rows.slice(stretch.from, stretch.to);
   const symbolic = symbolColumns(data, best.width, numeric);
   refuseHalfNumbers(data, best.width, [...numeric, ...symbolic]);
-  return { from: stretch.from, to: stretch.to, width: best.width, numeric, symbolic, skipped };
+  const filled = filledColumns(data, best.width, Math.max(...numeric, ...symbolic));
+  return { from: stretch.from, to: stretch.to, width: best.width, filled, numeric, symbolic, skipped };
+}
+
+/** Right of the data stand settings (a word, its value), or a column that is blank but for a stray cell. */
+function filledColumns(rows: Row[], width: number, last: number): number {
+  const strays = Math.max(2, 0.01 * rows.length);
+  for (let column = width - 1; column > last; column--) {
+    const filled = rows.filter(({ kinds }) => (kinds[column] ?? "blank") !== "blank");
+    const isSetting = filled.some(({ kinds }) => kinds.slice(last + 1, column + 1).includes("text"));
+    if (filled.length > strays || isSetting) return column + 1;
+  }
+  return last + 1;
 }
 
 /** The pattern most lines share, and columns that fill up later (blank while the screen still rolled). */

@@ -13,6 +13,8 @@ export interface BulkPlan {
   width: number;
   /** Cells a line has; more filled ones are odd. */
   cells: number;
+  /** Of those, the ones that hold anything as a rule. */
+  filled: number;
   /** Columns wanted, in rising order. */
   columns: number[];
   /** Of those, the ones that hold words or symbols (hex words are read, the rest is NaN). */
@@ -29,7 +31,7 @@ export interface OddLine {
   row: number;
   /** Byte where the line begins, counted likewise. */
   byte: number;
-  kind: "text" | "empty-cells" | "short" | "long" | "unreadable";
+  kind: "text" | "empty-cells" | "short" | "long" | "beside" | "unreadable";
   text: string;
 }
 
@@ -109,7 +111,7 @@ export function parseBulk(lines: Uint8Array, plan: BulkPlan, reuse: ArrayBufferL
         after = endOfCell(bytes, at, separator);
         if (after > at) plain = false;
         if (slot >= 0) chunk.symbolCell(slot, at, after);
-        else if (cell >= plan.cells && after > at) odd |= 2;
+        else if (cell >= plan.filled && after > at) odd |= cell >= plan.cells ? 2 : 4;
       }
       at = after;
       cell++;
@@ -118,7 +120,7 @@ export function parseBulk(lines: Uint8Array, plan: BulkPlan, reuse: ArrayBufferL
       if (!blanks) byte = bytes[++at];
     }
     if (odd === 0 && cell >= width) chunk.rows++;
-    else chunk.oddLine(lineStart, at, cell, (odd & 2) !== 0);
+    else chunk.oddLine(lineStart, at, cell, odd & 2 ? "long" : odd & 4 ? "beside" : null);
   }
   return chunk.done(plain);
 }
@@ -208,7 +210,7 @@ class ChunkBuilder {
   }
 
   /** Decides what a line is that was not read in one go. */
-  oddLine(from: number, to: number, cells: number, long: boolean): void {
+  oddLine(from: number, to: number, cells: number, more: "long" | "beside" | null): void {
     const { plan, kindOf } = this;
     let numbers = 0;
     let texts = 0;
@@ -227,7 +229,7 @@ class ChunkBuilder {
     }
     if (texts > 0) this.note(from, to, "unreadable");
     else if (short) this.note(from, to, "short");
-    else if (long) this.note(from, to, "long");
+    else if (more) this.note(from, to, more);
     for (let slot = 0; slot < kindOf.length; slot++) {
       const kind = kinds[kindOf[slot]];
       if (kind !== "number") this.tallies[slot][kind]++;
@@ -236,8 +238,9 @@ class ChunkBuilder {
   }
 
   private note(from: number, to: number, kind: OddLine["kind"]): void {
-    if (this.odd.length >= mostOdd) this.oddMore++;
-    else
+    if (this.odd.length >= mostOdd) {
+      if (kind !== "beside") this.oddMore++;
+    } else
       this.odd.push({
         row: this.rows,
         byte: from,

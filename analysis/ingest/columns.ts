@@ -47,7 +47,7 @@ export class Columns {
     for (const odd of chunk.odd) {
       if (this.odd.length < mostOdd)
         this.odd.push({ ...odd, row: odd.row + this.rows, byte: odd.byte + this.bytes });
-      else this.oddMore++;
+      else if (odd.kind !== "beside") this.oddMore++;
     }
     this.oddMore += chunk.oddMore;
     if (this.nul < 0 && chunk.nul >= 0) this.nul = this.bytes + chunk.nul;

@@ -13,7 +13,7 @@ export function damageNotes(layout: Layout, columns: Columns): Note[] {
   const unreadable = byKind("unreadable");
   const damaged = unreadable.length + byKind("long").length + oddMore;
   if (damaged > Math.max(3, mostDamaged * rows)) {
-    const [first] = odd.filter(({ kind }) => kind !== "text" && kind !== "empty-cells");
+    const [first] = odd.filter(({ kind }) => !["text", "empty-cells", "beside"].includes(kind));
     throw new ReadingError(
       "damaged-lines",
       `${damaged} of ${rows} lines can't be read as numbers, first "${(first ?? odd[0]).text.slice(0, 60)}"`,
@@ -35,6 +35,11 @@ export function damageNotes(layout: Layout, columns: Columns): Note[] {
     "lines hold cells that are no numbers; those samples count as unusable",
   );
   say("long-lines", byKind("long"), "lines have more cells than the others; the first ones are used");
+  say(
+    "cells-beside",
+    byKind("beside"),
+    "lines hold a cell in a column that is blank elsewhere; it is left out",
+  );
   if (columns.cutLine !== null) {
     const text = `The file ends in mid-line ("${columns.cutLine.slice(0, 60)}"); that line is left out.`;
     notes.push({ code: "cut-last-line", text });

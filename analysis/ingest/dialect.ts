@@ -73,7 +73,9 @@ function lastLines(lines: string[]): string[] {
 function candidates(lines: string[], decimalMark: "." | "," | null): Dialect[] {
   const text = lines.slice(0, 2000).join("\n");
   const found: Dialect[] = [];
-  const groups = ["none", "mark", ...(/\d'\d{3}/.test(text) ? ["'"] : [])];
+  // A single one is a damaged cell.
+  const apostrophes = text.match(/\d'\d{3}/g)?.length ?? 0;
+  const groups = ["none", "mark", ...(apostrophes > 1 ? ["'"] : [])];
   for (const group of groups)
     for (const separator of separators) {
       if (separator !== " " && !text.includes(separator)) continue;

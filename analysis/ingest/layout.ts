@@ -139,6 +139,7 @@ function planBulk({ separator, format }: Dialect, block: Block, keepEmptyRows: b
     format,
     width: columns[columns.length - 1] + 1,
     cells: Math.max(block.width, columns[columns.length - 1] + 1),
+    filled: block.filled,
     columns,
     symbols: block.symbolic,
     keepEmptyRows,

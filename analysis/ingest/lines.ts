@@ -48,13 +48,20 @@ function afterBreak(bytes: Uint8Array, end: number): number {
   return bytes[at] === 10 ? at + 1 : at;
 }
 
-const openQuote = (text: string) => (text.match(/"/g) ?? []).length % 2 === 1 && /(^|[,;\t])\s*"/.test(text);
+/** Whether the line ends inside a quoted cell: a quote opens one at a cell's beginning alone (RFC 4180, section 2). */
+const openQuote = (text: string) => unclosed.test(text.replaceAll('""', ""));
+const unclosed = /^( *"[^"]*"[^,;\t]*[,;\t]| *[^",;\t ][^,;\t]*[,;\t]| *[,;\t])* *"[^"]*$/;
+
+/** Cells of numbers are no text that runs on: a stray quote among samples must not swallow them. */
+const isOfNumbers = (text: string) =>
+  /^[-+\d.,;eE"\s]+$/.test(text) && /\d/.test(text) && /[,;\t]/.test(text);
 
 /** A quoted cell may run over a few lines, no further: a stray quote must not swallow the file. */
 function closeQuote(bytes: Uint8Array, from: number, next: number) {
   let at = next;
   for (let breaks = 1; breaks <= 20 && at < bytes.length; breaks++) {
     const end = endOfLine(bytes, at);
+    if (isOfNumbers(decodeText(bytes.subarray(at, end)))) return null;
     at = afterBreak(bytes, end);
     const text = decodeText(bytes.subarray(from, end));
     if (!openQuote(text)) return { text, next: at, breaks };

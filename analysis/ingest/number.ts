@@ -47,7 +47,8 @@ function grouped(text: string, { decimal, thousands }: NumberFormat): boolean {
   // Behind the decimal mark nothing is grouped: there the mark ends a cell ("0.70, 0.57,").
   if (fraction.some((part) => part.includes(thousands ?? ""))) return false;
   const groups = whole.split(thousands ?? "");
-  return groups.every((group, i) => (i === 0 ? /^\d{1,3}$/ : /^\d{3}$/).test(group));
+  // Who groups digits writes no zeros in front: "0'242" is a damaged decimal mark.
+  return groups.every((group, i) => (i === 0 ? /^[1-9]\d{0,2}$/ : /^\d{3}$/).test(group));
 }
 
 const sentinel = (value: number): CellKind => {

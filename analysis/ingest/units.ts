@@ -108,7 +108,8 @@ export interface NamedUnit {
 
 /** A name with its unit inside: "Time [s]", "A (mV)", "A in V", "Time / s", "U_V". */
 export function splitName(cell: string): NamedUnit {
-  const text = cell.trim();
+  // A quoted name may run over lines.
+  const text = cell.trim().replace(/\s*[\r\n]+\s*/g, " ");
   const patterns = [
     /^(.*?)\s*[[({]\s*([^\])}]*?)\s*[\])}]\s*$/,
     /^(?:(.*?)\s+)?in\s+(\S+)$/i,

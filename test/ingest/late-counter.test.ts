@@ -55,3 +55,12 @@ it("a damaged cell does not make grouping marks of the separators", () => {
   // RFC 4180, section 2.4: the commas part cells, so that the damaged one is "0.".
   expect(capture.channels[1].samples[300 - 123]).toBe(0);
 });
+
+it.each(["0'242", "1'242", "0,242"])("a damaged decimal mark makes no thousands of %s", (cell) => {
+  const [{ channels, notes }] = ingestBytes(
+    rows((k) => `${(k * 2e-6).toExponential(6)};${k === 300 ? cell : value(k)};`),
+    {},
+  );
+  expect(channels[0].samples[300 - 123]).toBeNaN();
+  expect(notes.map(({ code }) => code)).toContain("unreadable-cells");
+});

@@ -8,6 +8,7 @@ const plan: BulkPlan = {
   format: { decimal: ".", thousands: null },
   width: 4,
   cells: 4,
+  filled: 4,
   columns: [0, 1, 2, 3],
   symbols: [],
   keepEmptyRows: false,
