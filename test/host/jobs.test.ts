@@ -1,4 +1,4 @@
-import { describe, expect, it } from "vitest";
+import { describe, expect, it, vi } from "vitest";
 import type { BenchEvent, JobState } from "../../app/bridge.ts";
 import { CallError } from "../../app/host/failure.ts";
 import { createJobs } from "../../app/host/jobs/jobs.ts";
@@ -24,6 +24,20 @@ describe("jobs", () => {
     jobs.start("second", async () => void order.push("second"));
     await jobs.idle();
     expect(order).toEqual(["first", "second"]);
+  });
+
+  it("are told while they work in silence, at least five times a second", async () => {
+    vi.useFakeTimers();
+    try {
+      const told: JobState[] = [];
+      const jobs = createJobs((event) => event.type === "job" && told.push(event.job));
+      const { finished } = jobs.start("judging", () => new Promise((resolve) => setTimeout(resolve, 10_000)));
+      await vi.advanceTimersByTimeAsync(10_000);
+      expect((await finished).state).toBe("done");
+      expect(told.filter(({ state }) => state === "working").length).toBeGreaterThanOrEqual(50);
+    } finally {
+      vi.useRealTimers();
+    }
   });
 
   it("tell how far they are and how long they will take, at most ten times a second", async () => {

@@ -25,12 +25,15 @@ export interface Jobs {
 interface Entry {
   state: JobState;
   started: number;
+  lastTold: number;
   cancelled: boolean;
   stop: (() => void) | null;
 }
 
 const mostRemembered = 50;
 const eventsApart_ms = 100;
+/** A job whose work says nothing for so long is told as it stands, with the time that is left by now. */
+const silence_ms = 150;
 const mostProblems = 1000;
 
 /** One job after the other: they share the reading thread and the book. */
@@ -40,6 +43,7 @@ export function createJobs(emit: (event: BenchEvent) => void, now: () => number 
   let lastNumber = 0;
 
   function tell(entry: Entry) {
+    entry.lastTold = now();
     entry.state.secondsLeft = secondsLeft(entry, now());
     emit({ type: "job", job: structuredClone(entry.state) });
   }
@@ -48,6 +52,9 @@ export function createJobs(emit: (event: BenchEvent) => void, now: () => number 
     if (!entry.cancelled) {
       entry.started = now();
       tell(entry);
+      const beat = setInterval(() => {
+        if (now() - entry.lastTold >= silence_ms) tell(entry);
+      }, silence_ms / 3);
       try {
         await work(handleOf(entry, tell, now));
       } catch (error) {
@@ -55,6 +62,8 @@ export function createJobs(emit: (event: BenchEvent) => void, now: () => number 
           entry.state.problems.push({ file: "", ...describeFailure(error) });
           entry.state.state = "failed";
         }
+      } finally {
+        clearInterval(beat);
       }
     }
     if (entry.cancelled) entry.state.state = "cancelled";
@@ -75,7 +84,7 @@ export function createJobs(emit: (event: BenchEvent) => void, now: () => number 
         run: null,
         problems: [],
       };
-      const entry: Entry = { state, started: now(), cancelled: false, stop: null };
+      const entry: Entry = { state, started: now(), lastTold: -Infinity, cancelled: false, stop: null };
       entries.set(job, entry);
       forgetOldest(entries);
       queue = queue.then(() => perform(entry, work));
@@ -95,7 +104,6 @@ export function createJobs(emit: (event: BenchEvent) => void, now: () => number 
 }
 
 function handleOf(entry: Entry, tell: (entry: Entry) => void, now: () => number): JobHandle {
-  let lastTold = 0;
   return {
     get cancelled() {
       return entry.cancelled;
@@ -108,9 +116,7 @@ function handleOf(entry: Entry, tell: (entry: Entry) => void, now: () => number)
     },
     progress(done) {
       entry.state.done = done;
-      if (now() - lastTold < eventsApart_ms) return;
-      lastTold = now();
-      tell(entry);
+      if (now() - entry.lastTold >= eventsApart_ms) tell(entry);
     },
     run(run) {
       entry.state.run = run;
