@@ -3,6 +3,8 @@ import type { Note, TimeBase } from "../capture.ts";
 import type { Setup } from "../setup/schema.ts";
 import type { MeasuredInterval } from "./interval.ts";
 import type { Layout } from "./layout.ts";
+import { formatNumber } from "../format/figure.ts";
+import type { StatedTiming } from "./timing.ts";
 import { readUnit, scaleBy, type NamedUnit } from "./units.ts";
 
 /** One record along an axis, times in the axis' own unit. */
@@ -95,24 +97,34 @@ function withoutColumn({ timing }: Layout, time: RecordTime, samples: number): T
   const [stated] = timing.intervals;
   const differing =
     stated && timing.intervals.find(({ step_s }) => Math.abs(step_s / stated.step_s - 1) > 0.01);
-  if (stated && !differing) {
+  if (stated && !differing && stated.otherwise_s === null) {
     const start_s = timing.start_s ?? 0;
     return { timebase: { start_s, step_s: stated.step_s, stepUncertainty_s: 0, samples }, notes: [] };
   }
   const what = differing
-    ? `The header gives two intervals, ${stated.step_s} s (${stated.key}) and ${differing.step_s} s (${differing.key})`
-    : time.counterFrom === null
-      ? "The file holds values only and no interval"
-      : "The file counts samples and says nothing of their interval";
+    ? `The header gives two intervals, ${formatNumber(stated.step_s, "s", 6)} (${stated.key}) and ${formatNumber(differing.step_s, "s", 6)} (${differing.key})`
+    : stated
+      ? `The header's "${stated.key}" has no unit of its own beside a horizontal unit of ${timing.axisUnit}: it is ${formatNumber(stated.step_s, "s")} or ${formatNumber(stated.otherwise_s, "s")}`
+      : time.counterFrom === null
+        ? "The file holds values only and no interval"
+        : "The file counts samples and says nothing of their interval";
   const note: Note = {
     code: "interval-unknown",
     text: `${what}: times and everything that hangs on them are missing.`,
     question: "What is the sample interval in seconds?",
     answers: "sampleInterval_s",
-    ...(differing ? { choices: timing.intervals.map(({ step_s }) => String(step_s)) } : {}),
+    ...(stated ? { choices: choicesOf(timing) } : {}),
   };
   return { timebase: { start_s: 0, step_s: null, stepUncertainty_s: 0, samples }, notes: [note] };
 }
+
+const choicesOf = ({ intervals }: StatedTiming) => [
+  ...new Set(
+    intervals
+      .flatMap(({ step_s, otherwise_s }) => [step_s, otherwise_s ?? step_s])
+      .map((step_s) => String(step_s)),
+  ),
+];
 
 /** Stated, written in the column's head, told by the header's interval, or assumed to be seconds. */
 function axisUnit(layout: Layout, time: RecordTime, setup: Setup): { factor: number | null; notes: Note[] } {
@@ -123,7 +135,11 @@ function axisUnit(layout: Layout, time: RecordTime, setup: Setup): { factor: num
   const byInterval = layout.timing.intervals.flatMap(({ step_s }) =>
     Object.values(factors).filter((factor) => Math.abs(scaleBy(step, factor) / step_s - 1) < 0.01),
   );
-  if (byInterval.length > 0) return { factor: byInterval[0], notes: [] };
+  if (byInterval.length > 0) {
+    const open = layout.timing.intervals.some(({ otherwise_s }) => otherwise_s !== null);
+    const notes = open && byInterval[0] === 1 ? [axisOrScaleNote(layout.timing.axisUnit ?? "")] : [];
+    return { factor: byInterval[0], notes };
+  }
   const stated = layout.timing.axisUnit === null ? null : readUnit(layout.timing.axisUnit, true);
   if (stated?.symbol === "s" && time.unitSwitches === 0) return { factor: stated.factor, notes: [] };
   if (time.unitSwitches > 0) return { factor: null, notes: [switchNote(time.unitSwitches)] };
@@ -138,7 +154,15 @@ const startBySteps = (time: RecordTime, step_s: number) => {
 
 const assumedNote = (step: number): Note => ({
   code: "time-unit-assumed",
-  text: `The file does not say in which unit its times are; taken as seconds (interval ${step} s).`,
+  text: `The file does not say in which unit its times are; taken as seconds (interval ${formatNumber(step, "s", 6)}).`,
+  question: "In which unit is the time column?",
+  choices: unitChoices,
+  answers: "timeUnit",
+});
+
+const axisOrScaleNote = (unit: string): Note => ({
+  code: "time-unit-assumed",
+  text: `The header names ${unit} as the horizontal unit, which may be that of the times or only of the screen's scale; times and interval are taken as seconds.`,
   question: "In which unit is the time column?",
   choices: unitChoices,
   answers: "timeUnit",
@@ -167,7 +191,7 @@ const jitterNote = (steps: number): Note => ({
 
 const conflictNote = (stated: { step_s: number; key: string }, measured: number): Note => ({
   code: "interval-conflict",
-  text: `The header's "${stated.key}" gives ${stated.step_s} s, the time column ${measured.toPrecision(6)} s; the column is used.`,
+  text: `The header's "${stated.key}" gives ${formatNumber(stated.step_s, "s", 6)}, the time column ${formatNumber(measured, "s", 6)}; the column is used.`,
   question: "Which sample interval is right, in seconds?",
   choices: [String(measured), String(stated.step_s)],
   answers: "sampleInterval_s",
@@ -175,7 +199,7 @@ const conflictNote = (stated: { step_s: number; key: string }, measured: number)
 
 const roundedNote = (step_s: number, u: number): Note => ({
   code: "time-rounded",
-  text: `The time column is rounded more coarsely than its step; the interval ${step_s.toPrecision(6)} s is span/(n − 1), good to ${u.toPrecision(2)} s.`,
+  text: `The time column is rounded more coarsely than its step; the interval ${formatNumber(step_s, "s", 6)} is span/(n − 1), good to ${formatNumber(u, "s", 2)}.`,
 });
 
 function mendingNotes(time: RecordTime): Note[] {

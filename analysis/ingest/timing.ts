@@ -2,9 +2,18 @@
 import type { Header, Setting } from "./header.ts";
 import { readUnit, scaleBy } from "./units.ts";
 
+interface StatedInterval {
+  /** A number without a unit is taken as seconds. */
+  step_s: number;
+  key: string;
+  line: number;
+  /** What it would be, had the bare number the axis' unit; null where that can't be. */
+  otherwise_s: number | null;
+}
+
 export interface StatedTiming {
   /** Every interval or rate found, in seconds. */
-  intervals: { step_s: number; key: string; line: number }[];
+  intervals: StatedInterval[];
   start_s: number | null;
   lengths: number[];
   /** First and last time of so many samples, where they stand together. */
@@ -36,7 +45,24 @@ export function statedTiming(header: Header): StatedTiming {
     else if (startKey.test(key)) addStart(timing, quantity(setting, "s"));
   }
   addFromNames(timing, header);
+  addOtherwise(timing, header);
   return timing;
+}
+
+/** No oscilloscope samples faster than this. */
+const shortest_s = 1e-11;
+
+/** "Horizontal Units,ms" beside "Sample Interval,0.008": the unit may be the interval's or only the screen's scale. */
+function addOtherwise({ intervals, axisUnit }: StatedTiming, { settings }: Header): void {
+  const unit = axisUnit === null ? null : readUnit(axisUnit, true);
+  if (unit?.symbol !== "s" || unit.factor === 1) return;
+  for (const interval of intervals) {
+    const setting = settings.find(({ key, line }) => key === interval.key && line === interval.line);
+    // Only a bare number passes for a voltage, too.
+    if (!setting || rateKey.test(setting.key) || quantity(setting, "V") === null) continue;
+    const otherwise_s = scaleBy(interval.step_s, unit.factor);
+    if (otherwise_s >= shortest_s) interval.otherwise_s = otherwise_s;
+  }
 }
 
 function addLengths(timing: StatedTiming, setting: Setting): void {
@@ -56,7 +82,8 @@ function addInterval(timing: StatedTiming, setting: Setting, from: (value: numbe
   const value = quantity(setting, unit);
   if (value === null || !(value > 0)) return;
   const step_s = from(value);
-  if (step_s > 1e-15 && step_s < 1e5) timing.intervals.push({ step_s, key: setting.key, line: setting.line });
+  if (step_s > 1e-15 && step_s < 1e5)
+    timing.intervals.push({ step_s, key: setting.key, line: setting.line, otherwise_s: null });
 }
 
 /** "250000 Hz", "2.0e-06", "5 GS/s", "10 us", or number and unit in neighbouring cells. */
@@ -92,7 +119,12 @@ function addFromNames(timing: StatedTiming, { names, units }: Header): void {
   const step = named(/step|inc|interval|delta|^d[tx]$|schritt|pas\b|rate/i) ?? numbers[numbers.length - 1];
   const start = named(/start|origin|first|begin|zero|^[tx]0$/i) ?? numbers.find((number) => number !== step);
   if (step.value > 0)
-    timing.intervals.push({ step_s: step.value, key: names[step.column]?.trim() || "step", line: 0 });
+    timing.intervals.push({
+      step_s: step.value,
+      key: names[step.column]?.trim() || "step",
+      line: 0,
+      otherwise_s: null,
+    });
   if (start) timing.start_s = start.value;
 }
 
