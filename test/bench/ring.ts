@@ -106,6 +106,12 @@ function values(): void {
   row("… pulses missed, invented", `${rings.missed}, ${rings.invented}`, "0, 0");
   const ramps = scoreRamps(200, 30_000);
   at("ramp L, ≥ 40 dB, dwell ≥ L/R", ramps.inductance, "0.5 %");
+  const { rms, worst, largest } = ramps.bound;
+  row(
+    "… RMSE, worst over each ramp's bound; the largest bound",
+    `${rms.toFixed(2)}, ${worst.toFixed(2)}, ${(100 * largest).toFixed(2)} %`,
+    "1.05, 3.5; below the bound nothing can be reached",
+  );
   at("ramp R", ramps.resistance, "1 %");
   at("ramp saturation current", ramps.saturation, "2 %");
 }

@@ -73,11 +73,13 @@ describe("the ramp", () => {
 
 // Truth: the values the ramps are integrated from.
 it("ramps of many coils, half of them into saturation: L, R and saturation current", () => {
-  const { inductance, resistance, saturation } = scoreRamps(24, 1);
+  const { inductance, resistance, saturation, bound } = scoreRamps(24, 1);
   const median = ({ relative }: { relative: number[] }) => relative[relative.length >> 1];
   expect(median(inductance)).toBeLessThan(0.005);
   expect(median(resistance)).toBeLessThan(0.01);
   expect(median(saturation)).toBeLessThan(0.02);
+  // At the bound by the Fisher matrix; a root mean square of n values scatters by 1/√(2n).
+  expect(bound.rms).toBeLessThan(1.05 * (1 + 3 / Math.sqrt(2 * 24)));
   expect(inductance.missing + resistance.missing + saturation.missing).toBe(0);
   expect(inductance.relative.at(-1)).toBeLessThan(0.02);
 });

@@ -7,6 +7,7 @@ import type { Channel } from "../../analysis/capture.ts";
 import { captureOf, channelOf, scoped } from "./captures.ts";
 import { seeded } from "./random.ts";
 import { logBetween, ringAt, type TrueMode } from "./ring-set.ts";
+import type { TrueRamp } from "./ramp-bound.ts";
 import { runBench, type CoilBench } from "./switched-coil.ts";
 
 export const troubles = ["none", "hum", "bursts", "clipping"] as const;
@@ -89,12 +90,24 @@ export function rampTrial(seed: number) {
     scoped("switch-node", "V", trace.node_V, random, { bits: 12, noise_lsb: 0.7 }),
     scoped("coil-current", "A", trace.current_A, random, how),
   ];
+  const saturated = bench.saturation_A && top > bench.saturation_A ? bench.saturation_A : undefined;
+  const ramp: TrueRamp = {
+    inductance_H,
+    resistance_ohm,
+    drive_V: supply_V - 0.2,
+    dwell_s,
+    step_s,
+    first_s: Math.ceil(begin_s / step_s) * step_s - begin_s,
+    deviation_A: Math.hypot(sigma, channels[1].lsb! / Math.sqrt(12)),
+    knee_A: bench.saturation_A,
+  };
   return {
     seed,
     capture: captureOf(channels, step_s),
     setup: { supply_V, switchOnVoltage_V: 0.2 },
     inductance_H,
     resistance_ohm,
-    saturation_A: bench.saturation_A && top > bench.saturation_A ? bench.saturation_A * 0.25 ** 0.25 : null,
+    ramp,
+    saturation_A: saturated ? saturated * 0.25 ** 0.25 : null,
   };
 }
