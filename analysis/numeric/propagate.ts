@@ -20,7 +20,7 @@ export interface Propagated {
 
 /** Relative uncertainty of an input from which trials are made. */
 const NONLINEAR = 0.05;
-const TRIALS = 4000;
+const TRIALS = 1000;
 
 /**
  * f at the inputs with its standard uncertainty. `correlation(a, b)` of two inputs, 0 when absent.

@@ -12,10 +12,13 @@ export interface KnownMode {
   decay_per_s: number;
 }
 
-export interface StretchFit {
+export interface StretchCost {
   /** Residual sum of squares plus what the prior charges. */
   cost: number;
   blocks: number;
+}
+
+export interface StretchFit extends StretchCost {
   coefficients: Float64Array;
 }
 
@@ -33,6 +36,9 @@ export class RingSums {
   private readonly left: Float64Array[] = [];
   private readonly right: Float64Array[] = [];
   private readonly prior: Float64Array;
+  private readonly gram: Float64Array;
+  private readonly halfway: Float64Array;
+  private definite = false;
 
   constructor(
     private readonly blocks: Blocks,
@@ -43,6 +49,8 @@ export class RingSums {
     noise: number,
   ) {
     this.columns = BASELINE + (modes.length > 1 ? 6 : 4);
+    this.gram = new Float64Array(this.columns ** 2);
+    this.halfway = new Float64Array(this.columns);
     this.wave = this.makeWave();
     this.prior = this.makePrior(amplitude, noise);
     for (let b = 0; b < blocks.count; b += stride) this.boundaries.push(b);
@@ -52,8 +60,10 @@ export class RingSums {
 
   /** Free ring from the window's start to boundary `k`. */
   upTo = (k: number): StretchFit => this.solve(this.left[k]);
+  costUpTo = (k: number): StretchCost => this.costOf(this.left[k]);
   /** Free ring from boundary `k` to the window's end. */
   from = (k: number): StretchFit => this.solve(this.right[k]);
+  costFrom = (k: number): StretchCost => this.costOf(this.right[k]);
 
   /** Value of the fitted ring at block i. */
   value(coefficients: Float64Array, i: number): number {
@@ -130,11 +140,8 @@ export class RingSums {
         while (segment < segments.length && segments[segment + 1] <= i) segment += 2;
         if (segment < segments.length && i >= segments[segment]) this.add(between[k], i);
       }
-    this.left.push(new Float64Array(size));
-    for (const sums of between) this.left.push(plus(this.left[this.left.length - 1], sums));
-    this.right.push(new Float64Array(size));
-    for (const sums of between.toReversed()) this.right.push(plus(this.right[this.right.length - 1], sums));
-    this.right.reverse();
+    this.left.push(...running(between, size));
+    this.right.push(...running(between.toReversed(), size).reverse());
   }
 
   private add(sums: Float64Array, i: number): void {
@@ -152,21 +159,44 @@ export class RingSums {
   }
 
   private solve(sums: Float64Array): StretchFit {
+    const { cost, blocks } = this.costOf(sums);
+    const coefficients = new Float64Array(this.columns);
+    if (this.definite) {
+      const from = (this.columns * (this.columns + 1)) / 2;
+      coefficients.set(sums.subarray(from, from + this.columns));
+      solveFactored(this.gram, this.columns, coefficients);
+    }
+    return { cost, blocks, coefficients };
+  }
+
+  /** The cost alone: Σ value² − ‖L⁻¹·r‖², r the right side. Leaves the factored Gram matrix behind. */
+  private costOf(sums: Float64Array): StretchCost {
     const n = this.columns;
-    const gram = new Float64Array(n * n);
+    const { gram, halfway } = this;
     let k = 0;
     for (let r = 0; r < n; r++) for (let c = 0; c <= r; c++) gram[r * n + c] = sums[k++];
     for (let c = 0; c < n; c++) gram[c * n + c] += this.prior[c];
-    const right = sums.slice(k, k + n);
-    const power = sums[k + n];
+    let cost = sums[k + n];
     const blocks = sums[k + n + 1];
-    const coefficients = right.slice();
-    if (!factor(gram, n)) return { cost: power, blocks, coefficients: coefficients.fill(0) };
-    solveFactored(gram, n, coefficients);
-    let cost = power;
-    for (let c = 0; c < n; c++) cost -= coefficients[c] * right[c];
-    return { cost: Math.max(0, cost), blocks, coefficients };
+    this.definite = factor(gram, n);
+    if (!this.definite) return { cost, blocks };
+    for (let r = 0; r < n; r++) {
+      let s = sums[k + r];
+      for (let c = 0; c < r; c++) s -= gram[r * n + c] * halfway[c];
+      halfway[r] = s / gram[r * n + r];
+      cost -= halfway[r] * halfway[r];
+    }
+    return { cost: Math.max(0, cost), blocks };
   }
 }
 
-const plus = (a: Float64Array, b: Float64Array) => a.map((value, j) => value + b[j]);
+/** Sums of none, the first, the first two … of `parts`. */
+function running(parts: Float64Array[], size: number): Float64Array[] {
+  const sums = [new Float64Array(size)];
+  for (const part of parts) {
+    const next = sums[sums.length - 1].slice();
+    for (let j = 0; j < size; j++) next[j] += part[j];
+    sums.push(next);
+  }
+  return sums;
+}

@@ -2,7 +2,7 @@
  * "One ring goes on" against "a ring up to a, something else, a ring from b on" (generalised likelihood
  * ratio; Basseville & Nikiforov, Detection of Abrupt Changes, 1993), over all a ≤ b.
  */
-import { HIGH, LOW, type RingSums, type StretchFit } from "./ring-sums.ts";
+import { HIGH, LOW, type RingSums, type StretchCost, type StretchFit } from "./ring-sums.ts";
 
 export interface Split {
   /** Log-likelihood gained over one ring, in units of the noise (twice the logarithm's difference). */
@@ -23,9 +23,9 @@ const PRICE = 3;
 
 export function bestSplit(sums: RingSums, noise: number, ceiling: number): Split {
   const last = sums.boundaries.length - 1;
-  const lefts = sums.boundaries.map((_, k) => sums.upTo(k));
-  const rights = sums.boundaries.map((_, k) => sums.from(k));
-  const whole = rights[0];
+  const lefts = sums.boundaries.map((_, k) => sums.costUpTo(k));
+  const rights = sums.boundaries.map((_, k) => sums.costFrom(k));
+  const whole = sums.from(0);
   const variance = Math.max(noise * noise, Math.min(ceiling, floorOf(rights, sums.columns)));
   let [bestA, best, a, b] = [0, Number.POSITIVE_INFINITY, 0, 0];
   let cheapest = Number.POSITIVE_INFINITY;
@@ -37,14 +37,14 @@ export function bestSplit(sums: RingSums, noise: number, ceiling: number): Split
   }
   const gain = whole.cost / variance - PRICE * whole.blocks - best;
   const misfit = whole.cost / variance - (whole.blocks - sums.columns);
-  return { gain, misfit, a, b, before: lefts[a], after: rights[b], whole, variance };
+  return { gain, misfit, a, b, before: sums.upTo(a), after: sums.from(b), whole, variance };
 }
 
 /**
  * What a free ring leaves in this record at its best: the smallest mean square over the later halves,
  * so that coloured noise and pickup raise the bar and a disturbance does not.
  */
-function floorOf(rights: StretchFit[], columns: number): number {
+function floorOf(rights: StretchCost[], columns: number): number {
   let least = Number.POSITIVE_INFINITY;
   for (let k = 0; k <= rights.length >> 1; k++) {
     const free = rights[k].blocks - columns;
