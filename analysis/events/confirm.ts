@@ -7,8 +7,9 @@ import type { PulseEvidence } from "../evidence.ts";
 import { meanAndDeviation, medianOf } from "../numeric/robust.ts";
 import type { RingQuality } from "../reading-format.ts";
 import { makeBlocks } from "../ring/blocks.ts";
-import type { RingFit } from "../ring/fit-format.ts";
+import type { FittedMode, RingFit } from "../ring/fit-format.ts";
 import { amplitude } from "../ring/quality.ts";
+import { residualProfile } from "../ring/residuals.ts";
 import { costAt } from "../ring/solve.ts";
 
 export interface Candidate {
@@ -21,7 +22,10 @@ export interface Candidate {
 export function confirm(channel: Channel, candidates: Candidate[], noise: number): boolean[] {
   const rings = clearest(candidates);
   const nothingNew = candidates.map(
-    (candidate) => candidate.witnessed === null && ringsThrough(channel, rings, candidate, noise),
+    (candidate, k) =>
+      candidate.witnessed === null &&
+      (goesOn(channel, candidates[k - 1], candidate, noise) ||
+        ringsThrough(channel, rings, candidate, noise)),
   );
   const sure = candidates.map(
     (candidate, k) =>
@@ -51,6 +55,24 @@ function hasRing({ evidence, quality }: Candidate, noise: number): boolean {
   const main = fit.modes.find((mode) => amplitude(mode) === largest)!;
   const decays = main.decay_per_s * (fit.to - fit.from) * fit.step_s > 0.4;
   return decays && largest > 6 * noise && fit.residual < 3 * fit.noise;
+}
+
+/** How long a ring is followed on to see whether it goes on. */
+const CONTINUED_PERIODS = 4;
+
+/** The ring of the pulse before, still to be seen, explains what comes after a burst: it goes on, and nothing is new. */
+function goesOn(channel: Channel, before: Candidate | undefined, { evidence }: Candidate, noise: number) {
+  const { switchOff, period, freeTo } = evidence;
+  const earlier = before?.evidence.fit;
+  if (!earlier || switchOff === null || !period) return false;
+  const from = Math.ceil(switchOff + period);
+  const to = Math.min(freeTo, from + Math.ceil(CONTINUED_PERIODS * period));
+  if (to - from < period) return false;
+  const left = (mode: FittedMode) =>
+    amplitude(mode) * Math.exp(-mode.decay_per_s * (from - earlier.from) * earlier.step_s);
+  if (Math.max(...earlier.modes.map(left)) < 2 * noise) return false;
+  const [rms] = residualProfile(channel.samples, earlier, from, to, to - from, channel.unusable).rms;
+  return rms < 1.3 * Math.max(noise, earlier.residual);
 }
 
 /** Fits of the record's clearest rings, at most so many. */

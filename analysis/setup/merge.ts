@@ -25,6 +25,8 @@ function mergeChannels(strongestFirst: SetupChannel[][]): SetupChannel[] {
 const stated = (value: unknown) => value !== null && value !== undefined;
 
 export function sameChannel(a: SetupChannel, b: SetupChannel): boolean {
+  // Position and name are those within its own file, where a shot lies in several.
+  if (stated(a.file) && stated(b.file) && a.file !== b.file) return false;
   if (stated(a.position) && stated(b.position)) return a.position === b.position;
   return stated(a.name) && a.name === b.name;
 }

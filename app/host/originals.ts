@@ -48,7 +48,8 @@ const unpacked = new Map<string, string>();
  * to it beside it.
  */
 export async function placeOf(book: Book, path: string, sha256: string): Promise<string> {
-  if (existsSync(path)) return path;
+  const beside = book.companions(sha256).map(({ name }) => join(dirname(path), name));
+  if ([path, ...beside].every((file) => existsSync(file))) return path;
   const before = unpacked.get(sha256);
   if (before) return before;
   const folder = join(copiesFolder(), sha256);

@@ -75,7 +75,12 @@ it("holds what was read along with a file: its settings, and the further channel
   writeFileSync(join(shot, "a_ch2.csv"), captureText("Coil (V)", 4e-7));
   writeFileSync(
     join(shot, "setup.json"),
-    JSON.stringify({ channels: [{ file: "a_ch1.csv" }, { file: "a_ch2.csv", scale: 2 }] }),
+    JSON.stringify({
+      channels: [
+        { file: "a_ch1.csv", position: 0 },
+        { file: "a_ch2.csv", position: 0, scale: 2 },
+      ],
+    }),
   );
   const bare = join(place.folder, "bare");
   mkdirSync(bare);
@@ -86,7 +91,8 @@ it("holds what was read along with a file: its settings, and the further channel
     ["a_ch2.csv"],
     ["b.txt"],
   ]);
-  rmSync(shot, { recursive: true });
+  // One of the shot's files is enough to be missed.
+  rmSync(join(shot, "a_ch2.csv"));
   rmSync(bare, { recursive: true });
   for (const run of runs) await state(book, run, { supply_V: 14 });
   const [joined, settled] = runs.map((run) => first(run).reading);

@@ -13,6 +13,11 @@ describe("L by an exact capacitor at 40 dB and more", () => {
 
   it("no pulse is missed, invented or left without its L", () =>
     expect({ missed, invented, missing }).toEqual({ missed: 0, invented: 0, missing: 0 }));
+
+  // Trials in which a burst leaves the quiet and the swing of a switch-off behind.
+  it.each([20250, 20790, 21566])("a burst in the ring begins no pulse (trial %i)", (trial) => {
+    expect(scoreTroubledRings(1, trial)).toMatchObject({ missed: 0, invented: 0 });
+  });
 });
 
 // A share p of n trials scatters by √(p(1 − p)/n); the limit is 93 % less three of them.
