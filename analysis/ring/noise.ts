@@ -50,7 +50,11 @@ export function colourOf(residual: Float64Array, count: number): Colour | null {
   return { power: spectrum, half, count, mean: all / (half - 1) };
 }
 
-/** Power density around `omega` (radian a value) over the mean density: 1 where no colour shows. */
+/**
+ * Power density around `omega` (radian a value) over the mean density: 1 where no colour shows. Known from few
+ * independent bins, it is raised so that twice the uncertainty holds as it would with many (JCGM 100:2008, G.3:
+ * Student's t at 95 % for ν degrees of freedom, 1.96 + 2.37/ν to first order).
+ */
 export function excessAt(colour: Colour | null, omega: number): number {
   if (!colour || !(colour.mean > 0)) return 1;
   const { half, count, power } = colour;
@@ -70,8 +74,9 @@ export function excessAt(colour: Colour | null, omega: number): number {
     bins++;
   }
   if (bins === 0) return 1;
-  const ratio = near / bins / colour.mean;
-  return ratio;
+  // Each independent bin of a power spectrum is the sum of two squares.
+  const freedom = (2 * bins) / wide;
+  return (near / bins / colour.mean) * (1 + 2.37 / 1.96 / freedom) ** 2;
 }
 
 /** Median of |x| over 0.6745: standard deviation of normal noise. Reorders `values`. */
