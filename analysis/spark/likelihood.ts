@@ -89,6 +89,9 @@ function currentScale(ratio: number, calm: boolean): number {
 /** Nothing free is left after the disturbance: the arc burns until the next edge, or there is none. */
 function cutShort(traits: Traits, disturbed: number, othersRing = false): Likelihood {
   const nothing = { away: null, loss: traits.loss };
+  // The run's quiet pulses are disturbed as much (bursts), but not at the ring's cost.
+  const costly = traits.misfit > 3 * NOISE && traits.ringBefore && traits.loss !== null && traits.loss > 0.2;
+  if (disturbed <= NOISE && costly) return { probability: 0.4, because: "doubt", ...nothing };
   if (disturbed <= NOISE) return { probability: 0.005, because: "one-ring", ...nothing };
   // The window's very end may hold the next edge: no spark is read from it, nor from a ring that is spent.
   if (traits.spent) return { probability: 0.03, because: "spent", ...nothing };
