@@ -117,7 +117,7 @@ function typicalSpacing(
   if (ringing.length > 0) return medianByLength(ringing);
   // A kick that a spark cuts short stands on the arc's long foot: its top tells how fast the coil rings.
   const top = high / widths.length;
-  return 2.3 * (SHARP * top < wide ? SHARP * top : wide);
+  return 2.3 * Math.min(SHARP * top, wide);
 }
 
 /** The length in which half of the whole time is reached: many short ones of a noise burst weigh little. */
