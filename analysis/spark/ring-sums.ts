@@ -141,7 +141,7 @@ export class RingSums {
         if (segment < segments.length && i >= segments[segment]) this.add(between[k], i);
       }
     this.left.push(...running(between, size));
-    this.right.push(...running(between.toReversed(), size).reverse());
+    this.right.push(...running(between.toReversed(), size).toReversed());
   }
 
   private add(sums: Float64Array, i: number): void {
