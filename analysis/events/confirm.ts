@@ -6,7 +6,7 @@ import type { Channel } from "../capture.ts";
 import type { PulseEvidence } from "../evidence.ts";
 import { meanAndDeviation, medianOf } from "../numeric/robust.ts";
 import type { RingQuality } from "../reading-format.ts";
-import { makeBlocks } from "../ring/blocks.ts";
+import { makeBlocks, type Blocks } from "../ring/blocks.ts";
 import type { FittedMode, RingFit } from "../ring/fit-format.ts";
 import { amplitude } from "../ring/quality.ts";
 import { residualProfile } from "../ring/residuals.ts";
@@ -102,27 +102,26 @@ function ringsThrough(channel: Channel, rings: RingFit[], { evidence }: Candidat
   if (switchOff - from < 0.5 * BEFORE * period) return false;
   return AFTER.some((after) => {
     const to = Math.ceil(switchOff + after * period);
-    return to <= freeTo && rings.some((ring) => explains(ring, channel, from, to, period, noise));
+    if (to > freeTo) return false;
+    const blocks = makeBlocks(
+      channel.samples,
+      from,
+      to,
+      channel.unusable,
+      Math.max(1, Math.floor(period / 32)),
+    );
+    return blocks.used >= 24 && rings.some((ring) => explains(ring, blocks, noise));
   });
 }
 
-/** Whether a sum of the ring's modes, of any size and phase, is all there is in [from, to). */
-function explains(
-  { modes, step_s }: RingFit,
-  { samples, unusable }: Channel,
-  from: number,
-  to: number,
-  period: number,
-  noise: number,
-): boolean {
-  const width = Math.max(1, Math.floor(period / 32));
-  const blocks = makeBlocks(samples, from, to, unusable, width);
-  if (blocks.used < 24) return false;
+/** Whether a sum of the ring's modes, of any size and phase, is all there is. */
+function explains({ modes, step_s }: RingFit, blocks: Blocks, noise: number): boolean {
+  const { decimation, used } = blocks;
   const known = modes.map(({ frequency_Hz, decay_per_s }) => ({
-    omega: 2 * Math.PI * frequency_Hz * step_s * width,
-    decay: decay_per_s * step_s * width,
+    omega: 2 * Math.PI * frequency_Hz * step_s * decimation,
+    decay: decay_per_s * step_s * decimation,
   }));
-  return costAt(blocks, known, 1) < EXPLAINED ** 2 * (noise ** 2 / width) * blocks.used;
+  return costAt(blocks, known, 1) < EXPLAINED ** 2 * (noise ** 2 / decimation) * used;
 }
 
 /** The kick goes well beyond the change from the conduction level to the level after it, or swings about the latter. */

@@ -23,11 +23,21 @@ export function factor(a: Float64Array, n: number, relativeFloor = 1e-13): boole
 
 /** Solves L·Lᵀ·x = b in place, L from `factor`. */
 export function solveFactored(l: Float64Array, n: number, x: Float64Array): void {
+  solveLower(l, n, x);
+  solveUpper(l, n, x);
+}
+
+/** Solves L·x = b in place. */
+export function solveLower(l: Float64Array, n: number, x: Float64Array): void {
   for (let i = 0; i < n; i++) {
     let s = x[i];
     for (let k = 0; k < i; k++) s -= l[i * n + k] * x[k];
     x[i] = s / l[i * n + i];
   }
+}
+
+/** Solves Lᵀ·x = b in place. */
+export function solveUpper(l: Float64Array, n: number, x: Float64Array): void {
   for (let i = n - 1; i >= 0; i--) {
     let s = x[i];
     for (let k = i + 1; k < n; k++) s -= l[k * n + i] * x[k];

@@ -24,12 +24,13 @@ const SHORT = 0.72;
 
 /** One likelihood for each of `run`: its own, or that of a kick cut short. */
 export function againstKicks(run: Kicked[]): Likelihood[] {
-  const known = run.flatMap(({ drive, judged: { traits } }, i) =>
-    drive !== null && !traits.clipped && !traits.startsInRing ? [i] : [],
-  );
-  return run.map(({ judged, drive }, place) => {
-    const { likelihood, traits } = judged;
-    if (drive === null || !known.includes(place) || likelihood.probability > 0.9) return likelihood;
+  const whole = ({ drive, judged: { traits } }: Kicked) =>
+    drive !== null && !traits.clipped && !traits.startsInRing;
+  const known = run.flatMap((each, i) => (whole(each) ? [i] : []));
+  return run.map((each, place) => {
+    const { likelihood, traits } = each.judged;
+    const { drive } = each;
+    if (drive === null || !whole(each) || likelihood.probability > 0.9) return likelihood;
     const others = nearest(known, place, 2 * NEIGHBOURS).filter(
       (i) => Math.abs(run[i].drive! / drive - 1) < ALIKE,
     );

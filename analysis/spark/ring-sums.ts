@@ -4,7 +4,7 @@
  * one small solve. Columns: a bent baseline (1, t, t²); for the low mode cosine, sine and their products
  * with t (so decay and frequency may differ a little); for the high mode cosine and sine.
  */
-import { factor, solveFactored } from "../numeric/cholesky.ts";
+import { factor, solveLower, solveUpper } from "../numeric/cholesky.ts";
 import type { Blocks } from "../ring/blocks.ts";
 
 export interface KnownMode {
@@ -160,16 +160,13 @@ export class RingSums {
 
   private solve(sums: Float64Array): StretchFit {
     const { cost, blocks } = this.costOf(sums);
-    const coefficients = new Float64Array(this.columns);
-    if (this.definite) {
-      const from = (this.columns * (this.columns + 1)) / 2;
-      coefficients.set(sums.subarray(from, from + this.columns));
-      solveFactored(this.gram, this.columns, coefficients);
-    }
+    if (!this.definite) return { cost, blocks, coefficients: new Float64Array(this.columns) };
+    const coefficients = this.halfway.slice();
+    solveUpper(this.gram, this.columns, coefficients);
     return { cost, blocks, coefficients };
   }
 
-  /** The cost alone: Σ value² − ‖L⁻¹·r‖², r the right side. Leaves the factored Gram matrix behind. */
+  /** The cost alone: Σ value² − ‖L⁻¹·r‖², r the right side. Leaves L and L⁻¹·r behind. */
   private costOf(sums: Float64Array): StretchCost {
     const n = this.columns;
     const { gram, halfway } = this;
@@ -180,12 +177,9 @@ export class RingSums {
     const blocks = sums[k + n + 1];
     this.definite = factor(gram, n);
     if (!this.definite) return { cost, blocks };
-    for (let r = 0; r < n; r++) {
-      let s = sums[k + r];
-      for (let c = 0; c < r; c++) s -= gram[r * n + c] * halfway[c];
-      halfway[r] = s / gram[r * n + r];
-      cost -= halfway[r] * halfway[r];
-    }
+    halfway.set(sums.subarray(k, k + n));
+    solveLower(gram, n, halfway);
+    for (let r = 0; r < n; r++) cost -= halfway[r] * halfway[r];
     return { cost: Math.max(0, cost), blocks };
   }
 }

@@ -1,5 +1,4 @@
 /** A capture file's copy in the book: made where the user wants it, read where the file itself is gone. */
-import { createHash } from "node:crypto";
 import { existsSync, mkdirSync, mkdtempSync, rmSync } from "node:fs";
 import { readFile, stat, writeFile } from "node:fs/promises";
 import { tmpdir } from "node:os";
@@ -7,7 +6,7 @@ import { basename, dirname, join } from "node:path";
 import { promisify } from "node:util";
 import { gunzip, gzip } from "node:zlib";
 import type { Book } from "./book/index.ts";
-import type { Companion } from "./reading/index.ts";
+import { hashOf, type Companion } from "./reading/index.ts";
 
 /** A preference of the book: "yes" copies every file that is read into it. */
 export const keepFiles = "keepFiles";
@@ -17,7 +16,6 @@ const mostKept_bytes = 500e6;
 
 const squeeze = promisify(gzip);
 const unsqueeze = promisify(gunzip);
-const hashOf = (bytes: Uint8Array) => createHash("sha256").update(bytes).digest("hex");
 
 /**
  * Copies the file in with what was read along with it, if the book is to hold files; not when they have changed
@@ -48,14 +46,15 @@ const unpacked = new Map<string, string>();
  * to it beside it.
  */
 export async function placeOf(book: Book, path: string, sha256: string): Promise<string> {
-  const beside = book.companions(sha256).map(({ name }) => join(dirname(path), name));
+  const companions = book.companions(sha256);
+  const beside = companions.map(({ name }) => join(dirname(path), name));
   if ([path, ...beside].every((file) => existsSync(file))) return path;
   const before = unpacked.get(sha256);
   if (before) return before;
   const folder = join(copiesFolder(), sha256);
   const copy = join(folder, basename(path));
   if (!(await unpack(book, sha256, copy))) return path;
-  for (const companion of book.companions(sha256))
+  for (const companion of companions)
     await unpack(book, companion.sha256, join(folder, basename(companion.name)));
   unpacked.set(sha256, copy);
   return copy;

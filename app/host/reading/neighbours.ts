@@ -1,4 +1,5 @@
 /** Files that belong to a capture file: settings beside bare numbers, and further channels saved each by itself. */
+import { createHash } from "node:crypto";
 import { open, readdir, stat } from "node:fs/promises";
 import { basename, dirname, join, resolve } from "node:path";
 import { decodeText } from "../../../analysis/ingest/index.ts";
@@ -15,13 +16,13 @@ export const isCaptureFile = (name: string) => captureEnding.test(name) && !name
 const stemOf = (path: string) => basename(path).replace(/(\.[^.]+)(\.gz)?$/, "");
 
 /** The settings of a neighbour with the same stem ("key:value:" lines and no data); null without one. */
-export async function readSidecar(path: string): Promise<{ path: string; text: string } | null> {
+export async function readSidecar(path: string): Promise<Settings | null> {
   const folder = dirname(path);
   for (const name of await readdir(folder)) {
     const neighbour = join(folder, name);
     if (name === basename(path) || stemOf(name) !== stemOf(path) || name.endsWith(".json")) continue;
-    const text = await settingsIn(neighbour);
-    if (text !== null) return { path: neighbour, text };
+    const settings = await settingsIn(neighbour);
+    if (settings) return settings;
   }
   return null;
 }
@@ -33,7 +34,15 @@ export async function isSidecar(path: string): Promise<boolean> {
   return (await settingsIn(path)) !== null;
 }
 
-async function settingsIn(path: string): Promise<string | null> {
+interface Settings {
+  name: string;
+  text: string;
+  sha256: string;
+}
+
+export const hashOf = (bytes: Uint8Array) => createHash("sha256").update(bytes).digest("hex");
+
+async function settingsIn(path: string): Promise<Settings | null> {
   const { size } = await stat(path);
   if (size === 0 || size > longestSidecar_bytes || path.endsWith(".gz")) return null;
   const file = await open(path, "r");
@@ -43,7 +52,8 @@ async function settingsIn(path: string): Promise<string | null> {
     const text = decodeText(bytes);
     const lines = text.split(/[\r\n]+/).filter((line) => line.trim() !== "");
     const settings = lines.filter((line) => /^\s*\p{L}[^:=]*[:=]/u.test(line));
-    return lines.length >= 2 && settings.length > 0.8 * lines.length ? text : null;
+    if (lines.length < 2 || settings.length <= 0.8 * lines.length) return null;
+    return { name: basename(path), text, sha256: hashOf(bytes) };
   } finally {
     await file.close();
   }

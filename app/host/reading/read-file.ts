@@ -1,5 +1,3 @@
-import { createHash } from "node:crypto";
-import { readFile as readBytes } from "node:fs/promises";
 import { basename, dirname, join } from "node:path";
 import { setImmediate } from "node:timers/promises";
 import type { Capture, Note } from "../../../analysis/capture.ts";
@@ -59,11 +57,9 @@ async function readOne(path: string, setup: Setup, options: ReadOptions): Promis
   if (!read.captures.some(({ notes }) => notes.some(({ code }) => code === "interval-unknown"))) return read;
   const sidecar = await readSidecar(path);
   if (sidecar === null) return read;
-  const settings = { name: basename(sidecar.path), sha256: hashOf(await readBytes(sidecar.path)) };
-  return { ...(await readAlone(path, setup, options, sidecar.text)), companions: [settings] };
+  const { name, text, sha256 } = sidecar;
+  return { ...(await readAlone(path, setup, options, text)), companions: [{ name, sha256 }] };
 }
-
-const hashOf = (bytes: Uint8Array) => createHash("sha256").update(bytes).digest("hex");
 
 const beat_ms = 100;
 
