@@ -98,8 +98,10 @@ function freshTraits(window: SparkWindow, modes: KnownMode[], ceiling: number): 
     : ringAfter
       ? carriedBack(sums, split.after.coefficients, b, window, modes[0])
       : null;
-  const known =
-    rest !== null && isKnown(rest, first.size * (clipped ? 2 : 1), oneRing ? 0 : b, split, window, modes[0]);
+  const trusted = (carried: [number, number] | null, from: number) =>
+    carried && isKnown(carried, first.size * (clipped ? 2 : 1), from, split, window, modes[0])
+      ? carried
+      : null;
   const kick = { kick: first.size, kickBlock: first.block, clipped, startsInRing: window.startsInRing };
   const early = ringBefore && a >= LONG_RING * period && !oneRing && !window.startsInRing;
   const start = a - Math.round(period);
@@ -119,11 +121,8 @@ function freshTraits(window: SparkWindow, modes: KnownMode[], ceiling: number): 
     late: b > 0.5 * period,
     passed: 2 * Math.PI * modes[0].frequency_Hz * (window.first_s + b * window.step_s),
     oneRing,
-    rest: known ? rest : null,
-    restBefore:
-      restBefore && isKnown(restBefore, first.size * (clipped ? 2 : 1), start, split, window, modes[0])
-        ? restBefore
-        : null,
+    rest: trusted(rest, oneRing ? 0 : b),
+    restBefore: trusted(restBefore, start),
     jump,
     ...kick,
   };
