@@ -35,7 +35,7 @@ function writes(target: EventTarget | null): boolean {
 function take(event: KeyboardEvent): void {
   if (event.defaultPrevented || event.altKey) return;
   const name = nameOf(event);
-  if (event.target instanceof Element && event.target.closest("dialog")) return;
+  if (event.target instanceof Element && event.target.closest("dialog[open]")) return;
   if (writes(event.target)) {
     // Escape leaves a field, and does nothing else.
     if (name === "escape") (event.target as HTMLElement).blur();
